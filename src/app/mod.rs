@@ -1,0 +1,14 @@
+//! The document, its edits and its history. No egui here: the window reads and proposes, this applies.
+//!
+//! Four kinds of state are never mixed: the document (here), the view (the window's), derived results (here,
+//! tagged with the revision) and gestures (the window's).
+
+mod document;
+mod edit;
+mod examples;
+mod files;
+
+pub use document::{Derived, Document, Step};
+pub use edit::{Edit, apply};
+pub use examples::{EXAMPLES, Example};
+pub use files::{FileError, load, save_atomic};

@@ -1,0 +1,1 @@
+//! The criteria: one a file, and the table of them.

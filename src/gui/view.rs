@@ -1,0 +1,60 @@
+//! View state, and what panels propose. Nothing here is part of the document.
+
+use crate::app::Edit;
+use crate::units::UnitSystem;
+
+/// What the user has chosen on the board or in a column.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+pub enum Selected {
+    /// An edge of the outline.
+    Edge(usize),
+    /// The vertex at which an edge of the outline starts.
+    Vertex(usize),
+    /// A whole obstacle.
+    Obstacle(usize),
+    /// One vertex of an obstacle.
+    ObstacleVertex(usize, usize),
+    /// A named point.
+    Point(usize),
+    /// The plumb bob.
+    Bob,
+}
+
+/// What is chosen, how it is shown. Panels may change it in place.
+#[derive(Clone, Debug, PartialEq)]
+pub struct View {
+    /// The load case on the board.
+    pub case_idx: usize,
+    /// What is chosen.
+    pub selected: Option<Selected>,
+    /// The verdict whose working is open: (case, verdict).
+    pub open_verdict: Option<(usize, usize)>,
+    /// Units shown.
+    pub units: UnitSystem,
+    /// Board camera: points a metre, and the section point in the middle; none until first fitted.
+    pub camera: Option<Camera>,
+    /// What the status line says at the left: position under the pointer, or why something snapped.
+    pub status: String,
+}
+
+/// Where the board looks.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Camera {
+    /// Screen points a metre.
+    pub points_per_m: f32,
+    /// Section point (s, z) in the middle of the board, metres.
+    pub center_m: [f64; 2],
+}
+
+/// What a panel proposes; applied in one place at the end of the frame.
+#[derive(Clone, Debug)]
+pub enum Proposal {
+    /// Change the document.
+    Edit(Edit),
+    /// A drag starts: edits until its end are one step with these words.
+    BeginGesture(String),
+    /// The drag ends.
+    EndGesture,
+    /// The drag is called off.
+    CancelGesture,
+}

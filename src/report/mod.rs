@@ -1,0 +1,1 @@
+//! Results for readers: the JSON contract and the tables of the command line.

@@ -1,0 +1,1 @@
+//! Statics: effective gravity, settled surface, loads.

@@ -1,0 +1,255 @@
+//! Quantities, their units and how a number is shown. SI inside; the unit system only changes what is shown.
+
+use std::fmt::Write as _;
+
+/// Standard gravity, m/s2. Source: BIPM, 3rd CGPM (1901).
+pub const STANDARD_GRAVITY_M_PER_S2: f64 = 9.80665;
+
+/// Standard atmosphere, Pa. Source: BIPM, 10th CGPM (1954), resolution 4.
+pub const STANDARD_ATMOSPHERE_PA: f64 = 101_325.0;
+
+/// What kind of thing a number measures. Gage and absolute pressure are different quantities.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+pub enum Quantity {
+    /// A length on the section: mm, in.
+    Length,
+    /// A length along a ruler or a wall: m, ft.
+    Distance,
+    /// m2, ft2.
+    Area,
+    /// m3, US gal.
+    Volume,
+    /// m/s2, ft/s2.
+    Acceleration,
+    /// Radians inside, degrees shown.
+    Angle,
+    /// Pressure above the outside air: kPa, psi.
+    GagePressure,
+    /// Pressure above vacuum: kPa, psi.
+    AbsolutePressure,
+    /// kN, lbf.
+    Force,
+    /// kN m, lbf ft.
+    Moment,
+    /// kg/m3, lb/ft3.
+    Density,
+    /// kg, lb.
+    Mass,
+    /// mN/m in both systems.
+    SurfaceTension,
+    /// s in both systems.
+    Time,
+    /// A share of a whole, shown in percent.
+    Share,
+    /// A plain number.
+    Ratio,
+}
+
+/// Which units are shown. The file keeps its own.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, Hash, serde::Serialize, serde::Deserialize)]
+pub enum UnitSystem {
+    /// International System.
+    #[default]
+    Si,
+    /// US customary units.
+    UsCustomary,
+}
+
+/// A unit: its symbol and how many SI units it is.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Unit {
+    /// As shown beside a number.
+    pub symbol: &'static str,
+    /// One of this unit in SI units.
+    pub in_si: f64,
+}
+
+impl Unit {
+    /// A value in SI units, expressed in this unit.
+    pub fn from_si(self, si: f64) -> f64 {
+        si / self.in_si
+    }
+
+    /// A value in this unit, expressed in SI units.
+    pub fn to_si(self, value: f64) -> f64 {
+        value * self.in_si
+    }
+}
+
+const INCH: f64 = 0.0254;
+const FOOT: f64 = 0.3048;
+const POUND: f64 = 0.453_592_37;
+const POUND_FORCE: f64 = POUND * STANDARD_GRAVITY_M_PER_S2;
+
+impl Quantity {
+    /// The unit in which this quantity is shown.
+    ///
+    /// Source: NIST SP 811 (2008), appendix B.8, for the US customary factors (value from memory, exact by
+    /// definition of the international foot, the avoirdupois pound and the US gallon of 231 cubic inches).
+    pub fn unit(self, system: UnitSystem) -> Unit {
+        use Quantity::*;
+        let (si, us) = match self {
+            Length => (("mm", 1e-3), ("in", INCH)),
+            Distance => (("m", 1.0), ("ft", FOOT)),
+            Area => (("m²", 1.0), ("ft²", FOOT * FOOT)),
+            Volume => (("m³", 1.0), ("gal", 231.0 * INCH * INCH * INCH)),
+            Acceleration => (("m/s²", 1.0), ("ft/s²", FOOT)),
+            Angle => (("°", std::f64::consts::PI / 180.0), ("°", std::f64::consts::PI / 180.0)),
+            GagePressure => (("kPa", 1e3), ("psi", POUND_FORCE / (INCH * INCH))),
+            AbsolutePressure => (("kPa abs", 1e3), ("psia", POUND_FORCE / (INCH * INCH))),
+            Force => (("kN", 1e3), ("lbf", POUND_FORCE)),
+            Moment => (("kN m", 1e3), ("lbf ft", POUND_FORCE * FOOT)),
+            Density => (("kg/m³", 1.0), ("lb/ft³", POUND / (FOOT * FOOT * FOOT))),
+            Mass => (("kg", 1.0), ("lb", POUND)),
+            SurfaceTension => (("mN/m", 1e-3), ("mN/m", 1e-3)),
+            Time => (("s", 1.0), ("s", 1.0)),
+            Share => (("%", 0.01), ("%", 0.01)),
+            Ratio => (("", 1.0), ("", 1.0)),
+        };
+        let (symbol, in_si) = if system == UnitSystem::Si { si } else { us };
+        Unit { symbol, in_si }
+    }
+
+    /// The symbol of the coherent SI unit, as the JSON uses it.
+    pub fn si_symbol(self) -> &'static str {
+        use Quantity::*;
+        match self {
+            Length | Distance => "m",
+            Area => "m2",
+            Volume => "m3",
+            Acceleration => "m/s2",
+            Angle => "rad",
+            GagePressure => "Pa gage",
+            AbsolutePressure => "Pa abs",
+            Force => "N",
+            Moment => "N m",
+            Density => "kg/m3",
+            Mass => "kg",
+            SurfaceTension => "N/m",
+            Time => "s",
+            Share | Ratio => "1",
+        }
+    }
+}
+
+/// A number with its quantity; the value is in SI units.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Measure {
+    /// What it measures.
+    pub quantity: Quantity,
+    /// How much, in SI units.
+    pub si: f64,
+}
+
+impl Measure {
+    /// A measure from a value in SI units.
+    pub fn new(quantity: Quantity, si: f64) -> Measure {
+        Measure { quantity, si }
+    }
+
+    /// The number alone, rounded to `significant` figures, in the shown unit.
+    pub fn number(self, system: UnitSystem, significant: usize) -> String {
+        number(self.quantity.unit(system).from_si(self.si), significant)
+    }
+
+    /// Number and unit, rounded to three significant figures.
+    pub fn text(self, system: UnitSystem) -> String {
+        self.text_to(system, 3)
+    }
+
+    /// Number and unit, rounded to `significant` figures.
+    pub fn text_to(self, system: UnitSystem, significant: usize) -> String {
+        let symbol = self.quantity.unit(system).symbol;
+        match symbol {
+            "" => self.number(system, significant),
+            "°" => format!("{}°", self.number(system, significant)),
+            _ => format!("{} {symbol}", self.number(system, significant)),
+        }
+    }
+}
+
+/// A number for reading: `significant` figures, never fewer digits than the whole part has, thin spaces
+/// between thousands, a true minus, no `-0`. `–` where the number is not finite.
+pub fn number(value: f64, significant: usize) -> String {
+    if !value.is_finite() {
+        return "–".to_owned();
+    }
+    let magnitude = value.abs();
+    let decimals = if magnitude == 0.0 {
+        significant.saturating_sub(1)
+    } else {
+        let rounded_exponent = format!("{:.*e}", significant.saturating_sub(1), magnitude)
+            .rsplit_once('e')
+            .and_then(|(_, e)| e.parse::<i32>().ok())
+            .unwrap_or(0);
+        (significant as i32 - 1 - rounded_exponent).clamp(0, 9) as usize
+    };
+    fixed(value, decimals)
+}
+
+/// A number with a fixed count of decimals, thin spaces between thousands and a true minus.
+pub fn fixed(value: f64, decimals: usize) -> String {
+    let plain = format!("{:.*}", decimals, value.abs());
+    let (whole, fraction) = plain.split_once('.').unwrap_or((&plain, ""));
+    let mut out = String::with_capacity(plain.len() + 4);
+    if value < 0.0 && plain.bytes().any(|b| (b'1'..=b'9').contains(&b)) {
+        out.push('\u{2212}');
+    }
+    for (i, digit) in whole.chars().enumerate() {
+        if i > 0 && (whole.len() - i).is_multiple_of(3) && whole.len() > 3 {
+            out.push('\u{2009}');
+        }
+        out.push(digit);
+    }
+    if !fraction.is_empty() {
+        let _ = write!(out, ".{fraction}");
+    }
+    out
+}
+
+/// A utilisation for reading: two decimals, at least `1.01` when above one, so that `1.00` never hides a
+/// failure; `over 99` beyond that; `–` where there is none.
+pub fn utilisation_text(utilisation: Option<f64>) -> String {
+    match utilisation {
+        None => "–".to_owned(),
+        Some(u) if u > 99.0 => "over 99".to_owned(),
+        Some(u) if u > 1.0 => fixed(u.max(1.01), 2),
+        Some(u) => fixed(u.min(1.0), 2),
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn numbers_are_rounded_spaced_and_signed() {
+        for (value, significant, want) in [
+            (1325.4, 4, "1\u{2009}325"),
+            (0.0, 3, "0.00"),
+            (-3.923, 3, "\u{2212}3.92"),
+            (-0.0001, 0, "\u{2212}0.0001"),
+            (9.999, 3, "10.0"),
+            (12345.6, 3, "12\u{2009}346"),
+            (f64::NAN, 3, "–"),
+        ] {
+            assert_eq!(number(value, significant), want, "number({value}, {significant})");
+        }
+        assert_eq!(fixed(-0.001, 2), "0.00", "no minus zero");
+    }
+
+    #[test]
+    fn a_failure_never_reads_one() {
+        assert_eq!(utilisation_text(Some(1.0001)), "1.01");
+        assert_eq!(utilisation_text(Some(0.9999)), "1.00");
+        assert_eq!(utilisation_text(None), "–");
+    }
+
+    #[test]
+    fn us_units_agree_with_their_definitions() {
+        // Source: NIST SP 811 (2008) appendix B.8: 1 gal = 3.785412e-3 m3, 1 psi = 6894.757 Pa (values from memory).
+        let us = UnitSystem::UsCustomary;
+        assert!((Quantity::Volume.unit(us).in_si - 3.785_412e-3).abs() < 1e-9);
+        assert!((Quantity::GagePressure.unit(us).in_si - 6894.757).abs() < 1e-3);
+    }
+}
