@@ -130,6 +130,8 @@ fn source_key(source: Source) -> String {
 
 #[cfg(test)]
 mod tests {
+    use std::collections::BTreeSet;
+
     use serde_json::Value;
 
     use super::super::fixture;
@@ -139,6 +141,37 @@ mod tests {
         let (study, results) = (fixture::study(), fixture::results());
         let run = Run::judged(&Report::new("tray.ron", &study, &results));
         serde_json::from_str(&text(&[run])).expect("JSON")
+    }
+
+    #[test]
+    fn readme_lists_every_key_and_no_other() {
+        let readme = include_str!("../../../README.md");
+        let (_, rest) = readme.split_once("\n## JSON\n").expect("the heading JSON");
+        let (section, _) = rest.split_once("\n## ").expect("a heading after it");
+        let rows = section.lines().filter(|line| line.starts_with('|'));
+        let listed: BTreeSet<&str> = rows.flat_map(|row| row.split('`').skip(1).step_by(2)).collect();
+        let mut keys = BTreeSet::from(["null".to_owned()]);
+        gather_keys(&value(), &mut keys);
+        let problem = Run::unusable("bad.ron", &[Problem::fault(Place::Whole, "", "")]);
+        gather_keys(&serde_json::to_value(problem).expect("JSON"), &mut keys);
+        let printed: BTreeSet<&str> = keys.iter().map(String::as_str).collect();
+        let (unlisted, unprinted): (Vec<_>, Vec<_>) =
+            (printed.difference(&listed).collect(), listed.difference(&printed).collect());
+        assert!(
+            unlisted.is_empty() && unprinted.is_empty(),
+            "not in README: {unlisted:?}, only there: {unprinted:?}"
+        );
+    }
+
+    fn gather_keys(value: &Value, keys: &mut BTreeSet<String>) {
+        match value {
+            Value::Object(map) => map.iter().for_each(|(key, value)| {
+                keys.insert(key.clone());
+                gather_keys(value, keys);
+            }),
+            Value::Array(list) => list.iter().for_each(|value| gather_keys(value, keys)),
+            _ => {}
+        }
     }
 
     #[test]
