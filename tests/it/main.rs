@@ -1,2 +1,6 @@
-//! x
-fn main() {}
+//! The integration tests: one binary.
+
+mod cli;
+mod json;
+mod program;
+mod tidy;
