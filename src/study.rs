@@ -236,7 +236,7 @@ impl Study {
             let phi = case.attitude.angle_rad();
             // Ten thousand times gravity: beyond any tank, and well within what f64 carries.
             let is_sane = numbers.iter().all(|x| x.is_finite() && x.abs() <= 1e5) && phi.is_finite();
-            if !is_sane || !(onset.is_finite() && onset >= 0.0) {
+            if !(is_sane && onset.is_finite() && onset >= 0.0) {
                 let hint = "give finite numbers, accelerations up to 100 000, and an onset of zero or more";
                 problems.push(Problem::fault(Place::Case(i), "a number is not finite or out of range", hint));
             }

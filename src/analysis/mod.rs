@@ -5,7 +5,7 @@ mod results;
 
 use rayon::prelude::*;
 
-use crate::cases::{Attitude, LoadCase};
+use crate::cases::LoadCase;
 use crate::criteria::{self, Context, Outcome};
 use crate::geom::{Point, Vec2};
 use crate::statics::{Ramp, Rims, Setting, Spill, effective_gravity, settle};
@@ -56,7 +56,7 @@ fn judge_case(study: &ValidStudy, case: &LoadCase, still_z_m: f64) -> (CaseResul
     let accel = case.accel.to_m_per_s2(inputs.gravity_m_per_s2);
     let phi = case.attitude.angle_rad();
     let gravity = effective_gravity(inputs.gravity_m_per_s2, phi, accel);
-    let is_turn = accel.norm() == 0.0 && case.attitude != Attitude::Level;
+    let is_turn = accel.norm() == 0.0 && phi != 0.0;
     let at_rest = effective_gravity(inputs.gravity_m_per_s2, phi, Vec2::zeros()).vec;
     let ramp = if is_turn { Some(Ramp::turn(phi)) } else { Ramp::accelerate(at_rest, accel) };
     let width = &inputs.section.width;
