@@ -102,6 +102,7 @@ pub(super) fn results() -> Results {
             EdgeLoad {
                 place: Place::Edge(0),
                 name: "floor".into(),
+                is_wall: true,
                 wetted_length_m: 2.0,
                 force_n: Vec2::new(0.0, -7700.0),
                 moment_n_m: -300.0,
@@ -111,6 +112,7 @@ pub(super) fn results() -> Results {
             EdgeLoad {
                 place: Place::Edge(2),
                 name: "rim".into(),
+                is_wall: false,
                 wetted_length_m: 0.0,
                 force_n: Vec2::zeros(),
                 moment_n_m: -0.0,

@@ -18,20 +18,14 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("section", &["problem", "num", "geom"]),
     ("liquid", &[]),
     ("cases", &["geom"]),
-    ("study", &["units", "problem", "geom", "section", "liquid", "cases"]),
-    ("statics", &["num", "geom", "section", "liquid", "cases", "study"]),
-    ("analysis", &["units", "sources", "problem", "num", "geom", "section", "liquid", "cases", "study", "statics"]),
-    ("criteria", &["units", "sources", "problem", "geom", "section", "study", "statics", "analysis"]),
-    ("scenario", &["units", "problem", "geom", "section", "liquid", "cases", "study"]),
+    ("statics", &["problem", "num", "geom", "section"]),
+    ("study", &["units", "problem", "geom", "section", "liquid", "cases", "statics"]),
+    ("criteria", &["units", "sources", "problem", "num", "geom", "cases", "statics", "study"]),
+    ("analysis", &["units", "problem", "geom", "cases", "statics", "study", "criteria"]),
+    ("scenario", &["problem", "study"]),
     ("report", &["units", "sources", "problem", "geom", "section", "liquid", "cases", "study", "analysis"]),
-    ("app", &["units", "problem", "geom", "section", "liquid", "cases", "study", "analysis", "scenario"]),
-    (
-        "gui",
-        &[
-            "units", "sources", "problem", "geom", "section", "liquid", "cases", "study", "analysis", "scenario",
-            "report", "app",
-        ],
-    ),
+    ("app", &["problem", "geom", "section", "liquid", "cases", "study", "analysis"]),
+    ("gui", &["units", "app"]),
     ("cli", &["units", "problem", "study", "analysis", "report", "app", "gui"]),
 ];
 

@@ -144,6 +144,7 @@ impl Load {
 #[derive(Clone, Debug, Serialize)]
 struct EdgeRow {
     name: String,
+    is_wall: bool,
     wetted_length_m: Num,
     #[serde(flatten)]
     load: Load,
@@ -160,6 +161,7 @@ impl EdgeRow {
         let (peak_s_m, peak_z_m) = coordinates(edge.peak.map(|(_, at)| at));
         EdgeRow {
             name: edge.name.clone(),
+            is_wall: edge.is_wall,
             wetted_length_m: num(edge.wetted_length_m),
             load: Load::new(edge.force_n, edge.moment_n_m),
             acts_at_s_m,
