@@ -103,9 +103,11 @@ fn judged(path: &Path, case: Option<&str>) -> Result<Judged, Vec<Problem>> {
 fn problems(error: FileError) -> Vec<Problem> {
     match error {
         FileError::Unreadable { problems, .. } => problems,
-        FileError::Io { error, .. } => {
-            let message = format!("cannot be read: {error}");
-            vec![Problem::fault(Place::Whole, message, "Check the path, and that the file may be read.")]
+        error => {
+            // The words of the system: what is wrong; what to do.
+            let text = error.to_string();
+            let (message, hint) = text.rsplit_once("; ").unwrap_or((&text, "check the path"));
+            vec![Problem::fault(Place::Field("file"), message, hint)]
         }
     }
 }

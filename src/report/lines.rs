@@ -78,7 +78,7 @@ pub(super) fn right(text: &str, columns: usize) -> String {
 }
 
 /// The text without characters that could steer a terminal: a scenario may come from anyone.
-fn printable(text: &str) -> String {
+pub(super) fn printable(text: &str) -> String {
     text.chars().map(|c| if c.is_control() { ' ' } else { c }).collect()
 }
 

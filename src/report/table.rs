@@ -5,7 +5,7 @@ use crate::cases::{Attitude, LoadCase};
 use crate::problem::Problem;
 use crate::units::{Measure, Quantity, UnitSystem, number, utilisation_text};
 
-use super::lines::{Lines, WIDTH, left, right, width};
+use super::lines::{Lines, WIDTH, left, printable, right, width};
 use super::{CAUTION, Counts, Report};
 
 /// Everything that was judged of one file.
@@ -38,18 +38,10 @@ pub fn summary(files: &[Counts]) -> String {
     lines.into_text()
 }
 
-/// What is wrong with a file, one block a problem.
+/// What is wrong with a file, one block a problem; lines are as long as they are, for tools that read them.
 pub fn problems(file: &str, problems: &[Problem]) -> String {
-    let mut lines = Lines::default();
-    for problem in problems {
-        let text = problem.to_string();
-        let mut parts = text.lines();
-        lines.facts(&format!("{file}: "), parts.next());
-        for more in parts {
-            lines.facts("  ", [more.trim_start()]);
-        }
-    }
-    lines.into_text()
+    let blocks = problems.iter().map(|problem| format!("{file}: {problem}"));
+    blocks.flat_map(|block| block.lines().map(|line| printable(line) + "\n").collect::<Vec<_>>()).collect()
 }
 
 struct Table<'a> {
@@ -93,9 +85,10 @@ impl Table<'_> {
                 format!("ullage {}", self.level(Quantity::Length, still.ullage_m)),
             ],
         );
-        let highest = still
-            .highest_share
-            .map(|share| format!("{} of capacity spills in no load case", self.measure(Quantity::Share, share)));
+        // Rounded down: the fill shown must hold.
+        let highest = still.highest_share.map(|share| (share * 1000.0).floor() / 1000.0);
+        let highest = highest.map(|share| self.measure(Quantity::Share, share));
+        let highest = highest.map(|share| format!("{share} of capacity spills in no load case"));
         self.fact("highest", highest);
         self.fact(
             "records",
@@ -117,6 +110,7 @@ impl Table<'_> {
     fn case(&mut self, n: usize, input: &LoadCase, case: &CaseResult) {
         self.lines.gap();
         self.lines.facts(&format!("{n}  "), [&case.name]);
+        let onset = input.onset_s.map(|s| format!("builds up in {}", self.measure(Quantity::Time, s)));
         let stands = match input.attitude {
             Attitude::Level => None,
             attitude => Some(format!("stands at {}", self.measure(Quantity::Angle, attitude.angle_rad()))),
@@ -129,6 +123,7 @@ impl Table<'_> {
                 format!("effective gravity {}", self.measure(Quantity::Acceleration, case.gravity.magnitude)),
             ]
             .into_iter()
+            .chain(onset)
             .chain(stands),
         );
         match &case.settled {
@@ -176,12 +171,18 @@ impl Table<'_> {
         );
         let lowest = format!("{} at least", self.measure(Quantity::AbsolutePressure, settled.lowest_abs_pa));
         self.fact("pressure", [Some(peak), Some(lowest), roof].into_iter().flatten().collect::<Vec<_>>());
+        let about = self.report.study.moment_about;
         self.fact(
             "force",
             [
                 format!("s {}", self.measure(Quantity::Force, settled.total_force_n.x)),
                 format!("z {}", self.measure(Quantity::Force, settled.total_force_n.y)),
-                format!("moment {}", self.measure(Quantity::Moment, settled.total_moment_n_m)),
+                format!(
+                    "moment {} about s {}, z {}",
+                    self.measure(Quantity::Moment, settled.total_moment_n_m),
+                    self.measure(Quantity::Length, about.x),
+                    self.measure(Quantity::Length, about.y)
+                ),
             ],
         );
         self.fact(
@@ -215,14 +216,14 @@ impl Table<'_> {
             self.lines
                 .facts(&row(v.state.word(), v.criterion, &utilisation_text(v.utilisation)), [self.comparison(v)]);
             self.detail([v.place_words.clone(), v.source.entry().short.clone(), trust_words(&v.trust)]);
-            self.detail(v.mend.iter().cloned());
+            self.detail(Some(v.mend.join(" ")));
             self.detail(Some(v.remark.clone()));
             let record = v.unconfirmed_record.and_then(|idx| self.report.study.records.get(idx));
             self.detail(record.map(|r| format!("rests on an unconfirmed record: {}", r.title)));
         }
         for a in &case.absent {
-            self.lines.facts(&row("absent", a.criterion, ""), [a.reason.clone()]);
-            self.detail(Some(a.place_words.clone()));
+            self.lines.facts(&row("absent", a.criterion, ""), [""]);
+            self.detail([a.place_words.clone(), a.reason.clone()]);
         }
     }
 
@@ -310,13 +311,21 @@ mod tests {
     }
 
     #[test]
+    fn the_highest_fill_is_rounded_down_so_that_it_holds() {
+        let (study, mut results) = (fixture::study(), fixture::results());
+        results.still.highest_share = Some(0.545_94);
+        let text = text(&Report::new("tray.ron", &study, &results), UnitSystem::Si);
+        assert!(text.contains("   highest   54.5 % of capacity spills in no load case\n"), "{text}");
+    }
+
+    #[test]
     fn what_is_not_judged_or_absent_says_why() {
         let text = shown(UnitSystem::Si);
         for want in [
             "   settled   no settled state: free fall: effective gravity is zero\n",
             "   not judged  Contained        –  –\n",
             "               capillarity rules the surface\n",
-            "   absent      Roof contact            no edge of the outline is a shut roof\n",
+            "   absent      Roof contact\n               tank · no edge of the outline is a shut roof\n",
         ] {
             assert!(text.contains(want), "want\n{want}in\n{text}");
         }

@@ -64,7 +64,9 @@ fn a_file_that_is_not_there_is_unusable_and_says_so() {
     let output = judge([&missing]);
     assert_eq!(output.status.code(), Some(2));
     assert_eq!(stdout(&output), "");
-    assert!(stderr(&output).contains(&missing.display().to_string()), "{}", stderr(&output));
+    let start = format!("{}: fault: file: ", missing.display());
+    assert!(stderr(&output).starts_with(&start), "{}", stderr(&output));
+    assert!(stderr(&output).contains("\n  hint: "), "{}", stderr(&output));
 }
 
 #[test]

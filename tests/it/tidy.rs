@@ -128,17 +128,15 @@ fn the_top_level_holds_what_it_must_and_nothing_else() {
 }
 
 #[test]
-fn every_source_is_listed_and_cited() {
+fn every_source_is_in_the_bibliography() {
     let text = read("src/sources.rs");
     let (_, rest) = text.split_once("pub enum Source {").expect("the enum");
     let (body, _) = rest.split_once('}').expect("its end");
     let variants: BTreeSet<&str> = code_lines(body).map(|line| line.trim_end_matches(',')).collect();
     // The keys of the list are variants by type, so this is the other direction.
     let listed: BTreeSet<String> = sources::all().map(|(source, _)| format!("{source:?}")).collect();
-    let code: String = rust_files("src").into_iter().map(|(_, text)| text).collect();
     for variant in variants {
         assert!(listed.contains(variant), "assets/sources.ron has no {variant}");
-        assert!(code.contains(&format!("Source::{variant}")), "no code cites {variant}");
     }
 }
 
