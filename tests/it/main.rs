@@ -1,2 +1,6 @@
-//! x
-fn main() {}
+//! The integration tests, one binary.
+
+mod arbitrary;
+mod edits;
+mod files;
+mod scenario;
