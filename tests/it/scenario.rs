@@ -266,6 +266,9 @@ fn a_file_cut_short_is_refused_wherever_it_is_cut() {
             listed(&problems)
         );
     }
+    let after_a_case = GOOD.find("        (name: \"two\"").unwrap();
+    let problems = parse(&GOOD.as_bytes()[..after_a_case]).unwrap_err();
+    assert!(problems[0].message.contains("ends too early"), "{}", listed(&problems));
 }
 
 #[test]
