@@ -1,4 +1,4 @@
-//! The integration tests, one binary.
+//! The integration tests: one binary, one module a subject.
 
 mod arbitrary;
 mod edits;
