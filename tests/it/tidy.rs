@@ -22,9 +22,9 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("study", &["units", "problem", "geom", "section", "liquid", "cases", "statics"]),
     ("criteria", &["units", "sources", "problem", "num", "geom", "cases", "statics", "study"]),
     ("analysis", &["units", "problem", "geom", "cases", "statics", "study", "criteria"]),
-    ("scenario", &["problem", "study"]),
+    ("scenario", &["units", "problem", "geom", "section", "liquid", "cases", "study"]),
     ("report", &["units", "sources", "problem", "geom", "section", "liquid", "cases", "study", "analysis"]),
-    ("app", &["problem", "geom", "section", "liquid", "cases", "study", "analysis"]),
+    ("app", &["problem", "geom", "section", "liquid", "cases", "study", "analysis", "scenario"]),
     ("gui", &["units", "app"]),
     ("cli", &["units", "problem", "study", "analysis", "report", "app", "gui"]),
 ];
