@@ -25,6 +25,10 @@ pub enum Edit {
     Fill(Fill),
     /// Gas pressure above the liquid, Pa gage.
     UllageGage(f64),
+    /// Outside air pressure, Pa absolute.
+    AirPressure(f64),
+    /// Gravity, m/s2.
+    Gravity(f64),
     /// Width law.
     Width(WidthLaw),
     /// Move the start of an edge of the outline.
