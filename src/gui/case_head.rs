@@ -19,7 +19,8 @@ pub fn case_head_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk) {
     let inset = rect.shrink2(vec2(16.0, 4.0));
     let i = desk.view.case_idx;
     let Some(case) = desk.study().cases.get(i) else {
-        if field::link_ui(ui, inset, Align::Min, "Add a load case", "Add a load case above the board", look).clicked() {
+        if field::link_ui(ui, inset, Align::Min, "Add a load case", "Add a load case above the board", look).clicked()
+        {
             desk.run(Command::AddCase);
         }
         return;
@@ -69,16 +70,17 @@ fn accel_ui(ui: &mut Ui, row: &mut Row, desk: &mut Desk, i: usize, accel: Accel)
     let look = desk.look;
     let (Accel::Components { unit, .. } | Accel::Polar { unit, .. }) = accel;
     let shown_in = accel_unit(desk, unit);
-    let mut value = |ui: &mut Ui, row: &mut Row, id: &str, label: &str, si: f64, shown_in: Unit, edit: &dyn Fn(f64) -> Accel| {
-        let rect = row.number(ui, &number(shown_in.from_si(si), 3), 5.0);
-        Number::new((id, i), label, si, shown_in).significant(3).color(look.accent).cell_ui(
-            ui,
-            rect,
-            Align::Min,
-            desk,
-            |v| v.map(|v| Edit::CaseAccel(i, edit(v))).ok_or_else(|| "Type a number".to_owned()),
-        );
-    };
+    let mut value =
+        |ui: &mut Ui, row: &mut Row, id: &str, label: &str, si: f64, shown_in: Unit, edit: &dyn Fn(f64) -> Accel| {
+            let rect = row.number(ui, &number(shown_in.from_si(si), 3), 5.0);
+            Number::new((id, i), label, si, shown_in).significant(3).color(look.accent).cell_ui(
+                ui,
+                rect,
+                Align::Min,
+                desk,
+                |v| v.map(|v| Edit::CaseAccel(i, edit(v))).ok_or_else(|| "Type a number".to_owned()),
+            );
+        };
     match accel {
         Accel::Components { a_s, a_z, unit } => {
             row.symbol(ui, "a_s", look.ink2);

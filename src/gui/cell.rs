@@ -102,7 +102,7 @@ impl Cell<'_> {
         let edit = egui::TextEdit::singleline(&mut draft.text)
             .id(edit_id)
             .font(self.font)
-            .horizontal_align(self.align)
+            .align(Align2([self.align, Align::Center]))
             .margin(vec2(3.0, 1.0))
             .desired_width(f32::INFINITY)
             .clip_text(true);

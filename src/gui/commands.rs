@@ -115,7 +115,14 @@ pub const TABLE: &[Row] = &[
     row(Command::New, Menu::File, "New", on(CTRL, Key::N), "Start from a plain box of water", always),
     row(Command::Open, Menu::File, "Open…", on(CTRL, Key::O), "Open a scenario file", always),
     group(Command::Save, Menu::File, "Save", on(CTRL, Key::S), "Write the scenario to its file", can_save),
-    row(Command::SaveAs, Menu::File, "Save as…", on(CTRL_SHIFT, Key::S), "Write the scenario to another file", always),
+    row(
+        Command::SaveAs,
+        Menu::File,
+        "Save as…",
+        on(CTRL_SHIFT, Key::S),
+        "Write the scenario to another file",
+        always,
+    ),
     group(Command::Quit, Menu::File, "Quit", on(CTRL, Key::Q), "Close the window", always),
     row(Command::Undo, Menu::Edit, "Undo", on(CTRL, Key::Z), "Take the last step back", can_undo),
     row(Command::Redo, Menu::Edit, "Redo", on(CTRL_SHIFT, Key::Z), "Bring the last undone step back", can_redo),
@@ -135,7 +142,14 @@ pub const TABLE: &[Row] = &[
         "Show the whole section on the board",
         always,
     ),
-    row(Command::ResetSizes, Menu::View, "Reset the columns", NO, "Columns and plots back to their first sizes", always),
+    row(
+        Command::ResetSizes,
+        Menu::View,
+        "Reset the columns",
+        NO,
+        "Columns and plots back to their first sizes",
+        always,
+    ),
     group(
         Command::Units(UnitSystem::Si),
         Menu::View,
@@ -154,10 +168,31 @@ pub const TABLE: &[Row] = &[
     ),
     group(Command::Theme(ThemePreference::Light), Menu::View, "Light", NO, "Pale paper", always),
     row(Command::Theme(ThemePreference::Dark), Menu::View, "Dark", NO, "The same by night", always),
-    row(Command::Theme(ThemePreference::System), Menu::View, "As the system", NO, "Light or dark as the system says", always),
-    row(Command::AddCase, Menu::Case, "Add a load case", on(CTRL_SHIFT, Key::N), "A case at rest, at the end", always),
+    row(
+        Command::Theme(ThemePreference::System),
+        Menu::View,
+        "As the system",
+        NO,
+        "Light or dark as the system says",
+        always,
+    ),
+    row(
+        Command::AddCase,
+        Menu::Case,
+        "Add a load case",
+        on(CTRL_SHIFT, Key::N),
+        "A case at rest, at the end",
+        always,
+    ),
     row(Command::DuplicateCase, Menu::Case, "Duplicate", on(CTRL, Key::D), "Copy the chosen case", has_case),
-    row(Command::DeleteCase, Menu::Case, "Delete the case", on(CTRL, Key::Delete), "Take the chosen case out", has_case),
+    row(
+        Command::DeleteCase,
+        Menu::Case,
+        "Delete the case",
+        on(CTRL, Key::Delete),
+        "Take the chosen case out",
+        has_case,
+    ),
     group(
         Command::NextCase,
         Menu::Case,
@@ -190,7 +225,14 @@ pub const TABLE: &[Row] = &[
         "Move the chosen case one place to the right",
         has_case_after,
     ),
-    row(Command::About, Menu::Help, "About and cautions", on(Modifiers::NONE, Key::F1), "What it is, and what it does not do", always),
+    row(
+        Command::About,
+        Menu::Help,
+        "About and cautions",
+        on(Modifiers::NONE, Key::F1),
+        "What it is, and what it does not do",
+        always,
+    ),
 ];
 
 impl Row {
@@ -289,7 +331,7 @@ fn has_case_after(doc: &Document, view: &View) -> bool {
     view.case_idx + 1 < doc.study().cases.len()
 }
 
-fn lower_first(text: &str) -> String {
+pub(super) fn lower_first(text: &str) -> String {
     let mut chars = text.chars();
     chars.next().map(|c| c.to_lowercase().chain(chars).collect()).unwrap_or_default()
 }

@@ -5,7 +5,7 @@
 use egui::{Align, Align2, Color32, Id, Key, Rect, Response, Role, Sense, Ui, WidgetInfo, pos2, vec2};
 
 use crate::app::Edit;
-use crate::units::{Quantity, Unit, number};
+use crate::units::{Unit, number};
 
 use super::cell::{Cell, is_editing};
 use super::{Desk, Look, Proposal, font};
@@ -345,11 +345,6 @@ pub fn full_text(value: f64) -> String {
     rounded.to_string()
 }
 
-/// The unit of a plain number in percent.
-pub fn percent() -> Unit {
-    Quantity::Share.unit(crate::units::UnitSystem::Si)
-}
-
 fn paint_unit(ui: &Ui, row: Rect, symbol: &str, look: &Look) {
     let at = pos2(row.right() - UNIT_COLUMN, row.center().y);
     ui.painter().text(at, Align2::LEFT_CENTER, symbol, font::small(), look.ink3);
@@ -396,6 +391,7 @@ fn drag(
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::units::Quantity;
 
     #[test]
     fn numbers_are_read_as_people_write_them() {

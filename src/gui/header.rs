@@ -17,13 +17,8 @@ pub fn header_ui(ui: &mut Ui, rect: Rect, is_folded: bool, desk: &mut Desk, rece
     ui.painter().rect_filled(rect, 0.0, look.panel);
     let inset = rect.shrink2(vec2(16.0, 0.0));
     let middle = rect.center().y;
-    let name = ui.painter().text(
-        pos2(inset.left(), middle),
-        Align2::LEFT_CENTER,
-        "brimwright",
-        font::title(),
-        look.ink,
-    );
+    let name =
+        ui.painter().text(pos2(inset.left(), middle), Align2::LEFT_CENTER, "brimwright", font::title(), look.ink);
     let menus = menus_ui(ui, inset.with_min_x(name.right() + 12.0), is_folded, desk, recent);
     let right = counts_ui(ui, inset, desk);
 
@@ -50,7 +45,10 @@ pub fn menu_rows_ui(ui: &mut Ui, menu: Menu, desk: &mut Desk, recent: &[PathBuf]
             _ => false,
         };
         let hint = egui::RichText::new(shortcut).color(desk.look.ink3);
-        let button = Button::new(row.words(desk.doc)).right_text(hint).selected(is_chosen).wrap_mode(egui::TextWrapMode::Extend);
+        let button = Button::new(row.words(desk.doc))
+            .right_text(hint)
+            .selected(is_chosen)
+            .wrap_mode(egui::TextWrapMode::Extend);
         let is_enabled = (row.is_enabled)(desk.doc, desk.view);
         if ui.add_enabled(is_enabled, button).on_hover_text(row.tooltip).clicked() {
             desk.run(row.command);
@@ -123,7 +121,11 @@ fn title_ui(ui: &mut Ui, rect: Rect, desk: &Desk) {
         (false, None) => "not in a file yet".to_owned(),
     });
     let notes = notes.join(", ");
-    let job = font::runs([(title, font::body_heavy(), look.ink), ("   ", font::small(), look.ink), (&notes, font::small(), look.ink2)]);
+    let job = font::runs([
+        (title, font::body_heavy(), look.ink),
+        ("   ", font::small(), look.ink),
+        (&notes, font::small(), look.ink2),
+    ]);
     let at = field::paint_job(ui, rect, egui::Align::Min, job);
     let response = ui.interact(at, egui::Id::unique("document title"), Sense::hover());
     response.widget_info(|| WidgetInfo::labeled(Role::Label, true, format!("{title}, {notes}")));

@@ -127,7 +127,8 @@ pub fn regions(window: Rect, mut sizes: Sizes) -> Regions {
     let (upper, strip) = left.split_top_bottom_at_y(left.bottom() - strip_height);
     let (tank, center) = upper.split_left_right_at_x(upper.left() + tank_width);
     let (board_column, plots) = if is_large {
-        let width = sizes.of(Divider::Plots).unwrap_or(396.0).clamp(240.0, (center.width() - LEAST_BOARD.x).max(240.0));
+        let width =
+            sizes.of(Divider::Plots).unwrap_or(396.0).clamp(240.0, (center.width() - LEAST_BOARD.x).max(240.0));
         center.split_left_right_at_x(center.right() - width)
     } else {
         let most = (center.height() - LEAST_BOARD.y - CASE_HEAD).max(80.0);
@@ -200,13 +201,22 @@ mod tests {
     fn the_named_window_sizes_get_their_grid() {
         let r = at(1280.0, 800.0);
         assert_eq!((r.tank.width(), r.verdicts.width(), r.strip.height()), (240.0, 312.0, 112.0));
-        assert_eq!((r.board.width(), r.board.height() + CASE_HEAD, r.plots.height(), r.n_plots), (728.0, 448.0, 176.0, 2));
+        assert_eq!(
+            (r.board.width(), r.board.height() + CASE_HEAD, r.plots.height(), r.n_plots),
+            (728.0, 448.0, 176.0, 2)
+        );
         let r = at(1440.0, 900.0);
         assert_eq!((r.tank.width(), r.verdicts.width(), r.strip.height()), (264.0, 340.0, 132.0));
-        assert_eq!((r.board.width(), r.board.height() + CASE_HEAD, r.plots.height(), r.n_plots), (836.0, 480.0, 224.0, 3));
+        assert_eq!(
+            (r.board.width(), r.board.height() + CASE_HEAD, r.plots.height(), r.n_plots),
+            (836.0, 480.0, 224.0, 3)
+        );
         let r = at(1920.0, 1080.0);
         assert_eq!((r.tank.width(), r.verdicts.width(), r.strip.height()), (288.0, 376.0, 144.0));
-        assert_eq!((r.board.width(), r.board.height() + CASE_HEAD, r.plots.width(), r.n_plots), (860.0, 872.0, 396.0, 3));
+        assert_eq!(
+            (r.board.width(), r.board.height() + CASE_HEAD, r.plots.width(), r.n_plots),
+            (860.0, 872.0, 396.0, 3)
+        );
     }
 
     #[test]

@@ -22,9 +22,7 @@ pub fn strip_ui(ui: &mut Ui, rect: Rect, card_width: f32, has_drawings: bool, de
         let card = vec2(card_width, rect.height() - 2.0 * GAP);
         let width = GAP + (n + 1) as f32 * (card_width + GAP);
         let (whole, _) = ui.allocate_exact_size(vec2(width, rect.height()), Sense::hover());
-        let place = |i: usize| {
-            Rect::from_min_size(whole.min + vec2(GAP + i as f32 * (card_width + GAP), GAP), card)
-        };
+        let place = |i: usize| Rect::from_min_size(whole.min + vec2(GAP + i as f32 * (card_width + GAP), GAP), card);
         let mut moved = None;
         for i in 0..n {
             let response = card_ui(ui, place(i), i, has_drawings, desk);

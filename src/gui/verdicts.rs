@@ -168,7 +168,6 @@ fn third_line_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: 
 
 /// Checks that do not apply, and what the user should know of the input: quiet, never left out.
 fn quiet_rows_ui(ui: &mut Ui, desk: &Desk, judged: Judged, column: &VerdictColumn) {
-    let look = desk.look;
     let mut rows: Vec<(String, String, Vec<usize>)> = Vec::new();
     for (c, case) in judged.results.cases.iter().enumerate() {
         if column.is_this_case_only && c != desk.view.case_idx {
@@ -199,7 +198,8 @@ fn quiet_rows_ui(ui: &mut Ui, desk: &Desk, judged: Judged, column: &VerdictColum
     }
     for warning in &judged.results.warnings {
         let place = warning.place.to_string();
-        let title = place.chars().next().map_or(String::new(), |c| c.to_uppercase().chain(place.chars().skip(1)).collect());
+        let title =
+            place.chars().next().map_or(String::new(), |c| c.to_uppercase().chain(place.chars().skip(1)).collect());
         quiet_row_ui(ui, desk, &title, &format!("{} {}", warning.message, warning.hint));
     }
 }
@@ -213,7 +213,11 @@ fn quiet_heading_ui(ui: &mut Ui, desk: &Desk, title: &str) {
 
 fn quiet_row_ui(ui: &mut Ui, desk: &Desk, title: &str, words: &str) {
     let width = ui.available_width() - 2.0 * INSET;
-    let mut job = font::runs([(title, font::small_figure(), desk.look.ink2), ("   ", font::small(), desk.look.ink2), (words, font::small(), desk.look.ink3)]);
+    let mut job = font::runs([
+        (title, font::small_figure(), desk.look.ink2),
+        ("   ", font::small(), desk.look.ink2),
+        (words, font::small(), desk.look.ink3),
+    ]);
     job.wrap.max_width = width;
     let galley = ui.painter().layout_job(job);
     let (rect, response) = ui.allocate_exact_size(vec2(ui.available_width(), galley.size().y + 8.0), Sense::hover());
@@ -228,7 +232,8 @@ fn note_ui(ui: &mut Ui, desk: &Desk, words: &str) {
 /// The card that says of when the greyed verdicts are.
 fn stale_ui(ui: &Ui, body: Rect, desk: &Desk) {
     let look = desk.look;
-    let card = Rect::from_min_max(pos2(body.left() + INSET, body.bottom() - 90.0), body.right_bottom() - vec2(INSET, 16.0));
+    let card =
+        Rect::from_min_max(pos2(body.left() + INSET, body.bottom() - 90.0), body.right_bottom() - vec2(INSET, 16.0));
     ui.painter().rect(card, egui::CornerRadius::same(3), look.raised, (1.0, look.line), egui::StrokeKind::Inside);
     let at = card.min + vec2(14.0, 12.0);
     ui.painter().text(at, Align2::LEFT_TOP, "From before the faults", font::body_heavy(), look.ink);
@@ -250,11 +255,8 @@ fn tooltip(response: Response, verdict: &Verdict, desk: &Desk) {
 
 /// What assistive technology says: `Freeboard, fails, 1.09, 473 mm, at most 435 mm, hatch 1, case 3`.
 fn spoken_words(verdict: &Verdict, case_idx: usize, desk: &Desk) -> String {
-    let mut words = vec![
-        verdict.criterion.to_owned(),
-        verdict.state.word().to_owned(),
-        utilisation_text(verdict.utilisation),
-    ];
+    let mut words =
+        vec![verdict.criterion.to_owned(), verdict.state.word().to_owned(), utilisation_text(verdict.utilisation)];
     words.extend(verdict.demand.map(|demand| desk.text(demand)));
     words.extend(verdict.limit.map(|limit| format!("{} {}", verdict.sense.words(), desk.text(limit))));
     words.push(verdict.place_words.clone());

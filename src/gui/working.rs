@@ -58,6 +58,12 @@ fn work_line_ui(ui: &mut Ui, desk: &Desk, text: &str, result: Option<Measure>, c
     ui.advance_cursor_after_rect(Rect::from_min_size(at, vec2(ui.available_width(), size.y)));
 }
 
+fn rule_ui(ui: &mut Ui, desk: &Desk) {
+    let (rect, _) = ui.allocate_exact_size(vec2(ui.available_width(), 13.0), egui::Sense::hover());
+    let y = ui.painter().round_to_pixel_center(rect.center().y);
+    ui.painter().hline(rect.x_range(), y, (1.0, desk.look.line2));
+}
+
 fn paragraph_ui(ui: &mut Ui, text: &str, font: egui::FontId, color: egui::Color32) {
     ui.add(egui::Label::new(egui::RichText::new(text).font(font).color(color)).wrap());
     ui.add_space(3.0);
@@ -91,7 +97,8 @@ fn record_ui(ui: &mut Ui, desk: &mut Desk, verdict: &Verdict) {
     let Some((i, record)) = verdict.unconfirmed_record.and_then(|i| Some((i, desk.study().records.get(i)?))) else {
         return;
     };
-    let place: Vec<&str> = [&record.clause, &record.edition].into_iter().map(String::as_str).filter(|t| !t.is_empty()).collect();
+    let place: Vec<&str> =
+        [&record.clause, &record.edition].into_iter().map(String::as_str).filter(|t| !t.is_empty()).collect();
     let place = if place.is_empty() { "no clause given".to_owned() } else { place.join(", ") };
     labelled_ui(ui, desk, "Record", &format!("{}, {place}, unconfirmed", record.title));
     let rect = field::row_rect(ui).with_min_x(ui.cursor().left() + LABEL);

@@ -3,8 +3,8 @@
 use egui::Ui;
 
 use crate::app::Edit;
-use crate::gui::field::{self, Number};
 use crate::gui::Desk;
+use crate::gui::field::{self, Number};
 use crate::liquid::Liquid;
 use crate::units::Quantity;
 
@@ -19,8 +19,11 @@ pub(super) fn liquid_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
         Edit::Liquid(next)
     };
     field::text_row_ui(ui, desk, "liquid name", "Name", &liquid.name, |name| with(&|l| l.name = name.clone()));
-    Number::new("density", "Density", liquid.density_kg_per_m3, desk.unit(Quantity::Density))
-        .row_ui(ui, desk, |si| with(&|l| l.density_kg_per_m3 = si));
+    Number::new("density", "Density", liquid.density_kg_per_m3, desk.unit(Quantity::Density)).row_ui(
+        ui,
+        desk,
+        |si| with(&|l| l.density_kg_per_m3 = si),
+    );
     Number::new("vapour pressure", "Vapour pressure", 0.0, desk.unit(Quantity::AbsolutePressure))
         .or_none(liquid.vapour_pressure_abs_pa)
         .optional()
@@ -41,6 +44,9 @@ pub(super) fn gas_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
         .on_hover_text("Pressure of the gas above the liquid, over the outside air");
     Number::new("air pressure", "Outside air", study.air_pressure_abs_pa, desk.unit(Quantity::AbsolutePressure))
         .row_ui(ui, desk, Edit::AirPressure);
-    Number::new("gravity", "Gravity", study.gravity_m_per_s2, desk.unit(Quantity::Acceleration))
-        .row_ui(ui, desk, Edit::Gravity);
+    Number::new("gravity", "Gravity", study.gravity_m_per_s2, desk.unit(Quantity::Acceleration)).row_ui(
+        ui,
+        desk,
+        Edit::Gravity,
+    );
 }

@@ -14,6 +14,8 @@ use egui::{Rect, Sense, Ui, UiBuilder, Vec2, vec2};
 
 use super::{Desk, field};
 
+pub(super) use records::confirm;
+
 /// What of the column is unfolded.
 #[derive(Clone, Debug, Default)]
 pub struct TankColumn {
@@ -81,7 +83,13 @@ fn headings_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, column: &mut TankColumn
     for (title, _) in PARTS {
         let row = field::row_rect(&mut child).expand2(vec2(0.0, 2.0));
         let words = title.split(' ').next_back().unwrap_or(title);
-        let words = if *title == "Requirement records" { "Records" } else if *title == "Named points" { "Points" } else { words };
+        let words = if *title == "Requirement records" {
+            "Records"
+        } else if *title == "Named points" {
+            "Points"
+        } else {
+            words
+        };
         let words = match *title {
             "Width law" => "Width",
             "Gas and air" => "Gas",

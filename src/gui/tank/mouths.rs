@@ -15,7 +15,8 @@ use super::outline::{fields_ui, list_row_ui};
 
 pub(super) fn mouths_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
     let section = &desk.study().section;
-    let mouths: Vec<usize> = (0..section.outline.len()).filter(|&i| section.outline[i].kind == EdgeKind::Mouth).collect();
+    let mouths: Vec<usize> =
+        (0..section.outline.len()).filter(|&i| section.outline[i].kind == EdgeKind::Mouth).collect();
     field::heading_ui(ui, desk.look, "Mouths", if mouths.is_empty() { "none" } else { "brim z" });
     if mouths.is_empty() {
         let rect = field::row_rect(ui);
@@ -58,7 +59,8 @@ pub(super) fn points_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
     for (i, point) in points.iter().enumerate() {
         let rect = field::row_rect(ui);
         let is_selected = desk.view.selected == Some(Selected::Point(i));
-        let response = list_row_ui(ui, rect, desk, is_selected, &point.name, &format!("Point {}, {}", i + 1, point.name));
+        let response =
+            list_row_ui(ui, rect, desk, is_selected, &point.name, &format!("Point {}, {}", i + 1, point.name));
         let number = |m: f64| Measure::new(Quantity::Length, m).number(desk.units(), 4);
         let place = format!("{}, {}", number(point.at.x), number(point.at.y));
         let numbers = rect.with_max_x(field::number_right(rect));
@@ -75,7 +77,9 @@ pub(super) fn points_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
                 Edit::Points(next)
             };
             fields_ui(ui, desk, |ui, desk| {
-                field::text_row_ui(ui, desk, ("point name", i), "Name", &point.name, |n| with(&|p| p.name = n.clone()));
+                field::text_row_ui(ui, desk, ("point name", i), "Name", &point.name, |n| {
+                    with(&|p| p.name = n.clone())
+                });
                 Number::new(("point s", i), "s", point.at.x, length).row_ui(ui, desk, |s| with(&|p| p.at.x = s));
                 Number::new(("point z", i), "z", point.at.y, length).row_ui(ui, desk, |z| with(&|p| p.at.y = z));
                 if field::link_row_ui(ui, "Take it out", desk.look).clicked() {

@@ -125,9 +125,12 @@ fn edge_row_ui(ui: &mut Ui, desk: &mut Desk, i: usize, is_selected: bool) -> Res
     let length = desk.unit(Quantity::Length);
     if geometry.is_arc() {
         let label = format!("Radius of edge {}", i + 1);
-        Number::new(("edge radius", i), &label, geometry.radius().abs(), length)
-            .prefix("R")
-            .number_ui(ui, rect, desk, |si| bend_to_radius(i, geometry, si));
+        Number::new(("edge radius", i), &label, geometry.radius().abs(), length).prefix("R").number_ui(
+            ui,
+            rect,
+            desk,
+            |si| bend_to_radius(i, geometry, si),
+        );
     } else {
         let at = pos2(field::number_right(rect), rect.bottom());
         let number = Measure::new(Quantity::Length, geometry.length()).number(desk.units(), 4);
@@ -157,8 +160,11 @@ fn edge_fields_ui(ui: &mut Ui, desk: &mut Desk, i: usize) {
             .row_ui(ui, desk, |sweep| Edit::BendEdge(i, sweep))
             .on_hover_text("Angle turned through; 0 is a straight line, positive turns to the left");
         if geometry.is_arc() {
-            Number::new(("edge radius below", i), "Radius", geometry.radius().abs(), length)
-                .try_row_ui(ui, desk, |si| bend_to_radius(i, geometry, si));
+            Number::new(("edge radius below", i), "Radius", geometry.radius().abs(), length).try_row_ui(
+                ui,
+                desk,
+                |si| bend_to_radius(i, geometry, si),
+            );
         }
         if field::link_row_ui(ui, "Split in the middle", desk.look).clicked() {
             desk.edit(Edit::SplitEdge(i, geometry.point_at(0.5)));
@@ -216,10 +222,8 @@ fn small_box(desk: &Desk) -> Option<Obstacle> {
     let first = *points.first()?;
     let (low, high) = points.iter().fold((first, first), |(low, high), p| (low.inf(p), high.sup(p)));
     let (center, half) = (nalgebra::center(&low, &high), (high - low) * 0.05);
-    let corner = |s: f64, z: f64| Vertex {
-        start: Point::new(center.x + s * half.x, center.y + z * half.y),
-        sweep_rad: 0.0,
-    };
+    let corner =
+        |s: f64, z: f64| Vertex { start: Point::new(center.x + s * half.x, center.y + z * half.y), sweep_rad: 0.0 };
     let vertices = vec![corner(-1.0, -1.0), corner(1.0, -1.0), corner(1.0, 1.0), corner(-1.0, 1.0)];
     Some(Obstacle { name: String::new(), vertices })
 }

@@ -104,11 +104,15 @@ fn record_fields_ui(ui: &mut Ui, desk: &mut Desk, i: usize) {
         let label = if record.limit.is_ceiling() { "At most" } else { "At least" };
         Number::new(("record value", i), label, measure.si, desk.unit(measure.quantity))
             .row_ui(ui, desk, |si| with(&|r| r.limit = limit(kind, si)));
-        field::text_row_ui(ui, desk, ("record clause", i), "Clause", &record.clause, |t| with(&|r| r.clause = t.clone()));
+        field::text_row_ui(ui, desk, ("record clause", i), "Clause", &record.clause, |t| {
+            with(&|r| r.clause = t.clone())
+        });
         field::text_row_ui(ui, desk, ("record edition", i), "Edition", &record.edition, |t| {
             with(&|r| r.edition = t.clone())
         });
-        field::text_row_ui(ui, desk, ("record origin", i), "Origin", &record.origin, |t| with(&|r| r.origin = t.clone()));
+        field::text_row_ui(ui, desk, ("record origin", i), "Origin", &record.origin, |t| {
+            with(&|r| r.origin = t.clone())
+        });
         let mut confirmed = record.confirmed;
         if ui.checkbox(&mut confirmed, "Confirmed against the text").changed() {
             desk.edit(confirm(records, i, confirmed));

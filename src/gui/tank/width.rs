@@ -75,12 +75,19 @@ fn table_ui(ui: &mut Ui, desk: &mut Desk, rows: &[(f64, f64)]) {
         let (left, right) = rect.split_left_right_at_fraction(0.5);
         let labels = (format!("Height of width row {}", i + 1), format!("Width of row {}", i + 1));
         field::paint_fitting(ui, left, Align::Min, "z", font::body(), desk.look.ink2);
-        Number::new(("width z", i), &labels.0, z, length).number_ui(ui, left.with_min_x(left.left() + 10.0), desk, |si| {
-            with(i, (si.unwrap_or(z), w))
-        });
+        Number::new(("width z", i), &labels.0, z, length).number_ui(
+            ui,
+            left.with_min_x(left.left() + 10.0),
+            desk,
+            |si| with(i, (si.unwrap_or(z), w)),
+        );
         field::paint_fitting(ui, right, Align::Min, "w", font::body(), desk.look.ink2);
-        Number::new(("width w", i), &labels.1, w, length)
-            .number_ui(ui, right.with_min_x(right.left() + 12.0), desk, |si| with(i, (z, si.unwrap_or(w))));
+        Number::new(("width w", i), &labels.1, w, length).number_ui(
+            ui,
+            right.with_min_x(right.left() + 12.0),
+            desk,
+            |si| with(i, (z, si.unwrap_or(w))),
+        );
     }
     if field::link_row_ui(ui, "Add a row", desk.look).clicked() {
         let mut next = rows.to_vec();
