@@ -15,6 +15,8 @@ struct Piece {
     high: [f64; 2],
     /// Whether the edge travels upward here: the region is then to its left, and it bounds a strip on the right.
     is_right: bool,
+    /// du/dv of the chord.
+    gain: f64,
     /// Arcs: (low end - centre), signed radius as travelled.
     arc: Option<([f64; 2], f64)>,
 }
@@ -30,7 +32,7 @@ impl Piece {
         }
         let d = v - self.low[1];
         match self.arc {
-            None => self.low[0] + (self.high[0] - self.low[0]) * (d / (self.high[1] - self.low[1])),
+            None => self.low[0] + self.gain * d,
             Some(([x, t], radius)) => {
                 // (x + du)^2 + (t + d)^2 = x^2 + t^2, solved for du without cancellation. The piece stays on one
                 // side of the centre: the outer side of a left turn travelling up, and so on.
@@ -218,7 +220,9 @@ impl Sublevel {
     }
 
     fn cut_into_slabs(&mut self) {
-        let mut levels: Vec<f64> = self.pieces.iter().flat_map(|p| [p.low[1], p.high[1]]).collect();
+        // In closed chains every level is that of the start of some piece.
+        let mut levels: Vec<f64> =
+            self.pieces.iter().map(|p| if p.is_right { p.low[1] } else { p.high[1] }).collect();
         levels.sort_unstable_by(f64::total_cmp);
         levels.dedup();
         let mut rising: Vec<u32> = (0..self.pieces.len() as u32).collect();
@@ -227,6 +231,7 @@ impl Sublevel {
         let mut active: Vec<(f64, u32)> = Vec::new();
         let mut area = 0.0;
         self.slabs.reserve(levels.len());
+        self.crossing.reserve(4 * levels.len());
         for pair in levels.windows(2) {
             let (bottom, top) = (pair[0], pair[1]);
             active.retain(|&(_, i)| self.pieces[i as usize].high[1] > bottom);
@@ -252,7 +257,7 @@ impl Sublevel {
             };
             slab.width_bottom = self.width_in(&slab, bottom);
             slab.width_top = self.width_in(&slab, top);
-            area += self.area_in(&slab, top);
+            area += self.area_between(&slab, top, slab.width_top);
             self.slabs.push(slab);
         }
         self.total = area;
@@ -281,7 +286,12 @@ impl Sublevel {
 
     /// Area of the slab below `v`.
     fn area_in(&self, slab: &Slab, v: f64) -> f64 {
-        let trapezoid = 0.5 * (slab.width_bottom + self.width_in(slab, v)) * (v - slab.bottom);
+        self.area_between(slab, v, self.width_in(slab, v))
+    }
+
+    /// Area of the slab below `v`, where it is `width` wide.
+    fn area_between(&self, slab: &Slab, v: f64, width: f64) -> f64 {
+        let trapezoid = 0.5 * (slab.width_bottom + width) * (v - slab.bottom);
         if !slab.has_arcs {
             return trapezoid;
         }
@@ -298,7 +308,8 @@ impl Sublevel {
         let (mut low, mut high) = (0.0, slab.top - slab.bottom);
         let mut rise = guess;
         for _ in 0..80 {
-            let error = self.area_in(slab, slab.bottom + rise) - missing;
+            let width = self.width_in(slab, slab.bottom + rise);
+            let error = self.area_between(slab, slab.bottom + rise, width) - missing;
             if error > 0.0 {
                 high = rise
             } else {
@@ -307,7 +318,6 @@ impl Sublevel {
             if error.abs() <= 2.0 * f64::EPSILON * missing || high - low <= f64::EPSILON * high {
                 break;
             }
-            let width = self.width_in(slab, slab.bottom + rise);
             let next = rise - error / width;
             rise = if next > low && next < high { next } else { 0.5 * (low + high) };
         }
@@ -329,7 +339,8 @@ fn push_piece(from: [f64; 2], to: [f64; 2], arc: Option<([f64; 2], f64)>, pieces
     }
     let is_right = to[1] > from[1];
     let (low, high) = if is_right { (from, to) } else { (to, from) };
-    pieces.push(Piece { low, high, is_right, arc });
+    let gain = (high[0] - low[0]) / (high[1] - low[1]);
+    pieces.push(Piece { low, high, is_right, gain, arc });
 }
 
 /// Cuts an arc where it turns along `up`, and at the quarter points between, where its angle is ill-conditioned
