@@ -1,2 +1,1 @@
-//! x
-fn main() {}
+//! The integration tests: one binary, one module a subject.
