@@ -1,5 +1,6 @@
 //! The window. It alone knows egui.
 
+pub mod board;
 pub mod font;
 pub mod look;
 pub mod marks;
