@@ -2,5 +2,6 @@
 
 mod arbitrary;
 mod edits;
+mod examples;
 mod files;
 mod scenario;
