@@ -1,1 +1,6 @@
 //! The integration tests: one binary, one module a subject.
+
+mod arbitrary;
+mod edits;
+mod files;
+mod scenario;
