@@ -25,6 +25,10 @@ pub enum Edit {
     Fill(Fill),
     /// Gas pressure above the liquid, Pa gage.
     UllageGage(f64),
+    /// Outside air pressure, Pa absolute.
+    AirPressure(f64),
+    /// Gravity, m/s2.
+    Gravity(f64),
     /// Width law.
     Width(WidthLaw),
     /// Move the start of an edge of the outline.
@@ -85,6 +89,8 @@ impl Edit {
             Edit::Liquid(_) => "Set liquid",
             Edit::Fill(_) => "Set fill",
             Edit::UllageGage(_) => "Set ullage pressure",
+            Edit::AirPressure(_) => "Set air pressure",
+            Edit::Gravity(_) => "Set gravity",
             Edit::Width(_) => "Set width law",
             Edit::Outline(_) => "Set outline",
             Edit::AddObstacle(_) => "Add obstacle",
@@ -126,6 +132,8 @@ pub fn apply(study: &mut Study, edit: &Edit) {
         Edit::Liquid(liquid) => study.liquid.clone_from(liquid),
         Edit::Fill(fill) => study.fill = *fill,
         Edit::UllageGage(pa) => study.ullage_gage_pa = *pa,
+        Edit::AirPressure(pa) => study.air_pressure_abs_pa = *pa,
+        Edit::Gravity(m_per_s2) => study.gravity_m_per_s2 = *m_per_s2,
         Edit::Width(width) => section.width.clone_from(width),
         Edit::MoveVertex(i, to) => set(section.outline.get_mut(*i), |edge| edge.start = *to),
         Edit::BendEdge(i, sweep_rad) => set(section.outline.get_mut(*i), |edge| edge.sweep_rad = *sweep_rad),

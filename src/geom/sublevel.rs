@@ -188,35 +188,54 @@ impl Sublevel {
 
     /// Count of connected parts of the region below `level`.
     pub fn n_pools(&self, level: f64) -> usize {
+        self.count_parts(level).0
+    }
+
+    /// Count of low points from which the region below `level` grows: one means that it is connected at every
+    /// lower level too.
+    pub fn n_basins(&self, level: f64) -> usize {
+        self.count_parts(level).1
+    }
+
+    /// (connected parts, low points) below `level`.
+    fn count_parts(&self, level: f64) -> (usize, usize) {
         let v = level - self.origin_level;
-        let extent = self.slabs.iter().map(|s| s.width_bottom.max(s.width_top)).fold(0.0, f64::max);
+        let slabs = &self.slabs[..self.slabs.partition_point(|s| s.bottom < v)];
+        if slabs.iter().all(|s| s.n == 2) {
+            let n = usize::from(!slabs.is_empty());
+            return (n, n);
+        }
+        let extent = slabs.iter().map(|s| s.width_bottom.max(s.width_top)).fold(0.0, f64::max);
         // Strips that share less than this are not connected: far above rounding, far below any real gap.
         let slack = 1e-12 * extent;
-        let mut n_parts = 0;
+        let (mut n_parts, mut n_basins) = (0, 0);
         let mut below: Vec<([f64; 2], usize)> = Vec::new();
         let mut parent: Vec<usize> = Vec::new();
-        for slab in self.slabs.iter().take_while(|s| s.bottom < v) {
+        for slab in slabs {
             let mut here = Vec::with_capacity(slab.n / 2);
             for (left, right) in self.strips(slab) {
                 let id = parent.len();
                 parent.push(id);
-                n_parts += 1;
                 let (l, r) = (left.u_at(slab.bottom), right.u_at(slab.bottom));
+                let mut n_joined = 0;
                 for &([bl, br], other) in &below {
                     if br.min(r) - bl.max(l) > slack {
                         let (a, b) = (root_of(&mut parent, id), root_of(&mut parent, other));
                         if a != b {
                             parent[a] = b;
-                            n_parts -= 1;
+                            n_joined += 1;
                         }
                     }
                 }
-                let top = slab.top;
-                here.push(([left.u_at(top), right.u_at(top)], id));
+                if n_joined == 0 {
+                    n_basins += 1;
+                }
+                n_parts = n_parts + 1 - n_joined;
+                here.push(([left.u_at(slab.top), right.u_at(slab.top)], id));
             }
             below = here;
         }
-        n_parts
+        (n_parts, n_basins)
     }
 
     fn cut_into_slabs(&mut self) {

@@ -2,7 +2,7 @@
 //! density is read here and refused by [`Study::validate`].
 //!
 //! The text is RON. It begins with its version; each version has a module with its frozen file structs, and
-//! [`write`] always writes the newest. Every number carries its unit in its key. Text comes from anywhere, so size,
+//! [`write()`] always writes the newest. Every number carries its unit in its key. Text comes from anywhere, so size,
 //! nesting and the length of every list are bounded, and numbers are finite.
 
 mod fault;
@@ -19,7 +19,7 @@ use crate::study::Study;
 
 pub use limits::*;
 
-/// The version that [`write`] writes, and the newest that [`parse`] reads.
+/// The version that [`write()`] writes, and the newest that [`parse`] reads.
 pub const VERSION: u64 = 1;
 
 /// Reads a scenario's text; every fault with line, column and hint.
