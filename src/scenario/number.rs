@@ -109,13 +109,8 @@ mod tests {
             for exponent in [-18, -13, -11, -9, 0] {
                 let text = number(format!("{digits}e{exponent}").parse().unwrap());
                 let read = Num(text.parse().unwrap());
-                let again = [
-                    mm(read.mm()),
-                    kpa(read.kpa()),
-                    percent(read.percent()),
-                    deg(read.deg()),
-                    number(read.si()),
-                ];
+                let again =
+                    [mm(read.mm()), kpa(read.kpa()), percent(read.percent()), deg(read.deg()), number(read.si())];
                 assert!(again.iter().all(|a| *a == text), "{text} came back as {again:?}");
             }
         }
