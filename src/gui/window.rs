@@ -9,7 +9,7 @@ use egui::{CursorIcon, Sense, Ui, UiBuilder, ViewportCommand};
 use crate::analysis::{Results, Verdict};
 use crate::app::{self, Derived, Document, EXAMPLES, Edit, FileError};
 use crate::cases::{Accel, Attitude, LoadCase};
-use crate::problem::{Place, Problem};
+use crate::problem::Place;
 use crate::study::Study;
 
 use super::files::{Dialogs, EXTENSION, FileChooser, Purpose};
@@ -481,19 +481,8 @@ fn title_or(study: &Study, other: &str) -> String {
 }
 
 fn trouble(error: FileError, verb: &str) -> FileTrouble {
-    match error {
-        FileError::Io { path, error } => FileTrouble {
-            title: format!("`{}` could not be {verb}", file_name(&path)),
-            problems: vec![Problem::fault(
-                Place::Whole,
-                error.to_string(),
-                format!("Check that `{}` is there and that you may use it", path.display()),
-            )],
-        },
-        FileError::Unreadable { path, problems } => {
-            FileTrouble { title: format!("`{}` could not be {verb}", file_name(&path)), problems }
-        }
-    }
+    let title = format!("`{}` could not be {verb}", file_name(error.path()));
+    FileTrouble { title, problems: error.into_problems() }
 }
 
 fn file_name(path: &Path) -> String {
