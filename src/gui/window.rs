@@ -481,19 +481,15 @@ fn title_or(study: &Study, other: &str) -> String {
 }
 
 fn trouble(error: FileError, verb: &str) -> FileTrouble {
-    match error {
-        FileError::Io { path, error } => FileTrouble {
-            title: format!("`{}` could not be {verb}", file_name(&path)),
-            problems: vec![Problem::fault(
-                Place::Whole,
-                error.to_string(),
-                format!("Check that `{}` is there and that you may use it", path.display()),
-            )],
-        },
-        FileError::Unreadable { path, problems } => {
-            FileTrouble { title: format!("`{}` could not be {verb}", file_name(&path)), problems }
+    let words = error.to_string();
+    let (path, problems) = match error {
+        FileError::Io { path, .. } => {
+            let hint = format!("Check that `{}` is there and that you may use it", path.display());
+            (path, vec![Problem::fault(Place::Whole, words, hint)])
         }
-    }
+        FileError::Unreadable { path, problems } | FileError::Unwritable { path, problems } => (path, problems),
+    };
+    FileTrouble { title: format!("`{}` could not be {verb}", file_name(&path)), problems }
 }
 
 fn file_name(path: &Path) -> String {
