@@ -313,7 +313,8 @@ impl Pen<'_> {
         let (Some(tints), dial) = (self.scene.model.tints, &self.scene.dial) else { return };
         let bottom = self.scene.screen.rect.bottom() - 10.0;
         let width = dial.rect.width() - 20.0;
-        let bar = Rect::from_min_max(pos2(dial.rect.left(), bottom - 28.0), pos2(dial.rect.left() + width, bottom - 17.0));
+        let bar =
+            Rect::from_min_max(pos2(dial.rect.left(), bottom - 28.0), pos2(dial.rect.left() + width, bottom - 17.0));
         if bar.top() - 20.0 < dial.lowest(&self.scene.hanging) || self.scene.model.bands.is_empty() {
             return;
         }
