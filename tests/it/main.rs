@@ -1,2 +1,12 @@
-//! x
-fn main() {}
+//! Checks against the outside: published tables, independent libraries, properties.
+
+mod bad_sections;
+mod clipper;
+mod degenerate;
+mod properties;
+mod properties_loads;
+mod published_forces;
+mod published_rigid;
+mod published_sections;
+mod reference;
+mod support;
