@@ -2,6 +2,8 @@
 
 use std::f64::consts::{PI, TAU};
 
+use crate::num::bisect;
+
 use super::{Point, Vec2, cross};
 
 /// A directed edge from `start` to `end`. `sweep` is the angle that the tangent turns through, radians: zero for
@@ -167,6 +169,48 @@ impl Edge {
             }
         }
         (low, high)
+    }
+
+    /// Parameters strictly inside 0..1 at which `axis . point` passes through `level`, in order.
+    pub fn crossings(&self, axis: Vec2, level: f64) -> Vec<f64> {
+        let height = |t: f64| axis.dot(&self.point_at(t).coords) - level;
+        let mut stops = self.turning_points(axis);
+        stops.push(1.0);
+        let mut out = Vec::new();
+        let mut from = (0.0, height(0.0));
+        for stop in stops {
+            let to = (stop, height(stop));
+            if from.1 * to.1 < 0.0 {
+                out.push(if self.is_arc() {
+                    bisect(from.0, to.0, f64::EPSILON, |t| (height(t) > 0.0) == (to.1 > 0.0))
+                } else {
+                    from.1 / (from.1 - to.1)
+                });
+            } else if to.1 == 0.0 && stop < 1.0 {
+                out.push(stop);
+            }
+            from = to;
+        }
+        out
+    }
+
+    /// The parts of the edge, as parameter ranges, on which `axis . point` lies below `level`.
+    pub fn parts_below(&self, axis: Vec2, level: f64) -> Vec<(f64, f64)> {
+        let mut stops = vec![0.0];
+        stops.extend(self.crossings(axis, level));
+        stops.push(1.0);
+        let is_below = |t: f64| axis.dot(&self.point_at(t).coords) < level;
+        let mut out: Vec<(f64, f64)> = Vec::new();
+        for pair in stops.windows(2) {
+            if !is_below(0.5 * (pair[0] + pair[1])) {
+                continue;
+            }
+            match out.last_mut() {
+                Some(last) if last.1 == pair[0] => last.1 = pair[1],
+                _ => out.push((pair[0], pair[1])),
+            }
+        }
+        out
     }
 
     /// Parameter and distance of the point on the edge nearest to `p`.

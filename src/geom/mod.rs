@@ -5,9 +5,11 @@
 
 mod edge;
 mod path;
+mod sublevel;
 
-pub use edge::Edge;
+pub use edge::{Edge, rotate};
 pub use path::Path;
+pub use sublevel::Sublevel;
 
 /// A place, in metres: x is s (right), y is z (up).
 pub type Point = nalgebra::Point2<f64>;

@@ -3,11 +3,13 @@
 //! Knows no gravity, no liquid and no load case.
 
 mod check;
+mod mouth;
 mod width;
 
 use crate::geom::{Edge, Point};
 
 pub use check::{Region, RegionEdge, check};
+pub use mouth::Mouth;
 pub use width::WidthLaw;
 
 /// Whether an edge holds liquid back.
@@ -86,6 +88,11 @@ impl Section {
 }
 
 impl Obstacle {
+    /// The name shown: its own, or `obstacle 2`.
+    pub fn label(&self, idx: usize) -> String {
+        if self.name.is_empty() { format!("obstacle {}", idx + 1) } else { self.name.clone() }
+    }
+
     /// All edges as geometry.
     pub fn edges(&self) -> Vec<Edge> {
         let n = self.vertices.len();

@@ -1,0 +1,140 @@
+//! A verdict: one judged check of one load case.
+
+use crate::geom::Point;
+use crate::problem::Place;
+use crate::sources::Source;
+use crate::units::Measure;
+
+/// State of a verdict. Ordered as they are listed: the worst first.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
+pub enum State {
+    /// Utilisation above one.
+    Fails,
+    /// Outside the method's range; never passes silently.
+    NotJudged,
+    /// Utilisation above 0.9.
+    Close,
+    /// Utilisation up to 0.9.
+    Holds,
+}
+
+impl State {
+    /// All states, in the order of listing.
+    pub const ALL: [State; 4] = [State::Fails, State::NotJudged, State::Close, State::Holds];
+
+    /// The word shown for it.
+    pub fn word(self) -> &'static str {
+        match self {
+            State::Fails => "fails",
+            State::NotJudged => "not judged",
+            State::Close => "close",
+            State::Holds => "holds",
+        }
+    }
+}
+
+/// Whether the demand may reach the limit from below or from above.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Sense {
+    /// The demand must not exceed the limit.
+    AtMost,
+    /// The demand must not fall below the limit.
+    AtLeast,
+}
+
+impl Sense {
+    /// The words shown between demand and limit.
+    pub fn words(self) -> &'static str {
+        match self {
+            Sense::AtMost => "at most",
+            Sense::AtLeast => "at least",
+        }
+    }
+}
+
+/// How far one assumption of a method holds.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
+pub enum Reach {
+    /// Well inside its range, or not used by the method.
+    Inside,
+    /// Near the edge of its range.
+    Near,
+    /// Outside; the verdict is then not judged.
+    Outside,
+}
+
+/// One square of the trust strip.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Trust {
+    /// Rise time, steepness, depth to length, forcing period, roof or dry floor.
+    pub name: &'static str,
+    /// How far inside.
+    pub reach: Reach,
+    /// With the numbers.
+    pub words: String,
+}
+
+/// One line of a worked formula.
+#[derive(Clone, Debug, PartialEq)]
+pub struct WorkLine {
+    /// The formula in symbols; `_x` marks a subscript, `_{ab}` a longer one.
+    pub symbols: String,
+    /// The same with the numbers put in, units SI.
+    pub numbers: String,
+    /// The result.
+    pub result: Measure,
+}
+
+/// One judged check of one load case.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Verdict {
+    /// Name of the criterion.
+    pub criterion: &'static str,
+    /// Its state.
+    pub state: State,
+    /// What is asked of the tank; none where not judged.
+    pub demand: Option<Measure>,
+    /// What the tank, or a record, allows.
+    pub limit: Option<Measure>,
+    /// Direction of the comparison.
+    pub sense: Sense,
+    /// Demand to limit, or limit to demand; none where not judged. Infinite where the limit is zero.
+    pub utilisation: Option<f64>,
+    /// Where it governs.
+    pub place: Place,
+    /// The place in words, with names: `hatch 1, right end`.
+    pub place_words: String,
+    /// The point on the section, where there is one.
+    pub at: Option<Point>,
+    /// Formulas with numbers put in.
+    pub working: Vec<WorkLine>,
+    /// What would make it hold, with the number: `To hold, fill 84.0 %`.
+    pub mend: Vec<String>,
+    /// The source of the method.
+    pub source: Source,
+    /// The trust strip, always five.
+    pub trust: Vec<Trust>,
+    /// Why it was not judged, or a caution; may be empty.
+    pub remark: String,
+    /// Index of an unconfirmed requirement record that it rests on.
+    pub unconfirmed_record: Option<usize>,
+}
+
+/// A check that does not apply, and why; never silently left out.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Absent {
+    /// Name of the criterion.
+    pub criterion: &'static str,
+    /// Where, in words.
+    pub place_words: String,
+    /// Why it does not apply, and what is judged instead.
+    pub reason: String,
+}
+
+impl Verdict {
+    /// Worst first: state, then utilisation.
+    pub fn order(&self, other: &Verdict) -> std::cmp::Ordering {
+        let used = |v: &Verdict| v.utilisation.unwrap_or(0.0);
+        self.state.cmp(&other.state).then(used(other).total_cmp(&used(self)))
+    }
+}
