@@ -14,7 +14,6 @@ fn faults(section: &Section) -> Vec<Problem> {
     let problems = check(section).err().unwrap_or_default();
     for p in &problems {
         assert!(p.severity == Severity::Fault && !p.message.is_empty() && !p.hint.is_empty(), "{p}");
-        assert!(!p.message.contains("NaN") || p.message.contains("not"), "{p}");
     }
     problems
 }
@@ -54,9 +53,9 @@ fn an_outline_that_crosses_itself() {
 
 #[test]
 fn an_arc_that_crosses_a_wall() {
-    // The floor bulges up through the roof.
+    // The floor bulges up, out through both side walls and the roof.
     let mut bulging = open_box();
-    bulging.outline[0].sweep_rad = -0.9 * TAU;
+    bulging.outline[0].sweep_rad = -0.6 * TAU;
     assert!(
         places(&bulging).iter().any(|p| matches!(p, Place::Crossing { edge_idx: 0, .. })),
         "{:?}",
