@@ -1,10 +1,11 @@
 //! A study: all inputs of one judgement, and the door at which all its faults are found.
 
-use crate::cases::LoadCase;
-use crate::geom::Point;
+use crate::cases::{Accel, LoadCase};
+use crate::geom::{Path, Point, Vec2};
 use crate::liquid::Liquid;
-use crate::problem::Problem;
-use crate::section::{Region, Section};
+use crate::problem::{Place, Problem, Severity};
+use crate::section::{self, Mouth, Region, Section};
+use crate::statics::Tilted;
 use crate::units::{Measure, Quantity};
 
 /// How much liquid, as it was given. Levels are of the tank standing level and at rest.
@@ -126,14 +127,172 @@ pub struct Study {
 pub struct ValidStudy {
     study: Study,
     region: Region,
+    mouths: Vec<Mouth>,
+    capacity_m3: f64,
     fill_volume_m3: f64,
     warnings: Vec<Problem>,
 }
 
 impl Study {
-    /// The door: a valid study, or every fault and warning.
+    /// Requirement records of one kind: index and value.
+    pub fn records_of(&self, kind: fn(&Limit) -> Option<f64>) -> impl Iterator<Item = (usize, f64)> {
+        self.records.iter().enumerate().filter_map(move |(i, r)| kind(&r.limit).map(|value| (i, value)))
+    }
+
+    /// The largest freeboard allowance of the records, m, and the record; zero without one.
+    pub fn freeboard_allowance_m(&self) -> (f64, Option<usize>) {
+        self.records_of(|l| if let Limit::FreeboardAllowance(m) = l { Some(*m) } else { None })
+            .max_by(|a, b| a.1.total_cmp(&b.1))
+            .map_or((0.0, None), |(i, m)| (m, Some(i)))
+    }
+
+    /// The door: a valid study, or every fault and warning, each with its place.
     pub fn validate(&self) -> Result<ValidStudy, Vec<Problem>> {
-        todo!()
+        let mut problems = Vec::new();
+        self.check_numbers(&mut problems);
+        self.check_cases(&mut problems);
+        let region = match section::check(&self.section) {
+            Ok(region) => Some(region),
+            Err(faults) => {
+                problems.extend(faults);
+                None
+            }
+        };
+        let mouths = self.section.mouths();
+        let filled = region.as_ref().map(|region| self.fill_volume(region, &mut problems));
+        if let Some(region) = &region {
+            self.check_points(region, &mut problems);
+            if mouths.is_empty() {
+                problems.push(Problem::warning(
+                    Place::Field("mouths"),
+                    "no edge is a mouth: nothing can spill, and the gas is taken as vented all the same",
+                    "mark the rim, hatch or breather as a mouth",
+                ));
+            }
+        }
+        let has_fault = problems.iter().any(|p| p.severity == Severity::Fault);
+        match (region, filled) {
+            (Some(region), Some((capacity_m3, fill_volume_m3))) if !has_fault => Ok(ValidStudy {
+                study: self.clone(),
+                region,
+                mouths,
+                capacity_m3,
+                fill_volume_m3,
+                warnings: problems,
+            }),
+            _ => {
+                problems.sort_by_key(|p| p.severity);
+                Err(problems)
+            }
+        }
+    }
+
+    fn check_numbers(&self, problems: &mut Vec<Problem>) {
+        let mut must = |ok: bool, field: &'static str, message: String, hint: &str| {
+            if !ok {
+                problems.push(Problem::fault(Place::Field(field), message, hint));
+            }
+        };
+        let above_zero = |x: f64| x.is_finite() && x > 0.0;
+        let g = self.gravity_m_per_s2;
+        must(above_zero(g), "gravity", format!("{g} m/s2"), "give a gravity above zero; 9.80665 is standard");
+        let air = self.air_pressure_abs_pa;
+        must(above_zero(air), "air pressure", format!("{air} Pa"), "give an absolute pressure above zero");
+        let gas = self.ullage_gage_pa;
+        let is_gas = gas.is_finite() && gas > -air;
+        must(is_gas, "gas pressure", format!("{gas} Pa gage"), "give a gage pressure above a perfect vacuum");
+        let density = self.liquid.density_kg_per_m3;
+        must(above_zero(density), "density", format!("{density} kg/m3"), "give a density above zero");
+        if let Some(pv) = self.liquid.vapour_pressure_abs_pa {
+            let hint = "give an absolute pressure of zero or more, or leave it out";
+            must(pv.is_finite() && pv >= 0.0, "vapour pressure", format!("{pv} Pa"), hint);
+        }
+        if let Some(sigma) = self.liquid.surface_tension_n_per_m {
+            let hint = "give a tension above zero, or leave it out";
+            must(above_zero(sigma), "surface tension", format!("{sigma} N/m"), hint);
+        }
+        let about = self.moment_about;
+        let is_place = about.x.is_finite() && about.y.is_finite();
+        must(is_place, "moment point", format!("s {} m, z {} m", about.x, about.y), "give finite coordinates");
+        for (i, record) in self.records.iter().enumerate() {
+            let value = record.limit.measure().si;
+            if !(value.is_finite() && value >= 0.0) {
+                let message = format!("the limit of {:?} is {value}", record.title);
+                problems.push(Problem::fault(Place::Record(i), message, "give a limit of zero or more"));
+            }
+        }
+    }
+
+    fn check_cases(&self, problems: &mut Vec<Problem>) {
+        if self.cases.is_empty() {
+            problems.push(Problem::fault(Place::Field("load cases"), "there is no load case", "add one"));
+        }
+        for (i, case) in self.cases.iter().enumerate() {
+            let numbers = match case.accel {
+                Accel::Components { a_s, a_z, .. } => [a_s, a_z],
+                Accel::Polar { magnitude, direction_deg, .. } => [magnitude, direction_deg],
+            };
+            let onset = case.onset_s.unwrap_or(0.0);
+            let phi = case.attitude.angle_rad();
+            // Ten thousand times gravity: beyond any tank, and well within what f64 carries.
+            let is_sane = numbers.iter().all(|x| x.is_finite() && x.abs() <= 1e5) && phi.is_finite();
+            if !(is_sane && onset.is_finite() && onset >= 0.0) {
+                let hint = "give finite numbers, accelerations up to 100 000, and an onset of zero or more";
+                problems.push(Problem::fault(Place::Case(i), "a number is not finite or out of range", hint));
+            }
+            if matches!(case.accel, Accel::Polar { magnitude, .. } if magnitude < 0.0) {
+                let hint = "give the size, and turn the direction by 180°";
+                problems.push(Problem::fault(Place::Case(i), "the magnitude is below zero", hint));
+            }
+            if self.cases[..i].iter().any(|other| other.name == case.name) {
+                let message = format!("an earlier case is called {:?} too", case.name);
+                problems.push(Problem::warning(Place::Case(i), message, "give each case its own name"));
+            }
+        }
+    }
+
+    fn check_points(&self, region: &Region, problems: &mut Vec<Problem>) {
+        let outline = Path::new(self.section.edges());
+        let slack = 1e-9 * region.diagonal_m();
+        for (i, point) in self.points.iter().enumerate() {
+            let p = point.at;
+            if !(p.x.is_finite() && p.y.is_finite()) {
+                let hint = "give finite coordinates";
+                problems.push(Problem::fault(Place::Point(i), "a coordinate is not finite", hint));
+            } else if !outline.contains(p) && outline.edges().iter().all(|e| e.nearest(p).1 > slack) {
+                let message = format!("{:?} lies outside the outline", point.name);
+                problems.push(Problem::warning(Place::Point(i), message, "move it inside, or delete it"));
+            }
+        }
+    }
+
+    /// Capacity and fill, m3; a fault where the fill lies outside the tank.
+    fn fill_volume(&self, region: &Region, problems: &mut Vec<Problem>) -> (f64, f64) {
+        let tilted = Tilted::new(region.geometry(), &self.section.width, Vec2::y());
+        let capacity = tilted.capacity_m3();
+        let (bottom, top) = tilted.span();
+        let slack = 1e-9;
+        let (value, low, high, unit) = match self.fill {
+            Fill::Volume(v) => (v, 0.0, capacity, "m3"),
+            Fill::Share(share) => (share, 0.0, 1.0, "of capacity"),
+            Fill::Level(z) => (z, bottom, top, "m"),
+            Fill::Ullage(d) => (d, 0.0, top - bottom, "m"),
+        };
+        let span = high - low;
+        if !(value.is_finite() && value >= low - slack * span && value <= high + slack * span) {
+            problems.push(Problem::fault(
+                Place::Field("fill"),
+                format!("{value} {unit} is not between {low:.6} and {high:.6}"),
+                "give a fill between empty and full",
+            ));
+        }
+        let volume = match self.fill {
+            Fill::Volume(v) => v,
+            Fill::Share(share) => share * capacity,
+            Fill::Level(z) => tilted.volume_below(z),
+            Fill::Ullage(d) => tilted.volume_below(top - d),
+        };
+        (capacity, volume.clamp(0.0, capacity))
     }
 }
 
@@ -148,6 +307,16 @@ impl ValidStudy {
         &self.region
     }
 
+    /// Its mouths.
+    pub fn mouths(&self) -> &[Mouth] {
+        &self.mouths
+    }
+
+    /// Volume of the whole section, m3.
+    pub fn capacity_m3(&self) -> f64 {
+        self.capacity_m3
+    }
+
     /// The fill as a volume, m3.
     pub fn fill_volume_m3(&self) -> f64 {
         self.fill_volume_m3
@@ -156,5 +325,10 @@ impl ValidStudy {
     /// What the user should know of the input.
     pub fn warnings(&self) -> &[Problem] {
         &self.warnings
+    }
+
+    /// The section seen along a direction.
+    pub fn tilted(&self, up: Vec2) -> Tilted<'_> {
+        Tilted::new(self.region.geometry(), &self.study.section.width, up)
     }
 }

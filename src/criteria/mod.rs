@@ -1,5 +1,48 @@
-//! The criteria: one a file, and the table of them.
+//! The criteria: one a file, and the table of them. Each turns the physics of one load case into verdicts.
+//!
+//! Knows no files and no screens.
 
+mod contained;
+mod context;
+mod freeboard;
+mod pressure;
+mod roof;
+mod vapour;
 mod verdict;
 
+pub use context::Context;
+pub use freeboard::FreeboardFill;
 pub use verdict::*;
+
+/// What a criterion gives: verdicts, and checks that do not apply with the reason.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct Outcome {
+    /// Judged, or not judged with the reason.
+    pub verdicts: Vec<Verdict>,
+    /// Not applicable.
+    pub absent: Vec<Absent>,
+}
+
+/// One criterion.
+pub struct Criterion {
+    /// Its name, as shown.
+    pub name: &'static str,
+    /// Judges one load case.
+    pub judge: fn(&Context) -> Outcome,
+}
+
+/// Every criterion, in the order in which they are run.
+pub const CRITERIA: &[Criterion] =
+    &[contained::CRITERION, freeboard::CRITERION, roof::CRITERION, pressure::CRITERION, vapour::CRITERION];
+
+/// Runs every criterion; verdicts worst first.
+pub fn judge(context: &Context) -> Outcome {
+    let mut all = Outcome::default();
+    for criterion in CRITERIA {
+        let outcome = (criterion.judge)(context);
+        all.verdicts.extend(outcome.verdicts);
+        all.absent.extend(outcome.absent);
+    }
+    all.verdicts.sort_by(Verdict::order);
+    all
+}

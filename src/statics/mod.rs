@@ -6,12 +6,14 @@ mod gravity;
 mod loads;
 mod path;
 mod rim;
+mod rise;
 mod settled;
 mod tilted;
 
 pub use gravity::{EffectiveGravity, effective_gravity};
 pub use loads::{EdgeLoad, pressure_at};
 pub use path::{Lip, Ramp, Spill};
-pub use rim::{Carried, carry_walls_on};
+pub use rim::Carried;
+pub use rise::Rims;
 pub use settled::{PointPressure, RoofContact, Setting, Settled, settle};
 pub use tilted::{Chord, Tilted};

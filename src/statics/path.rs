@@ -42,7 +42,10 @@ impl Ramp {
             cross.atan2(dot)
         };
         let to_case = turn(end);
-        let to_end = if accel.norm() > 0.0 { turn(delta) } else { 0.0 };
+        // Along gravity the direction does not turn, however hard the tank accelerates.
+        let is_along =
+            (g_at_rest.x * delta.y - g_at_rest.y * delta.x).abs() <= 1e-12 * g_at_rest.norm() * accel.norm();
+        let to_end = if is_along { to_case } else { turn(delta) };
         let rounding = 1e-12 * (g_at_rest.norm() + accel.norm());
         let through_zero = end.norm() <= rounding || to_case.abs() >= PI - 1e-12;
         (!through_zero && g_at_rest.norm() > 0.0).then_some(Ramp {
@@ -62,6 +65,9 @@ impl Ramp {
     /// Share of the case's acceleration, or heel, at which the direction has turned by `turned` of the way
     /// (radians, not negative); infinite where it is only approached.
     fn share(&self, turned: f64) -> f64 {
+        if turned <= 0.0 {
+            return 0.0;
+        }
         match self.kind {
             Kind::Turn => turned / self.to_case_rad.abs(),
             Kind::Straight { start, delta } => {
@@ -103,6 +109,8 @@ pub struct Spill {
     pub first: Option<(f64, Lip)>,
     /// On the way to the case the liquid stands in several pools: then nothing above may be used.
     pub has_several_pools: bool,
+    /// Whether a larger share of the case turns effective gravity at all.
+    pub turns: bool,
     /// Beyond the case, before any spill, the liquid comes to stand in several pools: `first` is then not known.
     pub has_several_pools_beyond: bool,
 }
@@ -124,6 +132,7 @@ impl Spill {
             governs: None,
             first: None,
             has_several_pools: false,
+            turns: ramp.to_end_rad != 0.0,
             has_several_pools_beyond: false,
         };
         let case = ramp.to_case_rad.abs();
@@ -167,7 +176,7 @@ impl Spill {
                 spill.governs = stop.lip;
             }
             if spill.first.is_none() && stop.holds_m3 < volume_m3 - slack {
-                let turned = bisect(before, stop.turned, 1e-15, |t| way.at(t).holds_m3 < volume_m3 - slack);
+                let turned = bisect(before, stop.turned, 1e-15, |t| way.at(t).holds_m3 < volume_m3);
                 spill.first = way.at(turned).lip.map(|lip| (ramp.share(turned), lip));
             }
             if spill.first.is_some() && !on_the_way {

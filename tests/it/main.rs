@@ -1,4 +1,4 @@
-//! Checks against the outside: published tables, independent libraries, properties.
+//! The integration tests: one binary, one module a subject.
 
 mod bad_sections;
 mod clipper;

@@ -1,0 +1,130 @@
+//! The curves of one load case, for the plots.
+
+use crate::criteria::FreeboardFill;
+use crate::geom::Vec2;
+use crate::statics::{Carried, Rims, effective_gravity, pressure_at};
+use crate::study::ValidStudy;
+
+use super::results::*;
+
+/// The curves of one load case, for the plots. Empty where the case index is out of range.
+pub fn curves(study: &ValidStudy, results: &Results, case_idx: usize) -> Curves {
+    let Some(result) = results.cases.get(case_idx) else { return Curves::default() };
+    Curves {
+        tilt: tilt_curve(study, results, case_idx),
+        wall: wall_curve(study, results, result),
+        freeboard: freeboard_curve(study, result),
+    }
+}
+
+fn tilt_curve(study: &ValidStudy, results: &Results, case_idx: usize) -> TiltCurve {
+    const N_POINTS: i32 = 96;
+    let inputs = study.study();
+    let g = inputs.gravity_m_per_s2;
+    let accel = results.cases[case_idx].accel;
+    let mut along = if accel.norm() > 0.0 { accel.normalize() } else { Vec2::x() };
+    // Signed so that the axis reads like the component it follows.
+    if along.x < -1e-9 || (along.x.abs() <= 1e-9 && along.y < 0.0) {
+        along = -along;
+    }
+    let axis_words = if along.x > 0.999 {
+        "along s"
+    } else if along.y.abs() > 0.999 {
+        "along z"
+    } else {
+        "along the case"
+    };
+    let attitude = inputs.cases[case_idx].attitude;
+    let tilt_at = |x: f64| effective_gravity(g, attitude.angle_rad(), along * x).tilt_rad;
+    let is_along = |v: Vec2| (v - along * v.dot(&along)).norm() <= 1e-9 * (g + v.norm());
+    let signed = |v: Vec2| v.dot(&along);
+    let mut others = Vec::new();
+    let mut reach = 0.6 * g;
+    for (i, case) in results.cases.iter().enumerate() {
+        if inputs.cases[i].attitude == attitude && is_along(case.accel) {
+            reach = reach.max(1.25 * case.accel.norm());
+            if let (true, Some(tilt)) = (i != case_idx, case.gravity.tilt_rad) {
+                others.push((i, [signed(case.accel), tilt]));
+            }
+        }
+    }
+    let points = (-N_POINTS / 2..=N_POINTS / 2)
+        .filter_map(|i| {
+            let x = reach * f64::from(2 * i) / f64::from(N_POINTS);
+            tilt_at(x).map(|tilt| [x, tilt])
+        })
+        .collect();
+    let contained = results.cases[case_idx].verdicts.iter().find(|v| v.criterion == "Contained");
+    let spills_at = contained
+        .filter(|v| v.demand.is_some_and(|d| d.quantity == crate::units::Quantity::Acceleration))
+        .and_then(|v| v.limit)
+        .map(|limit| limit.si * signed(accel).signum())
+        .filter(|x| x.abs() <= reach);
+    let now = results.cases[case_idx].gravity.tilt_rad.map(|tilt| [signed(accel), tilt]);
+    TiltCurve { points, now, others, spills_at, axis_words }
+}
+
+fn wall_curve(study: &ValidStudy, results: &Results, result: &CaseResult) -> WallCurve {
+    let inputs = study.study();
+    let density = inputs.liquid.density_kg_per_m3;
+    let gas = inputs.ullage_gage_pa;
+    let section = &inputs.section;
+    let mut curve = WallCurve::default();
+    let rest = (Vec2::y(), results.still.level_z_m, density * inputs.gravity_m_per_s2);
+    let now = match (&result.settled, result.gravity.up) {
+        (Ok(settled), Some(up)) => Some((up, settled.level_m, density * result.gravity.magnitude)),
+        _ => None,
+    };
+    let mut length = 0.0;
+    for (i, edge) in section.edges().iter().enumerate() {
+        curve.edges.push((length, section.edge_label(i)));
+        for (state, points) in [(now, &mut curve.points), (Some(rest), &mut curve.at_rest)] {
+            let Some((up, level, weight)) = state else { continue };
+            let n = if edge.is_arc() { 24 } else { 1 };
+            let mut stops: Vec<f64> = (0..=n).map(|k| f64::from(k) / f64::from(n)).collect();
+            stops.extend(edge.crossings(up, level));
+            stops.sort_unstable_by(f64::total_cmp);
+            for t in stops {
+                let liquid = pressure_at(edge.point_at(t), level, up, weight).max(0.0);
+                points.push([length + t * edge.length(), gas + liquid]);
+            }
+        }
+        length += edge.length();
+    }
+    curve.peak = curve.points.iter().copied().max_by(|a, b| a[1].total_cmp(&b[1]));
+    curve
+}
+
+fn freeboard_curve(study: &ValidStudy, result: &CaseResult) -> FreeboardCurve {
+    const N_POINTS: u32 = 48;
+    let absent = |reason: String| FreeboardCurve { absent: Some(reason), ..FreeboardCurve::default() };
+    let Some(rims) = result.gravity.up.and_then(|up| Rims::new(study.region(), study.mouths(), up)) else {
+        return absent("freeboard needs effective gravity toward the floor".to_owned());
+    };
+    let allowance = study.study().freeboard_allowance_m().0;
+    let volume = study.fill_volume_m3();
+    let used = |i: &usize| {
+        let at = FreeboardFill::new(study, &rims, *i, allowance).at(volume);
+        at.map_or(0.0, |(required, available)| if available > 0.0 { required / available } else { f64::MAX })
+    };
+    let on: Vec<usize> = (0..study.mouths().len()).filter(|&i| rims.carried()[i] == Carried::On).collect();
+    let Some(mouth_idx) = on.into_iter().max_by(|a, b| used(a).total_cmp(&used(b))) else {
+        return absent(match study.mouths().len() {
+            0 => "freeboard waits for a mouth".to_owned(),
+            _ => "no mouth stands between vertical walls; Contained is judged instead".to_owned(),
+        });
+    };
+    let fill = FreeboardFill::new(study, &rims, mouth_idx, allowance);
+    let capacity = study.capacity_m3();
+    let mut curve = FreeboardCurve { mouth: study.mouths()[mouth_idx].name.clone(), ..FreeboardCurve::default() };
+    for i in 1..=N_POINTS {
+        let share = f64::from(i) / f64::from(N_POINTS);
+        if let Some((required, available)) = fill.at(share * capacity) {
+            curve.required.push([share, required]);
+            curve.available.push([share, available]);
+        }
+    }
+    curve.now = fill.at(volume).map(|(required, _)| [volume / capacity, required]);
+    curve.holds_to = fill.highest_volume_m3().and_then(|v| fill.at(v).map(|(required, _)| [v / capacity, required]));
+    curve
+}

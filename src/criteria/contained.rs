@@ -1,0 +1,128 @@
+//! Contained: no liquid leaves a mouth; else how much, when it starts, and the highest fill that holds.
+//!
+//! The acceleration (or heel) at first spill is the limit; the volume that the brims hold on the way gives what is
+//! spilled and the highest fill. Source: [BrimPath].
+
+use crate::sources::Source;
+use crate::statics::{Lip, Spill};
+use crate::units::{Measure, Quantity, UnitSystem, fixed, number};
+
+use super::{Context, Criterion, Outcome, Sense, State, Verdict, WorkLine};
+
+pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
+
+const NAME: &str = "Contained";
+
+fn judge(context: &Context) -> Outcome {
+    Outcome { verdicts: vec![verdict(context)], absent: Vec::new() }
+}
+
+fn verdict(context: &Context) -> Verdict {
+    let not_judged = |reason: &str| Verdict {
+        source: Source::BrimPath,
+        ..context.not_judged(NAME, Sense::AtMost, reason.to_owned())
+    };
+    if let Some(reason) = &context.blocked {
+        return not_judged(reason);
+    }
+    let Some(spill) = context.spill else {
+        return not_judged("the way from rest to this case leads through free fall");
+    };
+    if spill.has_several_pools {
+        return not_judged("several pools: the liquid parts into pools with levels of their own on the way");
+    }
+    let volume = context.study.fill_volume_m3();
+    let (demand, limit) = demand_and_limit(context, spill, volume);
+    let mut verdict = match limit {
+        Some(limit) => context.verdict(NAME, demand, limit, Sense::AtMost),
+        None => Verdict {
+            state: State::Holds,
+            demand: Some(demand),
+            utilisation: Some(0.0),
+            ..context.not_judged(NAME, Sense::AtMost, unlimited(context, spill))
+        },
+    };
+    verdict.source = Source::BrimPath;
+    let governing = spill.first.map(|(_, lip)| lip).or(spill.governs);
+    if let Some(Lip { mouth_idx, brim }) = governing {
+        verdict.place = context.mouth_place(mouth_idx, brim);
+        verdict.place_words = context.mouth_words(mouth_idx, brim);
+        verdict.at = Some(brim);
+    }
+    verdict.working = working(context, spill, governing, volume);
+    if verdict.state == State::Fails {
+        verdict.mend = mend(context, spill, limit);
+    }
+    verdict
+}
+
+/// Acceleration against acceleration at first spill; heel against heel; at rest on the level, volume against what
+/// the lowest brim holds.
+fn demand_and_limit(context: &Context, spill: &Spill, volume: f64) -> (Measure, Option<Measure>) {
+    let accel = context.accel.norm();
+    let phi = context.case.attitude.angle_rad().abs();
+    let (quantity, size) = match (accel > 0.0, phi > 0.0) {
+        (true, _) => (Quantity::Acceleration, accel),
+        (false, true) => (Quantity::Angle, phi),
+        (false, false) => {
+            let holds = Measure::new(Quantity::Volume, spill.holds_m3);
+            return (Measure::new(Quantity::Volume, volume), Some(holds));
+        }
+    };
+    let demand = Measure::new(quantity, size);
+    if spill.has_several_pools_beyond {
+        // Beyond the case nothing is known: compare volumes instead.
+        let holds = Measure::new(Quantity::Volume, spill.holds_m3);
+        return (Measure::new(Quantity::Volume, volume), Some(holds));
+    }
+    let limit = spill.first.map(|(share, _)| share * size).filter(|x| x.is_finite());
+    (demand, limit.map(|x| Measure::new(quantity, x)))
+}
+
+/// Why there is no limit.
+fn unlimited(context: &Context, spill: &Spill) -> String {
+    if context.study.mouths().is_empty() {
+        "the tank has no mouth: nothing can leave".to_owned()
+    } else if !spill.turns {
+        "this acceleration does not turn effective gravity; at free fall and beyond nothing is judged".to_owned()
+    } else {
+        "no acceleration along this line makes it spill".to_owned()
+    }
+}
+
+fn working(context: &Context, spill: &Spill, governing: Option<Lip>, volume: f64) -> Vec<WorkLine> {
+    let mut lines = Vec::new();
+    if let Some(tilt) = context.gravity.tilt_rad {
+        let g = context.gravity.vec;
+        lines.push(WorkLine {
+            symbols: "θ = atan2(G_s, −G_z)".to_owned(),
+            numbers: format!("atan2({}, {}) m/s²", number(g.x, 4), number(-g.y, 4)),
+            result: Measure::new(Quantity::Angle, tilt),
+        });
+    }
+    if let Some(lip) = governing {
+        lines.push(WorkLine {
+            symbols: "V_{holds} = min V(v ≤ v_{brim}) over the ramp".to_owned(),
+            numbers: format!("brim s {} m, z {} m", fixed(lip.brim.x, 3), fixed(lip.brim.y, 3)),
+            result: Measure::new(Quantity::Volume, spill.holds_m3),
+        });
+    }
+    if spill.holds_m3.is_finite() {
+        lines.push(WorkLine {
+            symbols: "V_{spilled} = max(0, V − V_{holds})".to_owned(),
+            numbers: format!("max(0, {} − {}) m³", number(volume, 4), number(spill.holds_m3, 4)),
+            result: Measure::new(Quantity::Volume, (volume - spill.holds_m3).max(0.0)),
+        });
+    }
+    lines
+}
+
+fn mend(context: &Context, spill: &Spill, limit: Option<Measure>) -> Vec<String> {
+    let share = spill.holds_m3 / context.study.capacity_m3();
+    // Rounded down: the fill shown must hold.
+    let mut lines = vec![format!("To hold, fill {} %", fixed((share * 1000.0).floor() / 10.0, 1))];
+    if let Some(limit) = limit.filter(|l| l.si > 0.0) {
+        lines.push(format!("or stay below {}", limit.text(UnitSystem::Si)));
+    }
+    lines
+}

@@ -1,0 +1,153 @@
+//! What a criterion may look at, and the helpers that they share.
+
+use crate::cases::LoadCase;
+use crate::geom::{Point, Vec2};
+use crate::problem::Place;
+use crate::sources::Source;
+use crate::statics::{EffectiveGravity, Rims, Settled, Spill};
+use crate::study::{Limit, ValidStudy};
+use crate::units::Measure;
+
+use super::{Reach, Sense, State, Trust, Verdict};
+
+/// Physics of one load case.
+pub struct Context<'a> {
+    /// The inputs.
+    pub study: &'a ValidStudy,
+    /// The load case.
+    pub case: &'a LoadCase,
+    /// Acceleration of the tank, m/s2.
+    pub accel: Vec2,
+    /// Effective gravity.
+    pub gravity: EffectiveGravity,
+    /// z of the still level, m.
+    pub still_z_m: f64,
+    /// The way to the case; none where it leads through free fall.
+    pub spill: Option<&'a Spill>,
+    /// The settled state, or why there is none.
+    pub settled: Result<&'a Settled, &'a str>,
+    /// The rims carried on; none where effective gravity does not point toward the floor.
+    pub rims: Option<&'a Rims>,
+    /// Why nothing of this case can be judged: free fall, capillarity.
+    pub blocked: Option<String>,
+}
+
+/// Utilisation beyond which a verdict is close.
+const CLOSE_ABOVE: f64 = 0.9;
+
+/// Rounding of a utilisation: a brim that is exactly reached is not yet passed.
+const UTILISATION_ROUNDING: f64 = 1e-9;
+
+impl Context<'_> {
+    /// A verdict from demand and limit. The demand is compared in `sense`.
+    pub fn verdict(&self, criterion: &'static str, demand: Measure, limit: Measure, sense: Sense) -> Verdict {
+        let (top, bottom) = match sense {
+            Sense::AtMost => (demand.si.max(0.0), limit.si),
+            Sense::AtLeast => (limit.si.max(0.0), demand.si),
+        };
+        let utilisation = if top == 0.0 {
+            0.0
+        } else if bottom <= 0.0 {
+            f64::INFINITY
+        } else {
+            top / bottom
+        };
+        Verdict {
+            state: state_of(utilisation),
+            demand: Some(demand),
+            limit: Some(limit),
+            utilisation: Some(utilisation),
+            ..self.not_judged(criterion, sense, String::new())
+        }
+    }
+
+    /// A verdict that is not judged, and why.
+    pub fn not_judged(&self, criterion: &'static str, sense: Sense, reason: String) -> Verdict {
+        Verdict {
+            criterion,
+            state: State::NotJudged,
+            demand: None,
+            limit: None,
+            sense,
+            utilisation: None,
+            place: Place::Whole,
+            place_words: "tank".to_owned(),
+            at: None,
+            working: Vec::new(),
+            mend: Vec::new(),
+            source: Source::RigidAcceleration,
+            trust: self.trust(),
+            remark: reason,
+            unconfirmed_record: None,
+        }
+    }
+
+    /// The trust strip of a settled result.
+    pub fn trust(&self) -> Vec<Trust> {
+        let rise = match self.case.onset_s {
+            None => (Reach::Inside, "held for long: the settled value is the whole answer".to_owned()),
+            Some(t) => (
+                Reach::Near,
+                format!("builds up in {t} s; the settled value leaves out what a quick onset adds on top"),
+            ),
+        };
+        let unused = || (Reach::Inside, "not used by a settled result".to_owned());
+        let roof = (Reach::Inside, "roof and dry floor are in the geometry, exactly".to_owned());
+        [
+            ("rise time", rise),
+            ("steepness", unused()),
+            ("depth to length", unused()),
+            ("forcing period", unused()),
+            ("roof or dry floor", roof),
+        ]
+        .map(|(name, (reach, words))| Trust { name, reach, words })
+        .to_vec()
+    }
+
+    /// The name of a mouth with the end at which `at` lies.
+    pub fn mouth_words(&self, mouth_idx: usize, at: Point) -> String {
+        let mouth = &self.study.mouths()[mouth_idx];
+        let (left, right) = mouth
+            .edges(self.study.region())
+            .map(|e| e.extent(Vec2::x()))
+            .fold((f64::INFINITY, f64::NEG_INFINITY), |acc, (low, high)| (acc.0.min(low.0), acc.1.max(high.0)));
+        let slack = 1e-3 * (right - left);
+        if right - left <= 0.0 {
+            mouth.name.clone()
+        } else if at.x <= left + slack {
+            format!("{}, left end", mouth.name)
+        } else if at.x >= right - slack {
+            format!("{}, right end", mouth.name)
+        } else {
+            mouth.name.clone()
+        }
+    }
+
+    /// The outline edge of a mouth that is nearest to a point.
+    pub fn mouth_place(&self, mouth_idx: usize, at: Point) -> Place {
+        let edges = &self.study.mouths()[mouth_idx].edge_idxs;
+        let distance = |&i: &usize| self.study.region().geometry()[i].nearest(at).1;
+        edges.iter().min_by(|a, b| distance(a).total_cmp(&distance(b))).map_or(Place::Whole, |&i| Place::Edge(i))
+    }
+
+    /// Requirement records of one kind, with their index.
+    pub fn records<'s>(&'s self, kind: fn(&Limit) -> Option<f64>) -> impl Iterator<Item = (usize, f64)> + 's {
+        self.study.study().records_of(kind)
+    }
+
+    /// The index of a record when it is not confirmed.
+    pub fn unconfirmed(&self, record_idx: Option<usize>) -> Option<usize> {
+        record_idx.filter(|&i| !self.study.study().records[i].confirmed)
+    }
+}
+
+/// State of a utilisation.
+pub(super) fn state_of(utilisation: f64) -> State {
+    if utilisation > 1.0 + UTILISATION_ROUNDING {
+        State::Fails
+    } else if utilisation > CLOSE_ABOVE {
+        State::Close
+    } else {
+        State::Holds
+    }
+}

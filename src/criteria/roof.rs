@@ -1,0 +1,71 @@
+//! Roof contact: how hard the settled liquid presses on the shut roof, against a requirement record.
+//!
+//! A wall counts as roof where its outward normal lies within 45 degrees of the tank's z. Without a record there is
+//! no limit to judge by, and the contact is reported as it is.
+
+use crate::problem::Place;
+use crate::study::Limit;
+use crate::units::{Measure, Quantity, UnitSystem, fixed, number};
+
+use super::{Absent, Context, Criterion, Outcome, Sense, Verdict, WorkLine};
+
+pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
+
+const NAME: &str = "Roof contact";
+
+fn judge(context: &Context) -> Outcome {
+    let mut outcome = Outcome::default();
+    let limits = context.records(|l| if let Limit::RoofPressure(pa) = l { Some(*pa) } else { None });
+    for (record_idx, limit_pa) in limits {
+        outcome.verdicts.push(Verdict {
+            unconfirmed_record: context.unconfirmed(Some(record_idx)),
+            ..verdict(context, limit_pa)
+        });
+    }
+    if let (true, Ok(settled)) = (outcome.verdicts.is_empty(), context.settled) {
+        let reason = match &settled.roof {
+            None => "the settled liquid does not reach the roof".to_owned(),
+            Some(roof) => format!(
+                "no roof limit is given; the liquid wets {} m of roof, at up to {}",
+                fixed(roof.wetted_length_m, 2),
+                Measure::new(Quantity::GagePressure, roof.peak_pa).text(UnitSystem::Si),
+            ),
+        };
+        let place_words = settled
+            .roof
+            .as_ref()
+            .map_or_else(|| "roof".to_owned(), |r| context.study.study().section.edge_label(r.edge_idx));
+        outcome.absent.push(Absent { criterion: NAME, place_words, reason });
+    }
+    outcome
+}
+
+fn verdict(context: &Context, limit_pa: f64) -> Verdict {
+    if let Some(reason) = &context.blocked {
+        return context.not_judged(NAME, Sense::AtMost, reason.clone());
+    }
+    let settled = match context.settled {
+        Ok(settled) => settled,
+        Err(reason) => return context.not_judged(NAME, Sense::AtMost, reason.to_owned()),
+    };
+    let pressure = |pa: f64| Measure::new(Quantity::GagePressure, pa);
+    let Some(roof) = &settled.roof else {
+        return Verdict {
+            place_words: "roof".to_owned(),
+            remark: "the settled liquid does not reach the roof".to_owned(),
+            ..context.verdict(NAME, pressure(0.0), pressure(limit_pa), Sense::AtMost)
+        };
+    };
+    let weight = context.study.study().liquid.density_kg_per_m3 * context.gravity.magnitude;
+    Verdict {
+        place: Place::Edge(roof.edge_idx),
+        place_words: context.study.study().section.edge_label(roof.edge_idx),
+        at: Some(roof.at),
+        working: vec![WorkLine {
+            symbols: "p = ρ |G| (v_{surface} − v)".to_owned(),
+            numbers: format!("{} Pa/m × {} m", number(weight, 4), fixed(roof.peak_pa / weight, 3)),
+            result: pressure(roof.peak_pa),
+        }],
+        ..context.verdict(NAME, pressure(roof.peak_pa), pressure(limit_pa), Sense::AtMost)
+    }
+}
