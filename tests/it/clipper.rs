@@ -71,6 +71,7 @@ fn centroids_agree_with_quadrature_and_a_polygon_library() {
         let region = geo_region(&sample.outline, &sample.obstacles, 1e-7 * (high - low));
         let clipped = geo_measure(&geo_below(&region, up, settled.level_m)).centroid;
         let off = (settled.centroid - clipped).norm();
-        prop_assert!(off <= 1e-5 * (high - low), "share {share}: got {}, clipped {clipped}", settled.centroid);
+        // Chords for arcs: an area off by up to 1e-7 of the section's, seen from a body of its share.
+        prop_assert!(off <= 1e-6 * (high - low) / share, "share {share}: got {}, clipped {clipped}", settled.centroid);
     });
 }

@@ -43,7 +43,8 @@ fn scale(sample: &Sample, settled: &Settled) -> Scale {
     let length_m = [high - low, right - left, low.abs(), high.abs(), left.abs(), right.abs()].into_iter().fold(0.0, f64::max);
     // A thin wedge of liquid far along a wall presses little in sum though its parts press much.
     let pressed: f64 = settled.edges.iter().map(|e| e.force_n.norm()).sum();
-    let force_n = pressed + settled.total_force_n.norm();
+    let weight_n = (settled.volume_m3 + settled.spilled_m3) * WATER * GRAVITY;
+    let force_n = pressed + weight_n;
     Scale { force_n, moment_n_m: force_n * length_m, length_m }
 }
 

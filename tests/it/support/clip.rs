@@ -114,7 +114,7 @@ fn part_below(v: &impl Fn(f64) -> f64, from: f64, to: f64, level: f64) -> Option
 }
 
 fn bisect(f: &impl Fn(f64) -> f64, mut a: f64, mut b: f64) -> f64 {
-    let rises = f(b) > 0.0;
+    let rises = f(a) < 0.0;
     while b - a > f64::EPSILON * b.abs() {
         let middle = 0.5 * (a + b);
         if (f(middle) > 0.0) == rises { b = middle } else { a = middle }

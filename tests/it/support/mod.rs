@@ -19,7 +19,7 @@ pub const GRAVITY: f64 = 9.81;
 /// Density of the published worked examples, kg/m3.
 pub const WATER: f64 = 1000.0;
 
-/// A study of water under [`GRAVITY`], with moments about (0, 0) and no load case yet.
+/// A study of water under [`GRAVITY`], with moments about (0, 0), at rest.
 pub fn study(section: Section, fill: Fill) -> Study {
     Study {
         title: "check".into(),
@@ -37,7 +37,7 @@ pub fn study(section: Section, fill: Fill) -> Study {
             surface_tension_n_per_m: None,
         },
         fill,
-        cases: vec![],
+        cases: vec![held(0.0, 0.0)],
         points: vec![],
         moment_about: Point::origin(),
         records: vec![],
