@@ -59,11 +59,10 @@ fn judge_case(study: &ValidStudy, case: &LoadCase, still_z_m: f64) -> (CaseResul
     let is_turn = accel.norm() == 0.0 && phi != 0.0;
     let at_rest = effective_gravity(inputs.gravity_m_per_s2, phi, Vec2::zeros()).vec;
     let ramp = if is_turn { Some(Ramp::turn(phi)) } else { Ramp::accelerate(at_rest, accel) };
-    let width = &inputs.section.width;
     let volume = study.fill_volume_m3();
-    let spill = ramp.map(|ramp| Spill::trace(&ramp, study.region(), width, study.mouths(), volume));
+    let spill = ramp.map(|ramp| Spill::trace(&ramp, study.region(), study.vessel(), study.mouths(), volume));
     let settled = settle_case(study, &gravity, spill.as_ref());
-    let rims = gravity.up.and_then(|up| Rims::new(study.region(), study.mouths(), up));
+    let rims = gravity.up.and_then(|up| Rims::new(study.region(), &inputs.section.width, study.mouths(), up));
     let context = Context {
         study,
         case,

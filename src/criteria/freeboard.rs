@@ -103,7 +103,7 @@ pub struct FreeboardFill<'a> {
 impl<'a> FreeboardFill<'a> {
     /// For the mouth `mouth_idx`, whose walls are carried on in `rims`.
     pub fn new(study: &'a ValidStudy, rims: &'a Rims, mouth_idx: usize, allowance_m: f64) -> FreeboardFill<'a> {
-        let tilted = rims.tilted(&study.study().section.width);
+        let tilted = rims.tilted();
         FreeboardFill { study, rims, tilted, still: study.tilted(Vec2::y()), mouth_idx, allowance_m }
     }
 

@@ -5,11 +5,11 @@
 
 use std::f64::consts::PI;
 
-use crate::geom::{Edge, Point, Vec2};
-use crate::num::{bisect, golden_min};
-use crate::section::{Mouth, Region, WidthLaw};
+use crate::geom::{Point, Vec2};
+use crate::num::{golden_min, root};
+use crate::section::{Mouth, Region};
 
-use super::tilted::Tilted;
+use super::tilted::Vessel;
 
 /// A ramp of the direction of effective gravity, by tilt angle.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -123,10 +123,10 @@ impl Spill {
     /// Follows `volume_m3` along `ramp`.
     ///
     /// Spilled volume counts as gone: after a spill the volume is what the brim left. Accuracy: turns to 1e-14 rad,
-    /// volumes as [`Tilted`].
+    /// volumes as [`super::Tilted`].
     /// Source: [BrimPath].
-    pub fn trace(ramp: &Ramp, region: &Region, width: &WidthLaw, mouths: &[Mouth], volume_m3: f64) -> Spill {
-        let way = Way { ramp, region, edges: region.geometry(), width, mouths };
+    pub fn trace(ramp: &Ramp, region: &Region, vessel: &Vessel, mouths: &[Mouth], volume_m3: f64) -> Spill {
+        let way = Way { ramp, region, vessel, mouths };
         let mut spill = Spill {
             holds_m3: f64::INFINITY,
             governs: None,
@@ -154,15 +154,14 @@ impl Spill {
                 && stop.holds_m3 < stop.capacity_m3;
             if is_dip {
                 let high = if stop.turned <= case { turns[i + 1].min(case) } else { turns[i + 1] };
-                let (turned, _) = golden_min(turns[i - 1], high, 1e-10, |t| way.at(t).holds_m3);
+                let (turned, _) = golden_min(turns[i - 1], high, 1e-7, |t| way.at(t).holds_m3);
                 let refined = way.at(turned);
                 if refined.holds_m3 < stop.holds_m3 {
                     stop = refined;
                 }
             }
             let on_the_way = turns[i] <= case;
-            let n_pools = way.n_pools(&stop, left.min(stop.holds_m3));
-            if n_pools > 1 {
+            if way.is_parted(&stop, left.min(stop.holds_m3)) {
                 if on_the_way {
                     spill.has_several_pools = true;
                     spill.first = None;
@@ -176,7 +175,7 @@ impl Spill {
                 spill.governs = stop.lip;
             }
             if spill.first.is_none() && stop.holds_m3 < volume_m3 - slack {
-                let turned = bisect(before, stop.turned, 1e-15, |t| way.at(t).holds_m3 < volume_m3);
+                let turned = root(before, stop.turned, 1e-15, |t| volume_m3 - way.at(t).holds_m3);
                 spill.first = way.at(turned).lip.map(|lip| (ramp.share(turned), lip));
             }
             if spill.first.is_some() && !on_the_way {
@@ -192,8 +191,7 @@ impl Spill {
 struct Way<'a> {
     ramp: &'a Ramp,
     region: &'a Region,
-    edges: &'a [Edge],
-    width: &'a WidthLaw,
+    vessel: &'a Vessel,
     mouths: &'a [Mouth],
 }
 
@@ -204,13 +202,14 @@ struct Stop {
     /// Volume below the lowest brim, m3; the capacity without mouths.
     holds_m3: f64,
     capacity_m3: f64,
+    brim_level: f64,
     lip: Option<Lip>,
 }
 
 impl Way<'_> {
     fn at(&self, turned: f64) -> Stop {
         let up = self.ramp.up(turned);
-        let tilted = Tilted::new(self.edges, self.width, up);
+        let tilted = self.vessel.tilted(up);
         let lowest = self
             .mouths
             .iter()
@@ -219,15 +218,23 @@ impl Way<'_> {
             .min_by(|a, b| a.0.0.total_cmp(&b.0.0));
         let capacity_m3 = tilted.capacity_m3();
         match lowest {
-            None => Stop { turned, holds_m3: capacity_m3, capacity_m3, lip: None },
-            Some(((level, brim), mouth_idx)) => {
-                Stop { turned, holds_m3: tilted.volume_below(level), capacity_m3, lip: Some(Lip { mouth_idx, brim }) }
-            }
+            None => Stop { turned, holds_m3: capacity_m3, capacity_m3, brim_level: tilted.span().1, lip: None },
+            Some(((level, brim), mouth_idx)) => Stop {
+                turned,
+                holds_m3: tilted.volume_below(level),
+                capacity_m3,
+                brim_level: level,
+                lip: Some(Lip { mouth_idx, brim }),
+            },
         }
     }
 
-    fn n_pools(&self, stop: &Stop, volume_m3: f64) -> usize {
-        let tilted = Tilted::new(self.edges, self.width, self.ramp.up(stop.turned));
-        tilted.n_pools(tilted.level_for_volume(volume_m3))
+    /// Whether the liquid stands in several pools there.
+    fn is_parted(&self, stop: &Stop, volume_m3: f64) -> bool {
+        let tilted = self.vessel.tilted(self.ramp.up(stop.turned));
+        if tilted.is_one_basin(stop.brim_level) {
+            return false;
+        }
+        tilted.n_pools(tilted.level_for_volume(volume_m3)) > 1
     }
 }
