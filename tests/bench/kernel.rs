@@ -43,15 +43,19 @@ pub fn run() {
 
 /// The same surfaces by polygon clipping under a bracketing root finder, in the same run.
 fn compare_with_clipping(outline: &[Edge], ups: &[Vec2], ours_s: f64) {
-    let region = geo_region(outline, &[], 1.0);
+    let region = geo_region(outline, &[]);
     let few = &ups[..20];
-    let theirs_s = median_s(|| few.iter().for_each(|&up| _ = black_box(settle_by_clipping(&region, outline, up)))) / 20.0;
+    let theirs_s =
+        median_s(|| few.iter().for_each(|&up| _ = black_box(settle_by_clipping(&region, outline, up)))) / 20.0;
     let apart = few.iter().map(|&up| (settle(outline, up) - settle_by_clipping(&region, outline, up)).abs());
     let apart = apart.fold(0.0, f64::max);
     println!("  the same by clipping with `geo` under an Illinois root finder {:>7.0} /s", 1.0 / theirs_s);
     let ratio = theirs_s / ours_s;
     let word = if ratio >= 50.0 { "reached" } else { "missed" };
-    println!("  ours is {ratio:.0} times as fast; aim 50; {word}. Levels agree to {apart:.1e} m on a section of {:.2} m", size(outline));
+    println!(
+        "  ours is {ratio:.0} times as fast; aim 50; {word}. Levels agree to {apart:.1e} m on a section of {:.2} m",
+        size(outline)
+    );
 }
 
 /// Half full, along a direction.

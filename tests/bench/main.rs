@@ -9,7 +9,8 @@ mod support;
 mod timing;
 
 /// Name and body of every section, in the order printed.
-const SECTIONS: &[(&str, fn())] = &[("kernel", kernel::run), ("precision", kernel::precision), ("demos", kernel::demos)];
+const SECTIONS: &[(&str, fn())] =
+    &[("kernel", kernel::run), ("precision", kernel::precision), ("demos", kernel::demos)];
 
 fn main() {
     let wanted: Vec<String> = std::env::args().skip(1).filter(|arg| !arg.starts_with('-')).collect();

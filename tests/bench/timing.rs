@@ -5,7 +5,8 @@ use std::time::{Duration, Instant};
 /// Processor, cores and build, as the table's head shows them.
 pub fn machine() -> String {
     let info = std::fs::read_to_string("/proc/cpuinfo").unwrap_or_default();
-    let model = info.lines().find_map(|line| line.strip_prefix("model name")).map(|rest| rest.trim_matches([' ', '\t', ':']));
+    let model =
+        info.lines().find_map(|line| line.strip_prefix("model name")).map(|rest| rest.trim_matches([' ', '\t', ':']));
     let n_cores = std::thread::available_parallelism().map_or(1, |n| n.get());
     let build = if cfg!(debug_assertions) { "debug build: the figures mean nothing" } else { "release build" };
     format!("{}, {n_cores} cores, {build}", model.unwrap_or("unknown processor"))

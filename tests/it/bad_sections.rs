@@ -6,9 +6,11 @@ use brimwright::geom::{Edge, Vec2};
 use brimwright::problem::{Place, Problem, Severity};
 use brimwright::section::{Section, WidthLaw, check};
 use brimwright::study::Fill;
+use proptest::prelude::*;
 
+use crate::support::random::{any as sections, config, star};
 use crate::support::shapes::{circle, obstacle, polygon, rectangle, section};
-use crate::support::study;
+use crate::support::{held, study};
 
 fn faults(section: &Section) -> Vec<Problem> {
     let problems = check(section).err().unwrap_or_default();
@@ -193,10 +195,37 @@ fn a_study_lists_the_faults_of_its_section_and_its_own() {
     bad.section.outline[1].start.x = f64::NAN;
     bad.gravity_m_per_s2 = 0.0;
     bad.liquid.density_kg_per_m3 = f64::NAN;
-    bad.cases = vec![crate::support::held(f64::INFINITY, 0.0)];
+    bad.cases = vec![held(f64::INFINITY, 0.0)];
     let problems = bad.validate().expect_err("a bad study");
     let found: Vec<&Place> = problems.iter().map(|p| &p.place).collect();
     assert!(found.contains(&&Place::Edge(1)), "{found:?}");
     assert!(found.contains(&&Place::Case(0)), "{found:?}");
     assert!(found.iter().filter(|p| matches!(p, Place::Field(_))).count() >= 2, "gravity and density: {found:?}");
+}
+
+#[test]
+fn random_sound_sections_are_let_in() {
+    proptest!(config(100, 51), |(sample in sections())| {
+        let section = sample.section(&[0], 1.0);
+        prop_assert!(check(&section).is_ok(), "{:?}", faults(&section));
+    });
+}
+
+#[test]
+fn an_obstacle_pushed_through_a_wall_is_refused() {
+    proptest!(config(60, 52), |(sample in star(5..=20, true), which in 0..99_usize)| {
+        // A small square round the middle of a wall.
+        let edge = sample.outline[which % sample.outline.len()];
+        let (middle, reach) = (edge.point_at(0.5), 1e-3 * edge.length());
+        let square: Vec<Edge> = rectangle(reach, reach)
+            .iter()
+            .map(|e| {
+                let by = middle.coords - Vec2::new(0.5, 0.5) * reach;
+                Edge::line(e.start + by, e.end + by)
+            })
+            .collect();
+        let mut section = sample.section(&[0], 1.0);
+        section.obstacles = vec![obstacle(&square)];
+        prop_assert!(check(&section).is_err(), "an obstacle across a wall was let in");
+    });
 }

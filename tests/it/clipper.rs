@@ -11,7 +11,7 @@ use crate::support::{held, judge_case, settled, study};
 
 #[test]
 fn areas_agree_with_boundary_quadrature() {
-    proptest!(config(400, 31), |(sample in any(), up in direction(), share in share())| {
+    proptest!(config(200, 31), |(sample in any(), up in direction(), share in share())| {
         let edges = sample.edges();
         let (low, high) = sample.extent(up);
         let level = low + share * (high - low);
@@ -25,7 +25,7 @@ fn areas_agree_with_boundary_quadrature() {
 #[test]
 fn areas_and_pools_agree_with_a_polygon_library() {
     proptest!(config(150, 32), |(sample in star(5..=40, false), up in direction(), share in share())| {
-        let region = geo_region(&sample.outline, &sample.obstacles, 1.0);
+        let region = geo_region(&sample.outline, &sample.obstacles);
         let sublevel = Sublevel::new(&sample.edges(), up);
         let (low, high) = sample.extent(up);
         let level = low + share * (high - low);
@@ -42,7 +42,7 @@ fn areas_and_pools_agree_with_a_polygon_library() {
 #[test]
 fn levels_agree_with_clipping_and_bisection() {
     proptest!(config(24, 33), |(sample in star(5..=20, false), up in direction(), share in share())| {
-        let region = geo_region(&sample.outline, &sample.obstacles, 1.0);
+        let region = geo_region(&sample.outline, &sample.obstacles);
         let area = share * region.unsigned_area();
         let (mut low, mut high) = sample.extent(up);
         let size = high - low;
@@ -60,7 +60,7 @@ fn levels_agree_with_clipping_and_bisection() {
 
 #[test]
 fn centroids_agree_with_quadrature_and_a_polygon_library() {
-    proptest!(config(80, 34), |(sample in convex(true), share in share(), a_s in -30.0..30.0, a_z in -9.0..30.0)| {
+    proptest!(config(50, 34), |(sample in convex(true), share in share(), a_s in -30.0..30.0, a_z in -9.0..30.0)| {
         let case = judge_case(&study(sample.section(&[], 1.0), Fill::Share(share)), held(a_s, a_z));
         let (settled, up) = (settled(&case), case.gravity.up.unwrap());
         let (low, high) = sample.extent(up);
@@ -68,10 +68,10 @@ fn centroids_agree_with_quadrature_and_a_polygon_library() {
         let off = (settled.centroid - want).norm();
         // The level itself moves the centroid; both carry rounding of the section's place and size.
         prop_assert!(off <= 1e-9 * (high - low), "share {share}: got {}, quadrature {want}", settled.centroid);
-        let region = geo_region(&sample.outline, &sample.obstacles, 1e-7 * (high - low));
+        let region = geo_region(&sample.outline, &sample.obstacles);
         let clipped = geo_measure(&geo_below(&region, up, settled.level_m)).centroid;
         let off = (settled.centroid - clipped).norm();
-        // Chords for arcs: an area off by up to 1e-7 of the section's, seen from a body of its share.
-        prop_assert!(off <= 1e-6 * (high - low) / share, "share {share}: got {}, clipped {clipped}", settled.centroid);
+        // Chords for arcs: an area off by up to 1e-6 of the section's, seen from a body of its share.
+        prop_assert!(off <= 1e-5 * (high - low) / share, "share {share}: got {}, clipped {clipped}", settled.centroid);
     });
 }

@@ -66,9 +66,8 @@ fn a_full_shut_tank_has_its_centroid_in_the_middle_whatever_the_direction() {
             let settled = settled(&case);
             near(settled.volume_m3, 8.0, 1e-12);
             near_point(settled.centroid, (2.0, 1.0), 1e-12);
-            // At rest the surface lies along the roof, which it wets but does not press.
-            // Tilted, the last of the liquid is a corner whose sides go as the root of its area.
-            if a_s != 0.0 {
+            // Along an edge the surface wets but does not press. At a slant the last of the liquid is a corner whose sides go as the root of its area.
+            if a_s != 0.0 && a_z != -GRAVITY {
                 near(settled.edges.iter().map(|e| e.wetted_length_m).sum(), 12.0, 1e-6);
             }
         }
@@ -228,7 +227,7 @@ fn a_needle_thin_section() {
     for (up, blur) in [(UP, 1e-22), (Vec2::new(1.0, 0.0), 1e-22), (Vec2::new(0.6, 0.8), 1e-15)] {
         let sublevel = Sublevel::new(&rectangle(1.0, 1e-9), up);
         near(sublevel.total_area(), 1e-9, blur);
-        near(sublevel.area_below(sublevel.level_for_area(3e-10)), 3e-10, 1e-12 * 3e-10);
+        near(sublevel.area_below(sublevel.level_for_area(3e-10)), 3e-10, blur);
     }
 }
 
@@ -240,10 +239,8 @@ fn scales_from_micrometres_to_kilometres() {
         let metre = Sublevel::new(shape, up);
         for exponent in [-20, -10, 10, 20] {
             let factor = 2.0_f64.powi(exponent);
-            let edges: Vec<Edge> = shape
-                .iter()
-                .map(|e| Edge { start: e.start * factor, end: e.end * factor, sweep: e.sweep })
-                .collect();
+            let edges: Vec<Edge> =
+                shape.iter().map(|e| Edge { start: e.start * factor, end: e.end * factor, sweep: e.sweep }).collect();
             let scaled = Sublevel::new(&edges, up);
             for share in [0.01, 0.3, 0.77] {
                 let (a, b) = (share * metre.total_area(), share * scaled.total_area());

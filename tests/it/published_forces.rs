@@ -69,7 +69,8 @@ fn round_end_walls() {
         barrel.width = WidthLaw::RoundBarrel { diameter_m: 2.0, bottom_z_m: 0.0 };
         let case = judge_case(&study(barrel, Fill::Level(level)), held(0.0, 0.0));
         for end in [1, 3] {
-            let (load, surface) = (edge_load(settled(&case), end), Point::new(if end == 1 { 5.0 } else { 0.0 }, level));
+            let (load, surface) =
+                (edge_load(settled(&case), end), Point::new(if end == 1 { 5.0 } else { 0.0 }, level));
             compare_plane_wall(&mut findings, row, load, surface, Vec2::new(0.0, -1.0));
         }
     }
@@ -110,7 +111,11 @@ fn curved_walls() {
         row.compare(&mut findings, "outward_n", load.force_n.dot(&outward));
         row.compare(&mut findings, "up_n", load.force_n.y);
         row.compare(&mut findings, "resultant_n", load.force_n.norm());
-        row.compare(&mut findings, "angle_below_horizontal_deg", (-load.force_n.y).atan2(load.force_n.dot(&outward)).to_degrees());
+        row.compare(
+            &mut findings,
+            "angle_below_horizontal_deg",
+            (-load.force_n.y).atan2(load.force_n.dot(&outward)).to_degrees(),
+        );
         if row.given("resultant_n").is_some() {
             // Through the centre of the arc, about which the moments are taken.
             assert!(load.moment_n_m.abs() < 1e-9 * load.force_n.norm(), "moment {} N m", load.moment_n_m);

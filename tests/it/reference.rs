@@ -8,8 +8,10 @@ const STATUS_WORDS: [&str; 5] = ["COMPUTED", "SEEN", "SEEN+COMPUTED", "MEMORY", 
 
 fn tables() -> Vec<Table> {
     let entries = std::fs::read_dir(directory()).expect("tests/reference");
-    let mut names: Vec<String> =
-        entries.map(|entry| entry.unwrap().file_name().into_string().unwrap()).filter(|n| n.ends_with(".csv")).collect();
+    let mut names: Vec<String> = entries
+        .map(|entry| entry.unwrap().file_name().into_string().unwrap())
+        .filter(|n| n.ends_with(".csv"))
+        .collect();
     names.sort();
     names.iter().map(|name| table(name)).collect()
 }

@@ -56,12 +56,14 @@ pub fn geo_measure(pieces: &MultiPolygon) -> Below {
     Below { area: pieces.unsigned_area(), centroid }
 }
 
-/// A region for `geo`: outline and holes, their arcs cut into chords no further than `sagitta` from them.
-pub fn geo_region(outline: &[Edge], obstacles: &[Vec<Edge>], sagitta: f64) -> MultiPolygon {
+/// A region for `geo`: outline and holes, every arc cut into 200 chords.
+pub fn geo_region(outline: &[Edge], obstacles: &[Vec<Edge>]) -> MultiPolygon {
     let ring = |edges: &[Edge]| {
-        let mut points = Vec::new();
-        edges.iter().for_each(|edge| edge.flatten_into(sagitta, &mut points));
-        LineString::from(points.iter().map(|p| Coord { x: p.x, y: p.y }).collect::<Vec<_>>())
+        let chords = |e: &Edge| {
+            let (e, n_chords) = (*e, if e.is_arc() { 200 } else { 1 });
+            (0..n_chords).map(move |i| e.point_at(i as f64 / n_chords as f64))
+        };
+        LineString::from(edges.iter().flat_map(chords).map(|p| Coord { x: p.x, y: p.y }).collect::<Vec<_>>())
     };
     let holes = obstacles.iter().map(|edges| ring(edges)).collect();
     MultiPolygon::new(vec![Polygon::new(ring(outline), holes)])
@@ -70,7 +72,8 @@ pub fn geo_region(outline: &[Edge], obstacles: &[Vec<Edge>], sagitta: f64) -> Mu
 /// A rectangle as small as it may be, since the library's grid is as coarse as what it is given is large.
 fn half_plane(region: &MultiPolygon, up: Vec2, level: f64) -> Polygon {
     let points = || region.0[0].exterior().0.iter().map(|c| Vec2::new(c.x, c.y));
-    let range = |axis: Vec2| points().map(|p| axis.dot(&p)).fold((f64::MAX, f64::MIN), |r, x| (r.0.min(x), r.1.max(x)));
+    let range =
+        |axis: Vec2| points().map(|p| axis.dot(&p)).fold((f64::MAX, f64::MIN), |r, x| (r.0.min(x), r.1.max(x)));
     let ((left, right), (low, high)) = (range(along(up)), range(up));
     let margin = 0.1 * (right - left).max(high - low);
     let corner = |u: f64, v: f64| {

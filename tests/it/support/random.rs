@@ -66,23 +66,25 @@ pub fn share() -> impl Strategy<Value = f64> {
 /// A star-shaped polygon with up to two obstacles; with `arcs`, some edges are bent, in either sense.
 pub fn star(n_edges: RangeInclusive<usize>, arcs: bool) -> impl Strategy<Value = Sample> {
     let spoke = (0.0..0.8, 0.3..1.0, prop_oneof![Just(0.0), -0.9..0.9]);
-    (vec(spoke, n_edges), place(), 0..3_usize, 0.0..TAU).prop_map(move |(spokes, (center, size), n_obstacles, turn)| {
-        let n = spokes.len();
-        let at = |i: usize| {
-            let (jitter, radius, _) = spokes[i % n];
-            let angle: f64 = turn + TAU * (i as f64 + jitter) / n as f64;
-            center + Vec2::new(angle.cos(), angle.sin()) * (radius * size)
-        };
-        let bent = |i: usize| {
-            let (start, end) = (at(i), at((i + 1) % n));
-            let bend = if arcs { spokes[i].2 } else { 0.0 };
-            Edge { start, end, sweep: bend * most_bend(center, start, end, bend) }
-        };
-        let outline: Vec<Edge> = (0..n).map(bent).collect();
-        let room = outline.iter().map(|edge| edge.nearest(center).1).fold(f64::INFINITY, f64::min);
-        let obstacles = obstacles(center, room, n_obstacles, turn, arcs);
-        Sample { center, outline, obstacles }
-    })
+    (vec(spoke, n_edges), place(), 0..3_usize, 0.0..TAU).prop_map(
+        move |(spokes, (center, size), n_obstacles, turn)| {
+            let n = spokes.len();
+            let at = |i: usize| {
+                let (jitter, radius, _) = spokes[i % n];
+                let angle: f64 = turn + TAU * (i as f64 + jitter) / n as f64;
+                center + Vec2::new(angle.cos(), angle.sin()) * (radius * size)
+            };
+            let bent = |i: usize| {
+                let (start, end) = (at(i), at((i + 1) % n));
+                let bend = if arcs { spokes[i].2 } else { 0.0 };
+                Edge { start, end, sweep: bend * most_bend(center, start, end, bend) }
+            };
+            let outline: Vec<Edge> = (0..n).map(bent).collect();
+            let room = outline.iter().map(|edge| edge.nearest(center).1).fold(f64::INFINITY, f64::min);
+            let obstacles = obstacles(center, room, n_obstacles, turn, arcs);
+            Sample { center, outline, obstacles }
+        },
+    )
 }
 
 /// A convex outline with convex obstacles, so that the liquid is one pool whatever the direction and the fill.
