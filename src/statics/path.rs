@@ -124,7 +124,7 @@ impl Spill {
     ///
     /// Spilled volume counts as gone: after a spill the volume is what the brim left. Accuracy: turns to 1e-14 rad,
     /// volumes as [`super::Tilted`].
-    /// Source: [BrimPath].
+    /// Source: `BrimPath`.
     pub fn trace(ramp: &Ramp, region: &Region, vessel: &Vessel, mouths: &[Mouth], volume_m3: f64) -> Spill {
         let way = Way { ramp, region, vessel, mouths };
         let mut spill = Spill {

@@ -1,0 +1,388 @@
+//! Everything on the board that carries words: levels, brims, pressures, loads, points, faults, the legend.
+//!
+//! In order of weight, so that what matters most gets its place first.
+
+use std::sync::Arc;
+
+use egui::{Align2, Color32, FontId, Galley, Painter, Pos2, Rect, Shape, Stroke, Vec2, pos2, vec2};
+
+use crate::analysis::State;
+use crate::geom::Point;
+use crate::gui::{Look, font, marks};
+use crate::problem::Severity;
+use crate::units::{Measure, Quantity, fixed, number};
+
+use super::dims::paint_freeboard;
+use super::drag::Feedback;
+use super::labels::Labels;
+use super::lines;
+use super::scene::Scene;
+
+/// Draws all of it.
+pub fn annotate(painter: &Painter, scene: &Scene, look: &Look) {
+    let mut labels = Labels::new(scene.screen.rect);
+    labels.keep_off(dial_area(scene));
+    for edge in &scene.model.edges {
+        labels.keep_off_line(&scene.screen.line(&edge.points));
+    }
+    for points in &scene.model.obstacles {
+        labels.keep_off_line(&scene.screen.line(points));
+    }
+    for piece in &scene.model.surface {
+        labels.keep_off_line(&[scene.at(piece.left), scene.at(piece.right)]);
+    }
+    let pen = Pen { painter, scene, look };
+    pen.paint_reason(&mut labels);
+    pen.paint_faults(&mut labels);
+    let reach = scene.model.freeboard.map(|f| paint_freeboard(painter, scene, &f, &mut labels, look));
+    pen.paint_brims(&mut labels);
+    pen.paint_still(&mut labels, reach);
+    pen.paint_governs(&mut labels);
+    pen.paint_loads(&mut labels);
+    pen.paint_isobar_labels(&mut labels);
+    pen.paint_points(&mut labels);
+    pen.paint_legend();
+}
+
+/// The dotted cross at what is held, the lines to what it aligned with, and the numbers beside it.
+pub fn paint_feedback(painter: &Painter, scene: &Scene, pos: Pos2, feedback: &Feedback, look: &Look) {
+    let hint = Stroke::new(1.2, look.accent);
+    let at = feedback.at.map_or(pos, |p| scene.at(p));
+    if feedback.at.is_some() {
+        for arm in [vec2(58.0, 0.0), vec2(0.0, 58.0)] {
+            lines::dashed(painter, &[at - arm, at + arm], hint, 2.0, 3.0);
+        }
+    }
+    for p in &feedback.aligned_with {
+        lines::dashed(painter, &[at, scene.at(*p)], hint, 2.0, 3.0);
+        painter.circle_stroke(scene.at(*p), 5.0, hint);
+    }
+    if feedback.words.is_empty() {
+        return;
+    }
+    let words = painter.layout_no_wrap(feedback.words.clone(), font::small_figure(), look.accent);
+    let mut labels = Labels::new(scene.screen.rect);
+    let places = [
+        (at + vec2(14.0, -10.0), Align2::LEFT_BOTTOM),
+        (at + vec2(-14.0, -10.0), Align2::RIGHT_BOTTOM),
+        (at + vec2(14.0, 14.0), Align2::LEFT_TOP),
+        (at + vec2(-14.0, 14.0), Align2::RIGHT_TOP),
+    ];
+    let rect = labels.place_anyway(words.size(), &places);
+    painter.rect_filled(rect.expand2(vec2(4.0, 1.0)), 0.0, look.board);
+    painter.galley(rect.min, words, look.accent);
+}
+
+/// The part of the board that the bob and the legend keep for themselves.
+pub fn dial_area(scene: &Scene) -> Rect {
+    let dial = &scene.dial;
+    let lowest = dial.lowest(&scene.hanging).min(dial.rect.bottom());
+    dial.rect.with_max_y(lowest + 6.0).expand2(vec2(6.0, 4.0))
+}
+
+struct Pen<'a> {
+    painter: &'a Painter,
+    scene: &'a Scene<'a>,
+    look: &'a Look,
+}
+
+impl Pen<'_> {
+    fn text(&self, text: impl Into<String>, font: FontId, color: Color32) -> Arc<Galley> {
+        self.painter.layout_no_wrap(text.into(), font, color)
+    }
+
+    /// Text on a piece of paper of its own.
+    fn put(&self, rect: Rect, text: Arc<Galley>) {
+        self.painter.rect_filled(rect.expand2(vec2(2.0, -1.0)), 0.0, self.look.board);
+        self.painter.galley(rect.min, text, self.look.ink);
+    }
+
+    fn paint_reason(&self, labels: &mut Labels) {
+        let Some(reason) = &self.scene.model.not_judged else { return };
+        let area = self.scene.screen.rect;
+        let width = (self.scene.dial.rect.left() - area.left() - 60.0).max(80.0);
+        let text = self.painter.layout(format!("Not judged: {reason}"), font::small(), self.look.ink, width);
+        let rect = Rect::from_min_size(area.min + vec2(36.0, 8.0), text.size());
+        marks::paint_cup(self.painter, area.min + vec2(20.0, 16.0), 16.0, State::NotJudged, self.look);
+        labels.keep_off(rect.expand(4.0));
+        self.put(rect, text);
+    }
+
+    fn paint_faults(&self, labels: &mut Labels) {
+        for fault in &self.scene.model.faults {
+            let at = self.scene.at(fault.at);
+            let state = if fault.severity == Severity::Fault { State::Fails } else { State::Close };
+            let color = self.look.state(state);
+            let halo = Stroke::new(6.0, self.look.board);
+            let stroke = Stroke::new(2.0, color);
+            match fault.severity {
+                Severity::Fault => {
+                    self.painter.circle_stroke(at, 12.0, halo);
+                    self.painter.circle_stroke(at, 12.0, stroke);
+                }
+                Severity::Warning => {
+                    let corners = [vec2(0.0, -14.0), vec2(13.0, 9.0), vec2(-13.0, 9.0)].map(|v| at + v);
+                    self.painter.add(Shape::closed_line(corners.to_vec(), halo));
+                    self.painter.add(Shape::closed_line(corners.to_vec(), stroke));
+                }
+            }
+            let number = self.text(fault.number.to_string(), font::heading(), color);
+            let off = |x: f32, y: f32, align| (at + vec2(x, y), align);
+            let places = [
+                off(12.0, -8.0, Align2::LEFT_BOTTOM),
+                off(-12.0, -8.0, Align2::RIGHT_BOTTOM),
+                off(12.0, 8.0, Align2::LEFT_TOP),
+                off(-12.0, 8.0, Align2::RIGHT_TOP),
+                off(24.0, -8.0, Align2::LEFT_BOTTOM),
+                off(-24.0, -8.0, Align2::RIGHT_BOTTOM),
+            ];
+            if self.scene.screen.rect.contains(at) {
+                let rect = labels.place_anyway(number.size(), &places);
+                self.put(rect, number);
+            }
+        }
+        if let Some(middle) = self.scene.model.last_good.first().map(|points| points[points.len() / 2]) {
+            let text = self.text("last good outline, dashed", font::small(), self.look.ink2);
+            let at = self.scene.at(middle);
+            let places = around(at, 10.0);
+            if let Some(rect) = labels.place(text.size(), places) {
+                self.put(rect, text);
+            }
+        }
+    }
+
+    fn paint_brims(&self, labels: &mut Labels) {
+        for brim in &self.scene.model.brims {
+            let at = self.scene.at(brim.at);
+            let ink = if brim.governs { self.look.ink } else { self.look.ink3 };
+            let corners = vec![at, at + vec2(-5.0, -8.0), at + vec2(5.0, -8.0)];
+            self.painter.add(Shape::convex_polygon(corners, self.look.board, Stroke::new(1.25, ink)));
+            labels.keep_off(Rect::from_min_max(at + vec2(-5.0, -8.0), at + vec2(5.0, 0.0)));
+            let text = self.text("brim", font::small(), self.look.ink2);
+            let places = [
+                (at + vec2(9.0, -2.0), Align2::LEFT_BOTTOM),
+                (at + vec2(-9.0, -2.0), Align2::RIGHT_BOTTOM),
+                (at + vec2(0.0, -10.0), Align2::CENTER_BOTTOM),
+            ];
+            if let Some(rect) = labels.place(text.size(), places).filter(|_| brim.governs) {
+                self.put(rect, text);
+            }
+        }
+    }
+
+    fn paint_still(&self, labels: &mut Labels, reach: Option<f32>) {
+        let Some(z) = self.scene.model.still_z_m else { return };
+        let y = self.painter.round_to_pixel_center(self.scene.at(Point::new(0.0, z)).y);
+        let level = Measure::new(Quantity::Length, z).text_to(self.scene.units, 4);
+        let text = self.text(format!("still {level}"), font::small(), self.look.ink2);
+        let area = self.scene.screen.rect;
+        let bounds = self.scene.bounds();
+        let left = (bounds.left() - text.size().x - 10.0).max(area.left() + 6.0);
+        let right = (bounds.right() + 14.0).min(self.scene.dial.rect.left() - 4.0);
+        let (from, to) = match reach {
+            Some(x) => (left.min(x), right.max(x)),
+            None => (left, right),
+        };
+        lines::dashed(self.painter, &[pos2(from, y), pos2(to, y)], Stroke::new(1.0, self.look.ink3), 6.0, 4.0);
+        if !area.y_range().contains(y) {
+            return;
+        }
+        let places = [
+            (pos2(left, y - 2.0), Align2::LEFT_BOTTOM),
+            (pos2(left, y + 2.0), Align2::LEFT_TOP),
+            (pos2(right, y - 2.0), Align2::RIGHT_BOTTOM),
+            (pos2(right, y + 2.0), Align2::RIGHT_TOP),
+            (pos2(bounds.center().x, y - 2.0), Align2::CENTER_BOTTOM),
+            (pos2(bounds.center().x, y + 2.0), Align2::CENTER_TOP),
+        ];
+        let rect = labels.place_anyway(text.size(), &places);
+        self.put(rect, text);
+    }
+
+    fn paint_governs(&self, labels: &mut Labels) {
+        let Some((at, measure)) = self.scene.model.governs.at else { return };
+        let at = self.scene.at(at);
+        self.painter.circle(at, 6.5, self.look.board, Stroke::NONE);
+        self.painter.circle_filled(at, 4.5, self.look.accent);
+        labels.keep_off(Rect::from_center_size(at, Vec2::splat(13.0)));
+        // The dimension says it already.
+        let is_dimensioned = self.scene.model.freeboard.is_some_and(|f| self.scene.at(f.brim) == at);
+        if let Some(measure) = measure.filter(|_| !is_dimensioned) {
+            let text = self.text(measure.text(self.scene.units), font::body_heavy(), self.look.accent);
+            if let Some(rect) = labels.place(text.size(), around(at, 11.0)) {
+                self.put(rect, text);
+            }
+        }
+    }
+
+    fn paint_loads(&self, labels: &mut Labels) {
+        let loads = &self.scene.model.loads;
+        let largest = loads.iter().map(|l| l.force_n.norm()).fold(0.0, f64::max);
+        let mut sorted: Vec<_> = loads.iter().filter(|l| l.force_n.norm() > 1e-3 * largest).collect();
+        sorted.sort_by(|a, b| b.force_n.norm().total_cmp(&a.force_n.norm()));
+        for load in sorted {
+            let along = self.scene.screen.screen_vec(load.force_n).normalized();
+            let tail = self.scene.at(load.on_edge);
+            let length = 14.0 + 40.0 * (load.force_n.norm() / largest).sqrt() as f32;
+            let tip = tail + along * length;
+            lines::arrow(self.painter, tail, tip, Stroke::new(1.4, self.look.ink), self.look.board);
+            labels.keep_off_line(&[tail, tip]);
+            let force = Measure::new(Quantity::Force, load.force_n.norm()).text(self.scene.units);
+            let text = self.text(force, font::small_figure(), self.look.ink);
+            let at = tip + along * 5.0;
+            let side = along.rot90() * 8.0;
+            let places = [
+                (at, align_toward(along)),
+                (tip + side, align_toward(along.rot90())),
+                (tip - side, align_toward(-along.rot90())),
+            ];
+            if let Some(rect) = labels.place(text.size(), places) {
+                self.put(rect, text);
+            }
+        }
+    }
+
+    /// Numbers on paper at the lower ends of the isobars; the deepest one bears the unit.
+    fn paint_isobar_labels(&self, labels: &mut Labels) {
+        let model = &self.scene.model;
+        let Some(tints) = model.tints else { return };
+        let unit = Quantity::GagePressure.unit(self.scene.units);
+        let decimals = decimals_of(unit.from_si(tints.step_pa));
+        let mut needs_unit = true;
+        for isobar in model.isobars.iter().rev() {
+            let (Some(first), Some(last)) = (isobar.chords.first(), isobar.chords.last()) else { continue };
+            let (left, right) = (self.scene.at(first[0]), self.scene.at(last[1]));
+            let along = (right - left).normalized();
+            let value = fixed(unit.from_si(isobar.gage_pa), decimals);
+            let words = if needs_unit { format!("{value} {}", unit.symbol) } else { value };
+            let text = self.text(words, font::tick(), self.look.ink2);
+            let mut ends = [(left, -along), (right, along)];
+            if right.y > left.y + 1.0 {
+                ends.swap(0, 1);
+            }
+            let free = ends.into_iter().find_map(|(end, out)| {
+                let place = (end + out * 10.0, align_toward(out));
+                labels.place(text.size(), [place]).map(|rect| (end, out, rect))
+            });
+            if let Some((end, out, rect)) = free {
+                let tick = [end + out * 2.0, end + out * 8.0];
+                lines::segment(self.painter, tick, Stroke::new(0.75, self.look.ink.gamma_multiply(0.55)));
+                self.put(rect, text);
+                needs_unit = false;
+            }
+        }
+    }
+
+    fn paint_points(&self, labels: &mut Labels) {
+        let model = &self.scene.model;
+        for point in &model.points {
+            let at = self.scene.at(point.at);
+            self.painter.circle(at, 3.0, self.look.ink, Stroke::new(2.0, self.look.board));
+            let gage = point.gage_pa.map(|pa| Measure::new(Quantity::GagePressure, pa).text(self.scene.units));
+            let words = [Some(point.name.clone()), gage].into_iter().flatten().collect::<Vec<_>>().join("  ");
+            let text = self.text(words, font::tick(), self.look.ink);
+            if let Some(rect) = labels.place(text.size(), around(at, 7.0)) {
+                self.put(rect, text);
+            }
+        }
+        if let Some(centroid) = model.centroid {
+            let at = self.scene.at(centroid);
+            paint_centroid(self.painter, at, self.look);
+            labels.keep_off(Rect::from_center_size(at, Vec2::splat(14.0)));
+            let text = self.text("centroid", font::tick(), self.look.ink);
+            if let Some(rect) = labels.place(text.size(), around(at, 10.0)) {
+                self.put(rect, text);
+            }
+        }
+        if self.scene.judged.is_some() {
+            let at = self.scene.at(model.moment_about);
+            for arm in [vec2(5.0, 0.0), vec2(0.0, 5.0)] {
+                lines::segment(self.painter, [at - arm, at + arm], Stroke::new(5.0, self.look.board));
+                lines::segment(self.painter, [at - arm, at + arm], Stroke::new(1.25, self.look.ink3));
+            }
+            self.painter.circle_stroke(at, 3.0, Stroke::new(1.0, self.look.ink3));
+            let text = self.text("moment point", font::tick(), self.look.ink3);
+            if let Some(rect) = labels.place(text.size(), around(at, 8.0)) {
+                self.put(rect, text);
+            }
+        }
+    }
+
+    /// The tints with their pressures, under the bob, where there is room.
+    fn paint_legend(&self) {
+        let (Some(tints), dial) = (self.scene.model.tints, &self.scene.dial) else { return };
+        let bottom = self.scene.screen.rect.bottom() - 10.0;
+        let width = dial.rect.width() - 20.0;
+        let bar = Rect::from_min_max(pos2(dial.rect.left(), bottom - 28.0), pos2(dial.rect.left() + width, bottom - 17.0));
+        if bar.top() - 20.0 < dial.lowest(&self.scene.hanging) || self.scene.model.bands.is_empty() {
+            return;
+        }
+        let paper = Rect::from_min_max(bar.min - vec2(6.0, 18.0), pos2(dial.rect.right(), bottom + 2.0));
+        self.painter.rect_filled(paper, 0.0, self.look.board);
+        let title = self.text("Gage pressure", font::small(), self.look.ink2);
+        self.painter.galley(bar.left_top() - vec2(0.0, title.size().y + 1.0), title, self.look.ink2);
+        let x = |i: usize| bar.left() + bar.width() * i as f32 / tints.n as f32;
+        for i in 0..tints.n {
+            let swatch = Rect::from_x_y_ranges(x(i)..=x(i + 1), bar.y_range());
+            self.painter.rect_filled(swatch, 0.0, self.look.band(i, tints.n));
+        }
+        let unit = Quantity::GagePressure.unit(self.scene.units);
+        let decimals = decimals_of(unit.from_si(tints.step_pa));
+        let every = if tints.n > 5 { 2 } else { 1 };
+        for i in (0..=tints.n).rev().filter(|i| (tints.n - i).is_multiple_of(every)) {
+            let value = fixed(unit.from_si(tints.gage_pa(i)), decimals);
+            let is_last = i == tints.n;
+            let text = self.text(value, font::tick(), self.look.ink3);
+            let at = pos2(x(i), bar.bottom() + 2.0);
+            let rect = Align2::CENTER_TOP.anchor_size(at, text.size());
+            self.painter.galley(rect.min, text, self.look.ink3);
+            if is_last {
+                let symbol = self.text(unit.symbol, font::tick(), self.look.ink3);
+                self.painter.galley(rect.right_top() + vec2(3.0, 0.0), symbol, self.look.ink3);
+            }
+        }
+    }
+}
+
+/// The usual mark of a centre of gravity: a circle with two dark quarters.
+fn paint_centroid(painter: &Painter, at: Pos2, look: &Look) {
+    painter.circle(at, 7.5, look.board, Stroke::NONE);
+    for from in [0.0, std::f32::consts::PI] {
+        let arc = (0..=6).map(|i| at + 5.5 * Vec2::angled(from + std::f32::consts::FRAC_PI_2 * i as f32 / 6.0));
+        let wedge = std::iter::once(at).chain(arc).collect();
+        painter.add(Shape::convex_polygon(wedge, look.ink, Stroke::NONE));
+    }
+    painter.circle_stroke(at, 5.5, Stroke::new(1.25, look.ink));
+}
+
+fn around(at: Pos2, off: f32) -> [(Pos2, Align2); 6] {
+    [
+        (at + vec2(off, 0.0), Align2::LEFT_CENTER),
+        (at - vec2(off, 0.0), Align2::RIGHT_CENTER),
+        (at - vec2(0.0, off), Align2::CENTER_BOTTOM),
+        (at + vec2(0.0, off), Align2::CENTER_TOP),
+        (at + vec2(off, -off), Align2::LEFT_BOTTOM),
+        (at + vec2(off, off), Align2::LEFT_TOP),
+    ]
+}
+
+/// Aligns a label that lies in this direction from its thing.
+fn align_toward(out: Vec2) -> Align2 {
+    let axis = |v: f32| {
+        if v > 0.4 {
+            egui::Align::Min
+        } else if v < -0.4 {
+            egui::Align::Max
+        } else {
+            egui::Align::Center
+        }
+    };
+    Align2([axis(out.x), axis(out.y)])
+}
+
+/// Decimals that a multiple of `step` needs.
+fn decimals_of(step: f64) -> usize {
+    let text = number(step, 3);
+    let digits = text.split_once('.').map_or("", |(_, fraction)| fraction);
+    digits.trim_end_matches('0').len()
+}

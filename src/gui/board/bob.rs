@@ -1,0 +1,246 @@
+//! The plumb bob: it hangs along effective gravity, and dragging it sets the acceleration.
+//!
+//! One scale ties points on the screen to m/s2: tip = pivot + G. Knows no section.
+
+use egui::{Align2, Painter, Pos2, Rect, Shape, Stroke, pos2, vec2};
+
+use crate::gui::{Look, font};
+use crate::units::{Measure, Quantity, UnitSystem};
+
+use super::labels::Labels;
+use super::lines;
+
+/// Length of the drop, points.
+const DROP: f32 = 27.0;
+
+/// Radius of the free-fall circle at the pivot, points.
+const FREE_FALL: f32 = 7.0;
+
+/// Where the bob hangs on the board, and how many points one m/s2 is long.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Dial {
+    /// The block at the right of the board.
+    pub rect: Rect,
+    /// Free fall.
+    pub pivot: Pos2,
+    /// Points per m/s2.
+    pub scale: f32,
+}
+
+/// What hangs there.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct Hanging {
+    /// Effective gravity of the case shown, m/s2; none while the section has faults.
+    pub now: Option<crate::geom::Vec2>,
+    /// Effective gravity at rest.
+    pub rest: crate::geom::Vec2,
+    /// Tilt of the settled surface, radians.
+    pub tilt_rad: Option<f64>,
+    /// Other cases: number as shown, effective gravity.
+    pub others: Vec<(usize, crate::geom::Vec2)>,
+    /// The pointer is over it, or holds it.
+    pub is_held: bool,
+}
+
+impl Dial {
+    /// A block at the right of the drawing area, in a scale in which all of `gravities` stay inside it.
+    pub fn new(area: Rect, gravities: impl IntoIterator<Item = crate::geom::Vec2>) -> Dial {
+        let width = (0.26 * area.width()).clamp(116.0, 196.0).min(area.width());
+        let rect = Rect::from_min_max(pos2(area.right() - width - 8.0, area.top() + 8.0), area.max);
+        let head = if area.height() < 320.0 { 58.0 } else { 66.0 };
+        let pivot = pos2(rect.center().x, rect.top() + head);
+        let wanted = ((area.height() - 277.0) / 16.0).clamp(6.0, 14.0);
+        let side = (0.5 * rect.width() - 14.0).max(1.0);
+        let (down, up) = ((rect.bottom() - pivot.y - DROP - 12.0).max(1.0), head - 40.0);
+        let scale = gravities.into_iter().fold(wanted, |scale, g| {
+            let (x, y) = (g.x as f32, -g.y as f32);
+            let room = if y > 0.0 { down } else { up };
+            scale.min(side / x.abs().max(1e-3)).min(room / y.abs().max(1e-3))
+        });
+        Dial { rect, pivot, scale: scale.max(1e-6) }
+    }
+
+    /// Where the thread ends for an effective gravity.
+    pub fn tip(&self, gravity: crate::geom::Vec2) -> Pos2 {
+        self.pivot + vec2(gravity.x as f32, -gravity.y as f32) * self.scale
+    }
+
+    /// The effective gravity for which the thread ends at `pos`.
+    pub fn gravity_at(&self, pos: Pos2) -> crate::geom::Vec2 {
+        let off = (pos - self.pivot) / self.scale;
+        crate::geom::Vec2::new(f64::from(off.x), f64::from(-off.y))
+    }
+
+    /// Whether `pos` is on the drop or on the end of the thread.
+    pub fn is_on_drop(&self, gravity: crate::geom::Vec2, pos: Pos2) -> bool {
+        let tip = self.tip(gravity);
+        let off = pos - tip;
+        let along = self.hangs_along(gravity);
+        let (down, across) = (off.dot(along), off.dot(along.rot90()));
+        (-6.0..=DROP + 3.0).contains(&down) && across.abs() <= 9.0
+    }
+
+    /// Lowest point that the drawing needs.
+    pub fn lowest(&self, hanging: &Hanging) -> f32 {
+        let tips = hanging.now.iter().chain([&hanging.rest]).map(|&g| self.tip(g).y + DROP);
+        tips.fold(self.tip(hanging.rest).y + self.ring_step() * 3.0 * self.scale, f32::max)
+    }
+
+    fn hangs_along(&self, gravity: crate::geom::Vec2) -> egui::Vec2 {
+        let along = (self.tip(gravity) - self.pivot).normalized();
+        if along == egui::Vec2::ZERO { vec2(0.0, 1.0) } else { along }
+    }
+
+    /// Distance between two rings, m/s2: 2, or more where rings would touch.
+    fn ring_step(&self) -> f32 {
+        let decades = (0..6).flat_map(|k| [2.0, 5.0, 10.0].map(|m| m * 10f32.powi(k)));
+        decades.into_iter().find(|step| step * self.scale >= 12.0).unwrap_or(1e6)
+    }
+}
+
+/// Draws the block: words, rings, cases, thread and drop.
+pub fn paint_bob(painter: &Painter, dial: &Dial, hanging: &Hanging, units: UnitSystem, look: &Look) {
+    let rect = dial.rect;
+    painter.text(rect.left_top() + vec2(0.0, 2.0), Align2::LEFT_TOP, "Plumb bob", font::body_heavy(), look.ink);
+    let Some(now) = hanging.now else {
+        paint_waiting(painter, dial, look);
+        return;
+    };
+    let gravity = Measure::new(Quantity::Acceleration, now.norm());
+    let tilt = hanging.tilt_rad.map(|t| crate::units::fixed(t.to_degrees(), 1));
+    let number = gravity.number(units, 4);
+    let unit = format!(" {}", Quantity::Acceleration.unit(units).symbol);
+    let (first, second) = match &tilt {
+        Some(tilt) => ("tilt ", format!("{tilt}°")),
+        None => ("free fall", String::new()),
+    };
+    let words = font::runs([
+        (first, font::small(), look.ink3),
+        (second.as_str(), font::small_figure(), look.ink),
+        ("   |G| ", font::small(), look.ink3),
+        (number.as_str(), font::small_figure(), look.ink),
+        (unit.as_str(), font::small(), look.ink3),
+    ]);
+    let words = painter.layout_job(words);
+    painter.galley(rect.left_top() + vec2(0.0, 19.0), words, look.ink);
+
+    let rest = dial.tip(hanging.rest);
+    let mut labels = Labels::new(rect.expand(6.0));
+    paint_rings(painter, dial, rest, &mut labels, units, look);
+    paint_cases(painter, dial, hanging, &mut labels, look);
+
+    let (tip, along) = (dial.tip(now), dial.hangs_along(now));
+    let across = along.rot90();
+    painter.line_segment([dial.pivot, tip], Stroke::new(5.5, look.board));
+    let facet = |points: [(f32, f32); 4], color| {
+        let points = points.map(|(a, b)| tip + across * a + along * b).to_vec();
+        Shape::convex_polygon(points, color, Stroke::NONE)
+    };
+    let outline = [(-2.0, 0.0), (2.0, 0.0), (6.5, 9.0), (0.0, DROP), (-6.5, 9.0)];
+    let halo = outline.map(|(a, b)| tip + across * a + along * b).to_vec();
+    painter.add(Shape::convex_polygon(halo, look.board, Stroke::new(4.0, look.board)));
+    painter.line_segment([dial.pivot, tip], Stroke::new(1.5, look.accent));
+    let lit = look.accent.lerp_to_gamma(look.board, 0.28);
+    painter.add(facet([(0.0, 0.0), (2.0, 0.0), (6.5, 9.0), (0.0, DROP)], look.accent));
+    painter.add(facet([(0.0, 0.0), (-2.0, 0.0), (-6.5, 9.0), (0.0, DROP)], lit));
+    painter.line_segment([tip - across * 3.0, tip + across * 3.0], Stroke::new(2.0, look.accent));
+    if hanging.is_held {
+        painter.circle_stroke(tip + along * 11.0, 18.0, Stroke::new(1.0, look.accent));
+    }
+    paint_pivot(painter, dial.pivot, look.ink);
+}
+
+fn paint_waiting(painter: &Painter, dial: &Dial, look: &Look) {
+    let (pivot, tip) = (dial.pivot, dial.pivot + vec2(0.0, 74.0));
+    let grey = look.ink3.gamma_multiply(crate::gui::look::STALE_OPACITY);
+    painter.line_segment([pivot, tip], Stroke::new(1.5, grey));
+    let points = [(-2.0, 0.0), (2.0, 0.0), (6.5, 9.0), (0.0, DROP), (-6.5, 9.0)].map(|(a, b)| tip + vec2(a, b));
+    painter.add(Shape::convex_polygon(points.to_vec(), grey, Stroke::NONE));
+    paint_pivot(painter, pivot, grey);
+    let at = tip + vec2(0.0, DROP + 12.0);
+    painter.text(at, Align2::CENTER_TOP, "waits for a section", font::small(), look.ink2);
+}
+
+fn paint_pivot(painter: &Painter, pivot: Pos2, color: egui::Color32) {
+    painter.line_segment(lines::crisp(painter, [pivot - vec2(12.0, 0.0), pivot + vec2(12.0, 0.0)]), (1.5, color));
+    painter.circle_filled(pivot, 2.2, color);
+}
+
+fn paint_rings(painter: &Painter, dial: &Dial, rest: Pos2, labels: &mut Labels, units: UnitSystem, look: &Look) {
+    let step = dial.ring_step();
+    let ring = Stroke::new(1.0, look.line2);
+    lines::dashed(painter, &[rest - vec2(0.0, 3.0 * step * dial.scale), rest], ring, 1.2, 2.3);
+    lines::dashed(painter, &[rest, rest + vec2(0.0, 3.0 * step * dial.scale)], ring, 1.2, 2.3);
+    let unit = Quantity::Acceleration.unit(units);
+    for k in 1..=3 {
+        let radius = k as f32 * step * dial.scale;
+        painter.circle_stroke(rest, radius, ring);
+        let at = rest + radius * egui::Vec2::angled(2.2);
+        let text = crate::units::number(unit.from_si(f64::from(k as f32 * step)), 2);
+        let text = text.strip_suffix(".0").unwrap_or(&text).to_owned();
+        let galley = painter.layout_no_wrap(text, font::tick(), look.ink3);
+        if let Some(rect) = labels.place(galley.size(), [(at, Align2::CENTER_CENTER)]) {
+            painter.rect_filled(rect.shrink2(vec2(0.0, 2.0)), 0.0, look.board);
+            painter.galley(rect.min, galley, look.ink3);
+        }
+    }
+    let n = 18;
+    for i in 0..n {
+        let turn = std::f32::consts::TAU * i as f32 / n as f32;
+        painter.circle_filled(dial.pivot + FREE_FALL * egui::Vec2::angled(turn), 0.6, look.ink3);
+    }
+}
+
+fn paint_cases(painter: &Painter, dial: &Dial, hanging: &Hanging, labels: &mut Labels, look: &Look) {
+    for (_, gravity) in &hanging.others {
+        labels.keep_off(Rect::from_center_size(dial.tip(*gravity), vec2(7.0, 7.0)));
+    }
+    if let Some(now) = hanging.now {
+        let (tip, along) = (dial.tip(now), dial.hangs_along(now));
+        labels.keep_off(Rect::from_center_size(tip + along * 12.0, vec2(14.0, 26.0)));
+        labels.keep_off_line(&[dial.pivot, tip]);
+    }
+    for (number, gravity) in &hanging.others {
+        let at = dial.tip(*gravity);
+        painter.circle(at, 3.2, look.board, Stroke::new(1.25, look.ink2));
+        let galley = painter.layout_no_wrap(number.to_string(), font::tick_figure(), look.ink2);
+        let places = [
+            (at + vec2(5.5, 0.0), Align2::LEFT_CENTER),
+            (at - vec2(5.5, 0.0), Align2::RIGHT_CENTER),
+            (at - vec2(0.0, 4.0), Align2::CENTER_BOTTOM),
+            (at + vec2(0.0, 4.0), Align2::CENTER_TOP),
+        ];
+        if let Some(rect) = labels.place(galley.size(), places) {
+            painter.galley(rect.min, galley, look.ink2);
+        }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::geom::Vec2;
+
+    #[test]
+    fn tip_and_gravity_invert_each_other_and_all_cases_fit() {
+        let area = Rect::from_min_size(pos2(264.0, 90.0), vec2(704.0, 398.0));
+        let gravities = [Vec2::new(3.92, -9.81), Vec2::new(-25.0, -4.0), Vec2::new(0.0, 6.0), Vec2::new(0.0, 0.0)];
+        let dial = Dial::new(area, gravities);
+        for g in gravities {
+            let tip = dial.tip(g);
+            assert!(dial.rect.contains(tip), "{g:?} hangs at {tip:?}, outside {:?}", dial.rect);
+            let back = dial.gravity_at(tip);
+            assert!((back - g).norm() < 1e-3, "{g:?} came back as {back:?}");
+            assert!(dial.is_on_drop(g, tip));
+        }
+        // To the right of the pivot: the tank accelerates to the left.
+        assert!(dial.tip(gravities[0]).x > dial.pivot.x && dial.tip(gravities[0]).y > dial.pivot.y);
+    }
+
+    #[test]
+    fn the_scale_is_the_one_of_the_drawing_when_all_fits() {
+        let area = Rect::from_min_size(pos2(0.0, 0.0), vec2(704.0, 430.0));
+        let dial = Dial::new(area, [Vec2::new(3.92, -9.81)]);
+        assert!((dial.scale - 9.56).abs() < 0.01, "{}", dial.scale);
+    }
+}

@@ -1,0 +1,117 @@
+//! The board: the section to scale, to look at and to take hold of.
+//!
+//! In three steps: the model says in metres what there is to draw, the scene lays it out on the screen, the painting
+//! puts it down. The hand goes the other way: the target under the pointer, a drag, a snap, an [`Edit`] proposed.
+//! Nothing here changes the document.
+//!
+//! [`Edit`]: crate::app::Edit
+
+mod annotate;
+mod bob;
+mod dims;
+mod drag;
+mod keys;
+mod labels;
+mod lines;
+mod liquid;
+mod menu;
+mod model;
+mod paint;
+mod pointer;
+mod rulers;
+mod scene;
+mod screen;
+mod snap;
+mod strips;
+mod target;
+
+use egui::{Align2, Id, Painter, Rect, Role, Sense, Ui, WidgetInfo};
+
+use crate::analysis::Results;
+use crate::app::Document;
+use crate::study::ValidStudy;
+use crate::units::UnitSystem;
+
+use super::{Look, Proposal, View, font};
+
+use model::Detail;
+use scene::Scene;
+use target::Target;
+
+pub use bob::Dial;
+pub use model::BoardModel;
+pub use screen::Screen;
+
+/// The board, in all the room that `ui` has. The view changes in place; changes of the document go into `out`.
+pub fn board_ui(ui: &mut Ui, doc: &Document, view: &mut View, look: &Look, out: &mut Vec<Proposal>) {
+    let board = ui.available_rect_before_wrap();
+    ui.advance_cursor_after_rect(board);
+    let id = Id::unique("board");
+    let canvas = ui.interact(board, id, Sense::click_and_drag());
+    canvas.widget_info(|| WidgetInfo::labeled(Role::Canvas, true, "Board"));
+    let area = rulers::drawing_area(board);
+    if area.width() < 8.0 || area.height() < 8.0 {
+        return;
+    }
+    let held_dial = pointer::held_dial(ui, id);
+    let mut scene = Scene::new(ui, id, doc, view, area, held_dial);
+    if pointer::zoom(ui, &canvas, &scene, view) {
+        scene = Scene::new(ui, id, doc, view, area, held_dial);
+    }
+    let pointing = pointer::point(ui, &canvas, &scene, view, out);
+    scene.hanging.is_held = pointing.target == Some(Target::Bob);
+
+    let painter = ui.painter().with_clip_rect(ui.clip_rect().intersect(board));
+    painter.rect_filled(board, 0.0, look.board);
+    let inside = painter.with_clip_rect(painter.clip_rect().intersect(area));
+    paint_scene(&inside, &scene, view, pointing.target, look);
+    let focused = keys::handles_ui(ui, &canvas, &scene, view, out);
+    if let Some((target, response)) = &focused {
+        keys::paint_focus(ui, &scene, *target, response, look);
+    }
+    if let Some(pos) = pointing.pos.filter(|_| pointing.is_dragging) {
+        annotate::paint_feedback(&inside, &scene, pos, &pointing.feedback, look);
+    }
+    rulers::paint_rulers(&painter, board, &scene.screen, view.units, pointing.pos, look);
+    super::marks::paint_focus(&painter, board.shrink(5.0), &canvas, look);
+    menu::menu_ui(ui, &canvas, &scene, view, out);
+}
+
+/// A small drawing of the section under one load case: tints and surface, no words.
+pub fn thumbnail_ui(
+    painter: &Painter,
+    rect: Rect,
+    study: &ValidStudy,
+    results: &Results,
+    case_idx: usize,
+    look: &Look,
+) {
+    let (low, high) = study.region().bounds();
+    let screen = Screen::fitted(rect, rect.shrink(2.0), low, high);
+    let detail = Detail { sagitta_m: 0.25 / screen.scale(), units: UnitSystem::Si };
+    let model = BoardModel::judged(study, results, case_idx, None, detail);
+    let painter = painter.with_clip_rect(painter.clip_rect().intersect(rect));
+    paint::paint_liquid(&painter, &screen, &model, paint::CARD_PENS, look);
+    paint::paint_surface(&painter, &screen, &model, paint::CARD_PENS, look);
+    paint::paint_walls(&painter, &screen, &model, paint::CARD_PENS, look);
+}
+
+fn paint_scene(painter: &Painter, scene: &Scene, view: &View, hovered: Option<Target>, look: &Look) {
+    let (screen, model) = (&scene.screen, &*scene.model);
+    rulers::paint_grid(painter, screen, scene.units, look);
+    if model.edges.is_empty() {
+        let words = "No outline yet. File, New gives a rectangle to start from";
+        painter.text(screen.rect.center(), Align2::CENTER_CENTER, words, font::body(), look.ink2);
+    }
+    paint::paint_liquid(painter, screen, model, paint::BOARD_PENS, look);
+    paint::paint_glow(painter, scene, view.selected, hovered, look);
+    paint::paint_surface(painter, screen, model, paint::BOARD_PENS, look);
+    paint::paint_last_good(painter, screen, model, look);
+    paint::paint_walls(painter, screen, model, paint::BOARD_PENS, look);
+    if annotate::dial_area(scene).intersects(scene.bounds()) {
+        painter.rect_filled(annotate::dial_area(scene), 0.0, look.board.gamma_multiply(0.86));
+    }
+    annotate::annotate(painter, scene, look);
+    bob::paint_bob(painter, &scene.dial, &scene.hanging, scene.units, look);
+    paint::paint_handles(painter, scene, view.selected, hovered, look);
+}

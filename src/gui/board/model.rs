@@ -1,0 +1,349 @@
+//! What is to be drawn of a study and its results, in metres: walls, tints, isobars, surfaces, marks.
+//!
+//! Pure, and free of any screen: the board lays it out in points, a drawing on paper may lay it out in
+//! millimetres. It computes no physics; every number comes from [`Results`].
+
+use crate::analysis::{CaseResult, Chord, Results, Sense, Settled, State, Verdict};
+use crate::geom::{Edge, Point, Vec2, cross};
+use crate::problem::{Place, Problem, Severity};
+use crate::section::{EdgeKind, Section};
+use crate::study::{Study, ValidStudy};
+use crate::units::{Measure, Quantity, UnitSystem};
+
+use super::liquid::{Band, Body, Isobar, TintScale};
+
+/// How fine, and which numbers.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Detail {
+    /// Largest distance of a flattened arc from the true one, m.
+    pub sagitta_m: f64,
+    /// Units in which the pressure steps are round.
+    pub units: UnitSystem,
+}
+
+/// One edge of the outline.
+#[derive(Clone, Debug, PartialEq)]
+pub struct EdgeLine {
+    /// From its start to its end.
+    pub points: Vec<Point>,
+    /// Wall or mouth.
+    pub kind: EdgeKind,
+}
+
+/// The lowest point of a mouth as effective gravity sees it.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Brim {
+    /// Where.
+    pub at: Point,
+    /// Whether it is the one that governs.
+    pub governs: bool,
+}
+
+/// Required against available freeboard at a mouth.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Freeboard {
+    /// The mouth's lowest point.
+    pub brim: Point,
+    /// z of the still surface, m.
+    pub still_z_m: f64,
+    /// m.
+    pub available_m: f64,
+    /// m.
+    pub required_m: f64,
+    /// State of the verdict.
+    pub state: State,
+}
+
+/// The load of the liquid on one edge.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Load {
+    /// Where its line of action meets the edge.
+    pub on_edge: Point,
+    /// On the tank, N.
+    pub force_n: Vec2,
+}
+
+/// The place at which the chosen verdict governs.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct Governs {
+    /// Lines that glow.
+    pub glow: Vec<Vec<Point>>,
+    /// The point, with the number asked for there.
+    pub at: Option<(Point, Option<Measure>)>,
+}
+
+/// A named point.
+#[derive(Clone, Debug, PartialEq)]
+pub struct PointMark {
+    /// Where.
+    pub at: Point,
+    /// Its name.
+    pub name: String,
+    /// Pa gage, when judged.
+    pub gage_pa: Option<f64>,
+}
+
+/// A numbered fault or warning.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct FaultMark {
+    /// As in the list of problems, from one.
+    pub number: usize,
+    /// Fault or warning.
+    pub severity: Severity,
+    /// Where.
+    pub at: Point,
+}
+
+/// Everything that the board shows of one load case.
+#[derive(Clone, Debug, PartialEq)]
+pub struct BoardModel {
+    /// The outline, edge by edge.
+    pub edges: Vec<EdgeLine>,
+    /// Obstacles, closed.
+    pub obstacles: Vec<Vec<Point>>,
+    /// Edges of the last good outline that the faulty one lacks.
+    pub last_good: Vec<Vec<Point>>,
+    /// Steps of the tints.
+    pub tints: Option<TintScale>,
+    /// The liquid, from the floor up.
+    pub bands: Vec<Band>,
+    /// From the surface down.
+    pub isobars: Vec<Isobar>,
+    /// Pieces of the settled surface.
+    pub surface: Vec<Chord>,
+    /// z of the still surface, m.
+    pub still_z_m: Option<f64>,
+    /// Why the case is not judged.
+    pub not_judged: Option<String>,
+    /// One a mouth.
+    pub brims: Vec<Brim>,
+    /// The dimension at the governing mouth.
+    pub freeboard: Option<Freeboard>,
+    /// Loads, for a pressure verdict that is open.
+    pub loads: Vec<Load>,
+    /// Where the open verdict governs.
+    pub governs: Governs,
+    /// Named points.
+    pub points: Vec<PointMark>,
+    /// Point about which moments are taken.
+    pub moment_about: Point,
+    /// Centroid of the liquid.
+    pub centroid: Option<Point>,
+    /// Faults and warnings at their places.
+    pub faults: Vec<FaultMark>,
+}
+
+impl BoardModel {
+    /// A judged study under one load case; the still tank where there is no such case.
+    pub fn judged(
+        study: &ValidStudy,
+        results: &Results,
+        case_idx: usize,
+        open_verdict: Option<usize>,
+        detail: Detail,
+    ) -> BoardModel {
+        let inputs = study.study();
+        let mut model = BoardModel::bare(inputs, &results.warnings, detail);
+        model.tints = TintScale::new(results.pressure_scale_pa, inputs.ullage_gage_pa, detail.units);
+        model.still_z_m = Some(results.still.level_z_m);
+        let case = results.cases.get(case_idx);
+        let mut body = Body {
+            up: Vec2::y(),
+            level_m: results.still.level_z_m,
+            gas_pa: inputs.ullage_gage_pa,
+            weight_pa_per_m: inputs.liquid.density_kg_per_m3 * inputs.gravity_m_per_s2,
+        };
+        match case.map(|c| (c, &c.settled)) {
+            Some((case, Ok(settled))) => {
+                body.up = case.gravity.up.unwrap_or(body.up);
+                body.level_m = settled.level_m;
+                body.weight_pa_per_m = inputs.liquid.density_kg_per_m3 * case.gravity.magnitude;
+                model.surface = settled.surface.clone();
+                model.centroid = Some(settled.centroid);
+                for (mark, result) in model.points.iter_mut().zip(&settled.points) {
+                    mark.gage_pa = Some(result.gage_pa);
+                }
+            }
+            Some((_, Err(reason))) => {
+                model.not_judged = Some(reason.clone());
+                body.weight_pa_per_m = 0.0;
+            }
+            None => model.surface = results.still.surface.clone(),
+        }
+        (model.bands, model.isobars) = body.tinted(&model.loops(), model.tints);
+        if let Some(case) = case {
+            model.freeboard = freeboard(case, results.still.level_z_m);
+            if let Some(verdict) = open_verdict.and_then(|i| case.verdicts.get(i)) {
+                model.show_verdict(&inputs.section, verdict, case.settled.as_ref().ok());
+            }
+        }
+        model.brims = brims(study, body.up, model.freeboard.map(|f| f.brim));
+        model
+    }
+
+    /// A study with faults: its lines, and where the faults are.
+    pub fn faulty(study: &Study, problems: &[Problem], last_good: Option<&Study>, detail: Detail) -> BoardModel {
+        let mut model = BoardModel::bare(study, problems, detail);
+        if let Some(good) = last_good {
+            let now = study.section.edges();
+            model.last_good = (good.section.edges().iter())
+                .filter(|edge| !now.contains(edge))
+                .map(|edge| flatten(edge, detail.sagitta_m))
+                .collect();
+        }
+        model
+    }
+
+    /// Smallest and largest (s, z) of all lines; none without lines.
+    pub fn bounds(&self) -> Option<(Point, Point)> {
+        let points = self.edges.iter().flat_map(|e| &e.points).chain(self.obstacles.iter().flatten());
+        points.fold(None, |found, p| match found {
+            None => Some((*p, *p)),
+            Some((low, high)) => Some((low.inf(p), high.sup(p))),
+        })
+    }
+
+    fn bare(study: &Study, problems: &[Problem], detail: Detail) -> BoardModel {
+        let section = &study.section;
+        let edges = (section.edges().iter().zip(&section.outline))
+            .filter(|(edge, _)| is_finite(edge))
+            .map(|(edge, drawn)| EdgeLine { points: flatten(edge, detail.sagitta_m), kind: drawn.kind })
+            .collect();
+        let obstacles = section.obstacles.iter().map(|o| flatten_loop(&o.edges(), detail.sagitta_m)).collect();
+        let points = (study.points.iter())
+            .filter(|p| p.at.coords.iter().all(|c| c.is_finite()))
+            .map(|p| PointMark { at: p.at, name: p.name.clone(), gage_pa: None })
+            .collect();
+        let faults = (problems.iter().enumerate())
+            .filter_map(|(i, p)| {
+                let at = place_of(study, &p.place)?;
+                Some(FaultMark { number: i + 1, severity: p.severity, at })
+            })
+            .collect();
+        BoardModel {
+            edges,
+            obstacles,
+            last_good: Vec::new(),
+            tints: None,
+            bands: Vec::new(),
+            isobars: Vec::new(),
+            surface: Vec::new(),
+            still_z_m: None,
+            not_judged: None,
+            brims: Vec::new(),
+            freeboard: None,
+            loads: Vec::new(),
+            governs: Governs::default(),
+            points,
+            moment_about: study.moment_about,
+            centroid: None,
+            faults,
+        }
+    }
+
+    /// The region as closed chains: outline and obstacles.
+    fn loops(&self) -> Vec<Vec<Point>> {
+        let outline = self.edges.iter().flat_map(|e| &e.points[..e.points.len() - 1]).copied().collect();
+        std::iter::once(outline).chain(self.obstacles.iter().cloned()).collect()
+    }
+
+    fn show_verdict(&mut self, section: &Section, verdict: &Verdict, settled: Option<&Settled>) {
+        let outline_edge = |i: usize| self.edges.get(i).map(|e| e.points.clone());
+        self.governs.glow = match &verdict.place {
+            Place::Edge(i) => outline_edge(*i).into_iter().collect(),
+            Place::Obstacle { obstacle_idx, .. } => match self.obstacles.get(*obstacle_idx) {
+                Some(points) => vec![points.iter().chain(points.first()).copied().collect()],
+                None => Vec::new(),
+            },
+            _ => Vec::new(),
+        };
+        self.governs.at = verdict.at.map(|at| (at, verdict.demand));
+        let is_pressure = verdict.demand.is_some_and(|d| d.quantity == Quantity::GagePressure);
+        if let Some(settled) = settled.filter(|_| is_pressure) {
+            self.loads = (settled.edges.iter())
+                .filter(|load| load.is_wall)
+                .filter_map(|load| {
+                    let edge = match load.place {
+                        Place::Edge(i) if i < section.outline.len() => section.edge(i),
+                        Place::Obstacle { obstacle_idx, edge_idx: Some(i) } if load.place == verdict.place => {
+                            *section.obstacles.get(obstacle_idx)?.edges().get(i)?
+                        }
+                        _ => return None,
+                    };
+                    Some(Load { on_edge: where_met(&edge, load.acts_at?, load.force_n), force_n: load.force_n })
+                })
+                .collect();
+        }
+    }
+}
+
+/// The point of a place on the section, where it has one.
+fn place_of(study: &Study, place: &Place) -> Option<Point> {
+    let section = &study.section;
+    let at = match *place {
+        Place::Edge(i) if i < section.outline.len() => section.edge(i).point_at(0.5),
+        Place::Vertex(i) => section.outline.get(i)?.start,
+        Place::Crossing { at_m: [s, z], .. } => Point::new(s, z),
+        Place::Obstacle { obstacle_idx, edge_idx } => {
+            let edges = section.obstacles.get(obstacle_idx)?.edges();
+            match edge_idx {
+                Some(i) => edges.get(i)?.point_at(0.5),
+                None => edges.first()?.start,
+            }
+        }
+        Place::Point(i) => study.points.get(i)?.at,
+        _ => return None,
+    };
+    at.coords.iter().all(|c| c.is_finite()).then_some(at)
+}
+
+/// The brim of each mouth, and which one governs: that of the dimension, else the lowest.
+fn brims(study: &ValidStudy, up: Vec2, governing: Option<Point>) -> Vec<Brim> {
+    let found: Vec<(f64, Point)> = study.mouths().iter().map(|m| m.brim(study.region(), up)).collect();
+    let rank = |(level, at): &(f64, Point)| governing.map_or(*level, |g| (at - g).norm());
+    let governs = (0..found.len()).min_by(|&a, &b| rank(&found[a]).total_cmp(&rank(&found[b])));
+    found.iter().enumerate().map(|(i, &(_, at))| Brim { at, governs: governs == Some(i) }).collect()
+}
+
+fn freeboard(case: &CaseResult, still_z_m: f64) -> Option<Freeboard> {
+    let verdict = case.verdicts.iter().find(|v| v.criterion == FREEBOARD)?;
+    let (demand, limit) = (verdict.demand?.si, verdict.limit?.si);
+    let (required_m, available_m) = match verdict.sense {
+        Sense::AtMost => (demand, limit),
+        Sense::AtLeast => (limit, demand),
+    };
+    Some(Freeboard { brim: verdict.at?, still_z_m, available_m, required_m, state: verdict.state })
+}
+
+/// Name of the criterion whose dimension is drawn.
+const FREEBOARD: &str = "Freeboard";
+
+/// Where the line of action through `through` along `force` meets the edge; the nearest point of the edge when
+/// it meets it nowhere.
+fn where_met(edge: &Edge, through: Point, force: Vec2) -> Point {
+    let points = flatten(edge, 0.01 * edge.length());
+    let crossing = points.windows(2).find_map(|pair| {
+        let (a, b) = (cross(force, pair[0] - through), cross(force, pair[1] - through));
+        (a != b && (a <= 0.0) != (b <= 0.0)).then(|| pair[0] + (pair[1] - pair[0]) * (a / (a - b)))
+    });
+    crossing.unwrap_or_else(|| edge.point_at(edge.nearest(through).0))
+}
+
+fn is_finite(edge: &Edge) -> bool {
+    [edge.start.x, edge.start.y, edge.end.x, edge.end.y, edge.sweep].iter().all(|c| c.is_finite())
+}
+
+fn flatten(edge: &Edge, sagitta_m: f64) -> Vec<Point> {
+    let mut points = Vec::new();
+    edge.flatten_into(sagitta_m, &mut points);
+    points.push(edge.end);
+    points
+}
+
+fn flatten_loop(edges: &[Edge], sagitta_m: f64) -> Vec<Point> {
+    let mut points = Vec::new();
+    for edge in edges.iter().filter(|e| is_finite(e)) {
+        edge.flatten_into(sagitta_m, &mut points);
+    }
+    points
+}

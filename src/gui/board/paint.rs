@@ -1,0 +1,243 @@
+//! The section itself: tints, isobars, surface, walls, mouths, obstacles, and the handles of what is pointed at.
+//!
+//! Draws what the model says and nothing else; labels and dimensions are in `annotate`.
+
+use egui::{Color32, Mesh, Painter, Pos2, Rect, Shape, Stroke, StrokeKind, pos2, vec2};
+
+use crate::geom::{Point, Vec2};
+use crate::gui::{Look, Selected};
+use crate::section::EdgeKind;
+
+use super::lines;
+use super::liquid::Tint;
+use super::model::BoardModel;
+use super::scene::Scene;
+use super::screen::Screen;
+use super::strips::{Strip, bands, chords, extent};
+use super::target::Target;
+
+/// Widths of the lines of a section.
+#[derive(Clone, Copy, Debug)]
+pub struct Pens {
+    /// Walls.
+    pub wall: f32,
+    /// The settled surface.
+    pub surface: f32,
+    /// Isobars; none where zero.
+    pub isobar: f32,
+}
+
+/// The board's own pens.
+pub const BOARD_PENS: Pens = Pens { wall: 2.5, surface: 1.9, isobar: 0.75 };
+
+/// Pens of a small drawing.
+pub const CARD_PENS: Pens = Pens { wall: 1.5, surface: 1.25, isobar: 0.0 };
+
+/// Liquid: tints, hatch above full scale, isobars.
+pub fn paint_liquid(painter: &Painter, screen: &Screen, model: &BoardModel, pens: Pens, look: &Look) {
+    let n = model.tints.map_or(1, |t| t.n);
+    let mut mesh = Mesh::default();
+    for band in &model.bands {
+        let color = match band.tint {
+            Tint::Step(i) => look.band(i, n),
+            Tint::AboveScale => look.band(n - 1, n),
+            Tint::NotJudged => look.line2,
+        };
+        band.strips.iter().for_each(|strip| fill(&mut mesh, screen, strip, color));
+    }
+    painter.add(mesh);
+    for band in model.bands.iter().filter(|b| b.tint == Tint::AboveScale) {
+        let stroke = Stroke::new(0.75, look.board.gamma_multiply(0.55));
+        band.strips.iter().for_each(|strip| hatch(painter, screen, strip.polygon(), stroke));
+    }
+    if pens.isobar > 0.0 {
+        let stroke = Stroke::new(pens.isobar, look.ink.gamma_multiply(0.55));
+        for [a, b] in model.isobars.iter().flat_map(|i| &i.chords) {
+            lines::segment(painter, [screen.screen_from_section(*a), screen.screen_from_section(*b)], stroke);
+        }
+    }
+}
+
+/// The settled surface, over a halo.
+pub fn paint_surface(painter: &Painter, screen: &Screen, model: &BoardModel, pens: Pens, look: &Look) {
+    for width in [(4.0, look.board), (pens.surface, look.ink)] {
+        for piece in &model.surface {
+            let ends = [piece.left, piece.right].map(|p| screen.screen_from_section(p));
+            lines::segment(painter, ends, Stroke::from(width));
+        }
+    }
+}
+
+/// Walls, mouths and obstacles.
+pub fn paint_walls(painter: &Painter, screen: &Screen, model: &BoardModel, pens: Pens, look: &Look) {
+    for points in &model.obstacles {
+        paint_obstacle(painter, screen, points, pens, look);
+    }
+    let wall = Stroke::new(pens.wall, look.ink);
+    let walls: Vec<bool> = model.edges.iter().map(|e| e.kind == EdgeKind::Wall).collect();
+    let n = walls.len();
+    if walls.iter().all(|w| *w) {
+        let path: Vec<Pos2> =
+            model.edges.iter().flat_map(|e| screen.line(&e.points[..e.points.len() - 1])).collect();
+        if path.len() > 2 {
+            painter.add(Shape::closed_line(path, wall));
+        }
+        return;
+    }
+    // Runs of walls, each in one piece so that its corners are mitred, with the posts of the mouths at its ends.
+    for start in (0..n).filter(|&i| walls[i] && !walls[(i + n - 1) % n]) {
+        let mouth_before = screen.line(&model.edges[(start + n - 1) % n].points);
+        let mut path = vec![post(&mouth_before, mouth_before.len() - 1, pens)];
+        let mut i = start;
+        while walls[i] {
+            let skip = usize::from(i != start);
+            path.extend(model.edges[i].points.iter().skip(skip).map(|&p| screen.screen_from_section(p)));
+            i = (i + 1) % n;
+        }
+        path.push(post(&screen.line(&model.edges[i].points), 0, pens));
+        painter.add(Shape::line(path, wall));
+    }
+    let dots = Stroke::new(1.2, look.ink);
+    for edge in model.edges.iter().filter(|e| e.kind == EdgeKind::Mouth) {
+        lines::dotted(painter, &screen.line(&edge.points), dots);
+    }
+}
+
+/// The faint line of the last outline that could be judged.
+pub fn paint_last_good(painter: &Painter, screen: &Screen, model: &BoardModel, look: &Look) {
+    for points in &model.last_good {
+        lines::dashed(painter, &screen.line(points), Stroke::new(1.0, look.ink3), 3.0, 3.0);
+    }
+}
+
+/// What is chosen, hovered, or where the open verdict governs: a glow beneath the lines.
+pub fn paint_glow(
+    painter: &Painter,
+    scene: &Scene,
+    selected: Option<Selected>,
+    hovered: Option<Target>,
+    look: &Look,
+) {
+    let screen = &scene.screen;
+    let glow = Stroke::new(8.5, look.accent_soft);
+    for points in &scene.model.governs.glow {
+        painter.add(Shape::line(screen.line(points), glow));
+    }
+    let under_pointer = hovered.map(|t| (t, Stroke::new(8.5, look.ink.gamma_multiply(0.18))));
+    let chosen = selected.map(|s| (super::pointer::target_of(s), glow));
+    for (target, stroke) in under_pointer.into_iter().chain(chosen) {
+        let path = match target {
+            Target::Edge(i) | Target::Middle(i) => scene.model.edges.get(i).map(|e| screen.line(&e.points)),
+            Target::Obstacle(i) => scene.model.obstacles.get(i).map(|points| {
+                let mut path = screen.line(points);
+                path.extend(path.first().copied());
+                path
+            }),
+            Target::StillLevel => {
+                let y = scene.model.still_z_m.map(|z| scene.at(Point::new(0.0, z)).y);
+                let span = scene.bounds().expand(16.0).x_range();
+                y.map(|y| vec![pos2(span.min, y), pos2(span.max, y)])
+            }
+            _ => None,
+        };
+        if let Some(path) = path.filter(|p| p.len() > 1) {
+            painter.add(Shape::line(path, stroke));
+        }
+    }
+}
+
+/// Square handles at vertices, round ones at the middles of edges, for what is chosen or pointed at.
+pub fn paint_handles(
+    painter: &Painter,
+    scene: &Scene,
+    selected: Option<Selected>,
+    hovered: Option<Target>,
+    look: &Look,
+) {
+    let n = scene.edges.len();
+    let mut shown: Vec<(Target, bool)> = Vec::new();
+    let mut show = |target: Target, is_chosen: bool| {
+        match target {
+            Target::Edge(i) | Target::Middle(i) if i < n => {
+                let ends = [Target::Vertex(i), Target::Vertex((i + 1) % n), Target::Middle(i)];
+                shown.extend(ends.map(|t| (t, is_chosen)));
+            }
+            Target::Vertex(i) if i < n => {
+                let around = [Target::Vertex((i + n - 1) % n), Target::Vertex((i + 1) % n)];
+                shown.extend(around.map(|t| (t, false)));
+                shown.push((target, is_chosen));
+            }
+            Target::Obstacle(i) | Target::ObstacleVertex(i, _) if is_chosen => {
+                let n = scene.study.section.obstacles.get(i).map_or(0, |o| o.vertices.len());
+                shown.extend((0..n).map(|j| (Target::ObstacleVertex(i, j), target == Target::ObstacleVertex(i, j))));
+            }
+            _ => {}
+        };
+    };
+    hovered.into_iter().for_each(|t| show(t, false));
+    selected.into_iter().for_each(|s| show(super::pointer::target_of(s), true));
+    for (target, is_chosen) in shown {
+        let Some(at) = target.handle(scene).filter(|p| scene.screen.rect.expand(8.0).contains(*p)) else { continue };
+        let stroke = if is_chosen { Stroke::new(1.5, look.accent) } else { Stroke::new(1.25, look.ink2) };
+        if let Target::Middle(_) = target {
+            painter.circle(at, 4.0, look.board, stroke);
+        } else {
+            let rect = Rect::from_center_size(at, vec2(8.0, 8.0));
+            painter.rect(rect, 0.0, look.board, stroke, StrokeKind::Middle);
+        }
+    }
+}
+
+fn paint_obstacle(painter: &Painter, screen: &Screen, points: &[Point], pens: Pens, look: &Look) {
+    let loops = [points.to_vec()];
+    if let Some((low, high)) = extent(&loops, Vec2::y()).filter(|(low, high)| low < high) {
+        let mut mesh = Mesh::default();
+        let strips = bands(&loops, Vec2::y(), &[low, high]).remove(0);
+        strips.iter().for_each(|strip| fill(&mut mesh, screen, strip, look.sunk));
+        painter.add(mesh);
+        hatch(painter, screen, points.to_vec(), Stroke::new(0.75, look.ink2));
+    }
+    let path = screen.line(points);
+    if path.len() > 2 {
+        painter.add(Shape::closed_line(path, Stroke::new(pens.wall.min(1.5), look.ink)));
+    }
+}
+
+/// The end of a mouth's post: a short piece of lip from the mouth's end toward its middle.
+fn post(mouth: &[Pos2], end: usize, pens: Pens) -> Pos2 {
+    let (at, next) = if end == 0 { (mouth[0], mouth[1]) } else { (mouth[end], mouth[end - 1]) };
+    let length = (next - at).length().max(f32::MIN_POSITIVE);
+    at + (next - at) * ((2.0 * pens.wall).min(0.25 * length) / length)
+}
+
+fn fill(mesh: &mut Mesh, screen: &Screen, strip: &Strip, color: Color32) {
+    let first = mesh.vertices.len() as u32;
+    for (left, right) in strip.left.iter().zip(&strip.right) {
+        mesh.colored_vertex(screen.screen_from_section(*left), color);
+        mesh.colored_vertex(screen.screen_from_section(*right), color);
+    }
+    for i in 0..strip.left.len().saturating_sub(1) as u32 {
+        let corner = first + 2 * i;
+        mesh.add_triangle(corner, corner + 1, corner + 2);
+        mesh.add_triangle(corner + 1, corner + 3, corner + 2);
+    }
+}
+
+/// A 45 degree hatch inside a closed chain, a line every 5 points.
+fn hatch(painter: &Painter, screen: &Screen, points: Vec<Point>, stroke: Stroke) {
+    let across = Vec2::new(-1.0, 1.0) * std::f64::consts::FRAC_1_SQRT_2;
+    let step = 5.0 / screen.scale();
+    let loops = [points];
+    let Some((low, high)) = extent(&loops, across) else { return };
+    // Only the lines that cross the drawing area.
+    let seen = [screen.rect.left_top(), screen.rect.right_top(), screen.rect.left_bottom(), screen.rect.right_bottom()];
+    let levels = seen.map(|p| across.dot(&screen.section_from_screen(p).coords));
+    let low = levels.iter().copied().fold(f64::INFINITY, f64::min).max(low);
+    let high = levels.iter().copied().fold(f64::NEG_INFINITY, f64::max).min(high);
+    let (first, last) = ((low / step).ceil() as i64, (high / step).floor() as i64);
+    for k in first..=last {
+        for [a, b] in chords(&loops, across, k as f64 * step) {
+            lines::segment(painter, [screen.screen_from_section(a), screen.screen_from_section(b)], stroke);
+        }
+    }
+}
