@@ -9,7 +9,7 @@ use egui::{CursorIcon, Sense, Ui, UiBuilder, ViewportCommand};
 use crate::analysis::{Results, Verdict};
 use crate::app::{self, Derived, Document, EXAMPLES, Edit, FileError};
 use crate::cases::{Accel, Attitude, LoadCase};
-use crate::problem::{Place, Problem};
+use crate::problem::Place;
 use crate::study::Study;
 
 use super::files::{Dialogs, EXTENSION, FileChooser, Purpose};
@@ -481,15 +481,8 @@ fn title_or(study: &Study, other: &str) -> String {
 }
 
 fn trouble(error: FileError, verb: &str) -> FileTrouble {
-    let words = error.to_string();
-    let (path, problems) = match error {
-        FileError::Io { path, .. } => {
-            let hint = format!("Check that `{}` is there and that you may use it", path.display());
-            (path, vec![Problem::fault(Place::Whole, words, hint)])
-        }
-        FileError::Unreadable { path, problems } | FileError::Unwritable { path, problems } => (path, problems),
-    };
-    FileTrouble { title: format!("`{}` could not be {verb}", file_name(&path)), problems }
+    let title = format!("`{}` could not be {verb}", file_name(error.path()));
+    FileTrouble { title, problems: error.into_problems() }
 }
 
 fn file_name(path: &Path) -> String {
