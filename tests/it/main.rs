@@ -1,11 +1,21 @@
 //! The integration tests: one binary, one module a subject.
 
 mod arbitrary;
+mod bad_sections;
 mod cli;
+mod clipper;
+mod degenerate;
 mod edits;
 mod examples;
 mod files;
 mod json;
 mod program;
+mod properties;
+mod properties_loads;
+mod published_forces;
+mod published_rigid;
+mod published_sections;
+mod reference;
 mod scenario;
+mod support;
 mod tidy;
