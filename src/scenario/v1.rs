@@ -318,8 +318,7 @@ impl From<Edge> for OutlineEdge {
 
 impl From<Obstacle> for section::Obstacle {
     fn from(obstacle: Obstacle) -> section::Obstacle {
-        let vertex =
-            |e: ObstacleEdge| section::Vertex { start: point(e.s_mm, e.z_mm), sweep_rad: e.sweep_deg.deg() };
+        let vertex = |e: ObstacleEdge| section::Vertex { start: point(e.s_mm, e.z_mm), sweep_rad: e.sweep_deg.deg() };
         section::Obstacle { name: obstacle.name, vertices: obstacle.edges.map(vertex) }
     }
 }
@@ -331,11 +330,9 @@ impl From<Width> for WidthLaw {
             Width::RoundBarrel { diameter_mm, bottom_z_mm } => {
                 WidthLaw::RoundBarrel { diameter_m: diameter_mm.mm(), bottom_z_m: bottom_z_mm.mm() }
             }
-            Width::Oval { width_mm, height_mm, bottom_z_mm } => WidthLaw::Oval {
-                width_m: width_mm.mm(),
-                height_m: height_mm.mm(),
-                bottom_z_m: bottom_z_mm.mm(),
-            },
+            Width::Oval { width_mm, height_mm, bottom_z_mm } => {
+                WidthLaw::Oval { width_m: width_mm.mm(), height_m: height_mm.mm(), bottom_z_m: bottom_z_mm.mm() }
+            }
             Width::Table(rows) => WidthLaw::Table(rows.map(|row| (row.z_mm.mm(), row.width_mm.mm()))),
         }
     }
