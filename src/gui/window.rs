@@ -6,7 +6,7 @@ use std::time::Instant;
 
 use egui::{CursorIcon, Sense, Ui, UiBuilder, ViewportCommand};
 
-use crate::analysis::{Results, Verdict};
+use crate::analysis::{Results, State, Verdict};
 use crate::app::{self, Derived, Document, EXAMPLES, Edit, FileError};
 use crate::cases::{Accel, Attitude, LoadCase};
 use crate::problem::Place;
@@ -102,6 +102,7 @@ impl Window {
             open_verdict: None,
             window_title: String::new(),
         };
+        window.choose_worst();
         if let Some(path) = path {
             window.open(path);
         }
@@ -389,6 +390,17 @@ impl Window {
         self.open_verdict = None;
         self.judged_ms = None;
         self.event.clear();
+        self.choose_worst();
+    }
+
+    /// What a reviewer asks first: the worst case, and its working where it fails.
+    fn choose_worst(&mut self) {
+        let Derived::Judged { results, .. } = self.doc.derived() else { return };
+        let Some(&(case_idx, verdict_idx)) = results.ranked().first() else { return };
+        self.view.case_idx = case_idx;
+        if results.cases[case_idx].verdicts[verdict_idx].state == State::Fails {
+            self.view.open_verdict = Some((case_idx, verdict_idx));
+        }
     }
 
     fn save(&mut self, ctx: &egui::Context) {

@@ -42,19 +42,26 @@ pub fn chart_ui(ui: &mut Ui, rect: Rect, chart: Chart, look: &Look) -> PlotTrans
     ui.painter().text(unit_at, Align2::LEFT_CENTER, chart.y_unit, font::tick(), look.ink2);
     let ground = ui.painter().add(Shape::Noop);
     let (x, y) = (chart.x, chart.y);
-    let axis = |hints: AxisHints<'static>| {
+    let words = format!("{} {}", chart.x_words, chart.x_unit).trim().to_owned();
+    let words = ui.painter().layout_no_wrap(words, font::tick(), look.ink2);
+    // Ticks that would meet the words at the end of the axis stay without a number.
+    let last_tick = x[1] - (x[1] - x[0]) * f64::from((words.size().x + 12.0) / (rect.width() - 34.0).max(1.0));
+    let axis = |hints: AxisHints<'static>, last: f64| {
         let hints = hints.tick_label_font(font::tick()).tick_label_color(look.ink3);
         // A range without width: a tick is there or not, never half faded.
         let hints = hints.label_spacing(egui::Rangef::new(8.0, 8.0));
-        hints.formatter(|mark, _| fixed(mark.value, decimals(mark.step_size)))
+        hints.formatter(move |mark, _| match mark.value <= last {
+            true => fixed(mark.value, decimals(mark.step_size)),
+            false => String::new(),
+        })
     };
     let names: Vec<(String, &str, &str)> =
         chart.curves.iter().map(|c| (c.name.to_owned(), chart.x_unit, chart.y_unit)).collect();
     let plot = Plot::new(chart.id)
-        .custom_x_axes(vec![axis(
-            AxisHints::new_x().min_thickness(16.0).label_spacing(egui::Rangef::new(50.0, 80.0)),
-        )])
-        .custom_y_axes(vec![axis(AxisHints::new_y().min_thickness(30.0))])
+        .custom_x_axes(vec![axis(AxisHints::new_x().min_thickness(16.0), last_tick)])
+        .custom_y_axes(vec![axis(AxisHints::new_y().min_thickness(30.0), f64::INFINITY)])
+        .x_grid_spacer(move |input| marks_every(input.bounds, rect.width() / 60.0))
+        .y_grid_spacer(move |input| marks_every(input.bounds, rect.height() / 34.0))
         .show_background(false)
         .show_grid([false, true])
         .grid_color(look.grid2)
@@ -97,9 +104,9 @@ pub fn chart_ui(ui: &mut Ui, rect: Rect, chart: Chart, look: &Look) -> PlotTrans
     ui.painter().set(ground, Shape::Vec(under));
     let base = ui.painter().round_to_pixel_center(frame.bottom());
     ui.painter().hline(frame.x_range(), base, (1.0, look.ink3));
-    let words = format!("{} {}", chart.x_words, chart.x_unit);
     let end = pos2(frame.right(), frame.bottom() + 9.0);
-    marks::paint_halo_text(ui.painter(), end, Align2::RIGHT_CENTER, words.trim(), font::tick(), look.ink2, look);
+    let at = Align2::RIGHT_CENTER.anchor_size(end, words.size());
+    ui.painter().galley(at.min, words, look.ink2);
     let words = format!("Plot of {}", chart.id);
     response.response.widget_info(|| egui::WidgetInfo::labeled(egui::Role::Image, true, &words));
     transform
