@@ -110,6 +110,26 @@ impl Quantity {
         Unit { symbol, in_si }
     }
 
+    /// The unit for one value alone: a smaller one where an SI value would read as a row of zeros.
+    pub fn unit_near(self, system: UnitSystem, si: f64) -> Unit {
+        use Quantity::*;
+        let smaller: &[(&str, f64)] = match (system, self) {
+            (UnitSystem::UsCustomary, _) => &[],
+            (_, Volume) => &[("L", 1e-3), ("mL", 1e-6)],
+            (_, Mass) => &[("g", 1e-3), ("mg", 1e-6)],
+            (_, Force) => &[("N", 1.0), ("mN", 1e-3)],
+            (_, Moment) => &[("N m", 1.0), ("mN m", 1e-3)],
+            (_, GagePressure) => &[("Pa", 1.0)],
+            _ => &[],
+        };
+        let usual = self.unit(system);
+        // A hundredth of a unit still reads well in it.
+        let fits = |unit: &Unit| si == 0.0 || si.abs() >= 0.01 * unit.in_si;
+        let units = smaller.iter().map(|&(symbol, in_si)| Unit { symbol, in_si });
+        let mut all = std::iter::once(usual).chain(units);
+        all.find(fits).or(smaller.last().map(|&(symbol, in_si)| Unit { symbol, in_si })).unwrap_or(usual)
+    }
+
     /// The symbol of the coherent SI unit, as the JSON uses it.
     pub fn si_symbol(self) -> &'static str {
         use Quantity::*;
@@ -157,13 +177,14 @@ impl Measure {
         self.text_to(system, 3)
     }
 
-    /// Number and unit, rounded to `significant` figures.
+    /// Number and unit, rounded to `significant` figures; SI values far below the usual unit take a smaller one.
     pub fn text_to(self, system: UnitSystem, significant: usize) -> String {
-        let symbol = self.quantity.unit(system).symbol;
-        match symbol {
-            "" => self.number(system, significant),
-            "°" => format!("{}°", self.number(system, significant)),
-            _ => format!("{} {symbol}", self.number(system, significant)),
+        let unit = self.quantity.unit_near(system, self.si);
+        let number = number(unit.from_si(self.si), significant);
+        match unit.symbol {
+            "" => number,
+            "°" => format!("{number}°"),
+            symbol => format!("{number} {symbol}"),
         }
     }
 }
@@ -244,6 +265,16 @@ mod tests {
         assert_eq!(utilisation_text(Some(1.0001)), "1.01");
         assert_eq!(utilisation_text(Some(0.9999)), "1.00");
         assert_eq!(utilisation_text(None), "–");
+    }
+
+    #[test]
+    fn small_values_take_small_units() {
+        let text = |quantity, si| Measure::new(quantity, si).text(UnitSystem::Si);
+        assert_eq!(text(Quantity::Volume, 6.8e-8), "0.0680 mL");
+        assert_eq!(text(Quantity::Volume, 11.17), "11.2 m³");
+        assert_eq!(text(Quantity::Force, 0.00067), "0.670 mN");
+        assert_eq!(text(Quantity::Moment, 0.0), "0.00 kN m");
+        assert_eq!(text(Quantity::GagePressure, 2.5), "2.50 Pa");
     }
 
     #[test]
