@@ -2,6 +2,7 @@
 
 mod arbitrary;
 mod bad_sections;
+mod brims;
 mod cli;
 mod clipper;
 mod degenerate;
