@@ -9,6 +9,8 @@ mod degenerate;
 mod edits;
 mod examples;
 mod files;
+#[cfg(feature = "gui")]
+mod gui;
 mod json;
 mod program;
 mod properties;
