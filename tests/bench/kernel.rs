@@ -75,7 +75,7 @@ fn settle_by_clipping(region: &MultiPolygon, outline: &[Edge], up: Vec2) -> f64 
     let mut last_side = 0;
     loop {
         let level = (low * at_high - high * at_low) / (at_high - at_low);
-        let error = geo_measure(&geo_below(region, up, level)).area - want;
+        let error = geo_measure(&geo_below(region, up, level)).0 - want;
         // The clipper's own grid.
         if error.abs() <= 1e-9 * want || high - low <= 1e-10 * size {
             return level;
