@@ -189,6 +189,39 @@ impl Measure {
     }
 }
 
+/// Words with measures in them, so that units can be switched after they are written. `{}` marks a measure.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Phrase {
+    words: String,
+    measures: Vec<Measure>,
+}
+
+impl Phrase {
+    /// One measure a `{}`, in order.
+    pub fn new(words: impl Into<String>, measures: impl Into<Vec<Measure>>) -> Phrase {
+        Phrase { words: words.into(), measures: measures.into() }
+    }
+
+    /// In the units of a system.
+    pub fn text(&self, system: UnitSystem) -> String {
+        let mut measures = self.measures.iter();
+        let mut out = String::new();
+        for (i, part) in self.words.split("{}").enumerate() {
+            if i > 0 {
+                out.push_str(&measures.next().map_or_else(String::new, |m| m.text(system)));
+            }
+            out.push_str(part);
+        }
+        out
+    }
+}
+
+impl From<&str> for Phrase {
+    fn from(words: &str) -> Phrase {
+        Phrase::new(words, [])
+    }
+}
+
 /// A number for reading: `significant` figures, never fewer digits than the whole part has, thin spaces
 /// between thousands, a true minus, no `-0`. `–` where the number is not finite.
 pub fn number(value: f64, significant: usize) -> String {
@@ -275,6 +308,13 @@ mod tests {
         assert_eq!(text(Quantity::Force, 0.00067), "0.670 mN");
         assert_eq!(text(Quantity::Moment, 0.0), "0.00 kN m");
         assert_eq!(text(Quantity::GagePressure, 2.5), "2.50 Pa");
+    }
+
+    #[test]
+    fn a_phrase_follows_the_units() {
+        let phrase = Phrase::new("or brim {} higher", [Measure::new(Quantity::Length, 0.0381)]);
+        assert_eq!(phrase.text(UnitSystem::Si), "or brim 38.1 mm higher");
+        assert_eq!(phrase.text(UnitSystem::UsCustomary), "or brim 1.50 in higher");
     }
 
     #[test]
