@@ -82,7 +82,7 @@ pub fn chart_ui(ui: &mut Ui, rect: Rect, chart: Chart, look: &Look) -> PlotTrans
         plot_ui.set_plot_bounds_x(x[0]..=x[1]);
         plot_ui.set_plot_bounds_y(y[0]..=y[1]);
         for curve in chart.curves {
-            let points: Vec<PlotPoint> = curve.points.iter().map(|p| PlotPoint::new(p[0], p[1])).collect();
+            let points = thinned(&curve.points, x, y);
             let line = Line::new(curve.name, PlotPoints::Owned(points));
             plot_ui.line(if curve.is_second {
                 line.color(look.ink2).width(1.4).style(LineStyle::dashed_dense())
@@ -171,6 +171,24 @@ pub fn range(values: impl Iterator<Item = f64>, with_zero: bool) -> [f64; 2] {
     [if with_zero && low == 0.0 { 0.0 } else { low - air }, if with_zero && high == 0.0 { 0.0 } else { high + air }]
 }
 
+/// Points that stand apart on the screen: a stroke has no direction where several lie in one place.
+fn thinned(points: &[[f64; 2]], x: [f64; 2], y: [f64; 2]) -> Vec<PlotPoint> {
+    const APART: f64 = 1.0 / 600.0;
+    let mut kept: Vec<PlotPoint> = Vec::with_capacity(points.len());
+    for (i, p) in points.iter().enumerate() {
+        let is_apart = kept.last().is_none_or(|last| {
+            (p[0] - last.x).abs() > APART * (x[1] - x[0]) || (p[1] - last.y).abs() > APART * (y[1] - y[0])
+        });
+        if !is_apart && i + 1 == points.len() {
+            kept.pop();
+        }
+        if is_apart || i + 1 == points.len() {
+            kept.push(PlotPoint::new(p[0], p[1]));
+        }
+    }
+    kept
+}
+
 /// Marks at 1, 2 or 5 times a power of ten, about `n` of them.
 fn marks_every((low, high): (f64, f64), n: f32) -> Vec<GridMark> {
     let rough = (high - low) / f64::from(n.clamp(2.0, 12.0));
@@ -204,6 +222,14 @@ mod tests {
         assert_eq!(range([2.0, 12.0].into_iter(), true), [0.0, 12.72]);
         let [low, high] = range([5.0, 5.0].into_iter(), false);
         assert!(low < 5.0 && high > 5.0);
+    }
+
+    #[test]
+    fn thinning_keeps_both_ends_and_drops_what_lies_in_one_place() {
+        let points = [[0.0, 0.0], [0.0, 0.0], [0.0, 0.0], [0.5, 2.0], [0.9999, 1.0], [1.0, 1.0]];
+        let got: Vec<[f64; 2]> = thinned(&points, [0.0, 1.0], [0.0, 2.0]).iter().map(|p| [p.x, p.y]).collect();
+        assert_eq!(got, [[0.0, 0.0], [0.5, 2.0], [1.0, 1.0]]);
+        assert!(thinned(&[], [0.0, 1.0], [0.0, 1.0]).is_empty());
     }
 
     #[test]
