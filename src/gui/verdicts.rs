@@ -109,7 +109,9 @@ fn verdict_ui(ui: &mut Ui, row_height: f32, desk: &mut Desk, judged: Judged, at:
     }
     let y = ui.painter().round_to_pixel_center(whole.bottom() - 0.5);
     ui.painter().hline(whole.shrink2(vec2(INSET, 0.0)).x_range(), y, (1.0, look.line2));
-    tooltip(response, verdict, desk);
+    if !is_open {
+        tooltip(response, verdict, desk);
+    }
 }
 
 fn row_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: usize, is_open: bool) {

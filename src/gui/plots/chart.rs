@@ -1,7 +1,7 @@
 //! What the plots share: ground, axes, curves, hatches, labels on the curve. No legend, no frame.
 
 use egui::{Align2, Color32, Painter, Pos2, Rect, Shape, Stroke, Ui, UiBuilder, pos2, vec2};
-use egui_plot::{AxisHints, GridMark, HoverPosition, Line, LineStyle, Plot, PlotPoint, PlotPoints, PlotTransform};
+use egui_plot::{AxisHints, GridMark, HoverPosition, Line, Plot, PlotPoint, PlotPoints, PlotTransform};
 
 use crate::gui::{Look, font, marks};
 use crate::units::{fixed, number};
@@ -78,17 +78,13 @@ pub fn chart_ui(ui: &mut Ui, rect: Rect, chart: Chart, look: &Look) -> PlotTrans
         .label_formatter(move |at| hover_words(at, &names));
     let body = rect.with_min_y(rect.top() + 14.0);
     let mut child = ui.new_child(UiBuilder::new().max_rect(body).id_salt(chart.id));
+    let points: Vec<Vec<PlotPoint>> = chart.curves.iter().map(|curve| thinned(&curve.points, x, y)).collect();
     let response = plot.show(&mut child, |plot_ui| {
         plot_ui.set_plot_bounds_x(x[0]..=x[1]);
         plot_ui.set_plot_bounds_y(y[0]..=y[1]);
-        for curve in chart.curves {
-            let points = thinned(&curve.points, x, y);
-            let line = Line::new(curve.name, PlotPoints::Owned(points));
-            plot_ui.line(if curve.is_second {
-                line.color(look.ink2).width(1.4).style(LineStyle::dashed_dense())
-            } else {
-                line.color(look.ink).width(1.75)
-            });
+        for (curve, points) in chart.curves.iter().zip(&points) {
+            // For the hand alone: egui_plot sets points on whole pixels, which makes steep curves thin.
+            plot_ui.line(Line::new(curve.name, PlotPoints::Borrowed(points)).color(look.ink).width(0.0));
         }
     });
     let transform = response.transform;
@@ -102,6 +98,15 @@ pub fn chart_ui(ui: &mut Ui, rect: Rect, chart: Chart, look: &Look) -> PlotTrans
         }
     }
     ui.painter().set(ground, Shape::Vec(under));
+    let inside = ui.painter().with_clip_rect(frame.expand(1.0).intersect(ui.clip_rect()));
+    for (curve, points) in chart.curves.iter().zip(&points) {
+        let path: Vec<Pos2> = points.iter().map(|p| transform.position_from_point(p)).collect();
+        if curve.is_second {
+            inside.extend(Shape::dashed_line(&path, (1.4, look.ink2), 5.0, 3.5));
+        } else {
+            inside.line(path, Stroke::new(1.75, look.ink));
+        }
+    }
     let base = ui.painter().round_to_pixel_center(frame.bottom());
     ui.painter().hline(frame.x_range(), base, (1.0, look.ink3));
     let end = pos2(frame.right(), frame.bottom() + 9.0);
