@@ -194,16 +194,20 @@ fn thinned(points: &[[f64; 2]], x: [f64; 2], y: [f64; 2]) -> Vec<PlotPoint> {
     kept
 }
 
-/// Marks at 1, 2 or 5 times a power of ten, about `n` of them.
+/// Marks at 1, 2 or 5 times a power of ten, about `n` of them and at least three.
 fn marks_every((low, high): (f64, f64), n: f32) -> Vec<GridMark> {
-    let rough = (high - low) / f64::from(n.clamp(2.0, 12.0));
-    let power = 10_f64.powf(rough.log10().floor());
-    let step = [1.0, 2.0, 5.0, 10.0].into_iter().map(|m| m * power).find(|step| *step >= rough).unwrap_or(rough);
-    if !step.is_finite() || step <= 0.0 {
+    let n = f64::from(n.clamp(3.0, 12.0));
+    let power = 10_f64.powf(((high - low) / n).log10().floor());
+    if !power.is_finite() || power <= 0.0 {
         return Vec::new();
     }
-    let (first, last) = ((low / step).ceil() as i64, (high / step).floor() as i64);
-    (first..=last).map(|i| GridMark { value: i as f64 * step, step_size: step }).collect()
+    let marks = |step: f64| -> Vec<GridMark> {
+        let (first, last) = ((low / step).ceil() as i64, (high / step).floor() as i64);
+        (first..=last).map(|i| GridMark { value: i as f64 * step, step_size: step }).collect()
+    };
+    let enough = (0.6 * n).max(3.0) as usize;
+    let steps = [10.0, 5.0, 2.0, 1.0, 0.5].map(|m| m * power);
+    steps.into_iter().map(marks).find(|marks| marks.len() >= enough).unwrap_or_default()
 }
 
 fn decimals(step: f64) -> usize {
@@ -242,7 +246,7 @@ mod tests {
         for (low, high) in [(0.0, 1.0), (-37.0, 42.5), (60.0, 95.0), (0.0, 1234.0), (-1e-3, 2e-3)] {
             for n in [3.0, 5.0, 8.0] {
                 let marks = marks_every((low, high), n);
-                assert!((2..=9).contains(&marks.len()), "{low}..{high}, {n}: {} marks", marks.len());
+                assert!((3..=9).contains(&marks.len()), "{low}..{high}, {n}: {} marks", marks.len());
                 assert!(marks.iter().all(|m| low <= m.value && m.value <= high));
             }
         }
