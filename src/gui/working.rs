@@ -32,7 +32,8 @@ pub fn working_ui(ui: &mut Ui, inset: f32, desk: &mut Desk, verdict: &Verdict, c
             rule_ui(ui, desk);
         }
         if !verdict.mend.is_empty() {
-            paragraph_ui(ui, &verdict.mend.join(" "), font::figure(), desk.look.ink);
+            let mend: Vec<String> = verdict.mend.iter().map(|m| m.text(desk.view.units)).collect();
+            paragraph_ui(ui, &mend.join(" "), font::figure(), desk.look.ink);
         }
         if !verdict.remark.is_empty() {
             paragraph_ui(ui, &verdict.remark, font::body(), desk.look.ink2);
