@@ -5,7 +5,7 @@ use crate::geom::{Path, Point, Vec2};
 use crate::liquid::Liquid;
 use crate::problem::{Place, Problem, Severity};
 use crate::section::{self, Mouth, Region, Section};
-use crate::statics::Tilted;
+use crate::statics::{Tilted, Vessel};
 use crate::units::{Measure, Quantity};
 
 /// How much liquid, as it was given. Levels are of the tank standing level and at rest.
@@ -127,6 +127,7 @@ pub struct Study {
 pub struct ValidStudy {
     study: Study,
     region: Region,
+    vessel: Vessel,
     mouths: Vec<Mouth>,
     capacity_m3: f64,
     fill_volume_m3: f64,
@@ -159,7 +160,8 @@ impl Study {
             }
         };
         let mouths = self.section.mouths();
-        let filled = region.as_ref().map(|region| self.fill_volume(region, &mut problems));
+        let vessel = region.as_ref().map(|r| Vessel::new(r.geometry().to_vec(), self.section.width.clone()));
+        let filled = vessel.as_ref().map(|vessel| self.fill_volume(vessel, &mut problems));
         if let Some(region) = &region {
             self.check_points(region, &mut problems);
             if mouths.is_empty() {
@@ -171,10 +173,11 @@ impl Study {
             }
         }
         let has_fault = problems.iter().any(|p| p.severity == Severity::Fault);
-        match (region, filled) {
-            (Some(region), Some((capacity_m3, fill_volume_m3))) if !has_fault => Ok(ValidStudy {
+        match (region, vessel, filled) {
+            (Some(region), Some(vessel), Some((capacity_m3, fill_volume_m3))) if !has_fault => Ok(ValidStudy {
                 study: self.clone(),
                 region,
+                vessel,
                 mouths,
                 capacity_m3,
                 fill_volume_m3,
@@ -236,7 +239,7 @@ impl Study {
             let phi = case.attitude.angle_rad();
             // Ten thousand times gravity: beyond any tank, and well within what f64 carries.
             let is_sane = numbers.iter().all(|x| x.is_finite() && x.abs() <= 1e5) && phi.is_finite();
-            if !is_sane || !(onset.is_finite() && onset >= 0.0) {
+            if !(is_sane && onset.is_finite() && onset >= 0.0) {
                 let hint = "give finite numbers, accelerations up to 100 000, and an onset of zero or more";
                 problems.push(Problem::fault(Place::Case(i), "a number is not finite or out of range", hint));
             }
@@ -267,8 +270,8 @@ impl Study {
     }
 
     /// Capacity and fill, m3; a fault where the fill lies outside the tank.
-    fn fill_volume(&self, region: &Region, problems: &mut Vec<Problem>) -> (f64, f64) {
-        let tilted = Tilted::new(region.geometry(), &self.section.width, Vec2::y());
+    fn fill_volume(&self, vessel: &Vessel, problems: &mut Vec<Problem>) -> (f64, f64) {
+        let tilted = vessel.tilted(Vec2::y());
         let capacity = tilted.capacity_m3();
         let (bottom, top) = tilted.span();
         let slack = 1e-9;
@@ -307,6 +310,11 @@ impl ValidStudy {
         &self.region
     }
 
+    /// The section with its width law.
+    pub fn vessel(&self) -> &Vessel {
+        &self.vessel
+    }
+
     /// Its mouths.
     pub fn mouths(&self) -> &[Mouth] {
         &self.mouths
@@ -329,6 +337,6 @@ impl ValidStudy {
 
     /// The section seen along a direction.
     pub fn tilted(&self, up: Vec2) -> Tilted<'_> {
-        Tilted::new(self.region.geometry(), &self.study.section.width, up)
+        self.vessel.tilted(up)
     }
 }

@@ -98,7 +98,9 @@ fn wall_curve(study: &ValidStudy, results: &Results, result: &CaseResult) -> Wal
 fn freeboard_curve(study: &ValidStudy, result: &CaseResult) -> FreeboardCurve {
     const N_POINTS: u32 = 48;
     let absent = |reason: String| FreeboardCurve { absent: Some(reason), ..FreeboardCurve::default() };
-    let Some(rims) = result.gravity.up.and_then(|up| Rims::new(study.region(), study.mouths(), up)) else {
+    let Some(rims) =
+        result.gravity.up.and_then(|up| Rims::new(study.region(), &study.study().section.width, study.mouths(), up))
+    else {
         return absent("freeboard needs effective gravity toward the floor".to_owned());
     };
     let allowance = study.study().freeboard_allowance_m().0;

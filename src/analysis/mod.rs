@@ -5,7 +5,7 @@ mod results;
 
 use rayon::prelude::*;
 
-use crate::cases::{Attitude, LoadCase};
+use crate::cases::LoadCase;
 use crate::criteria::{self, Context, Outcome};
 use crate::geom::{Point, Vec2};
 use crate::statics::{Ramp, Rims, Setting, Spill, effective_gravity, settle};
@@ -56,14 +56,13 @@ fn judge_case(study: &ValidStudy, case: &LoadCase, still_z_m: f64) -> (CaseResul
     let accel = case.accel.to_m_per_s2(inputs.gravity_m_per_s2);
     let phi = case.attitude.angle_rad();
     let gravity = effective_gravity(inputs.gravity_m_per_s2, phi, accel);
-    let is_turn = accel.norm() == 0.0 && case.attitude != Attitude::Level;
+    let is_turn = accel.norm() == 0.0 && phi != 0.0;
     let at_rest = effective_gravity(inputs.gravity_m_per_s2, phi, Vec2::zeros()).vec;
     let ramp = if is_turn { Some(Ramp::turn(phi)) } else { Ramp::accelerate(at_rest, accel) };
-    let width = &inputs.section.width;
     let volume = study.fill_volume_m3();
-    let spill = ramp.map(|ramp| Spill::trace(&ramp, study.region(), width, study.mouths(), volume));
+    let spill = ramp.map(|ramp| Spill::trace(&ramp, study.region(), study.vessel(), study.mouths(), volume));
     let settled = settle_case(study, &gravity, spill.as_ref());
-    let rims = gravity.up.and_then(|up| Rims::new(study.region(), study.mouths(), up));
+    let rims = gravity.up.and_then(|up| Rims::new(study.region(), &inputs.section.width, study.mouths(), up));
     let context = Context {
         study,
         case,

@@ -79,11 +79,12 @@ fn demand_and_limit(context: &Context, spill: &Spill, volume: f64) -> (Measure, 
     (demand, limit.map(|x| Measure::new(quantity, x)))
 }
 
+/// Why there is no limit.
 fn unlimited(context: &Context, spill: &Spill) -> String {
     if context.study.mouths().is_empty() {
         "the tank has no mouth: nothing can leave".to_owned()
-    } else if spill.governs.is_none() {
-        String::new()
+    } else if !spill.turns {
+        "this acceleration does not turn effective gravity; at free fall and beyond nothing is judged".to_owned()
     } else {
         "no acceleration along this line makes it spill".to_owned()
     }

@@ -2,10 +2,9 @@
 
 use crate::cases::LoadCase;
 use crate::geom::{Point, Vec2};
-use crate::num::bisect;
 use crate::problem::Place;
 use crate::sources::Source;
-use crate::statics::{EffectiveGravity, Rims, Settled, Spill, Tilted};
+use crate::statics::{EffectiveGravity, Rims, Settled, Spill};
 use crate::study::{Limit, ValidStudy};
 use crate::units::Measure;
 
@@ -150,49 +149,5 @@ pub(super) fn state_of(utilisation: f64) -> State {
         State::Close
     } else {
         State::Holds
-    }
-}
-
-/// Freeboard at one mouth as a function of the fill, along one direction.
-pub struct FreeboardFill<'a> {
-    study: &'a ValidStudy,
-    rims: &'a Rims,
-    tilted: Tilted<'a>,
-    still: Tilted<'a>,
-    mouth_idx: usize,
-    allowance_m: f64,
-}
-
-impl<'a> FreeboardFill<'a> {
-    /// For the mouth `mouth_idx`, whose walls are carried on in `rims`.
-    pub fn new(study: &'a ValidStudy, rims: &'a Rims, mouth_idx: usize, allowance_m: f64) -> FreeboardFill<'a> {
-        let tilted = rims.tilted(&study.study().section.width);
-        FreeboardFill { study, rims, tilted, still: study.tilted(Vec2::y()), mouth_idx, allowance_m }
-    }
-
-    /// (required, available) freeboard, m, at a volume; none where the liquid stands in several pools.
-    pub fn at(&self, volume_m3: f64) -> Option<(f64, f64)> {
-        let still_z = self.still.level_for_volume(volume_m3);
-        let surface_z = self.rims.surface_z_m(&self.tilted, volume_m3, self.mouth_idx)?;
-        Some((surface_z - still_z + self.allowance_m, self.mouth_z_m() - still_z))
-    }
-
-    /// z of the mouth's lowest point, m.
-    pub fn mouth_z_m(&self) -> f64 {
-        self.study.mouths()[self.mouth_idx].brim(self.study.region(), Vec2::y()).0
-    }
-
-    /// The highest volume at which the available freeboard covers the required one, m3; none where none does.
-    /// Fills are sampled in steps of 1/64 of capacity, then the turn is refined.
-    pub fn highest_volume_m3(&self) -> Option<f64> {
-        const N_STEPS: u32 = 64;
-        let capacity = self.study.capacity_m3();
-        let fails = |volume: f64| self.at(volume).is_none_or(|(required, available)| required > available);
-        let volume = |i: u32| capacity * f64::from(i) / f64::from(N_STEPS);
-        let holds = (1..=N_STEPS).rev().find(|&i| !fails(volume(i)))?;
-        if holds == N_STEPS {
-            return Some(capacity);
-        }
-        Some(bisect(volume(holds), volume(holds + 1), 1e-12 * capacity, fails))
     }
 }

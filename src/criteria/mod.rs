@@ -10,7 +10,8 @@ mod roof;
 mod vapour;
 mod verdict;
 
-pub use context::{Context, FreeboardFill};
+pub use context::Context;
+pub use freeboard::FreeboardFill;
 pub use verdict::*;
 
 /// What a criterion gives: verdicts, and checks that do not apply with the reason.

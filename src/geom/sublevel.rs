@@ -15,6 +15,8 @@ struct Piece {
     high: [f64; 2],
     /// Whether the edge travels upward here: the region is then to its left, and it bounds a strip on the right.
     is_right: bool,
+    /// du/dv of the chord.
+    gain: f64,
     /// Arcs: (low end - centre), signed radius as travelled.
     arc: Option<([f64; 2], f64)>,
 }
@@ -30,7 +32,7 @@ impl Piece {
         }
         let d = v - self.low[1];
         match self.arc {
-            None => self.low[0] + (self.high[0] - self.low[0]) * (d / (self.high[1] - self.low[1])),
+            None => self.low[0] + self.gain * d,
             Some(([x, t], radius)) => {
                 // (x + du)^2 + (t + d)^2 = x^2 + t^2, solved for du without cancellation. The piece stays on one
                 // side of the centre: the outer side of a left turn travelling up, and so on.
@@ -186,39 +188,60 @@ impl Sublevel {
 
     /// Count of connected parts of the region below `level`.
     pub fn n_pools(&self, level: f64) -> usize {
+        self.count_parts(level).0
+    }
+
+    /// Count of low points from which the region below `level` grows: one means that it is connected at every
+    /// lower level too.
+    pub fn n_basins(&self, level: f64) -> usize {
+        self.count_parts(level).1
+    }
+
+    /// (connected parts, low points) below `level`.
+    fn count_parts(&self, level: f64) -> (usize, usize) {
         let v = level - self.origin_level;
-        let extent = self.slabs.iter().map(|s| s.width_bottom.max(s.width_top)).fold(0.0, f64::max);
+        let slabs = &self.slabs[..self.slabs.partition_point(|s| s.bottom < v)];
+        if slabs.iter().all(|s| s.n == 2) {
+            let n = usize::from(!slabs.is_empty());
+            return (n, n);
+        }
+        let extent = slabs.iter().map(|s| s.width_bottom.max(s.width_top)).fold(0.0, f64::max);
         // Strips that share less than this are not connected: far above rounding, far below any real gap.
         let slack = 1e-12 * extent;
-        let mut n_parts = 0;
+        let (mut n_parts, mut n_basins) = (0, 0);
         let mut below: Vec<([f64; 2], usize)> = Vec::new();
         let mut parent: Vec<usize> = Vec::new();
-        for slab in self.slabs.iter().take_while(|s| s.bottom < v) {
+        for slab in slabs {
             let mut here = Vec::with_capacity(slab.n / 2);
             for (left, right) in self.strips(slab) {
                 let id = parent.len();
                 parent.push(id);
-                n_parts += 1;
                 let (l, r) = (left.u_at(slab.bottom), right.u_at(slab.bottom));
+                let mut n_joined = 0;
                 for &([bl, br], other) in &below {
                     if br.min(r) - bl.max(l) > slack {
                         let (a, b) = (root_of(&mut parent, id), root_of(&mut parent, other));
                         if a != b {
                             parent[a] = b;
-                            n_parts -= 1;
+                            n_joined += 1;
                         }
                     }
                 }
-                let top = slab.top;
-                here.push(([left.u_at(top), right.u_at(top)], id));
+                if n_joined == 0 {
+                    n_basins += 1;
+                }
+                n_parts = n_parts + 1 - n_joined;
+                here.push(([left.u_at(slab.top), right.u_at(slab.top)], id));
             }
             below = here;
         }
-        n_parts
+        (n_parts, n_basins)
     }
 
     fn cut_into_slabs(&mut self) {
-        let mut levels: Vec<f64> = self.pieces.iter().flat_map(|p| [p.low[1], p.high[1]]).collect();
+        // In closed chains every level is that of the start of some piece.
+        let mut levels: Vec<f64> =
+            self.pieces.iter().map(|p| if p.is_right { p.low[1] } else { p.high[1] }).collect();
         levels.sort_unstable_by(f64::total_cmp);
         levels.dedup();
         let mut rising: Vec<u32> = (0..self.pieces.len() as u32).collect();
@@ -227,6 +250,7 @@ impl Sublevel {
         let mut active: Vec<(f64, u32)> = Vec::new();
         let mut area = 0.0;
         self.slabs.reserve(levels.len());
+        self.crossing.reserve(4 * levels.len());
         for pair in levels.windows(2) {
             let (bottom, top) = (pair[0], pair[1]);
             active.retain(|&(_, i)| self.pieces[i as usize].high[1] > bottom);
@@ -252,7 +276,7 @@ impl Sublevel {
             };
             slab.width_bottom = self.width_in(&slab, bottom);
             slab.width_top = self.width_in(&slab, top);
-            area += self.area_in(&slab, top);
+            area += self.area_between(&slab, top, slab.width_top);
             self.slabs.push(slab);
         }
         self.total = area;
@@ -281,7 +305,12 @@ impl Sublevel {
 
     /// Area of the slab below `v`.
     fn area_in(&self, slab: &Slab, v: f64) -> f64 {
-        let trapezoid = 0.5 * (slab.width_bottom + self.width_in(slab, v)) * (v - slab.bottom);
+        self.area_between(slab, v, self.width_in(slab, v))
+    }
+
+    /// Area of the slab below `v`, where it is `width` wide.
+    fn area_between(&self, slab: &Slab, v: f64, width: f64) -> f64 {
+        let trapezoid = 0.5 * (slab.width_bottom + width) * (v - slab.bottom);
         if !slab.has_arcs {
             return trapezoid;
         }
@@ -298,7 +327,8 @@ impl Sublevel {
         let (mut low, mut high) = (0.0, slab.top - slab.bottom);
         let mut rise = guess;
         for _ in 0..80 {
-            let error = self.area_in(slab, slab.bottom + rise) - missing;
+            let width = self.width_in(slab, slab.bottom + rise);
+            let error = self.area_between(slab, slab.bottom + rise, width) - missing;
             if error > 0.0 {
                 high = rise
             } else {
@@ -307,7 +337,6 @@ impl Sublevel {
             if error.abs() <= 2.0 * f64::EPSILON * missing || high - low <= f64::EPSILON * high {
                 break;
             }
-            let width = self.width_in(slab, slab.bottom + rise);
             let next = rise - error / width;
             rise = if next > low && next < high { next } else { 0.5 * (low + high) };
         }
@@ -329,7 +358,8 @@ fn push_piece(from: [f64; 2], to: [f64; 2], arc: Option<([f64; 2], f64)>, pieces
     }
     let is_right = to[1] > from[1];
     let (low, high) = if is_right { (from, to) } else { (to, from) };
-    pieces.push(Piece { low, high, is_right, arc });
+    let gain = (high[0] - low[0]) / (high[1] - low[1]);
+    pieces.push(Piece { low, high, is_right, gain, arc });
 }
 
 /// Cuts an arc where it turns along `up`, and at the quarter points between, where its angle is ill-conditioned

@@ -82,7 +82,7 @@ pub fn paint_bar(painter: &Painter, rect: Rect, utilisation: Option<f64>, state:
         _ if state == State::NotJudged => {
             let hatched = track.with_max_x(limit_x);
             painter.rect_filled(hatched, CornerRadius::ZERO, look.panel);
-            paint_hatch(painter, hatched, 4.0, Stroke::new(1.0, look.state_fill(state)));
+            painter.add(hatch(hatched, 4.0, Stroke::new(1.0, look.state_fill(state))));
         }
         None => {}
         Some(u) => {
@@ -194,24 +194,26 @@ pub fn paint_halo_text(
     rect
 }
 
-/// A 45 degree hatch, clipped to `rect`, as one mesh.
-pub fn paint_hatch(painter: &Painter, rect: Rect, spacing: f32, stroke: Stroke) {
-    let painter = painter.with_clip_rect(painter.clip_rect().intersect(rect));
+/// A 45 degree hatch that fills `rect`, as one shape.
+pub fn hatch(rect: Rect, spacing: f32, stroke: Stroke) -> Shape {
     let n = ((rect.width() + rect.height()) / spacing) as i32;
     let mut mesh = egui::Mesh::default();
     let half = 0.5 * stroke.width * std::f32::consts::SQRT_2;
-    for i in 0..=n {
-        let x = rect.left() + i as f32 * spacing;
-        let (foot, head) = (pos2(x, rect.top()), pos2(x - rect.height(), rect.bottom()));
+    for i in 1..=n {
+        // The line x + y = reach, cut off at the sides of `rect`.
+        let reach = i as f32 * spacing;
+        let (top, bottom) = ((reach - rect.width()).max(0.0), reach.min(rect.height()));
+        let on = |y: f32, aside: f32| {
+            pos2((rect.left() + reach - y + aside).clamp(rect.left(), rect.right()), rect.top() + y)
+        };
         let first = mesh.vertices.len() as u32;
-        for corner in [foot - vec2(half, 0.0), foot + vec2(half, 0.0), head + vec2(half, 0.0), head - vec2(half, 0.0)]
-        {
+        for corner in [on(top, -half), on(top, half), on(bottom, half), on(bottom, -half)] {
             mesh.colored_vertex(corner, stroke.color);
         }
         mesh.add_triangle(first, first + 1, first + 2);
         mesh.add_triangle(first, first + 2, first + 3);
     }
-    painter.add(mesh);
+    Shape::mesh(mesh)
 }
 
 /// The focus ring round `rect`, when `response` has the keyboard.

@@ -1,10 +1,40 @@
 //! The window. It alone knows egui.
+//!
+//! Panels read the document and propose; [`Window`] applies what they proposed at the end of the frame. Nobody but
+//! [`look`] writes a colour, nobody but [`commands`] a shortcut.
 
 pub mod board;
+mod case_head;
+mod cell;
+pub mod commands;
+mod desk;
+mod field;
+mod files;
 pub mod font;
+mod formula;
+mod header;
+mod launch;
+mod layout;
 pub mod look;
 pub mod marks;
+mod modals;
+mod plots;
+mod problems;
+mod settings;
+mod starter;
+mod status;
+mod strip;
+mod tank;
+mod verdicts;
 mod view;
+mod window;
+mod working;
 
+pub use commands::Command;
+pub use desk::Desk;
+pub use files::Dialogs;
+pub use launch::launch;
 pub use look::Look;
+pub use settings::Settings;
 pub use view::{Camera, Proposal, Selected, View};
+pub use window::Window;

@@ -3,6 +3,8 @@
 use crate::app::Edit;
 use crate::units::UnitSystem;
 
+use super::Command;
+
 /// What the user has chosen on the board or in a column.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
 pub enum Selected {
@@ -21,7 +23,7 @@ pub enum Selected {
 }
 
 /// What is chosen, how it is shown. Panels may change it in place.
-#[derive(Clone, Debug, PartialEq)]
+#[derive(Clone, Debug, Default, PartialEq)]
 pub struct View {
     /// The load case on the board.
     pub case_idx: usize,
@@ -51,6 +53,8 @@ pub struct Camera {
 pub enum Proposal {
     /// Change the document.
     Edit(Edit),
+    /// Carry out a command.
+    Run(Command),
     /// A drag starts: edits until its end are one step with these words.
     BeginGesture(String),
     /// The drag ends.

@@ -35,8 +35,8 @@ pub fn gauss<const N: usize>(n_panels: usize, mut f: impl FnMut(f64) -> [f64; N]
 ///
 /// Source: Takahasi & Mori (1974), double exponential formulas (from memory; tested against closed forms).
 pub fn tanh_sinh<const N: usize>(mut f: impl FnMut(f64) -> [f64; N]) -> [f64; N] {
-    const STEP: f64 = 1.0 / 12.0;
-    const N_STEPS: i32 = 42;
+    const STEP: f64 = 1.0 / 7.0;
+    const N_STEPS: i32 = 23;
     let mut sum = [0.0; N];
     for k in -N_STEPS..=N_STEPS {
         let t = f64::from(k) * STEP;

@@ -16,6 +16,44 @@ pub fn bisect(mut low: f64, mut high: f64, tolerance: f64, mut is_beyond: impl F
     0.5 * (low + high)
 }
 
+/// A root of a continuous `f` between `low` and `high`, to `tolerance`, where f(low) <= 0 < f(high); `low` where it
+/// is not below zero there already.
+///
+/// Source: Chandrupatla (1997), a hybrid of bisection and inverse quadratic interpolation (from memory; tested).
+pub fn root(low: f64, high: f64, tolerance: f64, mut f: impl FnMut(f64) -> f64) -> f64 {
+    let (mut a, mut b) = (high, low);
+    let (mut fa, mut fb) = (f(a), f(b));
+    if fb >= 0.0 {
+        return low;
+    }
+    let (mut c, mut fc);
+    let mut share = 0.5;
+    for _ in 0..200 {
+        let x = a + share * (b - a);
+        let fx = f(x);
+        if (fx > 0.0) == (fa > 0.0) {
+            (c, fc) = (a, fa);
+        } else {
+            (c, fc, b, fb) = (b, fb, a, fa);
+        }
+        (a, fa) = (x, fx);
+        let best = if fa.abs() < fb.abs() { a } else { b };
+        let least = (2.0 * f64::EPSILON * best.abs() + tolerance) / (b - a).abs();
+        if least > 0.5 || fa == 0.0 {
+            return best;
+        }
+        let (xi, phi) = ((a - b) / (c - b), (fa - fb) / (fc - fb));
+        let is_smooth = phi * phi < xi && (1.0 - phi) * (1.0 - phi) < 1.0 - xi;
+        share = if is_smooth {
+            fa / (fb - fa) * fc / (fb - fc) + (c - a) / (b - a) * fa / (fc - fa) * fb / (fc - fb)
+        } else {
+            0.5
+        };
+        share = share.clamp(least, 1.0 - least);
+    }
+    0.5 * (a + b)
+}
+
 /// The point and value of the least of `f` in `low..high`, by golden section, to `tolerance`; a local one where
 /// there are several.
 ///
@@ -48,8 +86,18 @@ mod tests {
 
     #[test]
     fn bisection_and_golden_section_find_what_is_there() {
-        let root = bisect(0.0, 2.0, 1e-14, |x| x * x > 2.0);
-        assert!((root - std::f64::consts::SQRT_2).abs() < 1e-13, "{root}");
+        let sqrt2 = std::f64::consts::SQRT_2;
+        let found = bisect(0.0, 2.0, 1e-14, |x| x * x > 2.0);
+        assert!((found - sqrt2).abs() < 1e-13, "{found}");
+        for (low, high) in [(0.0, 2.0), (1.0, 1e6), (sqrt2 - 1e-9, 1.5)] {
+            let mut n_calls = 0;
+            let found = root(low, high, 1e-15, |x| {
+                n_calls += 1;
+                x * x - 2.0
+            });
+            assert!((found - sqrt2).abs() < 1e-14 && n_calls < 60, "{found} in {n_calls} calls from {low}..{high}");
+        }
+        assert_eq!(root(3.0, 4.0, 1e-15, |x| x - 2.0), 3.0);
         assert_eq!(bisect(3.0, 4.0, 1e-14, |x| x > 2.0), 3.0);
         let (x, value) = golden_min(0.0, 3.0, 1e-9, |x| (x - 1.25) * (x - 1.25) + 2.0);
         assert!((x - 1.25).abs() < 1e-7 && (value - 2.0).abs() < 1e-12, "{x} {value}");

@@ -1,1 +1,94 @@
-//! Results for readers: the JSON contract and the tables of the command line.
+//! A judgement made readable: text for people, JSON for machines.
+//!
+//! One model, [`Report`], over a study and its results. It computes nothing, every number comes from
+//! [`Results`]; it makes strings and knows neither files nor terminals nor screens.
+
+pub mod json;
+mod lines;
+pub mod table;
+
+#[cfg(test)]
+mod fixture;
+
+use serde::Serialize;
+
+use crate::analysis::{CaseResult, Results, State, Verdict};
+use crate::cases::LoadCase;
+use crate::problem::Place;
+use crate::study::Study;
+
+/// What every output says at its end.
+pub const CAUTION: &str = "A design aid, settled states only: local codes and a licensed engineer decide.";
+
+/// A judged study, and which of its load cases are shown.
+#[derive(Clone, Debug)]
+pub struct Report<'a> {
+    /// The file, as the user named it.
+    pub file: &'a str,
+    /// The inputs.
+    pub study: &'a Study,
+    /// The results.
+    pub results: &'a Results,
+    /// Indices of the load cases shown.
+    pub case_idxs: Vec<usize>,
+}
+
+/// How many load cases, and how many verdicts in each state.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize)]
+pub struct Counts {
+    /// Load cases.
+    pub n_cases: usize,
+    /// Verdicts that fail.
+    pub fails: usize,
+    /// Verdicts that are not judged.
+    pub not_judged: usize,
+    /// Verdicts that are close.
+    pub close: usize,
+    /// Verdicts that hold.
+    pub holds: usize,
+}
+
+impl<'a> Report<'a> {
+    /// A report of every load case.
+    pub fn new(file: &'a str, study: &'a Study, results: &'a Results) -> Report<'a> {
+        Report { file, study, results, case_idxs: (0..results.cases.len()).collect() }
+    }
+
+    /// The load cases shown: number from one, inputs, results.
+    pub fn cases(&self) -> impl Iterator<Item = (usize, &'a LoadCase, &'a CaseResult)> {
+        self.case_idxs.iter().map(|&i| (i + 1, &self.study.cases[i], &self.results.cases[i]))
+    }
+
+    /// Counts of what is shown.
+    pub fn counts(&self) -> Counts {
+        let count = |state| self.verdicts().filter(|v| v.state == state).count();
+        Counts {
+            n_cases: self.case_idxs.len(),
+            fails: count(State::Fails),
+            not_judged: count(State::NotJudged),
+            close: count(State::Close),
+            holds: count(State::Holds),
+        }
+    }
+
+    fn verdicts(&self) -> impl Iterator<Item = &'a Verdict> {
+        self.cases().flat_map(|(_, _, case)| &case.verdicts)
+    }
+
+    /// A place in words, with the name that the user gave it.
+    fn place_words(&self, place: &Place) -> String {
+        let section = &self.study.section;
+        match place {
+            Place::Edge(idx) => section.edge_label(*idx),
+            Place::Obstacle { obstacle_idx, edge_idx } => {
+                let name = section.obstacles.get(*obstacle_idx).map_or("", |o| o.name.as_str());
+                match (name, edge_idx) {
+                    ("", _) => place.to_string(),
+                    (name, None) => name.to_owned(),
+                    (name, Some(edge_idx)) => format!("{name}, edge {}", edge_idx + 1),
+                }
+            }
+            _ => place.to_string(),
+        }
+    }
+}

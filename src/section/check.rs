@@ -321,6 +321,9 @@ fn check_reach(width: &WidthLaw, outline: &Path, faults: &mut Vec<Problem>) {
 /// Points at which two edges meet, shared ends included.
 fn meetings(a: &Edge, b: &Edge, slack: f64) -> Vec<Point> {
     let mut out: Vec<Point> = Vec::new();
+    if (a.start - b.start).norm() > reach(a) + reach(b) + slack {
+        return out;
+    }
     // Ends of one on the other: touching, and overlap of edges on one line or circle.
     for (edge, other) in [(a, b), (b, a)] {
         for p in [edge.start, edge.end] {
@@ -361,6 +364,11 @@ fn meetings(a: &Edge, b: &Edge, slack: f64) -> Vec<Point> {
         }
     }
     out
+}
+
+/// No point of the edge is further from its start.
+fn reach(e: &Edge) -> f64 {
+    if e.sweep.abs() <= std::f64::consts::PI { e.chord().norm() } else { 2.0 * e.radius().abs() }
 }
 
 fn line_on_circle(line: &Edge, center: Point, arc: &Edge, slack: f64, out: &mut Vec<Point>) {

@@ -23,7 +23,7 @@ pub struct EffectiveGravity {
 ///
 /// On a level tank the surface slopes by dz/ds = -a_s / (g + a_z). |G| below 1e-12 of the accelerations that make
 /// it up counts as free fall: that is the rounding of their difference.
-/// Source: [RigidAcceleration].
+/// Source: `RigidAcceleration`.
 pub fn effective_gravity(gravity_m_per_s2: f64, phi_rad: f64, accel: Vec2) -> EffectiveGravity {
     // Turning the section's right side up by phi turns gravity by -phi in the section's own axes.
     let vec = rotate(Vec2::new(0.0, -gravity_m_per_s2), -phi_rad) - accel;

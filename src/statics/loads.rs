@@ -165,7 +165,9 @@ fn centroid(edges: &[Edge], width: &WidthLaw, tilted: &Tilted, level: f64, volum
     let up = tilted.up();
     let chords = tilted.chords(level);
     if volume <= 0.0 {
-        return chords.first().map_or(Point::origin(), |c| c.left + (c.right - c.left) * 0.5);
+        // Nothing: the lowest point, to which the centroid tends.
+        let lowest = edges.iter().map(|e| (e.extent(up).0, e)).min_by(|a, b| a.0.0.total_cmp(&b.0.0));
+        return lowest.map_or(Point::origin(), |((_, t), e)| e.point_at(t));
     }
     let wetted = || edges.iter().flat_map(|e| e.parts_below(up, level).into_iter().map(|(a, b)| e.part(a, b)));
     if width.constant().is_some() {

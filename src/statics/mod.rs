@@ -16,4 +16,4 @@ pub use path::{Lip, Ramp, Spill};
 pub use rim::Carried;
 pub use rise::Rims;
 pub use settled::{PointPressure, RoofContact, Setting, Settled, settle};
-pub use tilted::{Chord, Tilted};
+pub use tilted::{Chord, Tilted, Vessel};

@@ -5,11 +5,11 @@
 
 use std::f64::consts::PI;
 
-use crate::geom::{Edge, Point, Vec2};
-use crate::num::{bisect, golden_min};
-use crate::section::{Mouth, Region, WidthLaw};
+use crate::geom::{Point, Vec2};
+use crate::num::{golden_min, root};
+use crate::section::{Mouth, Region};
 
-use super::tilted::Tilted;
+use super::tilted::Vessel;
 
 /// A ramp of the direction of effective gravity, by tilt angle.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -42,7 +42,10 @@ impl Ramp {
             cross.atan2(dot)
         };
         let to_case = turn(end);
-        let to_end = if accel.norm() > 0.0 { turn(delta) } else { 0.0 };
+        // Along gravity the direction does not turn, however hard the tank accelerates.
+        let is_along =
+            (g_at_rest.x * delta.y - g_at_rest.y * delta.x).abs() <= 1e-12 * g_at_rest.norm() * accel.norm();
+        let to_end = if is_along { to_case } else { turn(delta) };
         let rounding = 1e-12 * (g_at_rest.norm() + accel.norm());
         let through_zero = end.norm() <= rounding || to_case.abs() >= PI - 1e-12;
         (!through_zero && g_at_rest.norm() > 0.0).then_some(Ramp {
@@ -62,6 +65,9 @@ impl Ramp {
     /// Share of the case's acceleration, or heel, at which the direction has turned by `turned` of the way
     /// (radians, not negative); infinite where it is only approached.
     fn share(&self, turned: f64) -> f64 {
+        if turned <= 0.0 {
+            return 0.0;
+        }
         match self.kind {
             Kind::Turn => turned / self.to_case_rad.abs(),
             Kind::Straight { start, delta } => {
@@ -103,6 +109,8 @@ pub struct Spill {
     pub first: Option<(f64, Lip)>,
     /// On the way to the case the liquid stands in several pools: then nothing above may be used.
     pub has_several_pools: bool,
+    /// Whether a larger share of the case turns effective gravity at all.
+    pub turns: bool,
     /// Beyond the case, before any spill, the liquid comes to stand in several pools: `first` is then not known.
     pub has_several_pools_beyond: bool,
 }
@@ -115,15 +123,16 @@ impl Spill {
     /// Follows `volume_m3` along `ramp`.
     ///
     /// Spilled volume counts as gone: after a spill the volume is what the brim left. Accuracy: turns to 1e-14 rad,
-    /// volumes as [`Tilted`].
-    /// Source: [BrimPath].
-    pub fn trace(ramp: &Ramp, region: &Region, width: &WidthLaw, mouths: &[Mouth], volume_m3: f64) -> Spill {
-        let way = Way { ramp, region, edges: region.geometry(), width, mouths };
+    /// volumes as [`super::Tilted`].
+    /// Source: `BrimPath`.
+    pub fn trace(ramp: &Ramp, region: &Region, vessel: &Vessel, mouths: &[Mouth], volume_m3: f64) -> Spill {
+        let way = Way { ramp, region, vessel, mouths };
         let mut spill = Spill {
             holds_m3: f64::INFINITY,
             governs: None,
             first: None,
             has_several_pools: false,
+            turns: ramp.to_end_rad != 0.0,
             has_several_pools_beyond: false,
         };
         let case = ramp.to_case_rad.abs();
@@ -145,15 +154,14 @@ impl Spill {
                 && stop.holds_m3 < stop.capacity_m3;
             if is_dip {
                 let high = if stop.turned <= case { turns[i + 1].min(case) } else { turns[i + 1] };
-                let (turned, _) = golden_min(turns[i - 1], high, 1e-10, |t| way.at(t).holds_m3);
+                let (turned, _) = golden_min(turns[i - 1], high, 1e-7, |t| way.at(t).holds_m3);
                 let refined = way.at(turned);
                 if refined.holds_m3 < stop.holds_m3 {
                     stop = refined;
                 }
             }
             let on_the_way = turns[i] <= case;
-            let n_pools = way.n_pools(&stop, left.min(stop.holds_m3));
-            if n_pools > 1 {
+            if way.is_parted(&stop, left.min(stop.holds_m3)) {
                 if on_the_way {
                     spill.has_several_pools = true;
                     spill.first = None;
@@ -167,7 +175,7 @@ impl Spill {
                 spill.governs = stop.lip;
             }
             if spill.first.is_none() && stop.holds_m3 < volume_m3 - slack {
-                let turned = bisect(before, stop.turned, 1e-15, |t| way.at(t).holds_m3 < volume_m3 - slack);
+                let turned = root(before, stop.turned, 1e-15, |t| volume_m3 - way.at(t).holds_m3);
                 spill.first = way.at(turned).lip.map(|lip| (ramp.share(turned), lip));
             }
             if spill.first.is_some() && !on_the_way {
@@ -183,8 +191,7 @@ impl Spill {
 struct Way<'a> {
     ramp: &'a Ramp,
     region: &'a Region,
-    edges: &'a [Edge],
-    width: &'a WidthLaw,
+    vessel: &'a Vessel,
     mouths: &'a [Mouth],
 }
 
@@ -195,13 +202,14 @@ struct Stop {
     /// Volume below the lowest brim, m3; the capacity without mouths.
     holds_m3: f64,
     capacity_m3: f64,
+    brim_level: f64,
     lip: Option<Lip>,
 }
 
 impl Way<'_> {
     fn at(&self, turned: f64) -> Stop {
         let up = self.ramp.up(turned);
-        let tilted = Tilted::new(self.edges, self.width, up);
+        let tilted = self.vessel.tilted(up);
         let lowest = self
             .mouths
             .iter()
@@ -210,15 +218,23 @@ impl Way<'_> {
             .min_by(|a, b| a.0.0.total_cmp(&b.0.0));
         let capacity_m3 = tilted.capacity_m3();
         match lowest {
-            None => Stop { turned, holds_m3: capacity_m3, capacity_m3, lip: None },
-            Some(((level, brim), mouth_idx)) => {
-                Stop { turned, holds_m3: tilted.volume_below(level), capacity_m3, lip: Some(Lip { mouth_idx, brim }) }
-            }
+            None => Stop { turned, holds_m3: capacity_m3, capacity_m3, brim_level: tilted.span().1, lip: None },
+            Some(((level, brim), mouth_idx)) => Stop {
+                turned,
+                holds_m3: tilted.volume_below(level),
+                capacity_m3,
+                brim_level: level,
+                lip: Some(Lip { mouth_idx, brim }),
+            },
         }
     }
 
-    fn n_pools(&self, stop: &Stop, volume_m3: f64) -> usize {
-        let tilted = Tilted::new(self.edges, self.width, self.ramp.up(stop.turned));
-        tilted.n_pools(tilted.level_for_volume(volume_m3))
+    /// Whether the liquid stands in several pools there.
+    fn is_parted(&self, stop: &Stop, volume_m3: f64) -> bool {
+        let tilted = self.vessel.tilted(self.ramp.up(stop.turned));
+        if tilted.is_one_basin(stop.brim_level) {
+            return false;
+        }
+        tilted.n_pools(tilted.level_for_volume(volume_m3)) > 1
     }
 }

@@ -1,15 +1,15 @@
 //! The settled rise at the mouths, with the walls carried on above the rim: what freeboard must cover.
 
-use crate::geom::{Edge, Point, Vec2};
+use crate::geom::{Point, Vec2};
 use crate::section::{Mouth, Region, WidthLaw};
 
 use super::rim::{Carried, carry_walls_on};
-use super::tilted::Tilted;
+use super::tilted::{Tilted, Vessel};
 
 /// The section with its rims carried on, ready to be looked at along one direction.
 #[derive(Clone, Debug)]
 pub struct Rims {
-    edges: Vec<Edge>,
+    vessel: Vessel,
     carried: Vec<Carried>,
     up: Vec2,
     brims: Vec<Point>,
@@ -17,7 +17,7 @@ pub struct Rims {
 
 impl Rims {
     /// None where effective gravity does not point toward the floor: no wall is high enough then.
-    pub fn new(region: &Region, mouths: &[Mouth], up: Vec2) -> Option<Rims> {
+    pub fn new(region: &Region, width: &WidthLaw, mouths: &[Mouth], up: Vec2) -> Option<Rims> {
         if up.y <= 0.0 {
             return None;
         }
@@ -27,7 +27,7 @@ impl Rims {
         let height = 3.0 * size + size * tan + 2.0 * (2.0 * region.area_m2() * tan).sqrt();
         let (edges, carried) = carry_walls_on(region, mouths, height);
         let brims = mouths.iter().map(|m| m.brim(region, up).1).collect();
-        Some(Rims { edges, carried, up, brims })
+        Some(Rims { vessel: Vessel::new(edges, width.clone()), carried, up, brims })
     }
 
     /// What became of each mouth.
@@ -41,8 +41,8 @@ impl Rims {
     }
 
     /// The carried-on section seen along the direction.
-    pub fn tilted<'a>(&'a self, width: &'a WidthLaw) -> Tilted<'a> {
-        Tilted::new(&self.edges, width, self.up)
+    pub fn tilted(&self) -> Tilted<'_> {
+        self.vessel.tilted(self.up)
     }
 
     /// z of the settled surface above the brim of a mouth, m, for a volume in the carried-on section; none where

@@ -20,6 +20,46 @@ impl Chord {
     }
 }
 
+/// A section with its width law: what holds the liquid, whichever way effective gravity points.
+#[derive(Clone, Debug)]
+pub struct Vessel {
+    edges: Vec<Edge>,
+    width: WidthLaw,
+    /// Under each edge: - integral of Omega ds; empty for a constant width.
+    under: Vec<f64>,
+}
+
+impl Vessel {
+    /// `edges` are closed chains with the region on their left.
+    pub fn new(edges: Vec<Edge>, width: WidthLaw) -> Vessel {
+        let under = match width.constant() {
+            Some(_) => Vec::new(),
+            None => edges.iter().map(|e| under_edge(e, &width)).collect(),
+        };
+        Vessel { edges, width, under }
+    }
+
+    /// Its edges.
+    pub fn edges(&self) -> &[Edge] {
+        &self.edges
+    }
+
+    /// Its width law.
+    pub fn width(&self) -> &WidthLaw {
+        &self.width
+    }
+
+    /// Seen along a direction; `up` is a unit vector.
+    pub fn tilted(&self, up: Vec2) -> Tilted<'_> {
+        let sublevel = Sublevel::new(&self.edges, up);
+        let capacity_m3 = match self.width.constant() {
+            Some(w) => sublevel.total_area() * w,
+            None => self.under.iter().sum(),
+        };
+        Tilted { vessel: self, sublevel, capacity_m3 }
+    }
+}
+
 /// Volume against level along one direction.
 ///
 /// With a constant width the volume is the area times it, in closed form. Otherwise, with Omega' = w,
@@ -27,23 +67,12 @@ impl Chord {
 /// in closed form by the integral of Omega, on arcs by quadrature.
 #[derive(Clone, Debug)]
 pub struct Tilted<'a> {
+    vessel: &'a Vessel,
     sublevel: Sublevel,
-    edges: &'a [Edge],
-    width: &'a WidthLaw,
     capacity_m3: f64,
 }
 
-impl<'a> Tilted<'a> {
-    /// `edges` have the region on their left; `up` is a unit vector.
-    pub fn new(edges: &'a [Edge], width: &'a WidthLaw, up: Vec2) -> Tilted<'a> {
-        let sublevel = Sublevel::new(edges, up);
-        let capacity_m3 = match width.constant() {
-            Some(w) => sublevel.total_area() * w,
-            None => edges.iter().map(|e| under_edge(e, width)).sum(),
-        };
-        Tilted { sublevel, edges, width, capacity_m3 }
-    }
-
+impl Tilted<'_> {
     /// The direction.
     pub fn up(&self) -> Vec2 {
         self.sublevel.up()
@@ -61,7 +90,7 @@ impl<'a> Tilted<'a> {
 
     /// Volume below `level`, m3.
     pub fn volume_below(&self, level: f64) -> f64 {
-        if let Some(w) = self.width.constant() {
+        if let Some(w) = self.vessel.width.constant() {
             return w * self.sublevel.area_below(level);
         }
         if level <= self.sublevel.lowest() {
@@ -70,16 +99,16 @@ impl<'a> Tilted<'a> {
         if level >= self.sublevel.highest() {
             return self.capacity_m3;
         }
-        let up = self.up();
-        let walls: f64 = self
-            .edges
-            .iter()
-            .flat_map(|e| e.parts_below(up, level).into_iter().map(move |(from, to)| e.part(from, to)))
-            .map(|part| under_edge(&part, self.width))
-            .sum();
+        let (up, width) = (self.up(), &self.vessel.width);
+        let mut walls = 0.0;
+        for (e, under) in self.vessel.edges.iter().zip(&self.vessel.under) {
+            for (from, to) in e.parts_below(up, level) {
+                let is_whole = from == 0.0 && to == 1.0;
+                walls += if is_whole { *under } else { under_edge(&e.part(from, to), width) };
+            }
+        }
         // The surface closes the contour from right to left.
-        let surface: f64 =
-            self.chords(level).iter().map(|c| under_edge(&Edge::line(c.right, c.left), self.width)).sum();
+        let surface: f64 = self.chords(level).iter().map(|c| under_edge(&Edge::line(c.right, c.left), width)).sum();
         (walls + surface).clamp(0.0, self.capacity_m3)
     }
 
@@ -87,7 +116,7 @@ impl<'a> Tilted<'a> {
     /// varies (the volume's derivative is the width along the surface).
     pub fn level_for_volume(&self, volume: f64) -> f64 {
         let (mut low, mut high) = self.span();
-        if let Some(w) = self.width.constant() {
+        if let Some(w) = self.vessel.width.constant() {
             return self.sublevel.level_for_area(volume / w);
         }
         if volume <= 0.0 {
@@ -117,7 +146,7 @@ impl<'a> Tilted<'a> {
 
     /// Area of the surface at `level`, m2: chords weighted with the width.
     pub fn surface_area(&self, level: f64) -> f64 {
-        if let Some(w) = self.width.constant() {
+        if let Some(w) = self.vessel.width.constant() {
             return w * self.sublevel.width_at(level);
         }
         self.chords(level)
@@ -125,9 +154,9 @@ impl<'a> Tilted<'a> {
             .map(|c| {
                 let dz = c.right.y - c.left.y;
                 let mean = if dz.abs() > 1e-6 * self.capacity_m3.cbrt() {
-                    (self.width.omega(c.right.y) - self.width.omega(c.left.y)) / dz
+                    (self.vessel.width.omega(c.right.y) - self.vessel.width.omega(c.left.y)) / dz
                 } else {
-                    self.width.width(0.5 * (c.left.y + c.right.y))
+                    self.vessel.width.width(0.5 * (c.left.y + c.right.y))
                 };
                 mean * c.length()
             })
@@ -137,6 +166,11 @@ impl<'a> Tilted<'a> {
     /// The surface at `level`, from left to right.
     pub fn chords(&self, level: f64) -> Vec<Chord> {
         self.sublevel.chords(level).into_iter().map(|(left, right)| Chord { left, right }).collect()
+    }
+
+    /// Whether the region below `level` stays one body at every lower level too.
+    pub fn is_one_basin(&self, level: f64) -> bool {
+        self.sublevel.n_basins(level) <= 1
     }
 
     /// Count of connected bodies of liquid below `level`.

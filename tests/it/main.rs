@@ -1,1 +1,10 @@
 //! The integration tests: one binary, one module a subject.
+
+mod arbitrary;
+mod cli;
+mod edits;
+mod files;
+mod json;
+mod program;
+mod scenario;
+mod tidy;

@@ -1,0 +1,369 @@
+//! The one table of commands: text, shortcut, tooltip, when each can be used. Menus and keys read it; the window
+//! carries it out.
+
+use egui::{Key, KeyboardShortcut, Modifiers, ThemePreference};
+
+use crate::app::Document;
+use crate::units::UnitSystem;
+
+use super::{Selected, View};
+
+/// Something that the user can ask for from a menu or with a key.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Command {
+    /// A plain box to start from.
+    New,
+    /// Choose a scenario file and open it.
+    Open,
+    /// Open an example by its place in the list.
+    OpenExample(usize),
+    /// Open a recent file by its place in the list.
+    OpenRecent(usize),
+    /// Write to the file it came from.
+    Save,
+    /// Choose a file and write to it.
+    SaveAs,
+    /// Leave.
+    Quit,
+    /// Take the last step back.
+    Undo,
+    /// Bring the last undone step back.
+    Redo,
+    /// Delete what is chosen on the board.
+    DeleteSelected,
+    /// Show the whole section.
+    FitBoard,
+    /// Units shown.
+    Units(UnitSystem),
+    /// Light, dark, or as the system says.
+    Theme(ThemePreference),
+    /// Columns and plots back to their first sizes.
+    ResetSizes,
+    /// A case at rest at the end of the strip.
+    AddCase,
+    /// A copy of the chosen case.
+    DuplicateCase,
+    /// Delete the chosen case.
+    DeleteCase,
+    /// Choose the next case.
+    NextCase,
+    /// Choose the case before.
+    PreviousCase,
+    /// Move the chosen case one place to the left.
+    MoveCaseLeft,
+    /// Move the chosen case one place to the right.
+    MoveCaseRight,
+    /// What the program is, and what it does not do.
+    About,
+}
+
+/// A menu of the header.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Menu {
+    /// Files.
+    File,
+    /// The study.
+    Edit,
+    /// What is shown.
+    View,
+    /// Load cases.
+    Case,
+    /// About.
+    Help,
+}
+
+impl Menu {
+    /// In the order shown.
+    pub const ALL: [Menu; 5] = [Menu::File, Menu::Edit, Menu::View, Menu::Case, Menu::Help];
+
+    /// The word in the header.
+    pub fn word(self) -> &'static str {
+        match self {
+            Menu::File => "File",
+            Menu::Edit => "Edit",
+            Menu::View => "View",
+            Menu::Case => "Case",
+            Menu::Help => "Help",
+        }
+    }
+}
+
+/// One row of the table.
+pub struct Row {
+    /// What it does.
+    pub command: Command,
+    /// Where it stands.
+    pub menu: Menu,
+    /// Its words.
+    pub text: &'static str,
+    /// Its key.
+    pub shortcut: Option<KeyboardShortcut>,
+    /// What it does, in a sentence.
+    pub tooltip: &'static str,
+    /// When it can be used.
+    pub is_enabled: fn(&Document, &View) -> bool,
+    /// A rule stands above it.
+    pub starts_group: bool,
+}
+
+const NO: Option<KeyboardShortcut> = None;
+const CTRL: Modifiers = Modifiers::COMMAND;
+const CTRL_SHIFT: Modifiers = Modifiers { shift: true, ..Modifiers::COMMAND };
+
+/// All commands with a fixed text, in the order of the menus.
+pub const TABLE: &[Row] = &[
+    row(Command::New, Menu::File, "New", on(CTRL, Key::N), "Start from a plain box of water", always),
+    row(Command::Open, Menu::File, "Open…", on(CTRL, Key::O), "Open a scenario file", always),
+    group(Command::Save, Menu::File, "Save", on(CTRL, Key::S), "Write the scenario to its file", can_save),
+    row(
+        Command::SaveAs,
+        Menu::File,
+        "Save as…",
+        on(CTRL_SHIFT, Key::S),
+        "Write the scenario to another file",
+        always,
+    ),
+    group(Command::Quit, Menu::File, "Quit", on(CTRL, Key::Q), "Close the window", always),
+    row(Command::Undo, Menu::Edit, "Undo", on(CTRL, Key::Z), "Take the last step back", can_undo),
+    row(Command::Redo, Menu::Edit, "Redo", on(CTRL_SHIFT, Key::Z), "Bring the last undone step back", can_redo),
+    group(
+        Command::DeleteSelected,
+        Menu::Edit,
+        "Delete what is chosen",
+        on(Modifiers::NONE, Key::Delete),
+        "Take out the vertex, obstacle or point that is chosen on the board",
+        can_delete,
+    ),
+    row(
+        Command::FitBoard,
+        Menu::View,
+        "Fit the section",
+        on(Modifiers::NONE, Key::Home),
+        "Show the whole section on the board",
+        always,
+    ),
+    row(
+        Command::ResetSizes,
+        Menu::View,
+        "Reset the columns",
+        NO,
+        "Columns and plots back to their first sizes",
+        always,
+    ),
+    group(
+        Command::Units(UnitSystem::Si),
+        Menu::View,
+        "SI units",
+        NO,
+        "Show millimetres and kilopascals; the study stays as it is",
+        always,
+    ),
+    row(
+        Command::Units(UnitSystem::UsCustomary),
+        Menu::View,
+        "US customary units",
+        NO,
+        "Show inches and pounds; the study stays as it is",
+        always,
+    ),
+    group(Command::Theme(ThemePreference::Light), Menu::View, "Light", NO, "Pale paper", always),
+    row(Command::Theme(ThemePreference::Dark), Menu::View, "Dark", NO, "The same by night", always),
+    row(
+        Command::Theme(ThemePreference::System),
+        Menu::View,
+        "As the system",
+        NO,
+        "Light or dark as the system says",
+        always,
+    ),
+    row(
+        Command::AddCase,
+        Menu::Case,
+        "Add a load case",
+        on(CTRL_SHIFT, Key::N),
+        "A case at rest, at the end",
+        always,
+    ),
+    row(Command::DuplicateCase, Menu::Case, "Duplicate", on(CTRL, Key::D), "Copy the chosen case", has_case),
+    row(
+        Command::DeleteCase,
+        Menu::Case,
+        "Delete the case",
+        on(CTRL, Key::Delete),
+        "Take the chosen case out",
+        has_case,
+    ),
+    group(
+        Command::NextCase,
+        Menu::Case,
+        "Next case",
+        on(Modifiers::NONE, Key::PageDown),
+        "Choose the next case",
+        has_cases,
+    ),
+    row(
+        Command::PreviousCase,
+        Menu::Case,
+        "Previous case",
+        on(Modifiers::NONE, Key::PageUp),
+        "Choose the case before",
+        has_cases,
+    ),
+    row(
+        Command::MoveCaseLeft,
+        Menu::Case,
+        "Move left",
+        on(CTRL, Key::PageUp),
+        "Move the chosen case one place to the left",
+        has_case_before,
+    ),
+    row(
+        Command::MoveCaseRight,
+        Menu::Case,
+        "Move right",
+        on(CTRL, Key::PageDown),
+        "Move the chosen case one place to the right",
+        has_case_after,
+    ),
+    row(
+        Command::About,
+        Menu::Help,
+        "About and cautions",
+        on(Modifiers::NONE, Key::F1),
+        "What it is, and what it does not do",
+        always,
+    ),
+];
+
+impl Row {
+    /// The words shown now: undo says what it would take back.
+    pub fn words(&self, doc: &Document) -> String {
+        let label = match self.command {
+            Command::Undo => doc.undo_label(),
+            Command::Redo => doc.redo_label(),
+            _ => None,
+        };
+        match label {
+            Some(label) => format!("{} {}", self.text, lower_first(label)),
+            None => self.text.to_owned(),
+        }
+    }
+}
+
+/// The commands whose keys were pressed. Keys without a modifier belong to a text field while it has the focus.
+pub fn pressed(ctx: &egui::Context, doc: &Document, view: &View) -> Vec<Command> {
+    let is_typing = ctx.egui_wants_keyboard_input();
+    let mut rows: Vec<&Row> = TABLE.iter().filter(|row| row.shortcut.is_some()).collect();
+    // The fullest set of modifiers first: egui takes Ctrl+Shift+Z for Ctrl+Z too.
+    rows.sort_by_key(|row| row.shortcut.map_or(0, |s| u8::from(!s.modifiers.shift)));
+    let mut out = Vec::new();
+    for row in rows {
+        let Some(shortcut) = row.shortcut else { continue };
+        if is_typing && shortcut.modifiers.is_none() && shortcut.logical_key != Key::F1 {
+            continue;
+        }
+        if (row.is_enabled)(doc, view) && ctx.input_mut(|i| i.consume_shortcut(&shortcut)) {
+            out.push(row.command);
+        }
+    }
+    out
+}
+
+const fn row(
+    command: Command,
+    menu: Menu,
+    text: &'static str,
+    shortcut: Option<KeyboardShortcut>,
+    tooltip: &'static str,
+    is_enabled: fn(&Document, &View) -> bool,
+) -> Row {
+    Row { command, menu, text, shortcut, tooltip, is_enabled, starts_group: false }
+}
+
+const fn group(
+    command: Command,
+    menu: Menu,
+    text: &'static str,
+    shortcut: Option<KeyboardShortcut>,
+    tooltip: &'static str,
+    is_enabled: fn(&Document, &View) -> bool,
+) -> Row {
+    Row { starts_group: true, ..row(command, menu, text, shortcut, tooltip, is_enabled) }
+}
+
+const fn on(modifiers: Modifiers, key: Key) -> Option<KeyboardShortcut> {
+    Some(KeyboardShortcut::new(modifiers, key))
+}
+
+fn always(_: &Document, _: &View) -> bool {
+    true
+}
+
+fn can_save(doc: &Document, _: &View) -> bool {
+    doc.is_unsaved() || doc.path.is_none()
+}
+
+fn can_undo(doc: &Document, _: &View) -> bool {
+    doc.undo_label().is_some()
+}
+
+fn can_redo(doc: &Document, _: &View) -> bool {
+    doc.redo_label().is_some()
+}
+
+fn can_delete(_: &Document, view: &View) -> bool {
+    matches!(view.selected, Some(Selected::Vertex(_) | Selected::Obstacle(_) | Selected::Point(_)))
+}
+
+fn has_case(doc: &Document, view: &View) -> bool {
+    view.case_idx < doc.study().cases.len()
+}
+
+fn has_cases(doc: &Document, _: &View) -> bool {
+    doc.study().cases.len() > 1
+}
+
+fn has_case_before(doc: &Document, view: &View) -> bool {
+    view.case_idx > 0 && has_case(doc, view)
+}
+
+fn has_case_after(doc: &Document, view: &View) -> bool {
+    view.case_idx + 1 < doc.study().cases.len()
+}
+
+pub(super) fn lower_first(text: &str) -> String {
+    let mut chars = text.chars();
+    chars.next().map(|c| c.to_lowercase().chain(chars).collect()).unwrap_or_default()
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn no_two_commands_share_a_key() {
+        for (i, a) in TABLE.iter().enumerate() {
+            for b in &TABLE[i + 1..] {
+                assert!(
+                    a.shortcut.is_none() || a.shortcut != b.shortcut,
+                    "`{}` and `{}` share {:?}",
+                    a.text,
+                    b.text,
+                    a.shortcut
+                );
+                assert_ne!(a.command, b.command, "`{}` stands twice", a.text);
+                assert!(a.menu != b.menu || a.text != b.text, "two rows read `{}`", a.text);
+            }
+        }
+    }
+
+    #[test]
+    fn every_menu_has_a_row_and_every_row_words() {
+        for menu in Menu::ALL {
+            assert!(TABLE.iter().any(|row| row.menu == menu), "{menu:?} is empty");
+        }
+        for row in TABLE {
+            assert!(!row.text.is_empty() && row.tooltip.len() > 5, "{:?}", row.command);
+        }
+    }
+}

@@ -1,0 +1,501 @@
+//! The window: lays the regions out, lets every panel read and propose, and applies what was proposed in one place at
+//! the end of the frame.
+
+use std::path::{Path, PathBuf};
+use std::time::Instant;
+
+use egui::{CursorIcon, Sense, Ui, UiBuilder, ViewportCommand};
+
+use crate::analysis::{Results, Verdict};
+use crate::app::{self, Derived, Document, EXAMPLES, Edit, FileError};
+use crate::cases::{Accel, Attitude, LoadCase};
+use crate::problem::{Place, Problem};
+use crate::study::Study;
+
+use super::files::{Dialogs, EXTENSION, FileChooser, Purpose};
+use super::layout::{self, Regions};
+use super::modals::{self, Unsaved};
+use super::plots::PlotArea;
+use super::problems::{self, FileTrouble};
+use super::settings::Settings;
+use super::tank::TankColumn;
+use super::verdicts::VerdictColumn;
+use super::{Command, Desk, Look, Proposal, Selected, View};
+use super::{board, case_head, commands, header, look, plots, starter, status, strip, tank, verdicts};
+
+/// The window's whole state. It runs on a bare [`egui::Context`].
+pub struct Window {
+    doc: Document,
+    view: View,
+    settings: Settings,
+    tank: TankColumn,
+    verdicts: VerdictColumn,
+    plots: PlotArea,
+    chooser: FileChooser,
+    trouble: Option<FileTrouble>,
+    /// What waits for the question about unsaved changes, or for the file to be written first.
+    intent: Option<Intent>,
+    asks_unsaved: bool,
+    shows_about: bool,
+    may_close: bool,
+    event: String,
+    judged_ms: Option<f64>,
+    open_verdict: Option<OpenVerdict>,
+    window_title: String,
+}
+
+/// Something that would leave the open document behind.
+#[derive(Clone, Debug, PartialEq)]
+enum Intent {
+    New,
+    Choose,
+    Open(PathBuf),
+    Example(usize),
+    Close,
+}
+
+/// The opened verdict by name, so that it stays open when the order changes.
+#[derive(Clone, Debug, PartialEq)]
+struct OpenVerdict {
+    revision: u64,
+    case_idx: usize,
+    criterion: &'static str,
+    place: Place,
+}
+
+impl OpenVerdict {
+    fn of(results: &Results, (case_idx, verdict_idx): (usize, usize), revision: u64) -> Option<OpenVerdict> {
+        let verdict = results.cases.get(case_idx)?.verdicts.get(verdict_idx)?;
+        Some(OpenVerdict { revision, case_idx, criterion: verdict.criterion, place: verdict.place.clone() })
+    }
+
+    /// The same verdict in other results, at the same place if there still is one.
+    fn find(&self, results: &Results) -> Option<(usize, usize)> {
+        let verdicts = &results.cases.get(self.case_idx)?.verdicts;
+        let same = |v: &&Verdict| v.criterion == self.criterion;
+        let here = verdicts.iter().position(|v| same(&v) && v.place == self.place);
+        here.or_else(|| verdicts.iter().position(|v| same(&v))).map(|v| (self.case_idx, v))
+    }
+}
+
+impl Window {
+    /// A window with the file at `path` open, else with the first example.
+    pub fn new(ctx: &egui::Context, path: Option<&Path>, settings: Settings, dialogs: Dialogs) -> Window {
+        look::install(ctx);
+        ctx.set_theme(settings.theme);
+        ctx.options_mut(|o| o.quit_shortcuts.clear());
+        let mut window = Window {
+            doc: Document::new(example(0).unwrap_or_else(starter::study), None),
+            view: View { units: settings.units, ..View::default() },
+            settings,
+            tank: TankColumn::default(),
+            verdicts: VerdictColumn::default(),
+            plots: PlotArea::default(),
+            chooser: FileChooser::new(dialogs),
+            trouble: None,
+            intent: None,
+            asks_unsaved: false,
+            shows_about: false,
+            may_close: false,
+            event: String::new(),
+            judged_ms: None,
+            open_verdict: None,
+            window_title: String::new(),
+        };
+        if let Some(path) = path {
+            window.open(path);
+        }
+        window
+    }
+
+    /// The open document.
+    pub fn document(&self) -> &Document {
+        &self.doc
+    }
+
+    /// What is chosen and how it is shown.
+    pub fn view(&self) -> &View {
+        &self.view
+    }
+
+    /// What is remembered from one start to the next.
+    pub fn settings(&self) -> &Settings {
+        &self.settings
+    }
+
+    /// One frame.
+    pub fn ui(&mut self, ui: &mut Ui) {
+        let look = Look::of(ui.ctx().theme());
+        let mut out: Vec<Proposal> = Vec::new();
+        let is_asking = self.asks_unsaved || self.shows_about || self.chooser.is_open();
+        if !is_asking {
+            out.extend(commands::pressed(ui.ctx(), &self.doc, &self.view).into_iter().map(Proposal::Run));
+        }
+        let regions = layout::regions(ui.max_rect(), self.settings.sizes);
+        self.regions_ui(ui, &regions, look, &mut out);
+        self.dividers_ui(ui, &regions, look);
+        self.modals_ui(ui.ctx(), look);
+        self.dropped_files(ui);
+        for proposal in out {
+            self.apply(ui.ctx(), proposal);
+        }
+        self.keep_view_valid();
+        self.guard_close(ui.ctx());
+        self.title(ui.ctx());
+    }
+
+    /// Carries a command out.
+    pub fn run(&mut self, ctx: &egui::Context, command: Command) {
+        let case_idx = self.view.case_idx;
+        match command {
+            Command::New => self.intend(ctx, Intent::New),
+            Command::Open => self.intend(ctx, Intent::Choose),
+            Command::OpenExample(i) => self.intend(ctx, Intent::Example(i)),
+            Command::OpenRecent(i) => {
+                if let Some(path) = self.settings.recent.get(i).cloned() {
+                    self.intend(ctx, Intent::Open(path));
+                }
+            }
+            Command::Save => self.save(ctx),
+            Command::SaveAs => self.chooser.ask(ctx, Purpose::Save, self.proposed_path()),
+            Command::Quit => self.intend(ctx, Intent::Close),
+            Command::Undo => self.doc.undo(),
+            Command::Redo => self.doc.redo(),
+            Command::DeleteSelected => self.delete_selected(),
+            Command::FitBoard => self.view.camera = None,
+            Command::ResetSizes => self.settings.sizes = Default::default(),
+            Command::Units(units) => {
+                self.view.units = units;
+                self.settings.units = units;
+            }
+            Command::Theme(theme) => {
+                self.settings.theme = theme;
+                ctx.set_theme(theme);
+            }
+            Command::AddCase => self.add_case(rest_case(self.doc.study())),
+            Command::DuplicateCase => {
+                if let Some(case) = self.doc.study().cases.get(case_idx) {
+                    self.add_case(LoadCase { name: copy_name(self.doc.study(), &case.name), ..case.clone() });
+                }
+            }
+            Command::DeleteCase => self.doc.edit(&Edit::RemoveCase(case_idx)),
+            Command::NextCase => self.view.case_idx = (case_idx + 1) % self.doc.study().cases.len().max(1),
+            Command::PreviousCase => {
+                let n = self.doc.study().cases.len().max(1);
+                self.view.case_idx = (case_idx + n - 1) % n;
+            }
+            Command::MoveCaseLeft => self.move_case(case_idx, case_idx.saturating_sub(1)),
+            Command::MoveCaseRight => self.move_case(case_idx, case_idx + 1),
+            Command::About => self.shows_about = true,
+        }
+    }
+
+    /// Opens a file; where it cannot be read its problems are listed and the open document is kept.
+    pub fn open(&mut self, path: &Path) {
+        match app::load(path) {
+            Ok(study) => {
+                self.replace(study, Some(path.to_owned()));
+                self.settings.remember(path);
+                self.event = format!("opened {}", path.display());
+            }
+            Err(error) => self.trouble = Some(trouble(error, "opened")),
+        }
+    }
+
+    fn regions_ui(&mut self, ui: &mut Ui, regions: &Regions, look: &'static Look, out: &mut Vec<Proposal>) {
+        ui.painter().rect_filled(ui.max_rect(), 0.0, look.panel);
+        let mut desk = Desk { doc: &self.doc, view: &mut self.view, look, out };
+        header::header_ui(ui, regions.header, regions.menus_are_folded, &mut desk, &self.settings.recent);
+        tank::tank_ui(ui, regions.tank, regions.tank_is_folded, &mut desk, &mut self.tank);
+        case_head::case_head_ui(ui, regions.case_head, &mut desk);
+        let mut board = ui.new_child(UiBuilder::new().max_rect(regions.board).id_salt("board"));
+        board.set_clip_rect(regions.board.intersect(ui.clip_rect()));
+        board::board_ui(&mut board, desk.doc, desk.view, look, desk.out);
+        if let Some(trouble) = &self.trouble {
+            if problems::file_trouble_ui(ui, regions.plots, &mut desk, trouble) {
+                self.trouble = None;
+            }
+        } else if matches!(desk.doc.derived(), Derived::Faulty { .. }) {
+            problems::problems_ui(ui, regions.plots, &mut desk);
+        } else {
+            plots::plots_ui(ui, regions.plots, regions.n_plots, regions.plots_are_beside, &mut desk, &mut self.plots);
+        }
+        strip::strip_ui(ui, regions.strip, regions.card_width, regions.cards_have_drawings, &mut desk);
+        verdicts::verdicts_ui(ui, regions.verdicts, regions.verdict_row, &mut desk, &mut self.verdicts);
+        status::status_ui(ui, regions.status, &desk, &self.event, self.judged_ms);
+    }
+
+    fn dividers_ui(&mut self, ui: &Ui, regions: &Regions, look: &Look) {
+        for (divider, line, is_upright) in regions.dividers() {
+            let grip = line.expand2(if is_upright { egui::vec2(3.0, 0.0) } else { egui::vec2(0.0, 3.0) });
+            let response = ui.interact(grip, egui::Id::unique(divider), Sense::click_and_drag());
+            let is_held = response.hovered() || response.dragged();
+            if is_held {
+                ui.ctx().set_cursor_icon(if is_upright { CursorIcon::ResizeColumn } else { CursorIcon::ResizeRow });
+            }
+            let stroke = if response.dragged() { (2.0, look.accent) } else { (1.0, look.line) };
+            let snap = |x: f32| ui.painter().round_to_pixel_center(x);
+            match is_upright {
+                true => ui.painter().vline(snap(line.left()), line.y_range(), stroke),
+                false => ui.painter().hline(line.x_range(), snap(line.top()), stroke),
+            };
+            if response.double_clicked() {
+                *self.settings.sizes.of(divider) = None;
+            } else if let Some(at) = response.interact_pointer_pos()
+                && response.dragged()
+            {
+                let size = (0.25 * regions.size_at(divider, at)).round() * 4.0;
+                *self.settings.sizes.of(divider) = Some(size);
+            }
+        }
+    }
+
+    fn modals_ui(&mut self, ctx: &egui::Context, look: &Look) {
+        if self.asks_unsaved {
+            match modals::unsaved_ui(ctx, look, &title_or(self.doc.study(), "This scenario")) {
+                None => {}
+                Some(Unsaved::Cancel) => (self.asks_unsaved, self.intent) = (false, None),
+                Some(Unsaved::Discard) => {
+                    self.asks_unsaved = false;
+                    self.carry_out(ctx);
+                }
+                Some(Unsaved::Save) => {
+                    self.asks_unsaved = false;
+                    self.save(ctx);
+                }
+            }
+        }
+        if self.shows_about && modals::about_ui(ctx, look) {
+            self.shows_about = false;
+        }
+        match self.chooser.ui(ctx, look) {
+            Some((Purpose::Open, Some(path))) => self.open(&path),
+            Some((Purpose::Save, Some(path))) => self.save_to(ctx, &path),
+            Some((Purpose::Save, None)) => self.intent = None,
+            Some((Purpose::Open, None)) | None => {}
+        }
+    }
+
+    fn dropped_files(&mut self, ui: &Ui) {
+        let path = ui.input(|i| {
+            i.raw.dropped_files.iter().map(|file| file.path().to_owned()).find(|path| !path.as_os_str().is_empty())
+        });
+        if let Some(path) = path {
+            self.intend(ui.ctx(), Intent::Open(path));
+        }
+        if ui.input(|i| !i.raw.hovered_files.is_empty()) {
+            self.event = "drop a scenario file to open it".to_owned();
+        }
+    }
+
+    fn apply(&mut self, ctx: &egui::Context, proposal: Proposal) {
+        let (revision, start) = (self.doc.revision(), Instant::now());
+        match proposal {
+            Proposal::Edit(edit) => self.doc.edit(&edit),
+            Proposal::Run(command) => self.run(ctx, command),
+            Proposal::BeginGesture(label) => self.doc.begin_gesture(label),
+            Proposal::EndGesture => self.doc.end_gesture(),
+            Proposal::CancelGesture => self.doc.cancel_gesture(),
+        }
+        if self.doc.revision() != revision {
+            self.judged_ms = Some(start.elapsed().as_secs_f64() * 1e3);
+            self.event.clear();
+            ctx.request_repaint();
+        }
+    }
+
+    /// Nothing chosen may outlive what it points to.
+    fn keep_view_valid(&mut self) {
+        let study = self.doc.study();
+        let n_edges = study.section.outline.len();
+        let is_there = match self.view.selected {
+            Some(Selected::Edge(i) | Selected::Vertex(i)) => i < n_edges,
+            Some(Selected::Obstacle(i)) => i < study.section.obstacles.len(),
+            Some(Selected::ObstacleVertex(i, v)) => {
+                study.section.obstacles.get(i).is_some_and(|o| v < o.vertices.len())
+            }
+            Some(Selected::Point(i)) => i < study.points.len(),
+            Some(Selected::Bob) | None => true,
+        };
+        if !is_there {
+            self.view.selected = None;
+        }
+        self.view.case_idx = self.view.case_idx.min(study.cases.len().saturating_sub(1));
+        self.keep_verdict_open();
+    }
+
+    /// A new judgement may move the opened verdict in its list; a click names another one.
+    fn keep_verdict_open(&mut self) {
+        let Derived::Judged { results, .. } = self.doc.derived() else { return };
+        let revision = self.doc.revision();
+        if let Some(open) = self.open_verdict.take_if(|open| open.revision != revision) {
+            self.view.open_verdict = open.find(results);
+        }
+        self.open_verdict = self.view.open_verdict.and_then(|at| OpenVerdict::of(results, at, revision));
+    }
+
+    fn guard_close(&mut self, ctx: &egui::Context) {
+        if ctx.input(|i| i.viewport().close_requested()) && !self.may_close {
+            if self.doc.is_unsaved() {
+                ctx.send_viewport_cmd(ViewportCommand::CancelClose);
+                self.intend(ctx, Intent::Close);
+            } else {
+                self.may_close = true;
+            }
+        }
+    }
+
+    fn title(&mut self, ctx: &egui::Context) {
+        let mark = if self.doc.is_unsaved() { "*" } else { "" };
+        let title = format!("{mark}{} - brimwright", title_or(self.doc.study(), "Untitled"));
+        if title != self.window_title {
+            ctx.send_viewport_cmd(ViewportCommand::Title(title.clone()));
+            self.window_title = title;
+        }
+    }
+
+    fn intend(&mut self, ctx: &egui::Context, intent: Intent) {
+        self.intent = Some(intent);
+        if self.doc.is_unsaved() {
+            self.asks_unsaved = true;
+        } else {
+            self.carry_out(ctx);
+        }
+    }
+
+    fn carry_out(&mut self, ctx: &egui::Context) {
+        match self.intent.take() {
+            None => {}
+            Some(Intent::New) => self.replace(starter::study(), None),
+            Some(Intent::Choose) => self.chooser.ask(ctx, Purpose::Open, self.proposed_path()),
+            Some(Intent::Open(path)) => self.open(&path),
+            Some(Intent::Example(i)) => {
+                if let Some(study) = example(i) {
+                    self.replace(study, None);
+                }
+            }
+            Some(Intent::Close) => {
+                self.may_close = true;
+                ctx.send_viewport_cmd(ViewportCommand::Close);
+            }
+        }
+    }
+
+    fn replace(&mut self, study: Study, path: Option<PathBuf>) {
+        self.doc = Document::new(study, path);
+        self.view = View { units: self.view.units, ..View::default() };
+        self.plots = PlotArea::default();
+        self.trouble = None;
+        self.open_verdict = None;
+        self.judged_ms = None;
+        self.event.clear();
+    }
+
+    fn save(&mut self, ctx: &egui::Context) {
+        match self.doc.path.clone() {
+            Some(path) => self.save_to(ctx, &path),
+            None => self.chooser.ask(ctx, Purpose::Save, self.proposed_path()),
+        }
+    }
+
+    fn save_to(&mut self, ctx: &egui::Context, path: &Path) {
+        match app::save_atomic(path, self.doc.study()) {
+            Ok(()) => {
+                self.doc.mark_saved(path.to_owned());
+                self.settings.remember(path);
+                self.event = format!("saved to {}", path.display());
+                self.carry_out(ctx);
+            }
+            Err(error) => {
+                self.intent = None;
+                self.trouble = Some(trouble(error, "saved"));
+            }
+        }
+    }
+
+    fn proposed_path(&self) -> PathBuf {
+        if let Some(path) = &self.doc.path {
+            return path.clone();
+        }
+        let title = title_or(self.doc.study(), "tank").to_lowercase();
+        let name: String = title.chars().map(|c| if c.is_alphanumeric() { c } else { '-' }).collect();
+        let folder = self.settings.recent.first().and_then(|path| path.parent()).unwrap_or(Path::new(""));
+        folder.join(format!("{}.{EXTENSION}", name.trim_matches('-')))
+    }
+
+    fn delete_selected(&mut self) {
+        match self.view.selected {
+            Some(Selected::Vertex(i)) => self.doc.edit(&Edit::RemoveVertex(i)),
+            Some(Selected::Obstacle(i)) => self.doc.edit(&Edit::RemoveObstacle(i)),
+            Some(Selected::Point(i)) => {
+                let mut points = self.doc.study().points.clone();
+                if i < points.len() {
+                    points.remove(i);
+                    self.doc.edit(&Edit::Points(points));
+                }
+            }
+            _ => return,
+        }
+        self.view.selected = None;
+    }
+
+    fn add_case(&mut self, case: LoadCase) {
+        self.doc.edit(&Edit::AddCase(Box::new(case)));
+        self.view.case_idx = self.doc.study().cases.len().saturating_sub(1);
+    }
+
+    fn move_case(&mut self, from: usize, to: usize) {
+        if to < self.doc.study().cases.len() && from != to {
+            self.doc.edit(&Edit::ReorderCase(from, to));
+            self.view.case_idx = to;
+        }
+    }
+}
+
+fn example(i: usize) -> Option<Study> {
+    EXAMPLES.get(i).and_then(|example| crate::scenario::parse(example.text.as_bytes()).ok())
+}
+
+fn rest_case(study: &Study) -> LoadCase {
+    LoadCase {
+        name: copy_name(study, "Rest"),
+        accel: Accel::REST,
+        attitude: Attitude::Level,
+        onset_s: None,
+        source: String::new(),
+        note: String::new(),
+    }
+}
+
+/// `name` with a number, so that no two cases share it.
+fn copy_name(study: &Study, name: &str) -> String {
+    let is_taken = |name: &str| study.cases.iter().any(|case| case.name == name);
+    if !is_taken(name) {
+        return name.to_owned();
+    }
+    (2..).map(|i| format!("{name} {i}")).find(|name| !is_taken(name)).unwrap_or_default()
+}
+
+fn title_or(study: &Study, other: &str) -> String {
+    if study.title.is_empty() { other.to_owned() } else { study.title.clone() }
+}
+
+fn trouble(error: FileError, verb: &str) -> FileTrouble {
+    match error {
+        FileError::Io { path, error } => FileTrouble {
+            title: format!("`{}` could not be {verb}", file_name(&path)),
+            problems: vec![Problem::fault(
+                Place::Whole,
+                error.to_string(),
+                format!("Check that `{}` is there and that you may use it", path.display()),
+            )],
+        },
+        FileError::Unreadable { path, problems } => {
+            FileTrouble { title: format!("`{}` could not be {verb}", file_name(&path)), problems }
+        }
+    }
+}
+
+fn file_name(path: &Path) -> String {
+    path.file_name().unwrap_or_default().to_string_lossy().into_owned()
+}

@@ -1,0 +1,201 @@
+//! Studies and edits at random, for properties. Any finite input may come, sensible or not.
+
+use brimwright::app::Edit;
+use brimwright::cases::{Accel, AccelUnit, Attitude, LoadCase};
+use brimwright::geom::Point;
+use brimwright::liquid::Liquid;
+use brimwright::section::{EdgeKind, Obstacle, OutlineEdge, Section, Vertex, WidthLaw};
+use brimwright::study::{Fill, Limit, NamedPoint, Record, Study, VerdictNote};
+use proptest::collection::vec;
+use proptest::option;
+use proptest::prelude::*;
+
+/// Finite, of any usual size, with all the digits that arithmetic leaves behind.
+fn number() -> impl Strategy<Value = f64> {
+    prop_oneof![
+        Just(0.0),
+        -10.0..10.0,
+        (-1e9..1e9_f64),
+        (-1e-9..1e-9_f64),
+        (-9999..9999_i32).prop_map(|n| f64::from(n) / 1e3)
+    ]
+}
+
+fn point() -> impl Strategy<Value = Point> {
+    (number(), number()).prop_map(|(s, z)| Point::new(s, z))
+}
+
+/// Names and notes, with everything that a text format may trip over.
+fn text() -> impl Strategy<Value = String> {
+    prop_oneof![Just(String::new()), "[a-z \"\\\\(){}\\[\\]:,/*\n\r\t\u{1}Ωé°³]{0,12}"]
+}
+
+fn sweep() -> impl Strategy<Value = f64> {
+    prop_oneof![2 => Just(0.0), 1 => -6.0..6.0]
+}
+
+fn outline_edge() -> impl Strategy<Value = OutlineEdge> {
+    (text(), any::<bool>(), point(), sweep()).prop_map(|(name, mouth, start, sweep_rad)| OutlineEdge {
+        name,
+        kind: if mouth { EdgeKind::Mouth } else { EdgeKind::Wall },
+        start,
+        sweep_rad,
+    })
+}
+
+fn obstacle() -> impl Strategy<Value = Obstacle> {
+    (text(), vec((point(), sweep()), 0..5)).prop_map(|(name, vertices)| Obstacle {
+        name,
+        vertices: vertices.into_iter().map(|(start, sweep_rad)| Vertex { start, sweep_rad }).collect(),
+    })
+}
+
+fn width() -> impl Strategy<Value = WidthLaw> {
+    prop_oneof![
+        number().prop_map(|width_m| WidthLaw::Constant { width_m }),
+        (number(), number()).prop_map(|(diameter_m, bottom_z_m)| WidthLaw::RoundBarrel { diameter_m, bottom_z_m }),
+        (number(), number(), number()).prop_map(|(width_m, height_m, bottom_z_m)| WidthLaw::Oval {
+            width_m,
+            height_m,
+            bottom_z_m
+        }),
+        vec((number(), number()), 0..5).prop_map(WidthLaw::Table),
+    ]
+}
+
+fn fill() -> impl Strategy<Value = Fill> {
+    (0..4_usize, number())
+        .prop_map(|(way, v)| [Fill::Volume(v), Fill::Share(v), Fill::Level(v), Fill::Ullage(v)][way])
+}
+
+fn liquid() -> impl Strategy<Value = Liquid> {
+    (text(), number(), option::of(number()), option::of(number())).prop_map(|(name, rho, vapour, sigma)| Liquid {
+        name,
+        density_kg_per_m3: rho,
+        vapour_pressure_abs_pa: vapour,
+        surface_tension_n_per_m: sigma,
+    })
+}
+
+fn accel() -> impl Strategy<Value = Accel> {
+    (any::<bool>(), any::<bool>(), number(), number()).prop_map(|(g, polar, a, b)| {
+        let unit = if g { AccelUnit::G } else { AccelUnit::MPerS2 };
+        if polar {
+            Accel::Polar { magnitude: a, direction_deg: b, unit }
+        } else {
+            Accel::Components { a_s: a, a_z: b, unit }
+        }
+    })
+}
+
+fn attitude() -> impl Strategy<Value = Attitude> {
+    (0..3_usize, number())
+        .prop_map(|(way, v)| [Attitude::Level, Attitude::GradePercent(v), Attitude::HeelDeg(v)][way])
+}
+
+/// Few names, so that cases share them now and then.
+fn case_name() -> impl Strategy<Value = String> {
+    prop_oneof!["[ab]", text()]
+}
+
+fn case() -> impl Strategy<Value = LoadCase> {
+    (case_name(), accel(), attitude(), option::of(number()), text(), text()).prop_map(
+        |(name, accel, attitude, onset_s, source, note)| LoadCase { name, accel, attitude, onset_s, source, note },
+    )
+}
+
+fn record() -> impl Strategy<Value = Record> {
+    (text(), 0..4_usize, number(), text(), text(), text(), any::<bool>()).prop_map(
+        |(title, way, v, clause, edition, origin, confirmed)| {
+            let limit = [
+                Limit::WallPressure(v),
+                Limit::RoofPressure(v),
+                Limit::FreeboardAllowance(v),
+                Limit::VapourMargin(v),
+            ];
+            Record { title, limit: limit[way], clause, edition, origin, confirmed }
+        },
+    )
+}
+
+fn named_point() -> impl Strategy<Value = NamedPoint> {
+    (text(), point()).prop_map(|(name, at)| NamedPoint { name, at })
+}
+
+fn note() -> impl Strategy<Value = VerdictNote> {
+    (case_name(), "[pq]", text()).prop_map(|(case, criterion, text)| VerdictNote { case, criterion, text })
+}
+
+/// How properties are tried: failures are printed whole, no file is left behind.
+pub fn config() -> ProptestConfig {
+    ProptestConfig { failure_persistence: None, ..ProptestConfig::default() }
+}
+
+/// Any study.
+pub fn study() -> impl Strategy<Value = Study> {
+    let words = [text(), text(), text(), text()];
+    let physics = (number(), number(), number(), liquid(), fill());
+    let section = (vec(outline_edge(), 0..8), vec(obstacle(), 0..3), width());
+    let rest = (vec(case(), 0..4), vec(named_point(), 0..3), point(), vec(record(), 0..3), vec(note(), 0..3));
+    (words, physics, section, rest).prop_map(
+        |(
+            [title, author, revision, notes],
+            (gravity_m_per_s2, air_pressure_abs_pa, ullage_gage_pa, liquid, fill),
+            (outline, obstacles, width),
+            (cases, points, moment_about, records, verdict_notes),
+        )| Study {
+            title,
+            author,
+            revision,
+            notes,
+            gravity_m_per_s2,
+            air_pressure_abs_pa,
+            ullage_gage_pa,
+            section: Section { outline, obstacles, width },
+            liquid,
+            fill,
+            cases,
+            points,
+            moment_about,
+            records,
+            verdict_notes,
+        },
+    )
+}
+
+/// Any edit; indices are in range or a little beyond.
+pub fn edit() -> impl Strategy<Value = Edit> {
+    let i = || 0..9_usize;
+    prop_oneof![
+        study().prop_map(|s| Edit::Replace(Box::new(s))),
+        text().prop_map(Edit::Title),
+        text().prop_map(Edit::Author),
+        text().prop_map(Edit::Revision),
+        text().prop_map(Edit::Notes),
+        liquid().prop_map(Edit::Liquid),
+        fill().prop_map(Edit::Fill),
+        number().prop_map(Edit::UllageGage),
+        width().prop_map(Edit::Width),
+        (i(), point()).prop_map(|(i, p)| Edit::MoveVertex(i, p)),
+        (i(), sweep()).prop_map(|(i, s)| Edit::BendEdge(i, s)),
+        (i(), any::<bool>()).prop_map(|(i, m)| Edit::EdgeKind(i, if m { EdgeKind::Mouth } else { EdgeKind::Wall })),
+        (i(), text()).prop_map(|(i, t)| Edit::EdgeName(i, t)),
+        (i(), point()).prop_map(|(i, p)| Edit::SplitEdge(i, p)),
+        i().prop_map(Edit::RemoveVertex),
+        vec(outline_edge(), 0..8).prop_map(Edit::Outline),
+        (0..4_usize, i(), point()).prop_map(|(i, v, p)| Edit::MoveObstacleVertex(i, v, p)),
+        (0..4_usize, number(), number()).prop_map(|(i, s, z)| Edit::ShiftObstacle(i, s, z)),
+        obstacle().prop_map(Edit::AddObstacle),
+        (0..4_usize).prop_map(Edit::RemoveObstacle),
+        (0..5_usize, accel()).prop_map(|(i, a)| Edit::CaseAccel(i, a)),
+        (0..5_usize, attitude()).prop_map(|(i, a)| Edit::CaseAttitude(i, a)),
+        (0..5_usize, case()).prop_map(|(i, c)| Edit::Case(i, Box::new(c))),
+        case().prop_map(|c| Edit::AddCase(Box::new(c))),
+        (0..5_usize).prop_map(Edit::RemoveCase),
+        (0..5_usize, 0..5_usize).prop_map(|(i, j)| Edit::ReorderCase(i, j)),
+        vec(record(), 0..3).prop_map(Edit::Records),
+        vec(named_point(), 0..3).prop_map(Edit::Points),
+        point().prop_map(Edit::MomentAbout),
+        (case_name(), "[pq]", text()).prop_map(|(c, k, t)| Edit::VerdictNote(c, k, t)),
+    ]
+}
