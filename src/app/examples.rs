@@ -1,4 +1,4 @@
-//! The demo scenarios, built into the program.
+//! The demo scenarios, built into the program. All invented.
 
 /// One example.
 pub struct Example {
@@ -8,5 +8,19 @@ pub struct Example {
     pub text: &'static str,
 }
 
+macro_rules! example {
+    ($file_name:literal) => {
+        Example { file_name: $file_name, text: include_str!(concat!("../../scenarios/", $file_name)) }
+    };
+}
+
 /// All examples; the first is shown on first start.
-pub const EXAMPLES: &[Example] = &[];
+pub const EXAMPLES: &[Example] = &[
+    example!("trailer-water-bowser.ron"),
+    example!("shuttle-rinse-bath.ron"),
+    example!("round-barrel-lengthwise.ron"),
+    example!("hopper-hydraulic-reservoir.ron"),
+    example!("ship-header-tank.ron"),
+    example!("hoist-dip-vat.ron"),
+    example!("small-sample-tray.ron"),
+];

@@ -1,9 +1,9 @@
 //! Edits: what each changes, what none may do, and what undo gives back.
 
-use brimwright::app::{Edit, apply};
+use brimwright::app::{Derived, Document, Edit, apply};
 use brimwright::geom::{Edge, Point};
 use brimwright::section::EdgeKind;
-use brimwright::study::Study;
+use brimwright::study::{Fill, Study};
 use proptest::prelude::*;
 
 use crate::arbitrary;
@@ -129,6 +129,146 @@ fn labels_count_from_one() {
     }
 }
 
+#[test]
+fn a_gesture_is_one_step_and_can_be_called_off() {
+    let mut document = Document::new(study(), None);
+    document.edit(&Edit::Title("first".into()));
+    document.begin_gesture("Drag the fill");
+    for level in [0.31, 0.32, 0.33] {
+        document.edit(&Edit::Fill(Fill::Level(level)));
+    }
+    document.end_gesture();
+    assert_eq!(document.undo_label(), Some("Drag the fill"));
+    document.undo();
+    assert_eq!((document.study().fill, document.redo_label()), (Fill::Level(0.3), Some("Drag the fill")));
+    document.redo();
+    assert_eq!(document.study().fill, Fill::Level(0.33));
+
+    document.begin_gesture("Drag the fill");
+    document.edit(&Edit::Fill(Fill::Level(0.5)));
+    document.cancel_gesture();
+    assert_eq!((document.study().fill, document.undo_label()), (Fill::Level(0.33), Some("Drag the fill")));
+    document.undo();
+    document.undo();
+    document.undo();
+    assert_eq!(*document.study(), study());
+    assert_eq!((document.undo_label(), document.redo_label()), (None, Some("Set title")));
+}
+
+#[test]
+fn only_a_changed_study_is_unsaved() {
+    let mut document = Document::new(study(), None);
+    let revision = document.revision();
+    document.edit(&Edit::Title("t".into()));
+    assert_eq!((document.is_unsaved(), document.undo_label(), document.revision()), (false, None, revision));
+    document.edit(&Edit::Title("new".into()));
+    assert!(document.is_unsaved() && document.revision() > revision);
+    document.mark_saved("tank.ron".into());
+    assert!(!document.is_unsaved());
+    document.undo();
+    assert!(document.is_unsaved(), "the file holds what was undone");
+    document.redo();
+    assert!(!document.is_unsaved());
+}
+
+#[test]
+fn a_faulty_study_keeps_the_last_results_as_stale() {
+    let mut document = Document::new(study(), None);
+    let Derived::Judged { results: good, .. } = document.derived().clone() else { panic!("the study is good") };
+    for level in [-5.0, -6.0] {
+        document.edit(&Edit::Fill(Fill::Level(level)));
+        let Derived::Faulty { problems, stale: Some((_, stale)) } = document.derived() else {
+            panic!("a level of {level} m is faulty, and earlier results exist")
+        };
+        assert!(!problems.is_empty());
+        assert_eq!(**stale, *good);
+    }
+    document.undo();
+    document.undo();
+    assert!(matches!(document.derived(), Derived::Judged { results, .. } if **results == *good));
+}
+
+#[test]
+fn the_oldest_steps_are_forgotten() {
+    let mut document = Document::new(Study { cases: vec![], ..study() }, None);
+    for i in 0..510 {
+        document.edit(&Edit::Title(i.to_string()));
+    }
+    let mut n_undone = 0;
+    while document.undo_label().is_some() {
+        document.undo();
+        n_undone += 1;
+    }
+    assert_eq!((n_undone, document.study().title.as_str()), (500, "9"));
+}
+
+/// What a user may do with a document.
+#[derive(Clone, Debug)]
+enum Act {
+    Edit(Edit),
+    Undo,
+    Redo,
+    Begin,
+    End,
+    Cancel,
+}
+
+fn act() -> impl Strategy<Value = Act> {
+    prop_oneof![
+        6 => arbitrary::edit().prop_map(Act::Edit),
+        3 => Just(Act::Undo),
+        2 => Just(Act::Redo),
+        1 => Just(Act::Begin),
+        1 => Just(Act::End),
+        1 => Just(Act::Cancel),
+    ]
+}
+
+/// A document as plainly as it can be written: all states, and which one is shown.
+struct Plain {
+    states: Vec<Study>,
+    shown: usize,
+    gesture: Option<Study>,
+}
+
+impl Plain {
+    fn study(&self) -> &Study {
+        self.gesture.as_ref().unwrap_or(&self.states[self.shown])
+    }
+
+    fn push(&mut self, study: Study) {
+        if study != self.states[self.shown] {
+            self.states.truncate(self.shown + 1);
+            self.states.push(study);
+            self.shown += 1;
+        }
+    }
+
+    fn act(&mut self, act: &Act) {
+        let gesture = if matches!(act, Act::Edit(_)) { None } else { self.gesture.take() };
+        match (act, gesture) {
+            (Act::Edit(edit), _) => {
+                let mut study = self.study().clone();
+                apply(&mut study, edit);
+                match &mut self.gesture {
+                    Some(gesture) if study != *gesture => *gesture = study,
+                    Some(_) => {}
+                    None => self.push(study),
+                }
+            }
+            (Act::Cancel, _) => {}
+            (_, Some(study)) => self.push(study),
+            (_, None) => {}
+        }
+        match act {
+            Act::Undo => self.shown = self.shown.saturating_sub(1),
+            Act::Redo => self.shown = (self.shown + 1).min(self.states.len() - 1),
+            Act::Begin => self.gesture = Some(self.states[self.shown].clone()),
+            _ => {}
+        }
+    }
+}
+
 /// Whether the two edges are the same curve up to rounding at their size.
 fn same_curve(a: Edge, b: Edge) -> bool {
     let size = 1.0 + a.start.coords.norm() + a.end.coords.norm();
@@ -176,6 +316,35 @@ proptest! {
         };
         if is_beyond {
             prop_assert_eq!(study, before);
+        }
+    }
+}
+
+proptest! {
+    // Each edit judges the study again: fewer tries.
+    #![proptest_config(ProptestConfig { cases: 64, ..arbitrary::config() })]
+
+    #[test]
+    fn undo_and_redo_give_back_every_bit(acts in proptest::collection::vec(act(), 1..24)) {
+        let mut document = Document::new(study(), None);
+        let mut plain = Plain { states: vec![study()], shown: 0, gesture: None };
+        for (i, act) in acts.iter().enumerate() {
+            match act {
+                Act::Edit(edit) => document.edit(edit),
+                Act::Undo => document.undo(),
+                Act::Redo => document.redo(),
+                Act::Begin => document.begin_gesture("gesture"),
+                Act::End => document.end_gesture(),
+                Act::Cancel => document.cancel_gesture(),
+            }
+            plain.act(act);
+            // The text of a number tells all its bits, the sign of zero included.
+            let (got, want) = (format!("{:?}", document.study()), format!("{:?}", plain.study()));
+            prop_assert_eq!(got, want, "after act {} of {:?}", i, &acts);
+            if plain.gesture.is_none() {
+                prop_assert_eq!(document.undo_label().is_some(), plain.shown > 0, "undo after act {}", i);
+                prop_assert_eq!(document.redo_label().is_some(), plain.shown + 1 < plain.states.len());
+            }
         }
     }
 }

@@ -3,6 +3,7 @@
 mod arbitrary;
 mod cli;
 mod edits;
+mod examples;
 mod files;
 mod json;
 mod program;

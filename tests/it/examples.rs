@@ -1,0 +1,139 @@
+//! The built-in demo scenarios: each is sound, and judges as it is meant to.
+
+use std::collections::BTreeMap;
+use std::fmt::Write as _;
+use std::path::Path;
+
+use brimwright::analysis::{self, Results, State};
+use brimwright::app::{EXAMPLES, Edit, apply};
+use brimwright::cases::{Accel, AccelUnit};
+use brimwright::scenario;
+use brimwright::study::{Fill, Study};
+
+fn study(text: &str) -> Study {
+    scenario::parse(text.as_bytes()).unwrap_or_else(|problems| panic!("{problems:?}"))
+}
+
+fn judge(study: &Study) -> Results {
+    analysis::run(&study.validate().unwrap_or_else(|problems| panic!("{problems:?}")))
+}
+
+#[test]
+fn every_scenario_is_built_in() {
+    let folder = Path::new(env!("CARGO_MANIFEST_DIR")).join("scenarios");
+    let mut on_disk: Vec<String> =
+        folder.read_dir().unwrap().map(|entry| entry.unwrap().file_name().into_string().unwrap()).collect();
+    let mut built_in: Vec<&str> = EXAMPLES.iter().map(|e| e.file_name).collect();
+    on_disk.sort();
+    built_in.sort_unstable();
+    assert_eq!(built_in, on_disk);
+}
+
+#[test]
+fn saving_an_example_unchanged_changes_nothing() {
+    for example in EXAMPLES {
+        assert_eq!(scenario::write(&study(example.text)), example.text, "{}", example.file_name);
+    }
+}
+
+#[test]
+fn examples_have_no_warnings_and_their_notes_have_a_verdict() {
+    for example in EXAMPLES {
+        let study = study(example.text);
+        let results = judge(&study);
+        assert_eq!(results.warnings, [], "{}", example.file_name);
+        for note in &study.verdict_notes {
+            let case = results.cases.iter().find(|c| c.name == note.case);
+            let has_verdict = case.is_some_and(|c| c.verdicts.iter().any(|v| v.criterion == note.criterion));
+            assert!(has_verdict, "{}: {note:?}", example.file_name);
+        }
+    }
+}
+
+/// States as intended by whoever invented the scenario; not computed elsewhere. A verdict that is not named holds.
+const INTENDED: &str = "\
+trailer-water-bowser.ron
+  Parked on the crossfall: 5 verdicts
+  Roundabout: 5 verdicts
+  Bend to the left: 5 verdicts; fails: Freeboard
+  Bend to the right: 5 verdicts
+  Emergency swerve: 5 verdicts
+shuttle-rinse-bath.ron
+  Standing: 2 verdicts
+  Start: 2 verdicts
+  Stop: 2 verdicts
+  Emergency stop: 2 verdicts; close: Freeboard
+round-barrel-lengthwise.ron
+  Standing: 4 verdicts
+  Service braking: 4 verdicts
+  Hard braking: 4 verdicts; fails: Contained
+  Pulling away uphill: 4 verdicts
+  Braking downhill: 4 verdicts; fails: Contained
+hopper-hydraulic-reservoir.ron
+  Level ground: 4 verdicts
+  Slope, right side down: 4 verdicts
+  Slope, left side down: 4 verdicts
+  Turn on the slope: 4 verdicts; close: Freeboard
+  Over a kerb: 4 verdicts
+ship-header-tank.ron
+  Upright: 4 verdicts
+  Lasting heel to starboard: 4 verdicts
+  Lasting heel to port: 4 verdicts
+  Roll to starboard: 4 verdicts; close: Contained
+  Roll to port: 4 verdicts
+  Heave, downward: 4 verdicts
+hoist-dip-vat.ron
+  Hanging: 2 verdicts
+  Hoist starts up: 2 verdicts
+  Hoist stops going up: 2 verdicts
+  Travel and lift: 2 verdicts
+  Landing: 2 verdicts; close: Pressure
+  Slack rope: 2 verdicts; not judged: Contained, Pressure
+small-sample-tray.ron
+  Standing: 2 verdicts; not judged: Contained, Freeboard
+  Arm moves: 2 verdicts; not judged: Contained, Freeboard
+  Arm lifts and tilts: 2 verdicts; not judged: Contained, Freeboard
+";
+
+#[test]
+fn examples_judge_as_intended() {
+    let mut got = String::new();
+    for example in EXAMPLES {
+        writeln!(got, "{}", example.file_name).unwrap();
+        for case in judge(&study(example.text)).cases {
+            write!(got, "  {}: {} verdicts", case.name, case.verdicts.len()).unwrap();
+            let mut by_state: BTreeMap<State, Vec<&str>> = BTreeMap::new();
+            for verdict in case.verdicts.iter().filter(|v| v.state != State::Holds) {
+                by_state.entry(verdict.state).or_default().push(verdict.criterion);
+            }
+            for (state, mut criteria) in by_state {
+                criteria.sort_unstable();
+                write!(got, "; {}: {}", state.word(), criteria.join(", ")).unwrap();
+            }
+            writeln!(got).unwrap();
+        }
+    }
+    assert!(got == INTENDED, "expected\n{INTENDED}\ngot\n{got}");
+}
+
+#[test]
+fn a_newcomer_mends_the_first_example_by_fill_or_by_the_bob() {
+    let first = study(EXAMPLES[0].text);
+    let results = judge(&first);
+    assert_eq!((results.count(State::Fails), results.count(State::NotJudged)), (1, 0));
+    let (case_idx, verdict_idx) = results.ranked()[0];
+    let worst = &results.cases[case_idx].verdicts[verdict_idx];
+    assert!(worst.utilisation.is_some_and(|u| u > 1.1), "clearly failing, not {:?}", worst.utilisation);
+
+    let percent: f64 = worst.mend[0]
+        .strip_prefix("To hold, fill ")
+        .and_then(|rest| rest.strip_suffix(" %"))
+        .and_then(|number| number.parse().ok())
+        .unwrap_or_else(|| panic!("the first way to mend is no fill: {:?}", worst.mend));
+    let gentler = Accel::Components { a_s: -0.3, a_z: 0.0, unit: AccelUnit::G };
+    for edit in [Edit::Fill(Fill::Share(percent / 100.0)), Edit::CaseAccel(case_idx, gentler)] {
+        let mut mended = first.clone();
+        apply(&mut mended, &edit);
+        assert_eq!(judge(&mended).count(State::Fails), 0, "after {edit:?}");
+    }
+}
