@@ -175,7 +175,8 @@ pub fn number(value: f64, significant: usize) -> String {
         return "–".to_owned();
     }
     let magnitude = value.abs();
-    let decimals = if magnitude == 0.0 {
+    // What nine decimals cannot show is a rounding residue, and reads as zero.
+    let decimals = if magnitude < 0.5e-9 {
         significant.saturating_sub(1)
     } else {
         let rounded_exponent = format!("{:.*e}", significant.saturating_sub(1), magnitude)

@@ -74,7 +74,13 @@ pub fn run() -> ExitCode {
 
 #[cfg(feature = "gui")]
 fn open_window(file: Option<PathBuf>) -> ExitCode {
-    crate::gui::launch(file)
+    match crate::gui::launch(file) {
+        Ok(()) => ExitCode::SUCCESS,
+        Err(words) => {
+            complain(&format!("{words}\n"));
+            ExitCode::from(2)
+        }
+    }
 }
 
 #[cfg(not(feature = "gui"))]

@@ -34,7 +34,7 @@ impl Lines {
                 }
             }
             is_first = false;
-            for (i, word) in fact.split(' ').enumerate() {
+            for (i, word) in words(&fact).enumerate() {
                 if i > 0 {
                     if width(&row) + 1 + width(word) <= WIDTH {
                         row.push(' ');
@@ -60,6 +60,18 @@ impl Lines {
         self.text.push('\n');
         *row = " ".repeat(indent);
     }
+}
+
+/// The words of a text; what follows a figure, its unit, is not parted from it.
+fn words(text: &str) -> impl Iterator<Item = &str> {
+    let mut rest = Some(text);
+    std::iter::from_fn(move || {
+        let text = rest?;
+        let ends = text.match_indices(' ').map(|(end, _)| end);
+        let end = ends.into_iter().find(|&end| !text[..end].ends_with(|c: char| c.is_ascii_digit()));
+        rest = end.map(|end| &text[end + 1..]);
+        Some(&text[..end.unwrap_or(text.len())])
+    })
 }
 
 /// Columns that a text takes, one a character.
@@ -101,6 +113,12 @@ mod tests {
         let text = lines.into_text();
         assert!(text.lines().all(|line| width(line) <= WIDTH), "{text}");
         assert_eq!(text.split_whitespace().count(), 41, "{text}");
+    }
+
+    #[test]
+    fn a_figure_and_its_unit_stay_together() {
+        let words: Vec<&str> = words("at up to 0.65 kPa of gas").collect();
+        assert_eq!(words, ["at", "up", "to", "0.65 kPa", "of", "gas"]);
     }
 
     #[test]

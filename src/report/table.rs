@@ -223,7 +223,7 @@ impl Table<'_> {
         }
         for a in &case.absent {
             self.lines.facts(&row("absent", a.criterion, ""), [""]);
-            self.detail([a.place_words.clone(), a.reason.clone()]);
+            self.detail(Some(format!("{}: {}", a.place_words, a.reason)));
         }
     }
 
@@ -325,7 +325,7 @@ mod tests {
             "   settled   no settled state: free fall: effective gravity is zero\n",
             "   not judged  Contained        –  –\n",
             "               capillarity rules the surface\n",
-            "   absent      Roof contact\n               tank · no edge of the outline is a shut roof\n",
+            "   absent      Roof contact\n               tank: no edge of the outline is a shut roof\n",
         ] {
             assert!(text.contains(want), "want\n{want}in\n{text}");
         }

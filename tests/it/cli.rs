@@ -165,7 +165,11 @@ fn the_sample_in_readme_is_what_is_printed() {
     let sample = block_of_readme("text", &format!("$ {command}"));
     let (first, want) = sample.split_once('\n').expect("a command line");
     let arguments = first.trim_start_matches("$ ").trim_start_matches(command);
-    let output = judge(arguments.split_whitespace());
+    // Every second part stands between quotation marks.
+    let parts = arguments.split('"').enumerate();
+    let arguments: Vec<&str> =
+        parts.flat_map(|(i, part)| if i % 2 == 1 { vec![part] } else { part.split_whitespace().collect() }).collect();
+    let output = judge(arguments);
     assert!(stdout(&output) == want, "README shows\n{want}\nprinted is\n{}", stdout(&output));
 }
 

@@ -13,7 +13,13 @@ use super::model::Freeboard;
 use super::scene::Scene;
 
 /// Draws the dimension, and takes its place among the labels. Gives the x that the still level has to reach.
-pub fn paint_freeboard(painter: &Painter, scene: &Scene, freeboard: &Freeboard, labels: &mut Labels, look: &Look) -> f32 {
+pub fn paint_freeboard(
+    painter: &Painter,
+    scene: &Scene,
+    freeboard: &Freeboard,
+    labels: &mut Labels,
+    look: &Look,
+) -> f32 {
     let brim = scene.at(freeboard.brim);
     let still_y = scene.at(Point::new(0.0, freeboard.still_z_m)).y;
     let required_y = still_y - (freeboard.required_m * scene.screen.scale()) as f32;
@@ -21,8 +27,7 @@ pub fn paint_freeboard(painter: &Painter, scene: &Scene, freeboard: &Freeboard, 
     let required_ink = if fails { look.state(State::Fails) } else { look.ink2 };
     let length = |m: f64| Measure::new(Quantity::Length, m).text(scene.units);
     let short_m = freeboard.required_m - freeboard.available_m;
-    let required_words =
-        if fails { format!("required, {} short", length(short_m)) } else { "required".to_owned() };
+    let required_words = if fails { format!("required, {} short", length(short_m)) } else { "required".to_owned() };
     let texts = [
         (length(freeboard.available_m), "available".to_owned(), look.ink, look.ink2),
         (length(freeboard.required_m), required_words, if fails { required_ink } else { look.ink }, required_ink),
@@ -54,11 +59,8 @@ pub fn paint_freeboard(painter: &Painter, scene: &Scene, freeboard: &Freeboard, 
     let middle = 0.5 * (brim.y + still_y);
     let stacked = side.is_stacked.then_some(0.5 * texts[0].2.y + 2.0).unwrap_or_default();
     for (i, (number, words, size)) in texts.into_iter().enumerate() {
-        let (x, outward) = if i == 0 && !side.is_stacked {
-            (x_available, -side.sign)
-        } else {
-            (x_required, side.sign)
-        };
+        let (x, outward) =
+            if i == 0 && !side.is_stacked { (x_available, -side.sign) } else { (x_required, side.sign) };
         let y = middle + if i == 0 { -stacked } else { stacked };
         let align = if outward > 0.0 { Align2::LEFT_CENTER } else { Align2::RIGHT_CENTER };
         let at = |dy: f32| (pos2(x + 8.0 * outward, y + dy), align);

@@ -74,8 +74,9 @@ impl Drag {
             }
             Some(Target::Middle(i)) => scene.edges.get(i).map(|e| Held::Middle(i, e.point_at(0.5))),
             Some(Target::StillLevel) => scene.model.still_z_m.map(Held::StillLevel),
-            Some(Target::Bob) => (scene.case())
-                .map(|c| Held::Bob { dial: scene.dial, gravity: c.gravity.vec, accel: c.accel }),
+            Some(Target::Bob) => {
+                (scene.case()).map(|c| Held::Bob { dial: scene.dial, gravity: c.gravity.vec, accel: c.accel })
+            }
             Some(other) => other.anchor(scene).map(|p| Held::Place(other, p)),
             None => None,
         };

@@ -104,9 +104,8 @@ fn obey(ui: &Ui, scene: &Scene, focused: Option<Target>, view: &mut View, out: &
             }
         }
     }
-    let removes = ui.input_mut(|i| {
-        i.consume_key(Modifiers::NONE, Key::Delete) || i.consume_key(Modifiers::NONE, Key::Backspace)
-    });
+    let removes = ui
+        .input_mut(|i| i.consume_key(Modifiers::NONE, Key::Delete) || i.consume_key(Modifiers::NONE, Key::Backspace));
     if removes && let Some(edit) = view.selected.and_then(|s| removal(scene, s)) {
         out.push(Proposal::Edit(edit));
         view.selected = None;
@@ -118,7 +117,9 @@ fn nudge(scene: &Scene, target: Target, arrow: Vec2, coarse: bool) -> Vec<Edit> 
     let times = if coarse { 10.0 } else { 1.0 };
     let step_m = times * if scene.units == UnitSystem::Si { 1e-3 } else { 0.05 * 0.0254 };
     match target {
-        Target::Middle(i) | Target::Edge(i) => scene.edges.get(i).map(|e| bent(i, e, arrow * step_m)).into_iter().collect(),
+        Target::Middle(i) | Target::Edge(i) => {
+            scene.edges.get(i).map(|e| bent(i, e, arrow * step_m)).into_iter().collect()
+        }
         Target::StillLevel => {
             let z = scene.model.still_z_m.map(|z| tidy(z + arrow.y * step_m));
             z.and_then(|z| level_edit(scene, z)).into_iter().collect()

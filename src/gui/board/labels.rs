@@ -20,7 +20,6 @@ impl Labels {
         Labels { bounds, taken: Vec::new(), lines: Vec::new() }
     }
 
-
     /// Labels shall not cover `rect`.
     pub fn keep_off(&mut self, rect: Rect) {
         self.taken.push(rect);

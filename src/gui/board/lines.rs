@@ -84,12 +84,8 @@ pub fn crisp(painter: &Painter, [a, b]: [Pos2; 2]) -> [Pos2; 2] {
 fn clip_range(rect: Rect, a: Pos2, b: Pos2) -> Option<(f32, f32)> {
     let d = b - a;
     let (mut t0, mut t1) = (0.0_f32, 1.0_f32);
-    let sides = [
-        (-d.x, a.x - rect.left()),
-        (d.x, rect.right() - a.x),
-        (-d.y, a.y - rect.top()),
-        (d.y, rect.bottom() - a.y),
-    ];
+    let sides =
+        [(-d.x, a.x - rect.left()), (d.x, rect.right() - a.x), (-d.y, a.y - rect.top()), (d.y, rect.bottom() - a.y)];
     for (toward, room) in sides {
         if toward == 0.0 {
             if room < 0.0 {

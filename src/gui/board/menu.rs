@@ -39,7 +39,9 @@ pub fn menu_ui(ui: &Ui, canvas: &Response, scene: &Scene, view: &mut View, out: 
             Some(Target::Edge(i) | Target::Middle(i)) if i < scene.edges.len() => {
                 edge_menu_ui(ui, scene, i, called.pos, out)
             }
-            Some(target @ (Target::Vertex(_) | Target::Obstacle(_) | Target::ObstacleVertex(..) | Target::Point(_))) => {
+            Some(
+                target @ (Target::Vertex(_) | Target::Obstacle(_) | Target::ObstacleVertex(..) | Target::Point(_)),
+            ) => {
                 let words = match target {
                     Target::Vertex(_) => "Delete vertex",
                     Target::Point(_) => "Delete point",

@@ -77,8 +77,7 @@ pub fn paint_walls(painter: &Painter, screen: &Screen, model: &BoardModel, pens:
     let walls: Vec<bool> = model.edges.iter().map(|e| e.kind == EdgeKind::Wall).collect();
     let n = walls.len();
     if walls.iter().all(|w| *w) {
-        let path: Vec<Pos2> =
-            model.edges.iter().flat_map(|e| screen.line(&e.points[..e.points.len() - 1])).collect();
+        let path: Vec<Pos2> = model.edges.iter().flat_map(|e| screen.line(&e.points[..e.points.len() - 1])).collect();
         if path.len() > 2 {
             painter.add(Shape::closed_line(path, wall));
         }
@@ -230,7 +229,8 @@ fn hatch(painter: &Painter, screen: &Screen, points: Vec<Point>, stroke: Stroke)
     let loops = [points];
     let Some((low, high)) = extent(&loops, across) else { return };
     // Only the lines that cross the drawing area.
-    let seen = [screen.rect.left_top(), screen.rect.right_top(), screen.rect.left_bottom(), screen.rect.right_bottom()];
+    let seen =
+        [screen.rect.left_top(), screen.rect.right_top(), screen.rect.left_bottom(), screen.rect.right_bottom()];
     let levels = seen.map(|p| across.dot(&screen.section_from_screen(p).coords));
     let low = levels.iter().copied().fold(f64::INFINITY, f64::min).max(low);
     let high = levels.iter().copied().fold(f64::NEG_INFINITY, f64::max).min(high);

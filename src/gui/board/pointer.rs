@@ -149,8 +149,7 @@ fn hover(
 
 /// Splits an edge where the pointer is, at a round place where there is one.
 pub fn split(scene: &Scene, edge_idx: usize, pos: Pos2, keys: Modifiers) -> Edit {
-    let snapper =
-        Snapper { screen: &scene.screen, units: scene.units, anchors: Vec::new(), is_on: !keys.ctrl };
+    let snapper = Snapper { screen: &scene.screen, units: scene.units, anchors: Vec::new(), is_on: !keys.ctrl };
     let wish = snapper.point(scene.screen.section_from_screen(pos)).at;
     let edge = scene.edges[edge_idx];
     Edit::SplitEdge(edge_idx, edge.point_at(edge.nearest(wish).0))

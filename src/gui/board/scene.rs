@@ -43,14 +43,7 @@ pub struct Scene<'a> {
 
 impl<'a> Scene<'a> {
     /// Lays a document out in `area`. `held_dial` keeps the bob's scale while it is dragged.
-    pub fn new(
-        ui: &Ui,
-        id: Id,
-        doc: &'a Document,
-        view: &View,
-        area: Rect,
-        held_dial: Option<Dial>,
-    ) -> Scene<'a> {
+    pub fn new(ui: &Ui, id: Id, doc: &'a Document, view: &View, area: Rect, held_dial: Option<Dial>) -> Scene<'a> {
         let study = doc.study();
         let judged = match doc.derived() {
             Derived::Judged { study, results } => Some((&**study, &**results)),
@@ -74,17 +67,7 @@ impl<'a> Scene<'a> {
             others: results.map(|r| other_cases(r, view.case_idx)).unwrap_or_default(),
             is_held: false,
         };
-        Scene {
-            study,
-            judged,
-            case_idx: view.case_idx,
-            model,
-            edges,
-            screen,
-            dial,
-            hanging,
-            units: view.units,
-        }
+        Scene { study, judged, case_idx: view.case_idx, model, edges, screen, dial, hanging, units: view.units }
     }
 
     /// The case shown, judged.

@@ -180,7 +180,10 @@ mod tests {
             (3.0, UnitSystem::UsCustomary, (10.0 * 0.3048, 5)),
         ] {
             let got = round_step(least, units);
-            assert!((got.0 - want.0).abs() < 1e-12 && got.1 == want.1, "least {least}: got {got:?}, expected {want:?}");
+            assert!(
+                (got.0 - want.0).abs() < 1e-12 && got.1 == want.1,
+                "least {least}: got {got:?}, expected {want:?}"
+            );
         }
     }
 }

@@ -96,11 +96,8 @@ pub fn bands(loops: &[Vec<Point>], up: Vec2, levels: &[f64]) -> Vec<Vec<Strip>> 
 
 /// The pieces of the level `up . p = level` inside `loops`, from left to right.
 pub fn chords(loops: &[Vec<Point>], up: Vec2, level: f64) -> Vec<[Point; 2]> {
-    let mut crossings: Vec<f64> = flights(loops, up)
-        .iter()
-        .filter(|f| f.low.v <= level && level < f.high.v)
-        .map(|f| f.u_at(level))
-        .collect();
+    let mut crossings: Vec<f64> =
+        flights(loops, up).iter().filter(|f| f.low.v <= level && level < f.high.v).map(|f| f.u_at(level)).collect();
     crossings.sort_by(f64::total_cmp);
     let right = right_of(up);
     let place = |u: f64| Point::from(right * u + up * level);
@@ -195,7 +192,8 @@ mod tests {
     #[test]
     fn a_hollow_floor_gives_two_pieces_and_an_obstacle_none() {
         // A trough with a step in its floor, and a duct inside.
-        let trough = shape(&[(0.0, 0.0), (1.0, 0.0), (1.0, 1.0), (2.0, 1.0), (2.0, 0.0), (3.0, 0.0), (3.0, 3.0), (0.0, 3.0)]);
+        let trough =
+            shape(&[(0.0, 0.0), (1.0, 0.0), (1.0, 1.0), (2.0, 1.0), (2.0, 0.0), (3.0, 0.0), (3.0, 3.0), (0.0, 3.0)]);
         let duct = shape(&[(1.0, 1.5), (1.0, 2.0), (2.0, 2.0), (2.0, 1.5)]);
         let loops = [trough, duct];
         let up = Vec2::new(0.0, 1.0);
