@@ -1,6 +1,8 @@
 //! The integration tests: one binary, one module a subject.
 
 mod arbitrary;
+#[cfg(feature = "gui")]
+mod board;
 mod cli;
 mod edits;
 mod examples;
