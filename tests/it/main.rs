@@ -2,6 +2,8 @@
 
 mod arbitrary;
 mod bad_sections;
+#[cfg(feature = "gui")]
+mod board;
 mod cli;
 mod clipper;
 mod degenerate;

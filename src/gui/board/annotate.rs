@@ -260,7 +260,10 @@ impl Pen<'_> {
             if right.y > left.y + 1.0 {
                 ends.swap(0, 1);
             }
-            let free = ends.into_iter().find_map(|(end, out)| {
+            let down = vec2(0.0, 1.0);
+            let ways =
+                ends.into_iter().flat_map(|(end, out)| [out, (out + down).normalized(), down].map(|way| (end, way)));
+            let free = ways.into_iter().find_map(|(end, out)| {
                 let place = (end + out * 10.0, align_toward(out));
                 labels.place(text.size(), [place]).map(|rect| (end, out, rect))
             });
@@ -312,7 +315,7 @@ impl Pen<'_> {
     fn paint_legend(&self) {
         let (Some(tints), dial) = (self.scene.model.tints, &self.scene.dial) else { return };
         let bottom = self.scene.screen.rect.bottom() - 10.0;
-        let width = dial.rect.width() - 20.0;
+        let width = dial.rect.width() - 34.0;
         let bar =
             Rect::from_min_max(pos2(dial.rect.left(), bottom - 28.0), pos2(dial.rect.left() + width, bottom - 17.0));
         if bar.top() - 20.0 < dial.lowest(&self.scene.hanging) || self.scene.model.bands.is_empty() {

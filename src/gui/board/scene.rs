@@ -16,8 +16,8 @@ use super::bob::{Dial, Hanging};
 use super::model::{BoardModel, Detail};
 use super::screen::Screen;
 
-/// Largest distance of a drawn arc from the true one, points.
-const SAGITTA: f64 = 0.25;
+/// Largest distance of a drawn arc from the true one, points: a quarter still shows its corners.
+const SAGITTA: f64 = 0.1;
 
 /// One frame of the board.
 pub struct Scene<'a> {
