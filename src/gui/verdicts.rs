@@ -3,7 +3,7 @@
 use egui::{Align, Align2, Rect, Response, Role, Sense, Ui, UiBuilder, WidgetInfo, pos2, vec2};
 
 use crate::analysis::{State, Verdict};
-use crate::units::utilisation_text;
+use crate::units::{number, utilisation_text};
 
 use super::desk::Judged;
 use super::{Desk, field, font, marks, problems, working};
@@ -152,9 +152,10 @@ fn third_line_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: 
     let place = format!("   {}, case {}", verdict.place_words, case_idx + 1);
     let job = match (verdict.demand, verdict.limit) {
         (Some(demand), Some(limit)) if verdict.state != State::NotJudged => {
-            let unit = demand.quantity.unit(desk.units()).symbol;
-            let (demand, limit) = (demand.number(desk.units(), 3), limit.number(desk.units(), 3));
-            let sense = format!(" {unit}, {} ", verdict.sense.words());
+            let unit = desk.unit_near(demand.quantity, demand.si.abs().max(limit.si.abs()));
+            let [demand, limit] = [demand, limit].map(|m| number(unit.from_si(m.si), 3));
+            let gap = if unit.symbol == "°" { "" } else { " " };
+            let sense = format!("{gap}{}, {} ", unit.symbol, verdict.sense.words());
             font::runs([
                 (demand.as_str(), strong(), look.ink),
                 (&sense, small(), look.ink2),

@@ -63,7 +63,7 @@ fn way_ui(ui: &mut Ui, desk: &mut Desk, way: &Way) -> Option<f64> {
         Quantity::Share => desk.look.accent,
         _ => desk.look.ink,
     };
-    Number::new(("fill", way.label), way.label, 0.0, desk.unit(way.quantity))
+    Number::new(("fill", way.label), way.label, 0.0, desk.unit_near(way.quantity, si.unwrap_or(1.0)))
         .or_none(si)
         .significant(if way.quantity == Quantity::Share { 3 } else { 4 })
         .computed(given.is_none())
