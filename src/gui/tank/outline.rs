@@ -6,7 +6,8 @@ use egui::{Align, Rect, Response, Role, Sense, Ui, WidgetInfo, pos2, vec2};
 
 use crate::app::Edit;
 use crate::geom::{Edge, Point};
-use crate::gui::field::{self, Number};
+use crate::gui::field;
+use crate::gui::number::Number;
 use crate::gui::{Desk, Selected, font};
 use crate::section::{EdgeKind, Obstacle, Vertex};
 use crate::units::{Measure, Quantity};
