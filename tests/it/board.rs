@@ -40,12 +40,8 @@ type Board = Harness<'static, Desk>;
 
 /// A box of 2 m by 1 m with a pipe in it, half full, at rest.
 fn study() -> Study {
-    let edge = |name: &str, kind, s, z| OutlineEdge {
-        name: name.to_owned(),
-        kind,
-        start: Point::new(s, z),
-        sweep_rad: 0.0,
-    };
+    let edge =
+        |name: &str, kind, s, z| OutlineEdge { name: name.to_owned(), kind, start: Point::new(s, z), sweep_rad: 0.0 };
     let corner = |s, z| Vertex { start: Point::new(s, z), sweep_rad: 0.0 };
     Study {
         title: "Wash tank".to_owned(),
