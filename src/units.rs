@@ -110,6 +110,26 @@ impl Quantity {
         Unit { symbol, in_si }
     }
 
+    /// The unit for one value alone: a smaller one where an SI value would read as a row of zeros.
+    pub fn unit_near(self, system: UnitSystem, si: f64) -> Unit {
+        use Quantity::*;
+        let smaller: &[(&str, f64)] = match (system, self) {
+            (UnitSystem::UsCustomary, _) => &[],
+            (_, Volume) => &[("L", 1e-3), ("mL", 1e-6)],
+            (_, Mass) => &[("g", 1e-3), ("mg", 1e-6)],
+            (_, Force) => &[("N", 1.0), ("mN", 1e-3)],
+            (_, Moment) => &[("N m", 1.0), ("mN m", 1e-3)],
+            (_, GagePressure) => &[("Pa", 1.0)],
+            _ => &[],
+        };
+        let usual = self.unit(system);
+        // A hundredth of a unit still reads well in it.
+        let fits = |unit: &Unit| si == 0.0 || si.abs() >= 0.01 * unit.in_si;
+        let units = smaller.iter().map(|&(symbol, in_si)| Unit { symbol, in_si });
+        let mut all = std::iter::once(usual).chain(units);
+        all.find(fits).or(smaller.last().map(|&(symbol, in_si)| Unit { symbol, in_si })).unwrap_or(usual)
+    }
+
     /// The symbol of the coherent SI unit, as the JSON uses it.
     pub fn si_symbol(self) -> &'static str {
         use Quantity::*;
@@ -157,14 +177,48 @@ impl Measure {
         self.text_to(system, 3)
     }
 
-    /// Number and unit, rounded to `significant` figures.
+    /// Number and unit, rounded to `significant` figures; SI values far below the usual unit take a smaller one.
     pub fn text_to(self, system: UnitSystem, significant: usize) -> String {
-        let symbol = self.quantity.unit(system).symbol;
-        match symbol {
-            "" => self.number(system, significant),
-            "°" => format!("{}°", self.number(system, significant)),
-            _ => format!("{} {symbol}", self.number(system, significant)),
+        let unit = self.quantity.unit_near(system, self.si);
+        let number = number(unit.from_si(self.si), significant);
+        match unit.symbol {
+            "" => number,
+            "°" => format!("{number}°"),
+            symbol => format!("{number} {symbol}"),
         }
+    }
+}
+
+/// Words with measures in them, so that units can be switched after they are written. `{}` marks a measure.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Phrase {
+    words: String,
+    measures: Vec<Measure>,
+}
+
+impl Phrase {
+    /// One measure a `{}`, in order.
+    pub fn new(words: impl Into<String>, measures: impl Into<Vec<Measure>>) -> Phrase {
+        Phrase { words: words.into(), measures: measures.into() }
+    }
+
+    /// In the units of a system.
+    pub fn text(&self, system: UnitSystem) -> String {
+        let mut measures = self.measures.iter();
+        let mut out = String::new();
+        for (i, part) in self.words.split("{}").enumerate() {
+            if i > 0 {
+                out.push_str(&measures.next().map_or_else(String::new, |m| m.text(system)));
+            }
+            out.push_str(part);
+        }
+        out
+    }
+}
+
+impl From<&str> for Phrase {
+    fn from(words: &str) -> Phrase {
+        Phrase::new(words, [])
     }
 }
 
@@ -244,6 +298,23 @@ mod tests {
         assert_eq!(utilisation_text(Some(1.0001)), "1.01");
         assert_eq!(utilisation_text(Some(0.9999)), "1.00");
         assert_eq!(utilisation_text(None), "–");
+    }
+
+    #[test]
+    fn small_values_take_small_units() {
+        let text = |quantity, si| Measure::new(quantity, si).text(UnitSystem::Si);
+        assert_eq!(text(Quantity::Volume, 6.8e-8), "0.0680 mL");
+        assert_eq!(text(Quantity::Volume, 11.17), "11.2 m³");
+        assert_eq!(text(Quantity::Force, 0.00067), "0.670 mN");
+        assert_eq!(text(Quantity::Moment, 0.0), "0.00 kN m");
+        assert_eq!(text(Quantity::GagePressure, 2.5), "2.50 Pa");
+    }
+
+    #[test]
+    fn a_phrase_follows_the_units() {
+        let phrase = Phrase::new("or brim {} higher", [Measure::new(Quantity::Length, 0.0381)]);
+        assert_eq!(phrase.text(UnitSystem::Si), "or brim 38.1 mm higher");
+        assert_eq!(phrase.text(UnitSystem::UsCustomary), "or brim 1.50 in higher");
     }
 
     #[test]

@@ -6,7 +6,7 @@ use std::fs::{self, File};
 use std::io::{self, Read, Write};
 use std::path::{Path, PathBuf};
 
-use crate::problem::Problem;
+use crate::problem::{Place, Problem};
 use crate::scenario;
 use crate::study::Study;
 
@@ -17,7 +17,7 @@ const MAX_LINKS: usize = 40;
 #[derive(Debug, thiserror::Error)]
 pub enum FileError {
     /// The operating system says no.
-    #[error("{path} cannot be {action}: {words}", path = path.display(), words = io_words(error, action))]
+    #[error("{path} cannot be {action}: {}; {}", io_words(error, action).0, io_words(error, action).1, path = path.display())]
     Io {
         /// The file.
         path: PathBuf,
@@ -42,6 +42,29 @@ pub enum FileError {
         /// With line and column of the text that was not written.
         problems: Vec<Problem>,
     },
+}
+
+impl FileError {
+    /// The file.
+    pub fn path(&self) -> &Path {
+        match self {
+            FileError::Io { path, .. } | FileError::Unreadable { path, .. } | FileError::Unwritable { path, .. } => {
+                path
+            }
+        }
+    }
+
+    /// The faults, each with what to do.
+    pub fn into_problems(self) -> Vec<Problem> {
+        match self {
+            FileError::Io { path, action, error } => {
+                let (message, hint) = io_words(&error, action);
+                let message = format!("{} cannot be {action}: {message}", path.display());
+                vec![Problem::fault(Place::Field("file"), message, hint)]
+            }
+            FileError::Unreadable { problems, .. } | FileError::Unwritable { problems, .. } => problems,
+        }
+    }
 }
 
 /// Reads a scenario file. A file that is too large is refused without reading it whole.
@@ -140,23 +163,23 @@ fn keep_owner(file: &File, old: &fs::Metadata) {
 #[cfg(not(unix))]
 fn keep_owner(_: &File, _: &fs::Metadata) {}
 
-/// What the system says, in words that tell what to do.
-fn io_words(error: &io::Error, action: &str) -> String {
+/// What the system says, and what to do.
+fn io_words(error: &io::Error, action: &str) -> (String, &'static str) {
     use io::ErrorKind::*;
-    let words = match (error.kind(), action) {
-        (NotFound, "read") => "there is no such file; check its name and folder",
-        (NotFound, _) => "there is no such folder; make it first, or choose another",
-        (PermissionDenied, "read") => "you are not allowed to read it; ask for permission, or open a copy",
-        (PermissionDenied, _) => "it is read-only for you; save under another name or in another folder",
-        (ReadOnlyFilesystem, _) => "the disk is read-only; save to another disk",
+    let (message, hint) = match (error.kind(), action) {
+        (NotFound, "read") => ("there is no such file", "check its name and folder"),
+        (NotFound, _) => ("there is no such folder", "make it first, or choose another"),
+        (PermissionDenied, "read") => ("you are not allowed to read it", "ask for permission, or open a copy"),
+        (PermissionDenied, _) => ("it is read-only for you", "save under another name or in another folder"),
+        (ReadOnlyFilesystem, _) => ("the disk is read-only", "save to another disk"),
         (StorageFull | QuotaExceeded | FileTooLarge, _) => {
-            "there is no room for it; free some space, or save to another disk"
+            ("there is no room for it", "free some space, or save to another disk")
         }
-        (IsADirectory, _) => "it is a folder; choose a file",
-        (NotADirectory, _) => "a part of its path is a file, not a folder; check the path",
-        _ => return error.to_string(),
+        (IsADirectory, _) => ("it is a folder", "choose a file"),
+        (NotADirectory, _) => ("a part of its path is a file, not a folder", "check the path"),
+        _ => return (error.to_string(), "try another file or folder"),
     };
-    words.to_owned()
+    (message.to_owned(), hint)
 }
 
 fn counted(problems: &[Problem]) -> String {

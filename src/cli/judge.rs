@@ -89,7 +89,7 @@ struct Judged {
 
 /// Reads and judges a file; every load case is judged, `case` only chooses which are shown.
 fn judged(path: &Path, case: Option<&str>) -> Result<Judged, Vec<Problem>> {
-    let study = app::load(path).map_err(problems)?.validate()?;
+    let study = app::load(path).map_err(FileError::into_problems)?.validate()?;
     let names: Vec<&str> = study.study().cases.iter().map(|c| c.name.as_str()).collect();
     let case_idxs: Vec<usize> = (0..names.len()).filter(|&i| case.is_none_or(|case| case == names[i])).collect();
     if let Some(case) = case.filter(|_| case_idxs.is_empty()) {
@@ -98,18 +98,6 @@ fn judged(path: &Path, case: Option<&str>) -> Result<Judged, Vec<Problem>> {
     }
     let results = analysis::run(&study);
     Ok(Judged { study, results, case_idxs })
-}
-
-fn problems(error: FileError) -> Vec<Problem> {
-    match error {
-        FileError::Unreadable { problems, .. } => problems,
-        error => {
-            // The words of the system: what is wrong; what to do.
-            let text = error.to_string();
-            let (message, hint) = text.rsplit_once("; ").unwrap_or((&text, "check the path"));
-            vec![Problem::fault(Place::Field("file"), message, hint)]
-        }
-    }
 }
 
 #[cfg(test)]

@@ -5,7 +5,7 @@
 
 use crate::sources::Source;
 use crate::statics::{Lip, Spill};
-use crate::units::{Measure, Quantity, UnitSystem, fixed, number};
+use crate::units::{Measure, Phrase, Quantity, fixed, number};
 
 use super::{Context, Criterion, Outcome, Sense, State, Verdict, WorkLine};
 
@@ -117,12 +117,10 @@ fn working(context: &Context, spill: &Spill, governing: Option<Lip>, volume: f64
     lines
 }
 
-fn mend(context: &Context, spill: &Spill, limit: Option<Measure>) -> Vec<String> {
-    let share = spill.holds_m3 / context.study.capacity_m3();
-    // Rounded down: the fill shown must hold.
-    let mut lines = vec![format!("To hold, fill {} %", fixed((share * 1000.0).floor() / 10.0, 1))];
+fn mend(context: &Context, spill: &Spill, limit: Option<Measure>) -> Vec<Phrase> {
+    let mut lines = vec![context.fill_that_holds(spill.holds_m3)];
     if let Some(limit) = limit.filter(|l| l.si > 0.0) {
-        lines.push(format!("or stay below {}", limit.text(UnitSystem::Si)));
+        lines.push(Phrase::new("or stay below {}", [limit]));
     }
     lines
 }

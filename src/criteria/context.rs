@@ -6,7 +6,7 @@ use crate::problem::Place;
 use crate::sources::Source;
 use crate::statics::{EffectiveGravity, Rims, Settled, Spill};
 use crate::study::{Limit, ValidStudy};
-use crate::units::Measure;
+use crate::units::{Measure, Phrase, Quantity};
 
 use super::{Reach, Sense, State, Trust, Verdict};
 
@@ -80,6 +80,12 @@ impl Context<'_> {
             remark: reason,
             unconfirmed_record: None,
         }
+    }
+
+    /// What to do: a fill, rounded down, so that the one shown holds.
+    pub fn fill_that_holds(&self, volume_m3: f64) -> Phrase {
+        let share = (volume_m3 / self.study.capacity_m3() * 1000.0).floor() / 1000.0;
+        Phrase::new("To hold, fill {}", [Measure::new(Quantity::Share, share)])
     }
 
     /// The trust strip of a settled result.

@@ -8,7 +8,7 @@ use crate::num::bisect;
 use crate::sources::Source;
 use crate::statics::{Carried, Rims, Tilted};
 use crate::study::ValidStudy;
-use crate::units::{Measure, Quantity, fixed};
+use crate::units::{Measure, Phrase, Quantity, fixed};
 
 use super::{Absent, Context, Criterion, Outcome, Sense, State, Verdict, WorkLine};
 
@@ -22,7 +22,7 @@ fn judge(context: &Context) -> Outcome {
         let absent = |reason: &str| Absent {
             criterion: NAME,
             place_words: mouth.name.clone(),
-            reason: format!("{reason}; judged by Contained"),
+            reason: Phrase::new(format!("{reason}; judged by Contained"), []),
         };
         let Some(rims) = context.rims else {
             outcome.absent.push(absent("effective gravity does not point toward the floor"));
@@ -77,12 +77,12 @@ fn verdict(context: &Context, mouth_idx: usize) -> Verdict {
         },
     ];
     if verdict.state == State::Fails {
-        // Rounded to the safe side: the numbers shown must hold.
         if let Some(volume) = fill.highest_volume_m3() {
-            let share = volume / context.study.capacity_m3();
-            verdict.mend.push(format!("To hold, fill {} %", fixed((share * 1000.0).floor() / 10.0, 1)));
+            verdict.mend.push(context.fill_that_holds(volume));
         }
-        verdict.mend.push(format!("or brim {} mm higher", fixed(((required - available) * 1e3).ceil(), 0)));
+        // Rounded up to the millimetre, so that the rim shown holds.
+        let short = ((required - available) * 1e3).ceil() / 1e3;
+        verdict.mend.push(Phrase::new("or brim {} higher", [length(short)]));
     }
     if context.case.onset_s.is_some() {
         verdict.remark = "settled rise only: a quick onset rises higher".to_owned();

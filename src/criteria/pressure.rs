@@ -2,7 +2,7 @@
 //! Source: [RigidAcceleration].
 
 use crate::study::Limit;
-use crate::units::{Measure, Quantity, UnitSystem, fixed, number};
+use crate::units::{Measure, Phrase, Quantity, fixed, number};
 
 use super::{Absent, Context, Criterion, Outcome, Sense, Verdict, WorkLine};
 
@@ -20,11 +20,11 @@ fn judge(context: &Context) -> Outcome {
         });
     }
     if let (true, Ok(settled)) = (outcome.verdicts.is_empty(), context.settled) {
-        let peak = Measure::new(Quantity::GagePressure, settled.peak_pa).text(UnitSystem::Si);
+        let peak = Measure::new(Quantity::GagePressure, settled.peak_pa);
         outcome.absent.push(Absent {
             criterion: NAME,
             place_words: "walls".to_owned(),
-            reason: format!("no pressure limit is given; the highest gage pressure is {peak}"),
+            reason: Phrase::new("no pressure limit is given; the highest gage pressure is {}", [peak]),
         });
     }
     outcome

@@ -5,7 +5,7 @@
 
 use crate::problem::Place;
 use crate::study::Limit;
-use crate::units::{Measure, Quantity, UnitSystem, fixed, number};
+use crate::units::{Measure, Phrase, Quantity, fixed, number};
 
 use super::{Absent, Context, Criterion, Outcome, Sense, Verdict, WorkLine};
 
@@ -24,11 +24,13 @@ fn judge(context: &Context) -> Outcome {
     }
     if let (true, Ok(settled)) = (outcome.verdicts.is_empty(), context.settled) {
         let reason = match &settled.roof {
-            None => "the settled liquid does not reach the roof".to_owned(),
-            Some(roof) => format!(
-                "no roof limit is given; the liquid wets {} m of roof, at up to {}",
-                fixed(roof.wetted_length_m, 2),
-                Measure::new(Quantity::GagePressure, roof.peak_pa).text(UnitSystem::Si),
+            None => "the settled liquid does not reach the roof".into(),
+            Some(roof) => Phrase::new(
+                "no roof limit is given; the liquid wets {} of roof, at up to {}",
+                [
+                    Measure::new(Quantity::Length, roof.wetted_length_m),
+                    Measure::new(Quantity::GagePressure, roof.peak_pa),
+                ],
             ),
         };
         let place_words = settled

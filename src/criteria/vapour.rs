@@ -13,7 +13,7 @@ const NAME: &str = "Vapour pressure";
 
 fn judge(context: &Context) -> Outcome {
     let Some(vapour_pa) = context.study.study().liquid.vapour_pressure_abs_pa else {
-        let reason = "the liquid has no vapour pressure in this scenario".to_owned();
+        let reason = "the liquid has no vapour pressure in this scenario".into();
         let absent = vec![Absent { criterion: NAME, place_words: "liquid".to_owned(), reason }];
         return Outcome { verdicts: Vec::new(), absent };
     };

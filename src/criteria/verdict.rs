@@ -3,7 +3,7 @@
 use crate::geom::Point;
 use crate::problem::Place;
 use crate::sources::Source;
-use crate::units::Measure;
+use crate::units::{Measure, Phrase};
 
 /// State of a verdict. Ordered as they are listed: the worst first.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
@@ -109,7 +109,7 @@ pub struct Verdict {
     /// Formulas with numbers put in.
     pub working: Vec<WorkLine>,
     /// What would make it hold, with the number: `To hold, fill 84.0 %`.
-    pub mend: Vec<String>,
+    pub mend: Vec<Phrase>,
     /// The source of the method.
     pub source: Source,
     /// The trust strip, always five.
@@ -128,7 +128,7 @@ pub struct Absent {
     /// Where, in words.
     pub place_words: String,
     /// Why it does not apply, and what is judged instead.
-    pub reason: String,
+    pub reason: Phrase,
 }
 
 impl Verdict {

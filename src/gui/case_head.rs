@@ -107,8 +107,8 @@ fn accel_ui(ui: &mut Ui, row: &mut Row, desk: &mut Desk, i: usize, accel: Accel)
         }
     }
     let units = [(AccelUnit::MPerS2, accel_unit(desk, AccelUnit::MPerS2).symbol), (AccelUnit::G, "g")];
-    let cell = row.cell(30.0, 18.0);
-    if let Some(to) = field::choice_ui(ui, cell, "Unit of the acceleration", unit, &units, look) {
+    let cell = row.cell(text_width(ui, shown_in.symbol, font::body()) + 2.0, 18.0);
+    if let Some(to) = field::choice_ui(ui, cell, Align::Min, "Unit of the acceleration", unit, &units, look) {
         desk.edit(Edit::CaseAccel(i, in_unit(accel, to, desk.study().gravity_m_per_s2)));
     }
 }
@@ -121,7 +121,7 @@ fn attitude_ui(ui: &mut Ui, row: &mut Row, desk: &mut Desk, i: usize, attitude: 
     };
     let cell = row.cell(text_width(ui, words, font::body()) + 2.0, 6.0);
     let choices = [(0, "level"), (1, "grade"), (2, "heel")];
-    if let Some(to) = field::choice_ui(ui, cell, "Attitude", kind, &choices, desk.look) {
+    if let Some(to) = field::choice_ui(ui, cell, Align::Min, "Attitude", kind, &choices, desk.look) {
         let angle = attitude.angle_rad();
         desk.edit(Edit::CaseAttitude(
             i,

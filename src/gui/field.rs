@@ -243,20 +243,21 @@ pub fn choice_row_ui<T: Copy + PartialEq>(
 ) -> Option<T> {
     let rect = row_rect(ui);
     paint_fitting(ui, rect.with_max_x(rect.center().x), Align::Min, label, font::body(), look.ink2);
-    choice_ui(ui, rect.with_min_x(rect.center().x), label, now, choices, look)
+    choice_ui(ui, rect.with_min_x(rect.center().x), Align::Max, label, now, choices, look)
 }
 
-/// A choice among a few words, at the right of `rect`.
+/// A choice among a few words, at one side of `rect`.
 pub fn choice_ui<T: Copy + PartialEq>(
     ui: &mut Ui,
     rect: Rect,
+    align: Align,
     label: &str,
     now: T,
     choices: &[(T, &str)],
     look: &Look,
 ) -> Option<T> {
     let word = choices.iter().find(|(choice, _)| *choice == now).map_or("", |(_, word)| word);
-    let response = link_ui(ui, rect, Align::Max, word, &format!("{label}, {word}"), look);
+    let response = link_ui(ui, rect, align, word, &format!("{label}, {word}"), look);
     let mut chosen = None;
     egui::Popup::menu(&response).accessible_name(label).show(|ui| {
         for (choice, word) in choices {

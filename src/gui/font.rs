@@ -147,7 +147,7 @@ mod tests {
         let ctx = egui::Context::default();
         ctx.set_fonts(definitions());
         ctx.run_ui(Default::default(), |ui| {
-            let mut width = |font: FontId, c: char| ui.fonts_mut(|f| f.glyph_width(&font, c));
+            let width = |font: FontId, c: char| ui.fonts_mut(|f| f.glyph_width(&font, c));
             let zero = width(FontId::proportional(20.0), '0');
             for family in [FontFamily::Proportional, strong(), heavy()] {
                 for c in '0'..='9' {

@@ -86,25 +86,28 @@ fn files_ui(ui: &mut Ui, desk: &mut Desk, recent: &[PathBuf]) {
     }
 }
 
+/// The menus; gives the room that they take.
 fn menus_ui(ui: &mut Ui, rect: Rect, is_folded: bool, desk: &mut Desk, recent: &[PathBuf]) -> Rect {
     let mut child = ui.new_child(UiBuilder::new().max_rect(rect.shrink2(vec2(0.0, 8.0))).id_salt("menus"));
-    child.spacing_mut().button_padding = vec2(8.0, 3.0);
-    let bar = egui::MenuBar::new().ui(&mut child, |ui| {
+    let mut taken = Rect::from_min_size(rect.min, egui::Vec2::ZERO);
+    egui::MenuBar::new().ui(&mut child, |ui| {
+        ui.spacing_mut().button_padding = vec2(8.0, 3.0);
         ui.spacing_mut().item_spacing.x = 2.0;
         if is_folded {
-            ui.menu_button("Menu", |ui| {
+            let button = ui.menu_button("Menu", |ui| {
                 for menu in Menu::ALL {
                     ui.menu_button(menu.word(), |ui| menu_rows_ui(ui, menu, desk, recent));
                 }
             });
+            taken = taken.union(button.response.rect);
         } else {
             for menu in Menu::ALL {
-                ui.menu_button(menu.word(), |ui| menu_rows_ui(ui, menu, desk, recent));
+                let button = ui.menu_button(menu.word(), |ui| menu_rows_ui(ui, menu, desk, recent));
+                taken = taken.union(button.response.rect);
             }
         }
-        ui.min_rect()
     });
-    bar.inner
+    taken
 }
 
 fn title_ui(ui: &mut Ui, rect: Rect, desk: &Desk) {

@@ -147,11 +147,11 @@ pub fn paint_record_mark(painter: &Painter, center: Pos2, confirmed: bool, look:
         painter.circle_filled(center, 3.8, look.ink2);
         return;
     }
-    let (n, radius) = (9, 3.8);
+    let (n, radius) = (7, 3.9);
     let on = |turn: f32| center + radius * Vec2::angled(std::f32::consts::TAU * turn / n as f32);
     for i in 0..n {
         let from = i as f32;
-        painter.line_segment([on(from), on(from + 0.55)], Stroke::new(1.4, look.state(State::Close)));
+        painter.line_segment([on(from), on(from + 0.5)], Stroke::new(1.25, look.state(State::Close)));
     }
 }
 
@@ -194,26 +194,16 @@ pub fn paint_halo_text(
     rect
 }
 
-/// A 45 degree hatch that fills `rect`, as one shape.
+/// A 45 degree hatch that fills `rect`.
 pub fn hatch(rect: Rect, spacing: f32, stroke: Stroke) -> Shape {
     let n = ((rect.width() + rect.height()) / spacing) as i32;
-    let mut mesh = egui::Mesh::default();
-    let half = 0.5 * stroke.width * std::f32::consts::SQRT_2;
-    for i in 1..=n {
+    let lines = (1..=n).map(|i| {
         // The line x + y = reach, cut off at the sides of `rect`.
         let reach = i as f32 * spacing;
-        let (top, bottom) = ((reach - rect.width()).max(0.0), reach.min(rect.height()));
-        let on = |y: f32, aside: f32| {
-            pos2((rect.left() + reach - y + aside).clamp(rect.left(), rect.right()), rect.top() + y)
-        };
-        let first = mesh.vertices.len() as u32;
-        for corner in [on(top, -half), on(top, half), on(bottom, half), on(bottom, -half)] {
-            mesh.colored_vertex(corner, stroke.color);
-        }
-        mesh.add_triangle(first, first + 1, first + 2);
-        mesh.add_triangle(first, first + 2, first + 3);
-    }
-    Shape::mesh(mesh)
+        let on = |y: f32| pos2(rect.left() + reach - y, rect.top() + y);
+        Shape::line_segment([on((reach - rect.width()).max(0.0)), on(reach.min(rect.height()))], stroke)
+    });
+    Shape::Vec(lines.collect())
 }
 
 /// The focus ring round `rect`, when `response` has the keyboard.

@@ -178,9 +178,10 @@ fn quiet_rows_ui(ui: &mut Ui, desk: &Desk, judged: Judged, column: &VerdictColum
                 "" => absent.criterion.to_owned(),
                 place => format!("{}, {place}", absent.criterion),
             };
-            match rows.iter_mut().find(|(t, reason, _)| *t == title && *reason == absent.reason) {
+            let reason = absent.reason.text(desk.view.units);
+            match rows.iter_mut().find(|(t, r, _)| *t == title && *r == reason) {
                 Some((_, _, cases)) => cases.push(c),
-                None => rows.push((title, absent.reason.clone(), vec![c])),
+                None => rows.push((title, reason, vec![c])),
             }
         }
     }

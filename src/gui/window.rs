@@ -6,10 +6,10 @@ use std::time::Instant;
 
 use egui::{CursorIcon, Sense, Ui, UiBuilder, ViewportCommand};
 
-use crate::analysis::{Results, Verdict};
+use crate::analysis::{Results, State, Verdict};
 use crate::app::{self, Derived, Document, EXAMPLES, Edit, FileError};
 use crate::cases::{Accel, Attitude, LoadCase};
-use crate::problem::{Place, Problem};
+use crate::problem::Place;
 use crate::study::Study;
 
 use super::files::{Dialogs, EXTENSION, FileChooser, Purpose};
@@ -102,6 +102,7 @@ impl Window {
             open_verdict: None,
             window_title: String::new(),
         };
+        window.choose_worst();
         if let Some(path) = path {
             window.open(path);
         }
@@ -389,6 +390,17 @@ impl Window {
         self.open_verdict = None;
         self.judged_ms = None;
         self.event.clear();
+        self.choose_worst();
+    }
+
+    /// What a reviewer asks first: the worst case, and its working where it fails.
+    fn choose_worst(&mut self) {
+        let Derived::Judged { results, .. } = self.doc.derived() else { return };
+        let Some(&(case_idx, verdict_idx)) = results.ranked().first() else { return };
+        self.view.case_idx = case_idx;
+        if results.cases[case_idx].verdicts[verdict_idx].state == State::Fails {
+            self.view.open_verdict = Some((case_idx, verdict_idx));
+        }
     }
 
     fn save(&mut self, ctx: &egui::Context) {
@@ -481,19 +493,8 @@ fn title_or(study: &Study, other: &str) -> String {
 }
 
 fn trouble(error: FileError, verb: &str) -> FileTrouble {
-    match error {
-        FileError::Io { path, error } => FileTrouble {
-            title: format!("`{}` could not be {verb}", file_name(&path)),
-            problems: vec![Problem::fault(
-                Place::Whole,
-                error.to_string(),
-                format!("Check that `{}` is there and that you may use it", path.display()),
-            )],
-        },
-        FileError::Unreadable { path, problems } => {
-            FileTrouble { title: format!("`{}` could not be {verb}", file_name(&path)), problems }
-        }
-    }
+    let title = format!("`{}` could not be {verb}", file_name(error.path()));
+    FileTrouble { title, problems: error.into_problems() }
 }
 
 fn file_name(path: &Path) -> String {

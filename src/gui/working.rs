@@ -31,8 +31,9 @@ pub fn working_ui(ui: &mut Ui, inset: f32, desk: &mut Desk, verdict: &Verdict, c
         if !verdict.working.is_empty() {
             rule_ui(ui, desk);
         }
-        for mend in &verdict.mend {
-            paragraph_ui(ui, mend, font::figure(), desk.look.ink);
+        if !verdict.mend.is_empty() {
+            let mend: Vec<String> = verdict.mend.iter().map(|m| m.text(desk.view.units)).collect();
+            paragraph_ui(ui, &mend.join(" "), font::figure(), desk.look.ink);
         }
         if !verdict.remark.is_empty() {
             paragraph_ui(ui, &verdict.remark, font::body(), desk.look.ink2);
@@ -71,7 +72,7 @@ fn paragraph_ui(ui: &mut Ui, text: &str, font: egui::FontId, color: egui::Color3
 
 fn labelled_ui(ui: &mut Ui, desk: &Desk, label: &str, text: &str) -> egui::Response {
     let whole = ui.available_rect_before_wrap();
-    let at = pos2(whole.left(), whole.top() + 8.0);
+    let at = pos2(whole.left(), whole.top() + 6.5);
     ui.painter().text(at, egui::Align2::LEFT_CENTER, label, font::small(), desk.look.ink3);
     let right = whole.with_min_x(whole.left() + LABEL);
     let response = ui.scope_builder(UiBuilder::new().max_rect(right), |ui| {

@@ -1,6 +1,6 @@
 //! The judgement as text for a terminal: at most 80 columns, no colour, worst verdict first.
 
-use crate::analysis::{CaseResult, Reach, Settled, Trust, Verdict};
+use crate::analysis::{CaseResult, Reach, Settled, State, Trust, Verdict};
 use crate::cases::{Attitude, LoadCase};
 use crate::problem::Problem;
 use crate::units::{Measure, Quantity, UnitSystem, number, utilisation_text};
@@ -215,15 +215,18 @@ impl Table<'_> {
         for v in &case.verdicts {
             self.lines
                 .facts(&row(v.state.word(), v.criterion, &utilisation_text(v.utilisation)), [self.comparison(v)]);
-            self.detail([v.place_words.clone(), v.source.entry().short.clone(), trust_words(&v.trust)]);
-            self.detail(Some(v.mend.join(" ")));
+            // A verdict that is not judged has its reason below; how far a method reaches would only confuse.
+            let trust = if v.state == State::NotJudged { String::new() } else { trust_words(&v.trust) };
+            self.detail([v.place_words.clone(), v.source.entry().short.clone(), trust]);
+            let mend: Vec<String> = v.mend.iter().map(|m| m.text(self.units)).collect();
+            self.detail(Some(mend.join(" ")));
             self.detail(Some(v.remark.clone()));
             let record = v.unconfirmed_record.and_then(|idx| self.report.study.records.get(idx));
             self.detail(record.map(|r| format!("rests on an unconfirmed record: {}", r.title)));
         }
         for a in &case.absent {
             self.lines.facts(&row("absent", a.criterion, ""), [""]);
-            self.detail(Some(format!("{}: {}", a.place_words, a.reason)));
+            self.detail(Some(format!("{}: {}", a.place_words, a.reason.text(self.units))));
         }
     }
 

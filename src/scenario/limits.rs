@@ -27,5 +27,5 @@ pub const MAX_RECORDS: usize = 200;
 /// Notes beside verdicts.
 pub const MAX_VERDICT_NOTES: usize = 2000;
 
-/// Brackets within brackets, as the reader counts them; a good file needs about fourteen.
+/// Brackets within brackets, as the reader counts them; a good file needs ten.
 pub(super) const MAX_NESTING: usize = 32;

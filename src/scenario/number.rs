@@ -12,13 +12,13 @@ impl Num {
         self.0
     }
 
-    /// Millimetres to m, and also percent of 10: any unit of which a thousand make one SI unit.
-    pub fn milli(self) -> f64 {
+    /// Millimetres to m.
+    pub fn mm(self) -> f64 {
         self.0 / 1e3
     }
 
     /// kPa to Pa.
-    pub fn kilo(self) -> f64 {
+    pub fn kpa(self) -> f64 {
         self.0 * 1e3
     }
 
@@ -28,7 +28,7 @@ impl Num {
     }
 
     /// Degrees to radians.
-    pub fn degrees(self) -> f64 {
+    pub fn deg(self) -> f64 {
         self.0 * RAD_PER_DEG
     }
 }
@@ -109,13 +109,8 @@ mod tests {
             for exponent in [-18, -13, -11, -9, 0] {
                 let text = number(format!("{digits}e{exponent}").parse().unwrap());
                 let read = Num(text.parse().unwrap());
-                let again = [
-                    mm(read.milli()),
-                    kpa(read.kilo()),
-                    percent(read.percent()),
-                    deg(read.degrees()),
-                    number(read.si()),
-                ];
+                let again =
+                    [mm(read.mm()), kpa(read.kpa()), percent(read.percent()), deg(read.deg()), number(read.si())];
                 assert!(again.iter().all(|a| *a == text), "{text} came back as {again:?}");
             }
         }

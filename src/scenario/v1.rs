@@ -259,7 +259,7 @@ impl<'de, T: Deserialize<'de>, const MAX: usize> Deserialize<'de> for List<T, MA
 }
 
 fn point(s_mm: Num, z_mm: Num) -> Point {
-    Point::new(s_mm.milli(), z_mm.milli())
+    Point::new(s_mm.mm(), z_mm.mm())
 }
 
 impl From<Scenario> for Study {
@@ -270,8 +270,8 @@ impl From<Scenario> for Study {
             revision: file.revision,
             notes: file.notes,
             gravity_m_per_s2: file.gravity_m_per_s2.map_or(STANDARD_GRAVITY_M_PER_S2, Num::si),
-            air_pressure_abs_pa: file.air_pressure_abs_kpa.map_or(STANDARD_ATMOSPHERE_PA, Num::kilo),
-            ullage_gage_pa: file.ullage_gage_kpa.kilo(),
+            air_pressure_abs_pa: file.air_pressure_abs_kpa.map_or(STANDARD_ATMOSPHERE_PA, Num::kpa),
+            ullage_gage_pa: file.ullage_gage_kpa.kpa(),
             section: Section {
                 outline: file.outline.map(OutlineEdge::from),
                 obstacles: file.obstacles.map(section::Obstacle::from),
@@ -280,14 +280,14 @@ impl From<Scenario> for Study {
             liquid: liquid::Liquid {
                 name: file.liquid.name,
                 density_kg_per_m3: file.liquid.density_kg_per_m3.si(),
-                vapour_pressure_abs_pa: file.liquid.vapour_pressure_abs_kpa.map(Num::kilo),
+                vapour_pressure_abs_pa: file.liquid.vapour_pressure_abs_kpa.map(Num::kpa),
                 surface_tension_n_per_m: file.liquid.surface_tension_n_per_m.map(Num::si),
             },
             fill: match file.fill {
                 Fill::VolumeM3(v) => study::Fill::Volume(v.si()),
                 Fill::SharePercent(v) => study::Fill::Share(v.percent()),
-                Fill::LevelMm(v) => study::Fill::Level(v.milli()),
-                Fill::UllageMm(v) => study::Fill::Ullage(v.milli()),
+                Fill::LevelMm(v) => study::Fill::Level(v.mm()),
+                Fill::UllageMm(v) => study::Fill::Ullage(v.mm()),
             },
             cases: file.cases.map(LoadCase::from),
             points: file.points.map(|p| NamedPoint { name: p.name, at: point(p.s_mm, p.z_mm) }),
@@ -311,15 +311,14 @@ impl From<Edge> for OutlineEdge {
                 EdgeKind::Mouth => section::EdgeKind::Mouth,
             },
             start: point(edge.s_mm, edge.z_mm),
-            sweep_rad: edge.sweep_deg.degrees(),
+            sweep_rad: edge.sweep_deg.deg(),
         }
     }
 }
 
 impl From<Obstacle> for section::Obstacle {
     fn from(obstacle: Obstacle) -> section::Obstacle {
-        let vertex =
-            |e: ObstacleEdge| section::Vertex { start: point(e.s_mm, e.z_mm), sweep_rad: e.sweep_deg.degrees() };
+        let vertex = |e: ObstacleEdge| section::Vertex { start: point(e.s_mm, e.z_mm), sweep_rad: e.sweep_deg.deg() };
         section::Obstacle { name: obstacle.name, vertices: obstacle.edges.map(vertex) }
     }
 }
@@ -327,16 +326,14 @@ impl From<Obstacle> for section::Obstacle {
 impl From<Width> for WidthLaw {
     fn from(width: Width) -> WidthLaw {
         match width {
-            Width::Constant { width_mm } => WidthLaw::Constant { width_m: width_mm.milli() },
+            Width::Constant { width_mm } => WidthLaw::Constant { width_m: width_mm.mm() },
             Width::RoundBarrel { diameter_mm, bottom_z_mm } => {
-                WidthLaw::RoundBarrel { diameter_m: diameter_mm.milli(), bottom_z_m: bottom_z_mm.milli() }
+                WidthLaw::RoundBarrel { diameter_m: diameter_mm.mm(), bottom_z_m: bottom_z_mm.mm() }
             }
-            Width::Oval { width_mm, height_mm, bottom_z_mm } => WidthLaw::Oval {
-                width_m: width_mm.milli(),
-                height_m: height_mm.milli(),
-                bottom_z_m: bottom_z_mm.milli(),
-            },
-            Width::Table(rows) => WidthLaw::Table(rows.map(|row| (row.z_mm.milli(), row.width_mm.milli()))),
+            Width::Oval { width_mm, height_mm, bottom_z_mm } => {
+                WidthLaw::Oval { width_m: width_mm.mm(), height_m: height_mm.mm(), bottom_z_m: bottom_z_mm.mm() }
+            }
+            Width::Table(rows) => WidthLaw::Table(rows.map(|row| (row.z_mm.mm(), row.width_mm.mm()))),
         }
     }
 }
@@ -374,10 +371,10 @@ impl From<Record> for study::Record {
         study::Record {
             title: record.title,
             limit: match record.limit {
-                Limit::WallPressureGageKpa(v) => study::Limit::WallPressure(v.kilo()),
-                Limit::RoofPressureGageKpa(v) => study::Limit::RoofPressure(v.kilo()),
-                Limit::FreeboardAllowanceMm(v) => study::Limit::FreeboardAllowance(v.milli()),
-                Limit::VapourMarginKpa(v) => study::Limit::VapourMargin(v.kilo()),
+                Limit::WallPressureGageKpa(v) => study::Limit::WallPressure(v.kpa()),
+                Limit::RoofPressureGageKpa(v) => study::Limit::RoofPressure(v.kpa()),
+                Limit::FreeboardAllowanceMm(v) => study::Limit::FreeboardAllowance(v.mm()),
+                Limit::VapourMarginKpa(v) => study::Limit::VapourMargin(v.kpa()),
             },
             clause: record.clause,
             edition: record.edition,

@@ -137,7 +137,7 @@ impl Spill {
         };
         let case = ramp.to_case_rad.abs();
         let end = ramp.to_end_rad.abs().max(case);
-        let mut turns: Vec<f64> = (0..=N_SAMPLES).map(|i| case * i as f64 / N_SAMPLES as f64).collect();
+        let mut turns: Vec<f64> = (0..=N_SAMPLES).map(|i| case * (i as f64 / N_SAMPLES as f64)).collect();
         // The end itself is never reached by a finite acceleration.
         turns.extend((1..N_SAMPLES).map(|i| case + (end - case) * i as f64 / N_SAMPLES as f64));
         turns.dedup();

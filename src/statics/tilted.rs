@@ -203,9 +203,11 @@ fn under_edge(e: &Edge, width: &WidthLaw) -> f64 {
         .sum()
 }
 
-/// The edge cut where the width law is not smooth.
+/// The edge cut where the width law is not smooth, and where an arc turns round in z: there it may touch the lowest
+/// or highest line of the law without crossing it.
 pub(super) fn pieces_between_kinks<'e>(e: &'e Edge, width: &WidthLaw) -> impl Iterator<Item = Edge> + 'e {
     let mut stops = vec![0.0];
+    stops.extend(e.turning_points(Vec2::y()));
     for kink in width.kinks() {
         stops.extend(e.crossings(Vec2::y(), kink));
     }

@@ -9,6 +9,7 @@ use brimwright::app::{EXAMPLES, Edit, apply};
 use brimwright::cases::{Accel, AccelUnit};
 use brimwright::scenario;
 use brimwright::study::{Fill, Study};
+use brimwright::units::UnitSystem;
 
 fn study(text: &str) -> Study {
     scenario::parse(text.as_bytes()).unwrap_or_else(|problems| panic!("{problems:?}"))
@@ -126,6 +127,7 @@ fn a_newcomer_mends_the_first_example_by_fill_or_by_the_bob() {
     assert!(worst.utilisation.is_some_and(|u| u > 1.1), "clearly failing, not {:?}", worst.utilisation);
 
     let percent: f64 = worst.mend[0]
+        .text(UnitSystem::Si)
         .strip_prefix("To hold, fill ")
         .and_then(|rest| rest.strip_suffix(" %"))
         .and_then(|number| number.parse().ok())

@@ -1,13 +1,25 @@
 //! The integration tests: one binary, one module a subject.
 
 mod arbitrary;
+mod bad_sections;
 #[cfg(feature = "gui")]
 mod board;
 mod cli;
+mod clipper;
+mod degenerate;
 mod edits;
 mod examples;
 mod files;
+#[cfg(feature = "gui")]
+mod gui;
 mod json;
 mod program;
+mod properties;
+mod properties_loads;
+mod published_forces;
+mod published_rigid;
+mod published_sections;
+mod reference;
 mod scenario;
+mod support;
 mod tidy;

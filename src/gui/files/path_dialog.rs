@@ -90,10 +90,8 @@ impl PathDialog {
             None => Answer::None,
         };
         ui.add_space(4.0);
-        let field = egui::TextEdit::singleline(&mut self.text)
-            .hint_text("file name, or a whole path")
-            .desired_width(f32::INFINITY)
-            .min_size(vec2(0.0, 24.0));
+        ui.label(egui::RichText::new("File name, or a whole path").font(font::small()).color(look.ink2));
+        let field = egui::TextEdit::singleline(&mut self.text).desired_width(f32::INFINITY).min_size(vec2(0.0, 24.0));
         let response = ui.name_inputs("File name or path", |ui| ui.add(field));
         if response.changed() {
             self.asks_to_overwrite = None;

@@ -1,7 +1,7 @@
 //! What the plots share: ground, axes, curves, hatches, labels on the curve. No legend, no frame.
 
 use egui::{Align2, Color32, Painter, Pos2, Rect, Shape, Stroke, Ui, UiBuilder, pos2, vec2};
-use egui_plot::{AxisHints, HoverPosition, Line, LineStyle, Plot, PlotPoint, PlotPoints, PlotTransform};
+use egui_plot::{AxisHints, GridMark, HoverPosition, Line, LineStyle, Plot, PlotPoint, PlotPoints, PlotTransform};
 
 use crate::gui::{Look, font, marks};
 use crate::units::{fixed, number};
@@ -42,17 +42,26 @@ pub fn chart_ui(ui: &mut Ui, rect: Rect, chart: Chart, look: &Look) -> PlotTrans
     ui.painter().text(unit_at, Align2::LEFT_CENTER, chart.y_unit, font::tick(), look.ink2);
     let ground = ui.painter().add(Shape::Noop);
     let (x, y) = (chart.x, chart.y);
-    let axis = |hints: AxisHints<'static>| {
+    let words = format!("{} {}", chart.x_words, chart.x_unit).trim().to_owned();
+    let words = ui.painter().layout_no_wrap(words, font::tick(), look.ink2);
+    // Ticks that would meet the words at the end of the axis stay without a number.
+    let last_tick = x[1] - (x[1] - x[0]) * f64::from((words.size().x + 12.0) / (rect.width() - 34.0).max(1.0));
+    let axis = |hints: AxisHints<'static>, last: f64| {
         let hints = hints.tick_label_font(font::tick()).tick_label_color(look.ink3);
-        hints.formatter(|mark, _| fixed(mark.value, decimals(mark.step_size)))
+        // A range without width: a tick is there or not, never half faded.
+        let hints = hints.label_spacing(egui::Rangef::new(8.0, 8.0));
+        hints.formatter(move |mark, _| match mark.value <= last {
+            true => fixed(mark.value, decimals(mark.step_size)),
+            false => String::new(),
+        })
     };
     let names: Vec<(String, &str, &str)> =
         chart.curves.iter().map(|c| (c.name.to_owned(), chart.x_unit, chart.y_unit)).collect();
     let plot = Plot::new(chart.id)
-        .custom_x_axes(vec![axis(
-            AxisHints::new_x().min_thickness(16.0).label_spacing(egui::Rangef::new(50.0, 80.0)),
-        )])
-        .custom_y_axes(vec![axis(AxisHints::new_y().min_thickness(30.0))])
+        .custom_x_axes(vec![axis(AxisHints::new_x().min_thickness(16.0), last_tick)])
+        .custom_y_axes(vec![axis(AxisHints::new_y().min_thickness(30.0), f64::INFINITY)])
+        .x_grid_spacer(move |input| marks_every(input.bounds, rect.width() / 60.0))
+        .y_grid_spacer(move |input| marks_every(input.bounds, rect.height() / 34.0))
         .show_background(false)
         .show_grid([false, true])
         .grid_color(look.grid2)
@@ -95,9 +104,9 @@ pub fn chart_ui(ui: &mut Ui, rect: Rect, chart: Chart, look: &Look) -> PlotTrans
     ui.painter().set(ground, Shape::Vec(under));
     let base = ui.painter().round_to_pixel_center(frame.bottom());
     ui.painter().hline(frame.x_range(), base, (1.0, look.ink3));
-    let words = format!("{} {}", chart.x_words, chart.x_unit);
     let end = pos2(frame.right(), frame.bottom() + 9.0);
-    marks::paint_halo_text(ui.painter(), end, Align2::RIGHT_CENTER, words.trim(), font::tick(), look.ink2, look);
+    let at = Align2::RIGHT_CENTER.anchor_size(end, words.size());
+    ui.painter().galley(at.min, words, look.ink2);
     let words = format!("Plot of {}", chart.id);
     response.response.widget_info(|| egui::WidgetInfo::labeled(egui::Role::Image, true, &words));
     transform
@@ -162,6 +171,18 @@ pub fn range(values: impl Iterator<Item = f64>, with_zero: bool) -> [f64; 2] {
     [if with_zero && low == 0.0 { 0.0 } else { low - air }, if with_zero && high == 0.0 { 0.0 } else { high + air }]
 }
 
+/// Marks at 1, 2 or 5 times a power of ten, about `n` of them.
+fn marks_every((low, high): (f64, f64), n: f32) -> Vec<GridMark> {
+    let rough = (high - low) / f64::from(n.clamp(2.0, 12.0));
+    let power = 10_f64.powf(rough.log10().floor());
+    let step = [1.0, 2.0, 5.0, 10.0].into_iter().map(|m| m * power).find(|step| *step >= rough).unwrap_or(rough);
+    if !step.is_finite() || step <= 0.0 {
+        return Vec::new();
+    }
+    let (first, last) = ((low / step).ceil() as i64, (high / step).floor() as i64);
+    (first..=last).map(|i| GridMark { value: i as f64 * step, step_size: step }).collect()
+}
+
 fn decimals(step: f64) -> usize {
     (-(step.log10() + 1e-9).floor()).clamp(0.0, 6.0) as usize
 }
@@ -183,6 +204,18 @@ mod tests {
         assert_eq!(range([2.0, 12.0].into_iter(), true), [0.0, 12.72]);
         let [low, high] = range([5.0, 5.0].into_iter(), false);
         assert!(low < 5.0 && high > 5.0);
+    }
+
+    #[test]
+    fn marks_are_round_and_about_as_many_as_asked() {
+        for (low, high) in [(0.0, 1.0), (-37.0, 42.5), (60.0, 95.0), (0.0, 1234.0), (-1e-3, 2e-3)] {
+            for n in [3.0, 5.0, 8.0] {
+                let marks = marks_every((low, high), n);
+                assert!((2..=9).contains(&marks.len()), "{low}..{high}, {n}: {} marks", marks.len());
+                assert!(marks.iter().all(|m| low <= m.value && m.value <= high));
+            }
+        }
+        assert!(marks_every((1.0, 1.0), 5.0).is_empty(), "no range, no marks");
     }
 
     #[test]

@@ -54,7 +54,7 @@ pub(super) fn freeboard_ui(ui: &mut Ui, rect: Rect, curve: &FreeboardCurve, desk
         chart::label(&painter, t.frame(), at - vec2(8.0, 20.0), Align2::RIGHT_CENTER, &words, fails, look);
     }
     if !curve.mouth.is_empty() {
-        let at = pos2(t.frame().right(), t.frame().top() - 8.0);
-        painter.text(at, Align2::RIGHT_CENTER, &curve.mouth, crate::gui::font::tick(), look.ink3);
+        let at = pos2(rect.right(), rect.top() + 6.0);
+        ui.painter().text(at, Align2::RIGHT_CENTER, &curve.mouth, crate::gui::font::tick(), look.ink3);
     }
 }

@@ -22,7 +22,7 @@ pub(super) fn tilt_ui(ui: &mut Ui, rect: Rect, curve: &TiltCurve, desk: &Desk) {
         id: "tilt against acceleration",
         x_words: curve.axis_words.to_owned(),
         x_unit: accel.symbol,
-        y_unit: angle.symbol,
+        y_unit: "degrees",
         x,
         y: chart::range(points.iter().map(|p| p[1]), false),
         curves: vec![Curve { name: "tilt", points, is_second: false }],

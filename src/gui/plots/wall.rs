@@ -23,7 +23,7 @@ pub(super) fn wall_ui(ui: &mut Ui, rect: Rect, curve: &WallCurve, desk: &Desk) {
         x_unit: along.symbol,
         y_unit: pressure.symbol,
         x: [0.0, end],
-        y: chart::range(now.iter().chain(&at_rest).map(|p| p[1]), true),
+        y: with_headroom(chart::range(now.iter().chain(&at_rest).map(|p| p[1]), true)),
         curves: vec![
             Curve { name: "this case", points: now, is_second: false },
             Curve { name: "at rest", points: at_rest.clone(), is_second: true },
@@ -59,4 +59,9 @@ pub(super) fn wall_ui(ui: &mut Ui, rect: Rect, curve: &WallCurve, desk: &Desk) {
         let at = chart::place(&t, rest) + vec2(0.0, 14.0);
         chart::label(&painter, &frame, at, Align2::CENTER_CENTER, "at rest", look.ink2, look);
     }
+}
+
+/// Room above the curve for the names of the edges.
+fn with_headroom([low, high]: [f64; 2]) -> [f64; 2] {
+    [low, high + 0.14 * (high - low)]
 }

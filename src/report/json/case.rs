@@ -7,6 +7,8 @@ use crate::cases::LoadCase;
 use crate::geom::Vec2;
 use crate::problem::Place;
 
+use crate::units::UnitSystem;
+
 use super::super::Report;
 use super::verdict::VerdictRow;
 use super::{Num, Piece, coordinates, num};
@@ -49,7 +51,11 @@ impl Case {
             absent: result
                 .absent
                 .iter()
-                .map(|a| AbsentRow { criterion: a.criterion, place: a.place_words.clone(), reason: a.reason.clone() })
+                .map(|a| AbsentRow {
+                    criterion: a.criterion,
+                    place: a.place_words.clone(),
+                    reason: a.reason.text(UnitSystem::Si),
+                })
                 .collect(),
         }
     }

@@ -4,6 +4,8 @@ use serde::Serialize;
 
 use crate::analysis::{CaseResult, Reach, Verdict};
 
+use crate::units::UnitSystem;
+
 use super::super::Report;
 use super::{Num, coordinates, num, source_key};
 
@@ -64,7 +66,7 @@ impl VerdictRow {
                     unit: line.result.quantity.si_symbol(),
                 })
                 .collect(),
-            mend: verdict.mend.clone(),
+            mend: verdict.mend.iter().map(|m| m.text(UnitSystem::Si)).collect(),
             unconfirmed_record: record.map(|r| r.title.clone()),
             note: note.map(|n| n.text.clone()),
         }
