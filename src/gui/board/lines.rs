@@ -107,6 +107,21 @@ mod tests {
     use super::*;
 
     #[test]
+    fn a_dashed_line_of_any_length_ends() {
+        let ctx = egui::Context::default();
+        let mut n = 0;
+        ctx.run_ui(Default::default(), |ui| {
+            let painter = ui.painter().with_clip_rect(Rect::from_min_size(pos2(0.0, 0.0), vec2(100.0, 100.0)));
+            let before = painter.add(Shape::Noop);
+            dashed(&painter, &[pos2(-1e9, 50.0), pos2(1e9, 50.0)], Stroke::new(1.0, egui::Color32::BLACK), 3.0, 3.0);
+            painter.for_each_shape(|_| n += 1);
+            painter.set(before, Shape::Noop);
+        })
+        .drop_without_applying_deltas();
+        assert!((10..40).contains(&n), "{n} shapes for 116 points of dashes and gaps of 3");
+    }
+
+    #[test]
     fn segments_are_cut_at_the_area() {
         let rect = Rect::from_min_size(pos2(0.0, 0.0), vec2(10.0, 10.0));
         assert_eq!(clip(rect, [pos2(-5.0, 5.0), pos2(15.0, 5.0)]), Some([pos2(0.0, 5.0), pos2(10.0, 5.0)]));
