@@ -447,7 +447,8 @@ fn wheel_and_drag_move_the_view_and_home_fits() {
     let moved = center(vertex(&board, 1)) - before;
     assert!((moved - vec2(30.0, -20.0)).length() < 0.1, "moved by {moved:?}");
     assert!(!board.state().doc.is_unsaved(), "a look is not an edit");
-    board.hover_at(empty);
+    board.get_by_label("Board").focus();
+    board.step();
     board.key_press(Key::Home);
     board.run_steps(2);
     assert_eq!(scale(&board), fitted);

@@ -10,11 +10,12 @@ use crate::analysis::State;
 use crate::geom::Point;
 use crate::gui::{Look, font, marks};
 use crate::problem::Severity;
-use crate::units::{Measure, Quantity, fixed, number};
+use crate::units::{Measure, Quantity, fixed};
 
 use super::dims::paint_freeboard;
 use super::drag::Feedback;
 use super::labels::Labels;
+use super::legend::{decimals_of, paint_legend};
 use super::lines;
 use super::scene::Scene;
 
@@ -39,7 +40,7 @@ pub fn annotate(painter: &Painter, scene: &Scene, look: &Look) {
     pen.paint_loads(&mut labels);
     pen.paint_isobar_labels(&mut labels);
     pen.paint_points(&mut labels);
-    pen.paint_legend();
+    paint_legend(painter, scene, look);
 }
 
 /// The dotted cross at what is held, the lines to what it aligned with, and the numbers beside it.
@@ -325,42 +326,6 @@ impl Pen<'_> {
             }
         }
     }
-
-    /// The tints with their pressures, under the bob, where there is room.
-    fn paint_legend(&self) {
-        let (Some(tints), dial) = (self.scene.model.tints, &self.scene.dial) else { return };
-        let bottom = self.scene.screen.rect.bottom() - 10.0;
-        let width = dial.rect.width() - 34.0;
-        let bar =
-            Rect::from_min_max(pos2(dial.rect.left(), bottom - 28.0), pos2(dial.rect.left() + width, bottom - 17.0));
-        if bar.top() - 20.0 < dial.lowest(&self.scene.hanging) || self.scene.model.bands.is_empty() {
-            return;
-        }
-        let paper = Rect::from_min_max(bar.min - vec2(6.0, 18.0), pos2(dial.rect.right(), bottom + 2.0));
-        self.painter.rect_filled(paper, 0.0, self.look.board);
-        let title = self.text("Gage pressure", font::small(), self.look.ink2);
-        self.painter.galley(bar.left_top() - vec2(0.0, title.size().y + 1.0), title, self.look.ink2);
-        let x = |i: usize| bar.left() + bar.width() * i as f32 / tints.n as f32;
-        for i in 0..tints.n {
-            let swatch = Rect::from_x_y_ranges(x(i)..=x(i + 1), bar.y_range());
-            self.painter.rect_filled(swatch, 0.0, self.look.band(i, tints.n));
-        }
-        let unit = Quantity::GagePressure.unit(self.scene.units);
-        let every = if tints.n > 5 { 2 } else { 1 };
-        let decimals = decimals_of(unit.from_si(tints.step_pa) * every as f64);
-        for i in (0..=tints.n).rev().filter(|i| (tints.n - i).is_multiple_of(every)) {
-            let value = fixed(unit.from_si(tints.gage_pa(i)), decimals);
-            let is_last = i == tints.n;
-            let text = self.text(value, font::tick(), self.look.ink3);
-            let at = pos2(x(i), bar.bottom() + 2.0);
-            let rect = Align2::CENTER_TOP.anchor_size(at, text.size());
-            self.painter.galley(rect.min, text, self.look.ink3);
-            if is_last {
-                let symbol = self.text(unit.symbol, font::tick(), self.look.ink3);
-                self.painter.galley(rect.right_top() + vec2(3.0, 0.0), symbol, self.look.ink3);
-            }
-        }
-    }
 }
 
 /// The usual mark of a centre of gravity: a circle with two dark quarters.
@@ -397,11 +362,4 @@ fn align_toward(out: Vec2) -> Align2 {
         }
     };
     Align2([axis(out.x), axis(out.y)])
-}
-
-/// Decimals that a multiple of `step` needs.
-fn decimals_of(step: f64) -> usize {
-    let text = number(step, 3);
-    let digits = text.split_once('.').map_or("", |(_, fraction)| fraction);
-    digits.trim_end_matches('0').len()
 }

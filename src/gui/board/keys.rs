@@ -52,12 +52,6 @@ pub fn handles_ui(
         ui.memory_mut(|m| m.set_focus_lock_filter(id, filter));
         obey(ui, scene, focused.as_ref().map(|(t, _)| *t), view, out);
     }
-    let nobody_types = has_focus || ui.memory(|m| m.focused().is_none());
-    if canvas.contains_pointer() && nobody_types || has_focus {
-        if ui.input_mut(|i| i.consume_key(Modifiers::NONE, Key::Home)) {
-            view.camera = None;
-        }
-    }
     focused
 }
 

@@ -12,6 +12,7 @@ mod dims;
 mod drag;
 mod keys;
 mod labels;
+mod legend;
 mod lines;
 mod liquid;
 mod menu;
