@@ -98,11 +98,24 @@ fn obey(ui: &Ui, scene: &Scene, focused: Option<Target>, view: &mut View, out: &
             }
         }
     }
+    look_around(ui, scene, view);
     let removes = ui
         .input_mut(|i| i.consume_key(Modifiers::NONE, Key::Delete) || i.consume_key(Modifiers::NONE, Key::Backspace));
     if removes && let Some(edit) = view.selected.and_then(|s| removal(scene, s)) {
         out.push(Proposal::Edit(edit));
         view.selected = None;
+    }
+}
+
+fn look_around(ui: &Ui, scene: &Scene, view: &mut View) {
+    let zooms = [(Key::Plus, 1.25_f32), (Key::Equals, 1.25), (Key::Minus, 0.8)];
+    for (key, factor) in zooms {
+        if ui.input_mut(|i| i.consume_key(Modifiers::NONE, key)) {
+            view.camera = Some(scene.screen.zoomed(factor, scene.screen.rect.center()));
+        }
+    }
+    if ui.input_mut(|i| i.consume_key(Modifiers::NONE, Key::Home)) {
+        view.camera = None;
     }
 }
 
