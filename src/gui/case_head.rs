@@ -6,8 +6,8 @@ use crate::app::Edit;
 use crate::cases::{Accel, AccelUnit, Attitude, LoadCase};
 use crate::units::{Quantity, Unit, number};
 
-use super::field::{self, Number};
-use super::{Command, Desk, font, formula};
+use super::number::Number;
+use super::{Command, Desk, field, font, formula};
 
 const LEVEL: f64 = 0.0;
 
@@ -160,9 +160,9 @@ fn more_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, i: usize, case: &LoadCase) 
             Edit::Case(i, Box::new(next))
         };
         let is_polar = matches!(case.accel, Accel::Polar { .. });
-        let ways = [(false, "components"), (true, "magnitude and direction")];
-        if let Some(to_polar) = field::choice_row_ui(ui, desk.look, "Acceleration as", is_polar, &ways) {
-            desk.edit(Edit::CaseAccel(i, in_way(case.accel, to_polar)));
+        let words = if is_polar { "Give it as components" } else { "Give it as magnitude and direction" };
+        if field::link_row_ui(ui, words, desk.look).clicked() {
+            desk.edit(Edit::CaseAccel(i, in_way(case.accel, !is_polar)));
         }
         Number::new(("onset", i), "Onset", 0.0, desk.unit(Quantity::Time))
             .or_none(case.onset_s)

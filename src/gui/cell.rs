@@ -78,7 +78,9 @@ impl Cell<'_> {
         let hovered = ui.is_enabled() && response.hovered();
         if self.is_typed || hovered {
             let y = ui.painter().round_to_pixel_center(text.bottom() + 0.5);
-            let x = if text.width() < 8.0 { rect.x_range() } else { text.x_range() };
+            let seen =
+                Align2([self.align, Align::Center]).align_size_within_rect(vec2(text.width().max(12.0), 1.0), rect);
+            let x = seen.x_range();
             let ends = [egui::pos2(x.min, y), egui::pos2(x.max, y)];
             let color = if hovered { look.accent } else { look.ink3 };
             ui.painter().extend(Shape::dashed_line(&ends, (1.0, color), 1.5, 1.5));

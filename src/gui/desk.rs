@@ -56,6 +56,11 @@ impl<'a> Desk<'a> {
         quantity.unit(self.view.units)
     }
 
+    /// The unit for one value alone: a smaller one where it would read as a row of zeros.
+    pub fn unit_near(&self, quantity: Quantity, si: f64) -> Unit {
+        quantity.unit_near(self.view.units, si)
+    }
+
     /// A measure for reading.
     pub fn text(&self, measure: Measure) -> String {
         measure.text(self.view.units)

@@ -38,12 +38,13 @@ pub fn launch(path: Option<PathBuf>) -> Result<(), String> {
     };
     match quietly(run) {
         Ok(Ok(())) => Ok(()),
-        Ok(Err(error)) => Err(explain(&missing(is_installed), &error.to_string())),
-        Err(panic) if has_started.load(Ordering::Relaxed) => {
-            Err(format!("The window stopped because of a fault in the program: {panic}\n{WITHOUT_A_WINDOW}"))
-        }
+        Ok(Err(error)) => Err(explain(&error.to_string(), is_installed)),
+        Err(panic) if has_started.load(Ordering::Relaxed) => Err(format!(
+            "The window stopped because of a fault in the program: {}\n  at {}\n{WITHOUT_A_WINDOW}",
+            panic.words, panic.place
+        )),
         // The libraries below the window panic where a part of the system is not installed.
-        Err(panic) => Err(explain(&missing(is_installed), &panic)),
+        Err(panic) => Err(explain(&panic.words, is_installed)),
     }
 }
 
@@ -82,6 +83,8 @@ struct Part {
     words: &'static str,
     /// A file that is there when it is installed.
     file: &'static str,
+    /// A word by which an error tells of it.
+    sign: &'static str,
     /// The package on Debian and its relatives (tried out on Debian 12).
     debian: &'static str,
     /// The package on Fedora and its relatives (names from memory).
@@ -89,29 +92,47 @@ struct Part {
 }
 
 const PARTS: &[Part] = &[
-    part("X11 client", "libX11.so.6", "libx11-6", "libX11"),
-    part("X11 cursors", "libXcursor.so.1", "libxcursor1", "libXcursor"),
-    part("X11 input", "libXi.so.6", "libxi6", "libXi"),
-    part("X11 over XCB", "libX11-xcb.so.1", "libx11-xcb1", "libX11-xcb"),
-    part("keyboard", "libxkbcommon-x11.so.0", "libxkbcommon-x11-0", "libxkbcommon-x11"),
-    part("EGL", "libEGL.so.1", "libegl1", "libglvnd-egl"),
-    part("OpenGL driver", "swrast_dri.so", "libgl1-mesa-dri", "mesa-dri-drivers"),
+    part("X11 client", "libX11.so.6", "libX11.so", "libx11-6", "libX11"),
+    part("X11 cursors", "libXcursor.so.1", "libXcursor", "libxcursor1", "libXcursor"),
+    part("X11 input", "libXi.so.6", "libXi.so", "libxi6", "libXi"),
+    part("X11 over XCB", "libX11-xcb.so.1", "libX11-xcb", "libx11-xcb1", "libX11-xcb"),
+    part("keyboard", "libxkbcommon-x11.so.0", "libxkbcommon-x11", "libxkbcommon-x11-0", "libxkbcommon-x11"),
+    part("EGL", "libEGL.so.1", "lutin", "libegl1", "libglvnd-egl"),
+    part("OpenGL driver", "swrast_dri.so", "lutin", "libgl1-mesa-dri", "mesa-dri-drivers"),
 ];
 
-const fn part(words: &'static str, file: &'static str, debian: &'static str, fedora: &'static str) -> Part {
-    Part { words, file, debian, fedora }
+const fn part(
+    words: &'static str,
+    file: &'static str,
+    sign: &'static str,
+    debian: &'static str,
+    fedora: &'static str,
+) -> Part {
+    Part { words, file, sign, debian, fedora }
 }
 
-/// Runs something that may panic; gives the words of the panic instead of printing them.
-fn quietly<T>(run: impl FnOnce() -> T) -> Result<T, String> {
-    let (send, words) = channel();
+/// What a panic says, and where it was.
+#[derive(Debug, PartialEq)]
+struct Panic {
+    words: String,
+    place: String,
+}
+
+/// Runs something that may panic; gives what the panic says instead of printing it.
+fn quietly<T>(run: impl FnOnce() -> T) -> Result<T, Panic> {
+    let (send, panics) = channel();
     let before = std::panic::take_hook();
     std::panic::set_hook(Box::new(move |panic| {
-        let _ = send.send(panic.to_string());
+        let words = panic.payload_as_str().unwrap_or("unknown").to_owned();
+        let place = panic.location().map(ToString::to_string).unwrap_or_default();
+        let _ = send.send(Panic { words, place });
     }));
     let ran = std::panic::catch_unwind(AssertUnwindSafe(run));
     std::panic::set_hook(before);
-    ran.map_err(|_| words.try_iter().next().unwrap_or_else(|| "unknown".to_owned()))
+    ran.map_err(|_| {
+        let unknown = || Panic { words: "unknown".to_owned(), place: String::new() };
+        panics.try_iter().next().unwrap_or_else(unknown)
+    })
 }
 
 fn has_screen() -> bool {
@@ -127,10 +148,6 @@ fn no_screen() -> String {
     )
 }
 
-fn missing(is_installed: impl Fn(&str) -> bool) -> Vec<&'static Part> {
-    PARTS.iter().filter(|part| !is_installed(part.file)).collect()
-}
-
 /// Whether a library or driver is in the loader's list or in one of its usual folders.
 fn is_installed(file: &str) -> bool {
     let in_list = std::fs::read("/etc/ld.so.cache")
@@ -144,18 +161,22 @@ fn is_installed(file: &str) -> bool {
     in_list || folders.into_iter().any(|folder| folder.join(file).exists())
 }
 
-fn explain(missing: &[&Part], error: &str) -> String {
+fn explain(error: &str, is_installed: impl Fn(&str) -> bool) -> String {
+    // Some messages begin with a place in the source of a library.
+    let error =
+        error.rsplit_once(".rs:").and_then(|(_, rest)| rest.split_once(": ")).map_or(error, |(_, words)| words);
     let mut lines = vec![format!("The window could not be opened: {error}")];
     if cfg!(target_os = "linux") {
-        let (intro, parts): (_, Vec<&Part>) = match missing {
-            [] => (
-                "All parts that it needs seem to be there. If one is broken, these packages bring them:",
-                PARTS.iter().collect(),
-            ),
-            _ => ("These parts of the system seem to be missing:", missing.to_vec()),
-        };
-        lines.push(intro.to_owned());
-        if !missing.is_empty() {
+        let mut parts: Vec<&Part> =
+            PARTS.iter().filter(|part| error.contains(part.sign) || !is_installed(part.file)).collect();
+        if parts.is_empty() {
+            parts = PARTS.iter().collect();
+            lines.push(format!("Is the screen there that {} names, and may you use it?", screen()));
+            lines.push(
+                "No part of the system seems to be missing. These packages bring what a window needs:".to_owned(),
+            );
+        } else {
+            lines.push("These parts of the system seem to be missing or broken:".to_owned());
             lines.extend(parts.iter().map(|part| format!("  {} ({})", part.words, part.file)));
         }
         let names = |of: fn(&Part) -> &'static str| parts.iter().map(|p| of(p)).collect::<Vec<_>>().join(" ");
@@ -166,30 +187,43 @@ fn explain(missing: &[&Part], error: &str) -> String {
     lines.join("\n")
 }
 
+/// `DISPLAY=:0`, or the variable alone where it is not set.
+fn screen() -> String {
+    let set = |name: &str| std::env::var(name).ok().filter(|value| !value.is_empty());
+    let named = |name: &&str| set(name).map(|value| format!("{name}={value}"));
+    ["WAYLAND_DISPLAY", "DISPLAY"].iter().find_map(named).unwrap_or_else(|| "DISPLAY".to_owned())
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
 
     #[test]
     fn a_panic_below_the_window_becomes_words() {
-        let got = quietly(|| -> u8 { panic!("Library libxkbcommon-x11.so could not be loaded.") });
-        assert!(got.as_ref().is_err_and(|words| words.contains("libxkbcommon-x11.so")), "{got:?}");
+        let got = quietly(|| -> u8 { panic!("Library {} could not be loaded.", "libxkbcommon-x11.so") });
+        let panic = got.unwrap_err();
+        assert_eq!(panic.words, "Library libxkbcommon-x11.so could not be loaded.");
+        assert!(panic.place.contains("launch.rs"), "{panic:?}");
         assert_eq!(quietly(|| 7), Ok(7));
     }
 
+    #[cfg(target_os = "linux")]
     #[test]
     fn what_is_missing_is_named_with_its_packages() {
-        let missing = missing(|file| file != "libxkbcommon-x11.so.0");
-        let text = explain(&missing, "no keyboard");
-        for part in [
-            "no keyboard",
-            "apt-get install libxkbcommon-x11-0\n",
-            "dnf install libxkbcommon-x11\n",
-            "brimwright judge FILE",
+        let keyboard =
+            ["apt-get install libxkbcommon-x11-0\n", "dnf install libxkbcommon-x11\n", "brimwright judge FILE"];
+        for text in [
+            explain("no keyboard", |file| file != "libxkbcommon-x11.so.0"),
+            explain("Library libxkbcommon-x11.so could not be loaded.", |_| true),
         ] {
-            assert!(text.contains(part), "`{part}` is not in:\n{text}");
+            for part in keyboard {
+                assert!(text.contains(part), "`{part}` is not in:\n{text}");
+            }
         }
-        assert!(explain(&[], "x").contains("libgl1-mesa-dri"), "all packages where none is known to be missing");
+        let text = explain("NoGlutinConfigs(..)", |_| true);
+        assert!(text.contains("apt-get install libegl1 libgl1-mesa-dri\n"), "{text}");
+        let text = explain("os error at /home/someone/lib.rs:12: no connection", |_| true);
+        assert!(text.contains("opened: no connection") && !text.contains("someone"), "{text}");
         assert!(no_screen().contains("brimwright judge FILE"));
     }
 }

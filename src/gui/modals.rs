@@ -1,6 +1,6 @@
 //! Questions and texts that stand before the window: unsaved changes, about and cautions.
 
-use egui::{Align, Button, Id, Key, Layout, Modal, RichText};
+use egui::{Align, Button, Frame, Id, Key, Layout, Modal, RichText};
 
 use super::{Look, font};
 
@@ -18,7 +18,7 @@ pub enum Unsaved {
 /// Asks what becomes of the unsaved changes of `title`.
 pub fn unsaved_ui(ctx: &egui::Context, look: &Look, title: &str) -> Option<Unsaved> {
     let mut answer = None;
-    let modal = Modal::new(Id::unique("unsaved changes")).show(ctx, |ui| {
+    let modal = modal("unsaved changes", look).show(ctx, |ui| {
         ui.set_width(380.0);
         ui.label(RichText::new("Unsaved changes").font(font::title()).color(look.ink));
         ui.label(RichText::new(format!("{title} has changes that are not in a file yet.")).color(look.ink2));
@@ -46,7 +46,7 @@ pub fn unsaved_ui(ctx: &egui::Context, look: &Look, title: &str) -> Option<Unsav
 /// What the program is, and the cautions. Gives whether it was closed.
 pub fn about_ui(ctx: &egui::Context, look: &Look) -> bool {
     let mut is_closed = false;
-    let modal = Modal::new(Id::unique("about")).show(ctx, |ui| {
+    let modal = modal("about", look).show(ctx, |ui| {
         ui.set_width(520.0);
         ui.label(
             RichText::new(format!("brimwright {}", env!("CARGO_PKG_VERSION"))).font(font::title()).color(look.ink),
@@ -68,6 +68,12 @@ pub fn about_ui(ctx: &egui::Context, look: &Look) -> bool {
         });
     });
     is_closed || modal.should_close()
+}
+
+/// A box before everything else; the rest of the window waits.
+pub fn modal(id: &str, look: &Look) -> Modal {
+    let frame = Frame::new().fill(look.raised).stroke((1.0, look.line)).corner_radius(4).inner_margin(18);
+    Modal::new(Id::unique(id)).frame(frame)
 }
 
 /// What the program is.

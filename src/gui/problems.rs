@@ -109,11 +109,11 @@ fn problem_ui(
     let at = |y: f32| {
         Rect::from_min_max(pos2(text.left(), rect.top() + y - 9.0), pos2(text.right(), rect.top() + y + 9.0))
     };
-    let place = problem.place.to_string();
+    let place = capitalised(&problem.place.to_string());
     let job = font::runs([
-        (problem.message.as_str(), font::heading(), look.ink),
-        ("   ", font::small(), look.ink),
-        (place.as_str(), font::small(), look.ink2),
+        (place.as_str(), font::heading(), look.ink),
+        ("    ", font::small(), look.ink),
+        (problem.message.as_str(), font::name(), look.ink),
     ]);
     field::paint_job(ui, at(16.0), Align::Min, job);
     field::paint_fitting(ui, at(36.0), Align::Min, &problem.hint, font::small(), look.ink2);
@@ -127,6 +127,12 @@ fn problem_ui(
         }
     }
     response.on_hover_text(spoken);
+}
+
+/// `text` with a capital to begin with.
+pub(super) fn capitalised(text: &str) -> String {
+    let mut chars = text.chars();
+    chars.next().map(|c| c.to_uppercase().chain(chars).collect()).unwrap_or_default()
 }
 
 /// What on the board a problem is about.

@@ -3,13 +3,14 @@
 use egui::{Align, Align2, Rect, Response, Role, Sense, Ui, UiBuilder, WidgetInfo, pos2, vec2};
 
 use crate::analysis::{State, Verdict};
-use crate::units::utilisation_text;
+use crate::units::{number, utilisation_text};
 
 use super::desk::Judged;
-use super::{Desk, field, font, marks, working};
+use super::{Desk, field, font, marks, problems, working};
 
 const INSET: f32 = 17.0;
 const HEAD: f32 = 30.0;
+const STALE_CARD: f32 = 102.0;
 
 /// What the column shows.
 #[derive(Clone, Debug, Default)]
@@ -24,6 +25,8 @@ pub fn verdicts_ui(ui: &mut Ui, rect: Rect, row_height: f32, desk: &mut Desk, co
     ui.painter().rect_filled(rect, 0.0, look.panel);
     let (head, body) = rect.split_top_bottom_at_y(rect.top() + HEAD);
     head_ui(ui, head.shrink2(vec2(INSET, 0.0)), desk, column);
+    let is_stale = desk.judged().is_some_and(|j| j.is_stale);
+    let (body, foot) = body.split_top_bottom_at_y(body.bottom() - if is_stale { STALE_CARD } else { 0.0 });
     let mut child = ui.new_child(UiBuilder::new().max_rect(body).id_salt("verdicts"));
     child.set_clip_rect(body.intersect(ui.clip_rect()));
     egui::ScrollArea::vertical().auto_shrink(false).show(&mut child, |ui| {
@@ -42,8 +45,8 @@ pub fn verdicts_ui(ui: &mut Ui, rect: Rect, row_height: f32, desk: &mut Desk, co
         });
         ui.add_space(16.0);
     });
-    if desk.judged().is_some_and(|j| j.is_stale) {
-        stale_ui(ui, body, desk);
+    if is_stale {
+        stale_ui(ui, foot, desk);
     }
 }
 
@@ -52,7 +55,7 @@ fn head_ui(ui: &mut Ui, rect: Rect, desk: &Desk, column: &mut VerdictColumn) {
     let y = rect.center().y + 3.0;
     let title = ui.painter().text(pos2(rect.left(), y), Align2::LEFT_CENTER, "Verdicts", font::heading(), look.ink);
     let words = if column.is_this_case_only { "this case only" } else { "all cases" };
-    let link = Rect::from_min_max(pos2(title.right() + 16.0, y - 10.0), pos2(rect.right(), y + 10.0));
+    let link = Rect::from_min_max(pos2(title.right() + 16.0, y - 9.0), pos2(rect.right(), y + 11.0));
     let response = field::link_ui(ui, link, Align::Min, words, &format!("Verdicts shown, {words}"), look)
         .on_hover_text("Show the verdicts of all cases, or of the chosen one only");
     if response.clicked() {
@@ -106,7 +109,9 @@ fn verdict_ui(ui: &mut Ui, row_height: f32, desk: &mut Desk, judged: Judged, at:
     }
     let y = ui.painter().round_to_pixel_center(whole.bottom() - 0.5);
     ui.painter().hline(whole.shrink2(vec2(INSET, 0.0)).x_range(), y, (1.0, look.line2));
-    tooltip(response, verdict, desk);
+    if !is_open {
+        tooltip(response, verdict, desk);
+    }
 }
 
 fn row_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: usize, is_open: bool) {
@@ -144,12 +149,13 @@ fn row_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: usize, 
 fn third_line_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: usize) {
     let look = desk.look;
     let (small, strong) = (font::small, font::small_figure);
-    let place = format!("   {}, case {}", verdict.place_words, case_idx + 1);
+    let place = format!("   case {}, {}", case_idx + 1, verdict.place_words);
     let job = match (verdict.demand, verdict.limit) {
         (Some(demand), Some(limit)) if verdict.state != State::NotJudged => {
-            let unit = demand.quantity.unit(desk.units()).symbol;
-            let (demand, limit) = (demand.number(desk.units(), 3), limit.number(desk.units(), 3));
-            let sense = format!(" {unit}, {} ", verdict.sense.words());
+            let unit = desk.unit_near(demand.quantity, demand.si.abs().max(limit.si.abs()));
+            let [demand, limit] = [demand, limit].map(|m| number(unit.from_si(m.si), 3));
+            let gap = if unit.symbol == "°" { "" } else { " " };
+            let sense = format!("{gap}{}, {} ", unit.symbol, verdict.sense.words());
             font::runs([
                 (demand.as_str(), strong(), look.ink),
                 (&sense, small(), look.ink2),
@@ -198,9 +204,7 @@ fn quiet_rows_ui(ui: &mut Ui, desk: &Desk, judged: Judged, column: &VerdictColum
         quiet_heading_ui(ui, desk, "To know of the input");
     }
     for warning in &judged.results.warnings {
-        let place = warning.place.to_string();
-        let title =
-            place.chars().next().map_or(String::new(), |c| c.to_uppercase().chain(place.chars().skip(1)).collect());
+        let title = problems::capitalised(&warning.place.to_string());
         quiet_row_ui(ui, desk, &title, &format!("{} {}", warning.message, warning.hint));
     }
 }
@@ -231,10 +235,9 @@ fn note_ui(ui: &mut Ui, desk: &Desk, words: &str) {
 }
 
 /// The card that says of when the greyed verdicts are.
-fn stale_ui(ui: &Ui, body: Rect, desk: &Desk) {
+fn stale_ui(ui: &Ui, foot: Rect, desk: &Desk) {
     let look = desk.look;
-    let card =
-        Rect::from_min_max(pos2(body.left() + INSET, body.bottom() - 90.0), body.right_bottom() - vec2(INSET, 16.0));
+    let card = foot.shrink2(vec2(INSET, 12.0));
     ui.painter().rect(card, egui::CornerRadius::same(3), look.raised, (1.0, look.line), egui::StrokeKind::Inside);
     let at = card.min + vec2(14.0, 12.0);
     ui.painter().text(at, Align2::LEFT_TOP, "From before the faults", font::body_heavy(), look.ink);

@@ -2,6 +2,8 @@
 
 mod arbitrary;
 mod bad_sections;
+#[cfg(feature = "gui")]
+mod board;
 mod brims;
 mod cli;
 mod clipper;

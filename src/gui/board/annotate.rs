@@ -10,26 +10,25 @@ use crate::analysis::State;
 use crate::geom::Point;
 use crate::gui::{Look, font, marks};
 use crate::problem::Severity;
-use crate::units::{Measure, Quantity, fixed, number};
+use crate::units::{Measure, Quantity, fixed};
 
 use super::dims::paint_freeboard;
 use super::drag::Feedback;
 use super::labels::Labels;
+use super::legend::{decimals_of, paint_legend};
 use super::lines;
 use super::scene::Scene;
 
 /// Draws all of it.
 pub fn annotate(painter: &Painter, scene: &Scene, look: &Look) {
-    let mut labels = Labels::new(scene.screen.rect);
+    let mut labels = off_walls(scene);
     labels.keep_off(dial_area(scene));
-    for edge in &scene.model.edges {
-        labels.keep_off_line(&scene.screen.line(&edge.points));
-    }
-    for points in &scene.model.obstacles {
-        labels.keep_off_line(&scene.screen.line(points));
-    }
     for piece in &scene.model.surface {
         labels.keep_off_line(&[scene.at(piece.left), scene.at(piece.right)]);
+    }
+    let marks = scene.model.points.iter().map(|p| p.at).chain(scene.model.centroid);
+    for at in marks.chain(scene.judged.map(|_| scene.model.moment_about)) {
+        labels.keep_off(Rect::from_center_size(scene.at(at), Vec2::splat(11.0)));
     }
     let pen = Pen { painter, scene, look };
     pen.paint_reason(&mut labels);
@@ -41,7 +40,7 @@ pub fn annotate(painter: &Painter, scene: &Scene, look: &Look) {
     pen.paint_loads(&mut labels);
     pen.paint_isobar_labels(&mut labels);
     pen.paint_points(&mut labels);
-    pen.paint_legend();
+    paint_legend(painter, scene, look);
 }
 
 /// The dotted cross at what is held, the lines to what it aligned with, and the numbers beside it.
@@ -61,7 +60,7 @@ pub fn paint_feedback(painter: &Painter, scene: &Scene, pos: Pos2, feedback: &Fe
         return;
     }
     let words = painter.layout_no_wrap(feedback.words.clone(), font::small_figure(), look.accent);
-    let mut labels = Labels::new(scene.screen.rect);
+    let mut labels = off_walls(scene);
     let places = [
         (at + vec2(14.0, -10.0), Align2::LEFT_BOTTOM),
         (at + vec2(-14.0, -10.0), Align2::RIGHT_BOTTOM),
@@ -78,6 +77,18 @@ pub fn dial_area(scene: &Scene) -> Rect {
     let dial = &scene.dial;
     let lowest = dial.lowest(&scene.hanging).min(dial.rect.bottom());
     dial.rect.with_max_y(lowest + 6.0).expand2(vec2(6.0, 4.0))
+}
+
+/// Labels that shall not cover a wall, a mouth or an obstacle.
+fn off_walls(scene: &Scene) -> Labels {
+    let mut labels = Labels::new(scene.screen.rect);
+    for edge in &scene.model.edges {
+        labels.keep_off_line(&scene.screen.line(&edge.points));
+    }
+    for points in &scene.model.obstacles {
+        labels.keep_off_line(&scene.screen.line(points));
+    }
+    labels
 }
 
 struct Pen<'a> {
@@ -187,27 +198,32 @@ impl Pen<'_> {
         if !area.y_range().contains(y) {
             return;
         }
-        let places = [
+        let beside = [
             (pos2(left, y - 2.0), Align2::LEFT_BOTTOM),
             (pos2(left, y + 2.0), Align2::LEFT_TOP),
-            (pos2(right, y - 2.0), Align2::RIGHT_BOTTOM),
-            (pos2(right, y + 2.0), Align2::RIGHT_TOP),
-            (pos2(bounds.center().x, y - 2.0), Align2::CENTER_BOTTOM),
-            (pos2(bounds.center().x, y + 2.0), Align2::CENTER_TOP),
+            (pos2(bounds.right() + 6.0, y - 2.0), Align2::LEFT_BOTTOM),
+            (pos2(bounds.right() + 6.0, y + 2.0), Align2::LEFT_TOP),
         ];
-        let rect = labels.place_anyway(text.size(), &places);
-        self.put(rect, text);
+        let along = (0..)
+            .map(|k| left + 12.0 * k as f32)
+            .take_while(|x| *x < to)
+            .flat_map(|x| [(pos2(x, y - 2.0), Align2::LEFT_BOTTOM), (pos2(x, y + 2.0), Align2::LEFT_TOP)]);
+        if let Some(rect) = labels.place(text.size(), beside.into_iter().chain(along)) {
+            self.put(rect, text);
+        }
     }
 
     fn paint_governs(&self, labels: &mut Labels) {
         let Some((at, measure)) = self.scene.model.governs.at else { return };
         let at = self.scene.at(at);
+        // The dimension says it already.
+        if self.scene.model.freeboard.is_some_and(|f| self.scene.at(f.brim) == at) {
+            return;
+        }
         self.painter.circle(at, 6.5, self.look.board, Stroke::NONE);
         self.painter.circle_filled(at, 4.5, self.look.accent);
         labels.keep_off(Rect::from_center_size(at, Vec2::splat(13.0)));
-        // The dimension says it already.
-        let is_dimensioned = self.scene.model.freeboard.is_some_and(|f| self.scene.at(f.brim) == at);
-        if let Some(measure) = measure.filter(|_| !is_dimensioned) {
+        if let Some(measure) = measure {
             let text = self.text(measure.text(self.scene.units), font::body_heavy(), self.look.accent);
             if let Some(rect) = labels.place(text.size(), around(at, 11.0)) {
                 self.put(rect, text);
@@ -260,7 +276,10 @@ impl Pen<'_> {
             if right.y > left.y + 1.0 {
                 ends.swap(0, 1);
             }
-            let free = ends.into_iter().find_map(|(end, out)| {
+            let down = vec2(0.0, 1.0);
+            let ways =
+                ends.into_iter().flat_map(|(end, out)| [out, (out + down).normalized(), down].map(|way| (end, way)));
+            let free = ways.into_iter().find_map(|(end, out)| {
                 let place = (end + out * 10.0, align_toward(out));
                 labels.place(text.size(), [place]).map(|rect| (end, out, rect))
             });
@@ -281,14 +300,13 @@ impl Pen<'_> {
             let gage = point.gage_pa.map(|pa| Measure::new(Quantity::GagePressure, pa).text(self.scene.units));
             let words = [Some(point.name.clone()), gage].into_iter().flatten().collect::<Vec<_>>().join("  ");
             let text = self.text(words, font::tick(), self.look.ink);
-            if let Some(rect) = labels.place(text.size(), around(at, 7.0)) {
+            if let Some(rect) = labels.place(text.size(), around(at, 8.0)) {
                 self.put(rect, text);
             }
         }
         if let Some(centroid) = model.centroid {
             let at = self.scene.at(centroid);
             paint_centroid(self.painter, at, self.look);
-            labels.keep_off(Rect::from_center_size(at, Vec2::splat(14.0)));
             let text = self.text("centroid", font::tick(), self.look.ink);
             if let Some(rect) = labels.place(text.size(), around(at, 10.0)) {
                 self.put(rect, text);
@@ -296,50 +314,15 @@ impl Pen<'_> {
         }
         if self.scene.judged.is_some() {
             let at = self.scene.at(model.moment_about);
-            for arm in [vec2(5.0, 0.0), vec2(0.0, 5.0)] {
-                lines::segment(self.painter, [at - arm, at + arm], Stroke::new(5.0, self.look.board));
-                lines::segment(self.painter, [at - arm, at + arm], Stroke::new(1.25, self.look.ink3));
+            for stroke in [Stroke::new(5.0, self.look.board), Stroke::new(1.25, self.look.ink3)] {
+                for arm in [vec2(6.0, 0.0), vec2(0.0, 6.0)] {
+                    lines::segment(self.painter, [at - arm, at + arm], stroke);
+                }
             }
             self.painter.circle_stroke(at, 3.0, Stroke::new(1.0, self.look.ink3));
             let text = self.text("moment point", font::tick(), self.look.ink3);
             if let Some(rect) = labels.place(text.size(), around(at, 8.0)) {
                 self.put(rect, text);
-            }
-        }
-    }
-
-    /// The tints with their pressures, under the bob, where there is room.
-    fn paint_legend(&self) {
-        let (Some(tints), dial) = (self.scene.model.tints, &self.scene.dial) else { return };
-        let bottom = self.scene.screen.rect.bottom() - 10.0;
-        let width = dial.rect.width() - 20.0;
-        let bar =
-            Rect::from_min_max(pos2(dial.rect.left(), bottom - 28.0), pos2(dial.rect.left() + width, bottom - 17.0));
-        if bar.top() - 20.0 < dial.lowest(&self.scene.hanging) || self.scene.model.bands.is_empty() {
-            return;
-        }
-        let paper = Rect::from_min_max(bar.min - vec2(6.0, 18.0), pos2(dial.rect.right(), bottom + 2.0));
-        self.painter.rect_filled(paper, 0.0, self.look.board);
-        let title = self.text("Gage pressure", font::small(), self.look.ink2);
-        self.painter.galley(bar.left_top() - vec2(0.0, title.size().y + 1.0), title, self.look.ink2);
-        let x = |i: usize| bar.left() + bar.width() * i as f32 / tints.n as f32;
-        for i in 0..tints.n {
-            let swatch = Rect::from_x_y_ranges(x(i)..=x(i + 1), bar.y_range());
-            self.painter.rect_filled(swatch, 0.0, self.look.band(i, tints.n));
-        }
-        let unit = Quantity::GagePressure.unit(self.scene.units);
-        let decimals = decimals_of(unit.from_si(tints.step_pa));
-        let every = if tints.n > 5 { 2 } else { 1 };
-        for i in (0..=tints.n).rev().filter(|i| (tints.n - i).is_multiple_of(every)) {
-            let value = fixed(unit.from_si(tints.gage_pa(i)), decimals);
-            let is_last = i == tints.n;
-            let text = self.text(value, font::tick(), self.look.ink3);
-            let at = pos2(x(i), bar.bottom() + 2.0);
-            let rect = Align2::CENTER_TOP.anchor_size(at, text.size());
-            self.painter.galley(rect.min, text, self.look.ink3);
-            if is_last {
-                let symbol = self.text(unit.symbol, font::tick(), self.look.ink3);
-                self.painter.galley(rect.right_top() + vec2(3.0, 0.0), symbol, self.look.ink3);
             }
         }
     }
@@ -379,11 +362,4 @@ fn align_toward(out: Vec2) -> Align2 {
         }
     };
     Align2([axis(out.x), axis(out.y)])
-}
-
-/// Decimals that a multiple of `step` needs.
-fn decimals_of(step: f64) -> usize {
-    let text = number(step, 3);
-    let digits = text.split_once('.').map_or("", |(_, fraction)| fraction);
-    digits.trim_end_matches('0').len()
 }

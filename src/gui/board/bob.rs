@@ -13,6 +13,9 @@ use super::lines;
 /// Length of the drop, points.
 const DROP: f32 = 27.0;
 
+/// Width of the block from which its words stand in one line, points.
+const WIDE: f32 = 150.0;
+
 /// Radius of the free-fall circle at the pivot, points.
 const FREE_FALL: f32 = 7.0;
 
@@ -25,6 +28,8 @@ pub struct Dial {
     pub pivot: Pos2,
     /// Points per m/s2.
     pub scale: f32,
+    /// Distance between two rings about rest, m/s2: 2 of the shown unit, or more where rings would touch.
+    ring_step: f32,
 }
 
 /// What hangs there.
@@ -38,26 +43,32 @@ pub struct Hanging {
     pub tilt_rad: Option<f64>,
     /// Other cases: number as shown, effective gravity.
     pub others: Vec<(usize, crate::geom::Vec2)>,
-    /// The pointer is over it, or holds it.
-    pub is_held: bool,
+    /// The pointer is over it.
+    pub is_pointed_at: bool,
 }
 
 impl Dial {
     /// A block at the right of the drawing area, in a scale in which all of `gravities` stay inside it.
-    pub fn new(area: Rect, gravities: impl IntoIterator<Item = crate::geom::Vec2>) -> Dial {
+    pub fn new(area: Rect, gravities: impl IntoIterator<Item = crate::geom::Vec2>, units: UnitSystem) -> Dial {
+        let gravities: Vec<crate::geom::Vec2> = gravities.into_iter().collect();
         let width = (0.26 * area.width()).clamp(116.0, 196.0).min(area.width());
         let rect = Rect::from_min_max(pos2(area.right() - width - 8.0, area.top() + 8.0), area.max);
-        let head = if area.height() < 320.0 { 58.0 } else { 66.0 };
-        let pivot = pos2(rect.center().x, rect.top() + head);
-        let wanted = ((area.height() - 277.0) / 16.0).clamp(6.0, 14.0);
+        // Under the words, and lower where the bob of some case hangs upward.
+        let words = if width < WIDE { 52.0 } else { 36.0 };
+        let up = if gravities.iter().any(|g| g.y > 0.0) { DROP + 30.0 } else { 28.0 };
+        let pivot = pos2(rect.center().x, rect.top() + words + up);
+        let wanted = ((area.height() - 244.0) / 16.0).clamp(6.0, 14.0);
         let side = (0.5 * rect.width() - 14.0).max(1.0);
-        let (down, up) = ((rect.bottom() - pivot.y - DROP - 12.0).max(1.0), head - 40.0);
+        let (down, up) = ((rect.bottom() - pivot.y - DROP - 12.0).max(1.0), (up - DROP).max(1.0));
         let scale = gravities.into_iter().fold(wanted, |scale, g| {
             let (x, y) = (g.x as f32, -g.y as f32);
             let room = if y > 0.0 { down } else { up };
             scale.min(side / x.abs().max(1e-3)).min(room / y.abs().max(1e-3))
         });
-        Dial { rect, pivot, scale: scale.max(1e-6) }
+        let unit = Quantity::Acceleration.unit(units).in_si as f32;
+        let mut steps = (0..7).flat_map(|k| [2.0, 5.0, 10.0].map(|m| m * 10f32.powi(k) * unit));
+        let ring_step = steps.find(|step| step * scale >= 10.0).unwrap_or(f32::MAX);
+        Dial { rect, pivot, scale: scale.max(1e-6), ring_step }
     }
 
     /// Where the thread ends for an effective gravity.
@@ -82,8 +93,10 @@ impl Dial {
 
     /// Lowest point that the drawing needs.
     pub fn lowest(&self, hanging: &Hanging) -> f32 {
-        let tips = hanging.now.iter().chain([&hanging.rest]).map(|&g| self.tip(g).y + DROP);
-        tips.fold(self.tip(hanging.rest).y + self.ring_step() * 3.0 * self.scale, f32::max)
+        let rings = self.tip(hanging.rest).y + self.rings().last().unwrap_or(0.0) * self.scale;
+        let others = hanging.others.iter().map(|(_, g)| self.tip(*g).y + 6.0);
+        let held = hanging.now.iter().chain([&hanging.rest]).map(|&g| self.tip(g).y + DROP);
+        others.chain(held).fold(rings, f32::max)
     }
 
     fn hangs_along(&self, gravity: crate::geom::Vec2) -> egui::Vec2 {
@@ -91,10 +104,10 @@ impl Dial {
         if along == egui::Vec2::ZERO { vec2(0.0, 1.0) } else { along }
     }
 
-    /// Distance between two rings, m/s2: 2, or more where rings would touch.
-    fn ring_step(&self) -> f32 {
-        let decades = (0..6).flat_map(|k| [2.0, 5.0, 10.0].map(|m| m * 10f32.powi(k)));
-        decades.into_iter().find(|step| step * self.scale >= 12.0).unwrap_or(1e6)
+    /// Radii of the rings about rest, m/s2, as many as the block has room for.
+    fn rings(&self) -> impl Iterator<Item = f32> + use<> {
+        let (step, most) = (self.ring_step, 0.5 * self.rect.width() / self.scale);
+        (1..=3).map(move |k| k as f32 * step).filter(move |radius| *radius <= most)
     }
 }
 
@@ -114,15 +127,21 @@ pub fn paint_bob(painter: &Painter, dial: &Dial, hanging: &Hanging, units: UnitS
         Some(tilt) => ("tilt ", format!("{tilt}°")),
         None => ("free fall", String::new()),
     };
-    let words = font::runs([
-        (first, font::small(), look.ink3),
-        (second.as_str(), font::small_figure(), look.ink),
-        ("   |G| ", font::small(), look.ink3),
+    let tilt = [(first, font::small(), look.ink3), (second.as_str(), font::small_figure(), look.ink)];
+    let size = [
+        ("|G| ", font::small(), look.ink3),
         (number.as_str(), font::small_figure(), look.ink),
         (unit.as_str(), font::small(), look.ink3),
-    ]);
-    let words = painter.layout_job(words);
-    painter.galley(rect.left_top() + vec2(0.0, 19.0), words, look.ink);
+    ];
+    let rows = if rect.width() < WIDE {
+        vec![font::runs(tilt), font::runs(size)]
+    } else {
+        vec![font::runs(tilt.into_iter().chain([("   ", font::small(), look.ink3)]).chain(size))]
+    };
+    for (i, row) in rows.into_iter().enumerate() {
+        let row = painter.layout_job(row);
+        painter.galley(rect.left_top() + vec2(0.0, 19.0 + 16.0 * i as f32), row, look.ink);
+    }
 
     let rest = dial.tip(hanging.rest);
     let mut labels = Labels::new(rect.expand(6.0));
@@ -144,7 +163,7 @@ pub fn paint_bob(painter: &Painter, dial: &Dial, hanging: &Hanging, units: UnitS
     painter.add(facet([(0.0, 0.0), (2.0, 0.0), (6.5, 9.0), (0.0, DROP)], look.accent));
     painter.add(facet([(0.0, 0.0), (-2.0, 0.0), (-6.5, 9.0), (0.0, DROP)], lit));
     painter.line_segment([tip - across * 3.0, tip + across * 3.0], Stroke::new(2.0, look.accent));
-    if hanging.is_held {
+    if hanging.is_pointed_at {
         painter.circle_stroke(tip + along * 11.0, 18.0, Stroke::new(1.0, look.accent));
     }
     paint_pivot(painter, dial.pivot, look.ink);
@@ -167,16 +186,15 @@ fn paint_pivot(painter: &Painter, pivot: Pos2, color: egui::Color32) {
 }
 
 fn paint_rings(painter: &Painter, dial: &Dial, rest: Pos2, labels: &mut Labels, units: UnitSystem, look: &Look) {
-    let step = dial.ring_step();
     let ring = Stroke::new(1.0, look.line2);
-    lines::dashed(painter, &[rest - vec2(0.0, 3.0 * step * dial.scale), rest], ring, 1.2, 2.3);
-    lines::dashed(painter, &[rest, rest + vec2(0.0, 3.0 * step * dial.scale)], ring, 1.2, 2.3);
+    let reach = vec2(0.0, dial.rings().last().unwrap_or(0.0) * dial.scale);
+    lines::dashed(painter, &[rest - reach, rest + reach], ring, 1.2, 2.3);
     let unit = Quantity::Acceleration.unit(units);
-    for k in 1..=3 {
-        let radius = k as f32 * step * dial.scale;
+    for accel in dial.rings() {
+        let radius = accel * dial.scale;
         painter.circle_stroke(rest, radius, ring);
         let at = rest + radius * egui::Vec2::angled(2.2);
-        let text = crate::units::number(unit.from_si(f64::from(k as f32 * step)), 2);
+        let text = crate::units::number(unit.from_si(f64::from(accel)), 2);
         let text = text.strip_suffix(".0").unwrap_or(&text).to_owned();
         let galley = painter.layout_no_wrap(text, font::tick(), look.ink3);
         if let Some(rect) = labels.place(galley.size(), [(at, Align2::CENTER_CENTER)]) {
@@ -225,7 +243,7 @@ mod tests {
     fn tip_and_gravity_invert_each_other_and_all_cases_fit() {
         let area = Rect::from_min_size(pos2(264.0, 90.0), vec2(704.0, 398.0));
         let gravities = [Vec2::new(3.92, -9.81), Vec2::new(-25.0, -4.0), Vec2::new(0.0, 6.0), Vec2::new(0.0, 0.0)];
-        let dial = Dial::new(area, gravities);
+        let dial = Dial::new(area, gravities, UnitSystem::Si);
         for g in gravities {
             let tip = dial.tip(g);
             assert!(dial.rect.contains(tip), "{g:?} hangs at {tip:?}, outside {:?}", dial.rect);
@@ -240,7 +258,7 @@ mod tests {
     #[test]
     fn the_scale_is_the_one_of_the_drawing_when_all_fits() {
         let area = Rect::from_min_size(pos2(0.0, 0.0), vec2(704.0, 430.0));
-        let dial = Dial::new(area, [Vec2::new(3.92, -9.81)]);
-        assert!((dial.scale - 9.56).abs() < 0.01, "{}", dial.scale);
+        let dial = Dial::new(area, [Vec2::new(3.92, -9.81)], UnitSystem::Si);
+        assert!((dial.scale - 11.6).abs() < 0.1, "{}", dial.scale);
     }
 }

@@ -1,6 +1,8 @@
 //! The freeboard dimension: available and required, side by side at the mouth that governs.
 
-use egui::{Align2, Painter, Rect, Stroke, Vec2, pos2, vec2};
+use std::sync::Arc;
+
+use egui::{Align2, Color32, Galley, Painter, Pos2, Rect, Stroke, Vec2, pos2, vec2};
 
 use crate::analysis::State;
 use crate::geom::Point;
@@ -27,19 +29,22 @@ pub fn paint_freeboard(
     let required_ink = if fails { look.state(State::Fails) } else { look.ink2 };
     let length = |m: f64| Measure::new(Quantity::Length, m).text(scene.units);
     let short_m = freeboard.required_m - freeboard.available_m;
-    let required_words = if fails { format!("required, {} short", length(short_m)) } else { "required".to_owned() };
-    let texts = [
-        (length(freeboard.available_m), "available".to_owned(), look.ink, look.ink2),
-        (length(freeboard.required_m), required_words, if fails { required_ink } else { look.ink }, required_ink),
-    ]
-    .map(|(number, words, number_ink, words_ink)| {
-        let number = painter.layout_no_wrap(number, font::body_heavy(), number_ink);
-        let words = painter.layout_no_wrap(words, font::small(), words_ink);
-        let size = vec2(number.size().x.max(words.size().x), number.size().y + words.size().y);
-        (number, words, size)
-    });
+    let short = fails.then(|| format!("{} short", length(short_m)));
+    let quiet = |ink: Color32| if fails { required_ink } else { ink };
+    let available = [Some(length(freeboard.available_m)), Some("available".to_owned()), None];
+    let required = [Some(length(freeboard.required_m)), Some("required".to_owned()), short];
+    let texts = [(available, look.ink, look.ink2), (required, quiet(look.ink), quiet(look.ink2))].map(
+        |(lines, number_ink, words_ink)| {
+            let fonts = [(font::body_heavy(), number_ink), (font::small(), words_ink), (font::small(), words_ink)];
+            let lines = lines
+                .into_iter()
+                .zip(fonts)
+                .filter_map(|(line, (font, ink))| line.map(|line| painter.layout_no_wrap(line, font, ink)));
+            Block::new(lines.collect())
+        },
+    );
 
-    let side = Side::choose(scene, brim.x, texts[0].2.x, texts[1].2.x);
+    let side = Side::choose(scene, brim.x, texts[0].size.x, texts[1].size.x);
     let [x_available, x_required] = side.lines.map(|x| painter.round_to_pixel_center(x));
     let end = x_required + 8.0 * side.sign;
     lines::segment(painter, [brim, pos2(end, brim.y)], Stroke::new(1.0, look.ink3));
@@ -57,20 +62,56 @@ pub fn paint_freeboard(
         }
     }
     let middle = 0.5 * (brim.y + still_y);
-    let stacked = side.is_stacked.then_some(0.5 * texts[0].2.y + 2.0).unwrap_or_default();
-    for (i, (number, words, size)) in texts.into_iter().enumerate() {
-        let (x, outward) =
-            if i == 0 && !side.is_stacked { (x_available, -side.sign) } else { (x_required, side.sign) };
-        let y = middle + if i == 0 { -stacked } else { stacked };
-        let align = if outward > 0.0 { Align2::LEFT_CENTER } else { Align2::RIGHT_CENTER };
-        let at = |dy: f32| (pos2(x + 8.0 * outward, y + dy), align);
-        let rect = labels.place_anyway(size, &[at(0.0), at(-18.0), at(18.0), at(-36.0), at(36.0)]);
-        painter.rect_filled(rect.expand2(vec2(2.0, 0.0)), 0.0, look.board);
-        let left = |width: f32| if outward > 0.0 { rect.left() } else { rect.right() - width };
-        painter.galley(pos2(left(words.size().x), rect.top() + number.size().y), words, look.ink);
-        painter.galley(pos2(left(number.size().x), rect.top()), number, look.ink);
+    let apart = if side.is_stacked { 0.5 * (texts[0].size.y + texts[1].size.y) + 2.0 } else { 0.0 };
+    for (i, block) in texts.into_iter().enumerate() {
+        let (x, outward) = match (i, side.is_stacked) {
+            (0, false) => (x_available, -side.sign),
+            _ => (x_required, side.sign),
+        };
+        let y = middle + if i == 0 { -0.5 * apart } else { 0.5 * apart };
+        let align = mirrored(-outward);
+        // Along the line first, then further out, past a wall that stands in the way; else between brim and line.
+        let steps = (0..9).map(|k| if k % 2 == 0 { 9 * k } else { -9 * (k + 1) });
+        let off = |out: i32, dy: i32| vec2((6 + 14 * out) as f32, dy as f32);
+        let outside = (0..5).flat_map(|out| steps.clone().map(move |dy| off(out, dy)));
+        let outside = outside.map(|v| (pos2(x + v.x * outward, y + v.y), align));
+        let inside = (0..3).flat_map(|out| steps.clone().map(move |dy| off(out, dy)));
+        let inside = inside.map(|v| (pos2(x_available - v.x * side.sign, y + v.y), mirrored(side.sign)));
+        let places: Vec<(Pos2, Align2)> = outside.chain(inside).collect();
+        let rect = labels.place_anyway(block.size, &places);
+        block.paint(painter, rect, outward, look);
     }
     end
+}
+
+/// Aligns text that lies on this side of a line, its near edge at the line.
+fn mirrored(side: f32) -> Align2 {
+    if side > 0.0 { Align2::RIGHT_CENTER } else { Align2::LEFT_CENTER }
+}
+
+/// Lines of text one under the other.
+struct Block {
+    lines: Vec<Arc<Galley>>,
+    size: Vec2,
+}
+
+impl Block {
+    fn new(lines: Vec<Arc<Galley>>) -> Block {
+        let size = lines.iter().fold(Vec2::ZERO, |all, line| vec2(all.x.max(line.size().x), all.y + line.size().y));
+        Block { lines, size }
+    }
+
+    /// Flush with the side that faces the dimension.
+    fn paint(self, painter: &Painter, rect: Rect, outward: f32, look: &Look) {
+        painter.rect_filled(rect.expand2(vec2(2.0, 0.0)), 0.0, look.board);
+        let mut top = rect.top();
+        for line in self.lines {
+            let left = if outward > 0.0 { rect.left() } else { rect.right() - line.size().x };
+            let height = line.size().y;
+            painter.galley(pos2(left, top), line, look.ink);
+            top += height;
+        }
+    }
 }
 
 /// On which side of the brim the two lines stand.
@@ -85,14 +126,16 @@ struct Side {
 
 impl Side {
     fn choose(scene: &Scene, brim_x: f32, available_width: f32, required_width: f32) -> Side {
-        let sign = if brim_x >= scene.bounds().center().x { 1.0 } else { -1.0 };
         let area = scene.screen.rect;
-        let room = if sign > 0.0 { scene.dial.rect.left() - brim_x } else { brim_x - area.left() };
+        let room = |sign: f32| if sign > 0.0 { scene.dial.rect.left() - brim_x } else { brim_x - area.left() };
+        let nearer = if brim_x >= scene.bounds().center().x { 1.0 } else { -1.0 };
+        let least = 30.0 + 6.0 + available_width.max(required_width) + 6.0;
+        let sign = if room(nearer) < least && room(-nearer) > least { -nearer } else { nearer };
         let apart = available_width + 26.0;
-        if room >= apart + 24.0 + 8.0 + required_width {
+        if room(sign) >= apart + 24.0 + 6.0 + required_width + 6.0 {
             Side { sign, lines: [brim_x + sign * apart, brim_x + sign * (apart + 24.0)], is_stacked: false }
         } else {
-            Side { sign, lines: [brim_x + sign * 18.0, brim_x + sign * 38.0], is_stacked: true }
+            Side { sign, lines: [brim_x + sign * 14.0, brim_x + sign * 30.0], is_stacked: true }
         }
     }
 }

@@ -128,8 +128,8 @@ impl Drag {
                 let snapped = snapper(scene, keys, Target::Edge(*i)).point(start + moved);
                 let shift = snapped.at - start;
                 let other = Point::from((end + shift).coords.map(tidy));
-                let n = scene.edges.len();
-                let edits = vec![Edit::MoveVertex(*i, snapped.at), Edit::MoveVertex((i + 1) % n, other)];
+                let next = (i + 1) % scene.edges.len().max(1);
+                let edits = vec![Edit::MoveVertex(*i, snapped.at), Edit::MoveVertex(next, other)];
                 (edits, placed(scene, snapped))
             }
             Held::Middle(i, from) => bend_edits(scene, *i, from + moved, keys),
@@ -246,7 +246,7 @@ fn bob_edits(scene: &Scene, dial: &Dial, gravity: Vec2, began: Vec2, keys: Modif
 
 fn placed(scene: &Scene, snapped: super::snap::Snapped) -> Feedback {
     Feedback {
-        words: place_words(snapped.at, scene.units),
+        words: place_words(snapped.at, scene),
         reason: snapped.reason,
         at: Some(snapped.at),
         aligned_with: snapped.aligned_with,

@@ -1,5 +1,5 @@
 //! The keyboard on the board: every handle can be reached with Tab, is spoken with its numbers, and moves with the
-//! arrow keys.
+//! arrow keys. Plus and minus zoom, Home fits.
 
 use egui::{EventFilter, Id, Key, Modifiers, Rect, Response, Role, Sense, Ui, WidgetInfo, vec2};
 
@@ -52,12 +52,6 @@ pub fn handles_ui(
         ui.memory_mut(|m| m.set_focus_lock_filter(id, filter));
         obey(ui, scene, focused.as_ref().map(|(t, _)| *t), view, out);
     }
-    let nobody_types = has_focus || ui.memory(|m| m.focused().is_none());
-    if canvas.contains_pointer() && nobody_types || has_focus {
-        if ui.input_mut(|i| i.consume_key(Modifiers::NONE, Key::Home)) {
-            view.camera = None;
-        }
-    }
     focused
 }
 
@@ -104,11 +98,24 @@ fn obey(ui: &Ui, scene: &Scene, focused: Option<Target>, view: &mut View, out: &
             }
         }
     }
+    look_around(ui, scene, view);
     let removes = ui
         .input_mut(|i| i.consume_key(Modifiers::NONE, Key::Delete) || i.consume_key(Modifiers::NONE, Key::Backspace));
     if removes && let Some(edit) = view.selected.and_then(|s| removal(scene, s)) {
         out.push(Proposal::Edit(edit));
         view.selected = None;
+    }
+}
+
+fn look_around(ui: &Ui, scene: &Scene, view: &mut View) {
+    let zooms = [(Key::Plus, 1.25_f32), (Key::Equals, 1.25), (Key::Minus, 0.8)];
+    for (key, factor) in zooms {
+        if ui.input_mut(|i| i.consume_key(Modifiers::NONE, key)) {
+            view.camera = Some(scene.screen.zoomed(factor, scene.screen.rect.center()));
+        }
+    }
+    if ui.input_mut(|i| i.consume_key(Modifiers::NONE, Key::Home)) {
+        view.camera = None;
     }
 }
 

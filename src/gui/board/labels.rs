@@ -6,6 +6,9 @@ use egui::{Align2, Pos2, Rect, Vec2};
 
 use super::lines;
 
+/// Least distance of a label from a line, points: half a wall and the paper round the text.
+const LINE_GAP: f32 = 3.0;
+
 /// What is taken already.
 #[derive(Clone, Debug)]
 pub struct Labels {
@@ -59,7 +62,7 @@ impl Labels {
     fn is_free(&self, rect: Rect) -> bool {
         self.bounds.shrink(2.0).contains_rect(rect)
             && !self.taken.iter().any(|t| t.intersects(rect))
-            && !self.lines.iter().any(|l| lines::clip(rect, *l).is_some())
+            && !self.lines.iter().any(|l| lines::clip(rect.expand(LINE_GAP), *l).is_some())
     }
 }
 

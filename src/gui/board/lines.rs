@@ -20,20 +20,22 @@ pub fn segment(painter: &Painter, points: [Pos2; 2], stroke: impl Into<Stroke>) 
 /// A dashed line along `path`.
 pub fn dashed(painter: &Painter, path: &[Pos2], stroke: Stroke, dash: f32, gap: f32) {
     let area = painter.clip_rect().expand(8.0);
-    let period = dash + gap;
+    let period = f64::from(dash + gap);
     let mut walked = 0.0;
     for pair in path.windows(2) {
         let (a, b) = (pair[0], pair[1]);
-        let length = (b - a).length();
+        let length = f64::from((b - a).length());
         if let Some((t0, t1)) = clip_range(area, a, b).filter(|_| length > 0.0) {
-            let along = (b - a) / length;
-            let mut from = ((walked + t0 * length) / period).floor() * period - walked;
-            while from < t1 * length {
-                let (start, end) = (from.max(t0 * length), (from + dash).min(t1 * length));
+            let (seen_from, seen_to) = (f64::from(t0) * length, f64::from(t1) * length);
+            let at = |along: f64| a + (b - a) * (along / length) as f32;
+            let first = ((walked + seen_from) / period).floor();
+            let n = ((seen_to - seen_from) / period).ceil() as usize + 1;
+            for k in 0..n {
+                let start = (first + k as f64) * period - walked;
+                let (start, end) = (start.max(seen_from), (start + f64::from(dash)).min(seen_to));
                 if end > start {
-                    painter.line_segment([a + along * start, a + along * end], stroke);
+                    painter.line_segment([at(start), at(end)], stroke);
                 }
-                from += period;
             }
         }
         walked += length;
@@ -103,6 +105,21 @@ fn clip_range(rect: Rect, a: Pos2, b: Pos2) -> Option<(f32, f32)> {
 #[cfg(test)]
 mod tests {
     use super::*;
+
+    #[test]
+    fn a_dashed_line_of_any_length_ends() {
+        let ctx = egui::Context::default();
+        let mut n = 0;
+        ctx.run_ui(Default::default(), |ui| {
+            let painter = ui.painter().with_clip_rect(Rect::from_min_size(pos2(0.0, 0.0), vec2(100.0, 100.0)));
+            let before = painter.add(Shape::Noop);
+            dashed(&painter, &[pos2(-1e9, 50.0), pos2(1e9, 50.0)], Stroke::new(1.0, egui::Color32::BLACK), 3.0, 3.0);
+            painter.for_each_shape(|_| n += 1);
+            painter.set(before, Shape::Noop);
+        })
+        .drop_without_applying_deltas();
+        assert!((10..40).contains(&n), "{n} shapes for 116 points of dashes and gaps of 3");
+    }
 
     #[test]
     fn segments_are_cut_at_the_area() {

@@ -12,6 +12,7 @@ mod dims;
 mod drag;
 mod keys;
 mod labels;
+mod legend;
 mod lines;
 mod liquid;
 mod menu;
@@ -59,7 +60,7 @@ pub fn board_ui(ui: &mut Ui, doc: &Document, view: &mut View, look: &Look, out: 
         scene = Scene::new(ui, id, doc, view, area, held_dial);
     }
     let pointing = pointer::point(ui, &canvas, &scene, view, out);
-    scene.hanging.is_held = pointing.target == Some(Target::Bob);
+    scene.hanging.is_pointed_at = pointing.target == Some(Target::Bob) && !pointing.is_dragging;
 
     let painter = ui.painter().with_clip_rect(ui.clip_rect().intersect(board));
     painter.rect_filled(board, 0.0, look.board);

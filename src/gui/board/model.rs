@@ -321,7 +321,7 @@ const FREEBOARD: &str = "Freeboard";
 /// Where the line of action through `through` along `force` meets the edge; the nearest point of the edge when
 /// it meets it nowhere.
 fn where_met(edge: &Edge, through: Point, force: Vec2) -> Point {
-    let points = flatten(edge, 0.01 * edge.length());
+    let points = flatten(edge, 1e-3 * edge.length());
     let crossing = points.windows(2).find_map(|pair| {
         let (a, b) = (cross(force, pair[0] - through), cross(force, pair[1] - through));
         (a != b && (a <= 0.0) != (b <= 0.0)).then(|| pair[0] + (pair[1] - pair[0]) * (a / (a - b)))
@@ -346,4 +346,69 @@ fn flatten_loop(edges: &[Edge], sagitta_m: f64) -> Vec<Point> {
         edge.flatten_into(sagitta_m, &mut points);
     }
     points
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::analysis;
+    use crate::app::EXAMPLES;
+    use crate::geom::Sublevel;
+    use crate::gui::board::strips::Strip;
+
+    /// The bands add up to the exact area below the settled level, as the kernel's own area function gives it.
+    #[test]
+    fn bands_add_up_to_the_liquid_of_every_demo() {
+        let mut n_cases = 0;
+        for example in EXAMPLES {
+            let study = crate::scenario::parse(example.text.as_bytes()).expect(example.file_name);
+            let study = study.validate().expect(example.file_name);
+            let results = analysis::run(&study);
+            let (low, high) = study.region().bounds();
+            let detail = Detail { sagitta_m: 1e-5 * (high - low).norm(), units: UnitSystem::Si };
+            for (case_idx, case) in results.cases.iter().enumerate() {
+                let (Ok(settled), Some(up)) = (&case.settled, case.gravity.up) else { continue };
+                let model = BoardModel::judged(&study, &results, case_idx, None, detail);
+                let got: f64 = model.bands.iter().flat_map(|b| &b.strips).map(Strip::area).sum();
+                let want = Sublevel::new(study.region().geometry(), up).area_below(settled.level_m);
+                // A flattened arc of sagitta f lies about 2/3 f from the true one, all round.
+                let perimeter: f64 = study.region().geometry().iter().map(|e| e.length()).sum();
+                let tolerance = detail.sagitta_m * perimeter + 1e-12 * want;
+                let place = (example.file_name, &case.name);
+                assert!((got - want).abs() <= tolerance, "{place:?}: got {got} m2, expected {want} +- {tolerance}");
+                n_cases += 1;
+            }
+        }
+        assert!(n_cases > 10, "only {n_cases} cases were compared");
+    }
+
+    #[test]
+    fn the_brim_that_governs_is_the_dimensions_own() {
+        for example in EXAMPLES {
+            let study = crate::scenario::parse(example.text.as_bytes()).expect(example.file_name);
+            let study = study.validate().expect(example.file_name);
+            let results = analysis::run(&study);
+            for case_idx in 0..results.cases.len() {
+                let detail = Detail { sagitta_m: 1e-3, units: UnitSystem::Si };
+                let model = BoardModel::judged(&study, &results, case_idx, None, detail);
+                assert_eq!(model.brims.len(), study.mouths().len());
+                let governing: Vec<Point> = model.brims.iter().filter(|b| b.governs).map(|b| b.at).collect();
+                assert_eq!(governing.len(), usize::from(!model.brims.is_empty()), "{}", example.file_name);
+                if let Some(freeboard) = model.freeboard {
+                    let off = (governing[0] - freeboard.brim).norm();
+                    assert!(off < 1e-9, "{} case {case_idx}: {off} m apart", example.file_name);
+                }
+            }
+        }
+    }
+
+    #[test]
+    fn a_load_starts_where_its_line_of_action_meets_the_edge() {
+        let quarter = Edge::with_radius(Point::new(1.0, 0.0), Point::new(0.0, 1.0), 1.0).unwrap();
+        // Through the centre, as every uniform pressure on an arc acts.
+        let force = Vec2::new(1.0, 1.0);
+        let at = where_met(&quarter, Point::origin(), force);
+        let want = Point::new(1.0, 1.0) * std::f64::consts::FRAC_1_SQRT_2;
+        assert!((at - want).norm() < 2e-3, "got {at}, expected {want}");
+    }
 }

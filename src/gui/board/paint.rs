@@ -170,6 +170,7 @@ pub fn paint_handles(
                 let n = scene.study.section.obstacles.get(i).map_or(0, |o| o.vertices.len());
                 shown.extend((0..n).map(|j| (Target::ObstacleVertex(i, j), target == Target::ObstacleVertex(i, j))));
             }
+            Target::Point(_) | Target::MomentPoint => shown.push((target, is_chosen)),
             _ => {}
         };
     };
@@ -178,12 +179,14 @@ pub fn paint_handles(
     for (target, is_chosen) in shown {
         let Some(at) = target.handle(scene).filter(|p| scene.screen.rect.expand(8.0).contains(*p)) else { continue };
         let stroke = if is_chosen { Stroke::new(1.5, look.accent) } else { Stroke::new(1.25, look.ink2) };
-        if let Target::Middle(_) = target {
-            painter.circle(at, 4.0, look.board, stroke);
-        } else {
-            let rect = Rect::from_center_size(at, vec2(8.0, 8.0));
-            painter.rect(rect, 0.0, look.board, stroke, StrokeKind::Middle);
-        }
+        match target {
+            Target::Middle(_) => painter.circle(at, 4.0, look.board, stroke),
+            Target::Point(_) | Target::MomentPoint => painter.circle_stroke(at, 8.0, stroke),
+            _ => {
+                let rect = Rect::from_center_size(at, vec2(8.0, 8.0));
+                painter.rect(rect, 0.0, look.board, stroke, StrokeKind::Middle)
+            }
+        };
     }
 }
 

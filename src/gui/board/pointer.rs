@@ -136,7 +136,7 @@ fn hover(
         Some(t) => Some(t.words(scene)),
     };
     let on = what.map(|w| format!("on {w}")).unwrap_or_default();
-    view.status = status(&place_words(p, scene.units), &on);
+    view.status = status(&place_words(p, scene), &on);
     if canvas.double_clicked() {
         if let Some(Target::Edge(i) | Target::Middle(i)) = target {
             out.push(Proposal::Edit(split(scene, i, pos, keys)));

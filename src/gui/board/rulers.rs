@@ -58,8 +58,12 @@ pub fn paint_rulers(
         painter.rect_filled(ruler, 0.0, look.board);
     }
     let steps = Steps::of(screen, units);
-    let unit = Quantity::Distance.unit(units);
-    let decimals = decimals(unit.from_si(steps.fine_m * steps.n as f64));
+    let major_m = steps.fine_m * steps.n as f64;
+    let (unit, least_decimals) = match major_m {
+        m if m < 0.02 => (Quantity::Length.unit(units), 0),
+        _ => (Quantity::Distance.unit(units), 1),
+    };
+    let decimals = decimals(unit.from_si(major_m), least_decimals);
     let label = |k: i64| fixed(unit.from_si(k as f64 * steps.fine_m), decimals);
     let (tick, ink) = (Stroke::new(1.0, look.line), look.ink3);
 
@@ -136,6 +140,11 @@ impl Steps {
     }
 }
 
-fn decimals(step: f64) -> usize {
-    (1..5).find(|&d| (step * 10f64.powi(d as i32) - (step * 10f64.powi(d as i32)).round()).abs() < 1e-6).unwrap_or(5)
+/// Decimals that a multiple of `step` needs.
+fn decimals(step: f64, least: usize) -> usize {
+    let is_whole = |d: &usize| {
+        let scaled = step * 10f64.powi(*d as i32);
+        (scaled - scaled.round()).abs() < 1e-6
+    };
+    (least..5).find(is_whole).unwrap_or(5)
 }

@@ -16,8 +16,8 @@ use super::bob::{Dial, Hanging};
 use super::model::{BoardModel, Detail};
 use super::screen::Screen;
 
-/// Largest distance of a drawn arc from the true one, points.
-const SAGITTA: f64 = 0.25;
+/// Largest distance of a drawn arc from the true one, points: a quarter still shows its corners.
+const SAGITTA: f64 = 0.1;
 
 /// One frame of the board.
 pub struct Scene<'a> {
@@ -52,7 +52,7 @@ impl<'a> Scene<'a> {
         let results = judged.map(|(_, results)| results);
         let gravities = results.iter().flat_map(|r| &r.cases).map(|c| c.gravity.vec);
         let rest = Vec2::new(0.0, -study.gravity_m_per_s2);
-        let dial = held_dial.unwrap_or_else(|| Dial::new(area, gravities.chain([rest])));
+        let dial = held_dial.unwrap_or_else(|| Dial::new(area, gravities.chain([rest]), view.units));
         let edges = if study.section.outline.is_empty() { Vec::new() } else { study.section.edges() };
         let screen = match view.camera {
             Some(camera) => Screen::new(area, camera),
@@ -65,7 +65,7 @@ impl<'a> Scene<'a> {
             rest: case.map_or(rest, |c| c.gravity.vec + c.accel),
             tilt_rad: case.map_or(Some(0.0), |c| c.gravity.tilt_rad),
             others: results.map(|r| other_cases(r, view.case_idx)).unwrap_or_default(),
-            is_held: false,
+            is_pointed_at: false,
         };
         Scene { study, judged, case_idx: view.case_idx, model, edges, screen, dial, hanging, units: view.units }
     }
@@ -115,8 +115,8 @@ fn fitted(study: &Study, edges: &[Edge], area: Rect, dial: &Dial) -> Screen {
         edges.iter().zip(kinds).filter(|(_, kind)| *kind == EdgeKind::Mouth).flat_map(|(e, _)| [e.start.x, e.end.x])
     };
     let near = 0.12 * (high.x - low.x);
-    let mut left: f32 = if mouths().any(|s| s < low.x + near) { 104.0 } else { 62.0 };
-    let mut right: f32 = if mouths().any(|s| s > high.x - near) { 86.0 } else { 40.0 };
+    let mut left: f32 = if mouths().any(|s| s < low.x + near) { 112.0 } else { 92.0 };
+    let mut right: f32 = if mouths().any(|s| s > high.x - near) { 118.0 } else { 40.0 };
     let spare = area.width() - dial.rect.width() - left - right;
     if spare < 160.0 {
         (left, right) = (46.0, 30.0);

@@ -77,12 +77,13 @@ impl Target {
             }
             _ => Vec::new(),
         };
-        let points = (0..scene.study.points.len()).map(Target::Point).chain([Target::MomentPoint]).collect();
+        let points = (0..scene.study.points.len()).map(Target::Point).collect();
         let middles = (0..n).filter(|&i| scene.edges[i].length() * scene.screen.scale() >= LEAST_BENDABLE);
         nearest((0..n).map(Target::Vertex).collect())
             .or_else(|| nearest(corners))
             .or_else(|| nearest(points))
             .or_else(|| nearest(middles.map(Target::Middle).collect()))
+            .or_else(|| nearest(vec![Target::MomentPoint]))
             .or_else(|| edge_under(scene, pos))
             .or_else(|| still_level_under(scene, pos))
             .or_else(|| obstacle_under(scene, pos))
@@ -140,7 +141,7 @@ impl Target {
     /// Its name with its numbers, as it is spoken: `Vertex 3, s 0.550 m, z 1.760 m`.
     pub fn words(self, scene: &Scene) -> String {
         let units = scene.units;
-        let place = self.anchor(scene).map(|p| place_words(p, units)).unwrap_or_default();
+        let place = self.anchor(scene).map(|p| place_words(p, scene)).unwrap_or_default();
         let name = |own: &str, word: &str, i: usize| match own {
             "" => format!("{word} {}", i + 1),
             own => format!("{word} {}, {own}", i + 1),
@@ -176,10 +177,11 @@ impl Target {
     }
 }
 
-/// A place in words: `s 0.550 m, z 1.760 m`.
-pub fn place_words(p: Point, units: UnitSystem) -> String {
-    let unit = Quantity::Distance.unit(units);
-    let number = |v: f64| fixed(unit.from_si(v), 3);
+/// A place in words, as fine as the board shows it: `s 0.550 m, z 1.760 m`.
+pub fn place_words(p: Point, scene: &Scene) -> String {
+    let unit = Quantity::Distance.unit(scene.units);
+    let decimals = (scene.screen.scale().log10().floor() as usize + 1).max(3);
+    let number = |v: f64| fixed(unit.from_si(v), decimals);
     format!("s {} {unit}, z {} {unit}", number(p.x), number(p.y), unit = unit.symbol)
 }
 

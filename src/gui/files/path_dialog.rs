@@ -2,10 +2,10 @@
 
 use std::path::{Path, PathBuf};
 
-use egui::{Id, Key, Modal, Ui, vec2};
+use egui::{Key, Ui, vec2};
 
 use super::{EXTENSION, Purpose};
-use crate::gui::{Look, font};
+use crate::gui::{Look, font, modals};
 
 /// What the dialog says at the end of a frame.
 pub(super) enum Answer {
@@ -50,7 +50,7 @@ impl PathDialog {
 
     pub(super) fn ui(&mut self, ctx: &egui::Context, look: &Look) -> Answer {
         let mut answer = Answer::None;
-        let modal = Modal::new(Id::unique("path dialog")).show(ctx, |ui| {
+        let modal = modals::modal("path dialog", look).show(ctx, |ui| {
             ui.set_width(520.0);
             answer = self.contents_ui(ui, look);
         });

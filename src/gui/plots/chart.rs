@@ -1,7 +1,7 @@
 //! What the plots share: ground, axes, curves, hatches, labels on the curve. No legend, no frame.
 
 use egui::{Align2, Color32, Painter, Pos2, Rect, Shape, Stroke, Ui, UiBuilder, pos2, vec2};
-use egui_plot::{AxisHints, GridMark, HoverPosition, Line, LineStyle, Plot, PlotPoint, PlotPoints, PlotTransform};
+use egui_plot::{AxisHints, GridMark, HoverPosition, Line, Plot, PlotPoint, PlotPoints, PlotTransform};
 
 use crate::gui::{Look, font, marks};
 use crate::units::{fixed, number};
@@ -78,17 +78,13 @@ pub fn chart_ui(ui: &mut Ui, rect: Rect, chart: Chart, look: &Look) -> PlotTrans
         .label_formatter(move |at| hover_words(at, &names));
     let body = rect.with_min_y(rect.top() + 14.0);
     let mut child = ui.new_child(UiBuilder::new().max_rect(body).id_salt(chart.id));
+    let points: Vec<Vec<PlotPoint>> = chart.curves.iter().map(|curve| thinned(&curve.points, x, y)).collect();
     let response = plot.show(&mut child, |plot_ui| {
         plot_ui.set_plot_bounds_x(x[0]..=x[1]);
         plot_ui.set_plot_bounds_y(y[0]..=y[1]);
-        for curve in chart.curves {
-            let points: Vec<PlotPoint> = curve.points.iter().map(|p| PlotPoint::new(p[0], p[1])).collect();
-            let line = Line::new(curve.name, PlotPoints::Owned(points));
-            plot_ui.line(if curve.is_second {
-                line.color(look.ink2).width(1.4).style(LineStyle::dashed_dense())
-            } else {
-                line.color(look.ink).width(1.75)
-            });
+        for (curve, points) in chart.curves.iter().zip(&points) {
+            // For the hand alone: egui_plot sets points on whole pixels, which makes steep curves thin.
+            plot_ui.line(Line::new(curve.name, PlotPoints::Borrowed(points)).color(look.ink).width(0.0));
         }
     });
     let transform = response.transform;
@@ -102,6 +98,15 @@ pub fn chart_ui(ui: &mut Ui, rect: Rect, chart: Chart, look: &Look) -> PlotTrans
         }
     }
     ui.painter().set(ground, Shape::Vec(under));
+    let inside = ui.painter().with_clip_rect(frame.expand(1.0).intersect(ui.clip_rect()));
+    for (curve, points) in chart.curves.iter().zip(&points) {
+        let path: Vec<Pos2> = points.iter().map(|p| transform.position_from_point(p)).collect();
+        if curve.is_second {
+            inside.extend(Shape::dashed_line(&path, (1.4, look.ink2), 5.0, 3.5));
+        } else {
+            inside.line(path, Stroke::new(1.75, look.ink));
+        }
+    }
     let base = ui.painter().round_to_pixel_center(frame.bottom());
     ui.painter().hline(frame.x_range(), base, (1.0, look.ink3));
     let end = pos2(frame.right(), frame.bottom() + 9.0);
@@ -171,16 +176,38 @@ pub fn range(values: impl Iterator<Item = f64>, with_zero: bool) -> [f64; 2] {
     [if with_zero && low == 0.0 { 0.0 } else { low - air }, if with_zero && high == 0.0 { 0.0 } else { high + air }]
 }
 
-/// Marks at 1, 2 or 5 times a power of ten, about `n` of them.
+/// Points that stand apart on the screen: a stroke has no direction where several lie in one place.
+fn thinned(points: &[[f64; 2]], x: [f64; 2], y: [f64; 2]) -> Vec<PlotPoint> {
+    const APART: f64 = 1.0 / 600.0;
+    let mut kept: Vec<PlotPoint> = Vec::with_capacity(points.len());
+    for (i, p) in points.iter().enumerate() {
+        let is_apart = kept.last().is_none_or(|last| {
+            (p[0] - last.x).abs() > APART * (x[1] - x[0]) || (p[1] - last.y).abs() > APART * (y[1] - y[0])
+        });
+        if !is_apart && i + 1 == points.len() {
+            kept.pop();
+        }
+        if is_apart || i + 1 == points.len() {
+            kept.push(PlotPoint::new(p[0], p[1]));
+        }
+    }
+    kept
+}
+
+/// Marks at 1, 2 or 5 times a power of ten, about `n` of them and at least three.
 fn marks_every((low, high): (f64, f64), n: f32) -> Vec<GridMark> {
-    let rough = (high - low) / f64::from(n.clamp(2.0, 12.0));
-    let power = 10_f64.powf(rough.log10().floor());
-    let step = [1.0, 2.0, 5.0, 10.0].into_iter().map(|m| m * power).find(|step| *step >= rough).unwrap_or(rough);
-    if !step.is_finite() || step <= 0.0 {
+    let n = f64::from(n.clamp(3.0, 12.0));
+    let power = 10_f64.powf(((high - low) / n).log10().floor());
+    if !power.is_finite() || power <= 0.0 {
         return Vec::new();
     }
-    let (first, last) = ((low / step).ceil() as i64, (high / step).floor() as i64);
-    (first..=last).map(|i| GridMark { value: i as f64 * step, step_size: step }).collect()
+    let marks = |step: f64| -> Vec<GridMark> {
+        let (first, last) = ((low / step).ceil() as i64, (high / step).floor() as i64);
+        (first..=last).map(|i| GridMark { value: i as f64 * step, step_size: step }).collect()
+    };
+    let enough = (0.6 * n).max(3.0) as usize;
+    let steps = [10.0, 5.0, 2.0, 1.0, 0.5].map(|m| m * power);
+    steps.into_iter().map(marks).find(|marks| marks.len() >= enough).unwrap_or_default()
 }
 
 fn decimals(step: f64) -> usize {
@@ -207,11 +234,19 @@ mod tests {
     }
 
     #[test]
+    fn thinning_keeps_both_ends_and_drops_what_lies_in_one_place() {
+        let points = [[0.0, 0.0], [0.0, 0.0], [0.0, 0.0], [0.5, 2.0], [0.9999, 1.0], [1.0, 1.0]];
+        let got: Vec<[f64; 2]> = thinned(&points, [0.0, 1.0], [0.0, 2.0]).iter().map(|p| [p.x, p.y]).collect();
+        assert_eq!(got, [[0.0, 0.0], [0.5, 2.0], [1.0, 1.0]]);
+        assert!(thinned(&[], [0.0, 1.0], [0.0, 1.0]).is_empty());
+    }
+
+    #[test]
     fn marks_are_round_and_about_as_many_as_asked() {
         for (low, high) in [(0.0, 1.0), (-37.0, 42.5), (60.0, 95.0), (0.0, 1234.0), (-1e-3, 2e-3)] {
             for n in [3.0, 5.0, 8.0] {
                 let marks = marks_every((low, high), n);
-                assert!((2..=9).contains(&marks.len()), "{low}..{high}, {n}: {} marks", marks.len());
+                assert!((3..=9).contains(&marks.len()), "{low}..{high}, {n}: {} marks", marks.len());
                 assert!(marks.iter().all(|m| low <= m.value && m.value <= high));
             }
         }

@@ -21,8 +21,11 @@ pub(super) fn freeboard_ui(ui: &mut Ui, rect: Rect, curve: &FreeboardCurve, desk
         (Some(first), Some(last)) if first[0] < last[0] => [first[0], last[0]],
         _ => return chart::empty_ui(ui, rect, "Waits for a fill and a mouth", look),
     };
-    let y = chart::range(required.iter().chain(&available).map(|p| p[1]), true);
     let holds_to = curve.holds_to.as_ref().map(shown);
+    let now = curve.now.as_ref().map(shown);
+    // Near a full tank the required freeboard can grow without bound: it may leave the plot.
+    let highest = available.iter().chain(&holds_to).chain(&now).map(|p| p[1]).fold(0.0, f64::max);
+    let y = chart::range(required.iter().chain(&available).map(|p| p[1].clamp(-0.1 * highest, 1.4 * highest)), true);
     let chart = Chart {
         id: "freeboard against fill",
         x_words: "fill".to_owned(),
@@ -40,7 +43,6 @@ pub(super) fn freeboard_ui(ui: &mut Ui, rect: Rect, curve: &FreeboardCurve, desk
     let painter = ui.painter().with_clip_rect(t.frame().expand(8.0));
     chart::name(&painter, &t, &required, 0.12, "required", look);
     chart::name(&painter, &t, &available, 0.35, "available", look);
-    let now = curve.now.as_ref().map(shown);
     if let Some(now) = now {
         let at = chart::place(&t, now);
         painter.vline(painter.round_to_pixel_center(at.x), t.frame().y_range(), (1.25, look.accent));

@@ -4,13 +4,14 @@ use egui::{Align2, Rect, Shape, Ui, pos2, vec2};
 
 use crate::analysis::WallCurve;
 use crate::gui::{Desk, font};
-use crate::units::{Measure, Quantity};
+use crate::units::{Quantity, number};
 
 use super::chart::{self, Chart, Curve};
 
 pub(super) fn wall_ui(ui: &mut Ui, rect: Rect, curve: &WallCurve, desk: &Desk) {
     let look = desk.look;
-    let (along, pressure) = (desk.unit(Quantity::Distance), desk.unit(Quantity::GagePressure));
+    let highest = curve.points.iter().chain(&curve.at_rest).map(|p| p[1].abs()).fold(0.0, f64::max);
+    let (along, pressure) = (desk.unit(Quantity::Distance), desk.unit_near(Quantity::GagePressure, highest));
     let shown = |p: &[f64; 2]| [along.from_si(p[0]), pressure.from_si(p[1])];
     let now: Vec<_> = curve.points.iter().map(shown).collect();
     let at_rest: Vec<_> = curve.at_rest.iter().map(shown).collect();
@@ -50,7 +51,7 @@ pub(super) fn wall_ui(ui: &mut Ui, rect: Rect, curve: &WallCurve, desk: &Desk) {
     if let Some(peak) = curve.peak {
         let at = chart::place(&t, shown(&peak));
         chart::dot(&painter, at, look);
-        let words = Measure::new(Quantity::GagePressure, peak[1]).number(desk.units(), 3);
+        let words = number(pressure.from_si(peak[1]), 3);
         chart::label(&painter, &frame, at + vec2(9.0, -7.0), Align2::LEFT_CENTER, &words, look.accent, look);
     }
     if let Some(rest) = at_rest.iter().copied().max_by(|a, b| a[1].total_cmp(&b[1]))

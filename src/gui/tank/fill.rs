@@ -2,8 +2,10 @@
 
 use egui::{CornerRadius, Key, Rect, Response, Sense, Ui, WidgetInfo, pos2, vec2};
 
+use crate::analysis::{State, Still};
 use crate::app::Edit;
-use crate::gui::field::{self, Number};
+use crate::gui::field;
+use crate::gui::number::Number;
 use crate::gui::{Desk, Proposal, marks};
 use crate::study::Fill;
 use crate::units::{Quantity, fixed};
@@ -11,53 +13,64 @@ use crate::units::{Quantity, fixed};
 /// Share by which the arrow keys move the fill.
 const KEY_STEP: f64 = 0.001;
 
-pub(super) fn fill_ui(ui: &mut Ui, desk: &mut Desk) {
-    let given = desk.study().fill;
-    let judged = desk.judged();
-    let still = judged.map(|j| &j.results.still);
-    let share = match given {
-        Fill::Share(share) => Some(share),
-        _ => still.map(|s| s.share),
-    };
-    let highest = still.and_then(|s| s.highest_share);
-    let is_over = matches!((share, highest), (Some(share), Some(highest)) if share > highest);
+/// A way of giving the fill.
+struct Way {
+    label: &'static str,
+    quantity: Quantity,
+    fill: fn(f64) -> Fill,
+    of_still: fn(&Still) -> f64,
+}
 
-    let percent = desk.unit(Quantity::Share);
-    Number::new("fill share", "Fill", 0.0, percent)
-        .or_none(share)
-        .significant(3)
-        .computed(!matches!(given, Fill::Share(_)))
-        .color(desk.look.accent)
-        .row_ui(ui, desk, |si| Edit::Fill(Fill::Share(si)));
+const SHARE: Way = Way { label: "Fill", quantity: Quantity::Share, fill: Fill::Share, of_still: |s| s.share };
+
+const OTHER_WAYS: [Way; 3] = [
+    Way { label: "Volume", quantity: Quantity::Volume, fill: Fill::Volume, of_still: |s| s.volume_m3 },
+    Way { label: "Still level, z", quantity: Quantity::Length, fill: Fill::Level, of_still: |s| s.level_z_m },
+    Way { label: "Ullage height", quantity: Quantity::Length, fill: Fill::Ullage, of_still: |s| s.ullage_m },
+];
+
+pub(super) fn fill_ui(ui: &mut Ui, desk: &mut Desk) {
+    let look = desk.look;
+    let share = way_ui(ui, desk, &SHARE);
+    let highest = desk.judged().and_then(|j| j.results.still.highest_share);
     if let Some(share) = share {
         bar_ui(ui, desk, share, highest);
     }
-    let (highest_text, color) = match highest {
-        Some(highest) if is_over => (percent_down(highest), desk.look.state(crate::analysis::State::Fails)),
-        Some(highest) => (percent_down(highest), desk.look.ink),
-        None => ("–".to_owned(), desk.look.ink3),
+    let color = match (share, highest) {
+        _ if desk.judged().is_none_or(|j| j.is_stale) => look.ink3,
+        (Some(share), Some(highest)) if share > highest => look.state(State::Fails),
+        _ => look.ink,
     };
-    field::computed_row_ui(ui, desk.look, "Highest that holds", &highest_text, "%", color)
+    let words = highest.map_or_else(|| "–".to_owned(), percent_down);
+    field::computed_row_ui(ui, look, "Highest that holds", &words, "%", color)
         .on_hover_text("The highest fill that no judged load case spills, over the whole ramp from rest");
+    for way in &OTHER_WAYS {
+        way_ui(ui, desk, way);
+    }
+}
 
-    let (volume, level, ullage) = match given {
-        Fill::Volume(v) => (Some(v), still.map(|s| s.level_z_m), still.map(|s| s.ullage_m)),
-        Fill::Level(z) => (still.map(|s| s.volume_m3), Some(z), still.map(|s| s.ullage_m)),
-        Fill::Ullage(u) => (still.map(|s| s.volume_m3), still.map(|s| s.level_z_m), Some(u)),
-        Fill::Share(_) => (still.map(|s| s.volume_m3), still.map(|s| s.level_z_m), still.map(|s| s.ullage_m)),
+/// One row: the value as it was given, else as it follows from the still tank. Gives the value.
+fn way_ui(ui: &mut Ui, desk: &mut Desk, way: &Way) -> Option<f64> {
+    let given = match desk.study().fill {
+        fill @ (Fill::Share(si) | Fill::Volume(si) | Fill::Level(si) | Fill::Ullage(si)) => {
+            (fill == (way.fill)(si)).then_some(si)
+        }
     };
-    Number::new("fill volume", "Volume", 0.0, desk.unit(Quantity::Volume))
-        .or_none(volume)
-        .computed(!matches!(given, Fill::Volume(_)))
-        .row_ui(ui, desk, |si| Edit::Fill(Fill::Volume(si)));
-    Number::new("fill level", "Still level, z", 0.0, desk.unit(Quantity::Length))
-        .or_none(level)
-        .computed(!matches!(given, Fill::Level(_)))
-        .row_ui(ui, desk, |si| Edit::Fill(Fill::Level(si)));
-    Number::new("fill ullage", "Ullage height", 0.0, desk.unit(Quantity::Length))
-        .or_none(ullage)
-        .computed(!matches!(given, Fill::Ullage(_)))
-        .row_ui(ui, desk, |si| Edit::Fill(Fill::Ullage(si)));
+    let judged = desk.judged();
+    let si = given.or(judged.map(|j| (way.of_still)(&j.results.still)));
+    let is_stale = given.is_none() && judged.is_none_or(|j| j.is_stale);
+    let color = match way.quantity {
+        _ if is_stale => desk.look.ink3,
+        Quantity::Share => desk.look.accent,
+        _ => desk.look.ink,
+    };
+    Number::new(("fill", way.label), way.label, 0.0, desk.unit_near(way.quantity, si.unwrap_or(1.0)))
+        .or_none(si)
+        .significant(if way.quantity == Quantity::Share { 3 } else { 4 })
+        .computed(given.is_none())
+        .color(color)
+        .row_ui(ui, desk, |si| Edit::Fill((way.fill)(si)));
+    si
 }
 
 /// The fill as a bar with a handle: drag it, or move it with the arrow keys.
@@ -72,7 +85,7 @@ fn bar_ui(ui: &mut Ui, desk: &mut Desk, share: f64, highest: Option<f64>) -> Res
     painter.rect_filled(track.with_max_x(x_of(share)), CornerRadius::ZERO, look.pressure_at(0.4));
     if let Some(highest) = highest {
         let x = painter.round_to_pixel_center(x_of(highest));
-        painter.vline(x, track.expand(3.0).y_range(), (1.25, look.state(crate::analysis::State::Fails)));
+        painter.vline(x, track.expand(3.0).y_range(), (1.25, look.state(State::Fails)));
     }
     let handle = Rect::from_center_size(pos2(x_of(share), rect.center().y), vec2(4.0, 13.0));
     painter.rect_filled(handle.expand(1.0), CornerRadius::ZERO, look.panel);

@@ -4,7 +4,8 @@ use egui::{Align, Shape, Stroke, Ui, pos2};
 
 use crate::app::Edit;
 use crate::geom::{Point, Vec2};
-use crate::gui::field::{self, Number};
+use crate::gui::field;
+use crate::gui::number::Number;
 use crate::gui::{Desk, Selected, font};
 use crate::section::EdgeKind;
 use crate::study::NamedPoint;
@@ -29,7 +30,7 @@ pub(super) fn mouths_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
         let label = section.edge_label(i);
         let rect = field::row_rect(ui);
         let is_selected = desk.view.selected == Some(Selected::Edge(i));
-        let response = list_row_ui(ui, rect, desk, is_selected, &label, &format!("Mouth, {label}"));
+        let response = list_row_ui(ui, rect, desk, is_selected, &label, &format!("Mouth, {label}"), 46.0);
         let y = ui.painter().round_to_pixel_center(rect.center().y);
         let (a, b) = (pos2(rect.left(), y), pos2(rect.left() + 11.0, y));
         let ink = Stroke::new(2.0, desk.look.ink);
@@ -60,7 +61,7 @@ pub(super) fn points_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
         let rect = field::row_rect(ui);
         let is_selected = desk.view.selected == Some(Selected::Point(i));
         let response =
-            list_row_ui(ui, rect, desk, is_selected, &point.name, &format!("Point {}, {}", i + 1, point.name));
+            list_row_ui(ui, rect, desk, is_selected, &point.name, &format!("Point {}, {}", i + 1, point.name), 82.0);
         let number = |m: f64| Measure::new(Quantity::Length, m).number(desk.units(), 4);
         let place = format!("{}, {}", number(point.at.x), number(point.at.y));
         let numbers = rect.with_max_x(field::number_right(rect));

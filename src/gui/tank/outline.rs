@@ -6,7 +6,8 @@ use egui::{Align, Rect, Response, Role, Sense, Ui, WidgetInfo, pos2, vec2};
 
 use crate::app::Edit;
 use crate::geom::{Edge, Point};
-use crate::gui::field::{self, Number};
+use crate::gui::field;
+use crate::gui::number::Number;
 use crate::gui::{Desk, Selected, font};
 use crate::section::{EdgeKind, Obstacle, Vertex};
 use crate::units::{Measure, Quantity};
@@ -65,7 +66,8 @@ pub(super) fn obstacles_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
         };
         let words = if obstacle.name.is_empty() { format!("obstacle {}", i + 1) } else { obstacle.name.clone() };
         let rect = field::row_rect(ui);
-        let response = list_row_ui(ui, rect, desk, is_selected, &words, &format!("Obstacle {}, {words}", i + 1));
+        let response =
+            list_row_ui(ui, rect, desk, is_selected, &words, &format!("Obstacle {}, {words}", i + 1), 10.0);
         let corners = format!("{} corners", obstacle.vertices.len());
         field::paint_fitting(ui, rect, Align::Max, &corners, font::small(), desk.look.ink3);
         if response.clicked() {
@@ -86,7 +88,7 @@ pub(super) fn obstacles_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
     }
 }
 
-/// A row of a list: hover, choice and words; the caller adds what stands at the right.
+/// A row of a list: hover, choice and words; the caller adds what stands at the right, `taken` wide before the unit.
 pub(super) fn list_row_ui(
     ui: &Ui,
     rect: Rect,
@@ -94,6 +96,7 @@ pub(super) fn list_row_ui(
     is_selected: bool,
     words: &str,
     spoken: &str,
+    taken: f32,
 ) -> Response {
     let look = desk.look;
     let response = ui.interact(rect, egui::Id::unique(("list row", spoken)), Sense::click());
@@ -104,7 +107,7 @@ pub(super) fn list_row_ui(
     } else if response.hovered() {
         ui.painter().rect_filled(ground, 0.0, look.hover);
     }
-    let text = rect.with_min_x(rect.left() + 18.0).with_max_x(field::number_right(rect) - 56.0);
+    let text = rect.with_min_x(rect.left() + 18.0).with_max_x(field::number_right(rect) - taken);
     field::paint_fitting(ui, text, Align::Min, words, font::body(), look.ink2);
     crate::gui::marks::paint_focus(ui.painter(), ground.shrink(2.0), &response, look);
     response
@@ -120,7 +123,15 @@ fn edge_row_ui(ui: &mut Ui, desk: &mut Desk, i: usize, is_selected: bool) -> Res
     };
     let words = if edge.name.is_empty() { kind.to_owned() } else { format!("{kind}, {}", edge.name) };
     let rect = field::row_rect(ui);
-    let response = list_row_ui(ui, rect, desk, is_selected, &words, &format!("Edge {}, {words}", i + 1));
+    let response = list_row_ui(
+        ui,
+        rect,
+        desk,
+        is_selected,
+        &words,
+        &format!("Edge {}, {words}", i + 1),
+        if geometry.is_arc() { 58.0 } else { 44.0 },
+    );
     field::paint_fitting(ui, rect, Align::Min, &(i + 1).to_string(), font::body(), desk.look.ink3);
     let length = desk.unit(Quantity::Length);
     if geometry.is_arc() {
@@ -138,7 +149,7 @@ fn edge_row_ui(ui: &mut Ui, desk: &mut Desk, i: usize, is_selected: bool) -> Res
         let unit = rect.with_min_x(rect.right() - field::UNIT_COLUMN);
         field::paint_fitting(ui, unit, Align::Min, length.symbol, font::small(), desk.look.ink3);
     }
-    response
+    response.on_hover_text(words)
 }
 
 fn edge_fields_ui(ui: &mut Ui, desk: &mut Desk, i: usize) {

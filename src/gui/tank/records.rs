@@ -3,7 +3,8 @@
 use egui::{Align, Ui, pos2};
 
 use crate::app::Edit;
-use crate::gui::field::{self, Number};
+use crate::gui::field;
+use crate::gui::number::Number;
 use crate::gui::{Desk, font, marks};
 use crate::study::{Limit, Record};
 
@@ -41,7 +42,7 @@ pub(super) fn records_ui(ui: &mut Ui, desk: &mut Desk, column: &mut TankColumn) 
         let is_open = column.open_record == Some(i);
         let state = if record.confirmed { "confirmed" } else { "unconfirmed" };
         let spoken = format!("Record {}, {}, {state}", i + 1, record.title);
-        let response = list_row_ui(ui, rect, desk, is_open, &record.title, &spoken);
+        let response = list_row_ui(ui, rect, desk, is_open, &record.title, &spoken, 46.0);
         let mark = pos2(rect.left() + 5.0, rect.center().y);
         marks::paint_record_mark(ui.painter(), mark, record.confirmed, desk.look);
         let measure = record.limit.measure();
