@@ -12,8 +12,8 @@ struct Slab {
     bottom: f64,
     top: f64,
     /// Range in `crossing`.
-    first: usize,
-    n: usize,
+    first: u32,
+    n: u32,
     /// Area of the region below the slab.
     area_below: f64,
     width_bottom: f64,
@@ -41,8 +41,9 @@ struct Crossing {
 }
 
 /// A piece that the sweep crosses, with its u at the borders and in the middle of the present slab.
-#[derive(Clone, Copy, Debug, Default)]
-struct Active {
+#[derive(Clone, Copy, Debug)]
+struct Active<'a> {
+    piece: &'a Piece,
     piece_idx: u32,
     u_bottom: f64,
     u_middle: f64,
@@ -188,7 +189,7 @@ impl Sublevel {
         let mut below: Vec<([f64; 2], usize)> = Vec::new();
         let mut parent: Vec<usize> = Vec::new();
         for slab in slabs {
-            let mut here = Vec::with_capacity(slab.n / 2);
+            let mut here = Vec::with_capacity(slab.n as usize / 2);
             for (left, right) in self.strips(slab) {
                 let id = parent.len();
                 parent.push(id);
@@ -221,7 +222,10 @@ impl Sublevel {
             Until::Level(level) => (level - self.origin_level, f64::INFINITY),
             Until::Area(area) => (f64::INFINITY, area),
         };
-        let mut rising: Vec<(f64, u32)> = self.pieces.iter().map(|p| p.low[1]).zip(0..).collect();
+        let pieces = &self.pieces;
+        // Only low points need sorting: from there the chains lead up, piece by piece.
+        let starts = (0..pieces.len()).filter(|&i| !is_led_to(pieces, i));
+        let mut rising: Vec<(f64, u32)> = starts.map(|i| (pieces[i].low[1], i as u32)).collect();
         rising.sort_unstable_by(|a, b| a.0.total_cmp(&b.0));
         let mut rising = rising.into_iter().peekable();
         let Some(&(mut bottom, _)) = rising.peek() else { return };
@@ -230,12 +234,19 @@ impl Sublevel {
         let mut active: Vec<Active> = Vec::with_capacity(8);
         let mut area = 0.0;
         loop {
-            let pieces = &self.pieces;
-            active.retain(|a| pieces[a.piece_idx as usize].high[1] > bottom);
+            active.retain_mut(|a| {
+                if a.piece.high[1] > bottom {
+                    return true;
+                }
+                let Some(next) = next_up(pieces, a.piece_idx as usize) else { return false };
+                (a.piece, a.piece_idx) = (&pieces[next], next as u32);
+                true
+            });
             while let Some((_, piece_idx)) = rising.next_if(|next| next.0 <= bottom) {
-                active.push(Active { piece_idx, u_top: pieces[piece_idx as usize].low[0], ..Active::default() });
+                let piece = &pieces[piece_idx as usize];
+                active.push(Active { piece, piece_idx, u_bottom: 0.0, u_middle: 0.0, u_top: piece.low[0] });
             }
-            let ends = active.iter().map(|a| pieces[a.piece_idx as usize].high[1]);
+            let ends = active.iter().map(|a| a.piece.high[1]);
             let top = ends.chain(rising.peek().map(|next| next.0)).fold(f64::INFINITY, f64::min);
             if top == f64::INFINITY {
                 break;
@@ -243,7 +254,7 @@ impl Sublevel {
             let middle = 0.5 * (bottom + top);
             let (mut width_bottom, mut width_top, mut segments, mut has_arcs) = (0.0, 0.0, 0.0, false);
             for a in &mut active {
-                let piece = &pieces[a.piece_idx as usize];
+                let piece = a.piece;
                 a.u_bottom = a.u_top;
                 a.u_top = piece.u_at(top);
                 a.u_middle = 0.5 * (a.u_bottom + a.u_top);
@@ -257,7 +268,7 @@ impl Sublevel {
             }
             active.sort_unstable_by(|a, b| a.u_middle.total_cmp(&b.u_middle));
             let (width_bottom, width_top) = (f64::max(width_bottom, 0.0), f64::max(width_top, 0.0));
-            let (first, n) = (self.crossing.len(), active.len());
+            let (first, n) = (self.crossing.len() as u32, active.len() as u32);
             let crossing = active.iter().map(|a| Crossing { piece_idx: a.piece_idx, u_bottom: a.u_bottom });
             self.crossing.extend(crossing);
             self.slabs.push(Slab { bottom, top, first, n, area_below: area, width_bottom, width_top, has_arcs });
@@ -277,7 +288,7 @@ impl Sublevel {
     }
 
     fn crossing_of(&self, slab: &Slab) -> &[Crossing] {
-        &self.crossing[slab.first..slab.first + slab.n]
+        &self.crossing[slab.first as usize..(slab.first + slab.n) as usize]
     }
 
     fn strips(&self, slab: &Slab) -> impl Iterator<Item = (&Piece, &Piece)> {
@@ -318,6 +329,19 @@ impl Sublevel {
         }
         rise
     }
+}
+
+/// The piece that goes on upward where piece `i` ends.
+fn next_up(pieces: &[Piece], i: usize) -> Option<usize> {
+    let next = if pieces[i].is_right { i + 1 } else { i.checked_sub(1)? };
+    let goes_on = |p: &Piece| p.is_right == pieces[i].is_right && p.low == pieces[i].high;
+    pieces.get(next).is_some_and(goes_on).then_some(next)
+}
+
+/// Whether some piece goes on as piece `i`.
+fn is_led_to(pieces: &[Piece], i: usize) -> bool {
+    let before = if pieces[i].is_right { i.checked_sub(1) } else { Some(i + 1) };
+    before.is_some_and(|b| b < pieces.len() && next_up(pieces, b) == Some(i))
 }
 
 fn root_of(parent: &mut [usize], mut i: usize) -> usize {
