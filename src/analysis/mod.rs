@@ -21,8 +21,9 @@ pub fn run(study: &ValidStudy) -> Results {
     let volume = study.fill_volume_m3();
     let level = still_tilted.level_for_volume(volume);
     let (bottom, top) = still_tilted.span();
+    let still_length_m = length_m(&still_tilted.chords(level));
     let judged: Vec<(CaseResult, Option<f64>)> =
-        inputs.cases.par_iter().map(|case| judge_case(study, case, level)).collect();
+        inputs.cases.par_iter().map(|case| judge_case(study, case, level, still_length_m)).collect();
     let holds = judged.iter().filter_map(|(_, holds)| *holds).reduce(f64::min);
     let cases: Vec<CaseResult> = judged.into_iter().map(|(case, _)| case).collect();
     let rest_pa = inputs.liquid.density_kg_per_m3 * inputs.gravity_m_per_s2 * (level - bottom);
@@ -51,7 +52,7 @@ pub fn run(study: &ValidStudy) -> Results {
 }
 
 /// The load case, judged, and the volume that its way holds, where that could be judged.
-fn judge_case(study: &ValidStudy, case: &LoadCase, still_z_m: f64) -> (CaseResult, Option<f64>) {
+fn judge_case(study: &ValidStudy, case: &LoadCase, still_z_m: f64, still_length_m: f64) -> (CaseResult, Option<f64>) {
     let inputs = study.study();
     let accel = case.accel.to_m_per_s2(inputs.gravity_m_per_s2);
     let phi = case.attitude.angle_rad();
@@ -72,7 +73,7 @@ fn judge_case(study: &ValidStudy, case: &LoadCase, still_z_m: f64) -> (CaseResul
         spill: spill.as_ref(),
         settled: settled.as_ref().map_err(String::as_str),
         rims: rims.as_ref(),
-        blocked: blocked(study, &gravity, settled.as_ref().ok()),
+        blocked: blocked(study, &gravity, settled.as_ref().ok(), still_length_m),
     };
     let Outcome { verdicts, absent } = criteria::judge(&context);
     let can_tell = |s: &&Spill| !s.has_several_pools && context.blocked.is_none();
@@ -110,13 +111,19 @@ fn settle_case(study: &ValidStudy, gravity: &EffectiveGravity, spill: Option<&Sp
 /// Bond number rho |G| L^2 / sigma below which capillarity rules the surface. Source: [BondNumber].
 const LEAST_BOND_NUMBER: f64 = 10.0;
 
-/// Why nothing of the case can be judged.
-fn blocked(study: &ValidStudy, gravity: &EffectiveGravity, settled: Option<&Settled>) -> Option<String> {
+/// Why nothing of the case can be judged. Capillarity is measured by the longer of the still and the settled surface:
+/// the few drops that a spill leaves must not hide the spill.
+fn blocked(
+    study: &ValidStudy,
+    gravity: &EffectiveGravity,
+    settled: Option<&Settled>,
+    still_length_m: f64,
+) -> Option<String> {
     if gravity.up.is_none() {
         return Some("free fall: there is no settled surface".to_owned());
     }
     let liquid = &study.study().liquid;
-    let length: f64 = settled?.surface.iter().map(Chord::length).sum();
+    let length = length_m(&settled?.surface).max(still_length_m);
     let bond = liquid.density_kg_per_m3 * gravity.magnitude * length * length / liquid.surface_tension();
     (length > 0.0 && bond < LEAST_BOND_NUMBER).then(|| {
         format!(
@@ -124,6 +131,11 @@ fn blocked(study: &ValidStudy, gravity: &EffectiveGravity, settled: Option<&Sett
             crate::units::number(bond, 2)
         )
     })
+}
+
+/// Length of a surface over all its pieces, m.
+fn length_m(surface: &[Chord]) -> f64 {
+    surface.iter().map(Chord::length).sum()
 }
 
 /// Eight equal tints: the least nice step that reaches `highest`, times eight.

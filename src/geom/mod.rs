@@ -5,6 +5,7 @@
 
 mod edge;
 mod path;
+mod piece;
 mod sublevel;
 
 pub use edge::{Edge, rotate};

@@ -4,54 +4,8 @@
 //! the edges neither start nor end nor cross, so that the region there is a row of strips between a left and a
 //! right piece, and area is the trapezoid between chords plus circular segments: every term adds, nothing cancels.
 
-use super::edge::phi_minus_sin;
+use super::piece::{Piece, cut};
 use super::{Edge, Point, Vec2};
-
-/// A stretch of an edge along which the level only rises, in (u, v) about the region's origin: v along `up`, u to
-/// its right.
-#[derive(Clone, Copy, Debug)]
-struct Piece {
-    low: [f64; 2],
-    high: [f64; 2],
-    /// Whether the edge travels upward here: the region is then to its left, and it bounds a strip on the right.
-    is_right: bool,
-    /// du/dv of the chord.
-    gain: f64,
-    /// Arcs: (low end - centre), signed radius as travelled.
-    arc: Option<([f64; 2], f64)>,
-}
-
-impl Piece {
-    /// u at level `v`.
-    fn u_at(&self, v: f64) -> f64 {
-        if v <= self.low[1] {
-            return self.low[0];
-        }
-        if v >= self.high[1] {
-            return self.high[0];
-        }
-        let d = v - self.low[1];
-        match self.arc {
-            None => self.low[0] + self.gain * d,
-            Some(([x, t], radius)) => {
-                // (x + du)^2 + (t + d)^2 = x^2 + t^2, solved for du without cancellation. The piece stays on one
-                // side of the centre: the outer side of a left turn travelling up, and so on.
-                let q = d * (2.0 * t + d);
-                let side = if (radius > 0.0) == self.is_right { 1.0 } else { -1.0 };
-                let denominator = x.abs() + (x * x - q).max(0.0).sqrt();
-                if denominator > 0.0 { self.low[0] - side * q / denominator } else { self.low[0] }
-            }
-        }
-    }
-
-    /// Area that the arc adds to the strips beyond its chord, between two of its points.
-    fn segment_area(&self, from: [f64; 2], to: [f64; 2]) -> f64 {
-        let Some((_, radius)) = self.arc else { return 0.0 };
-        let chord = (to[0] - from[0]).hypot(to[1] - from[1]);
-        let phi = 2.0 * (chord / (2.0 * radius.abs())).min(1.0).asin();
-        0.5 * radius * radius.abs() * phi_minus_sin(phi)
-    }
-}
 
 #[derive(Clone, Copy, Debug)]
 struct Slab {
@@ -67,6 +21,14 @@ struct Slab {
     has_arcs: bool,
 }
 
+/// A piece that crosses a slab.
+#[derive(Clone, Copy, Debug)]
+struct Crossing {
+    piece_idx: u32,
+    /// u at the slab's bottom.
+    u_bottom: f64,
+}
+
 /// A region seen along one direction: area against level and back.
 ///
 /// Levels are v = up . x in metres. Costs O(n log n) to make and O(log n) a level for straight edges.
@@ -79,8 +41,8 @@ pub struct Sublevel {
     origin_level: f64,
     pieces: Vec<Piece>,
     slabs: Vec<Slab>,
-    /// Indices of pieces, slab by slab, from left to right; strips are pairs.
-    crossing: Vec<u32>,
+    /// Slab by slab, from left to right; strips are pairs.
+    crossing: Vec<Crossing>,
     total: f64,
 }
 
@@ -89,18 +51,7 @@ impl Sublevel {
     pub fn new(edges: &[Edge], up: Vec2) -> Sublevel {
         let right = Vec2::new(up.y, -up.x);
         let origin = edges.first().map_or(Point::origin(), |e| e.start);
-        let local = |p: Point| {
-            let d = p - origin;
-            [right.dot(&d), up.dot(&d)]
-        };
-        let mut pieces = Vec::with_capacity(edges.len() + 8);
-        for edge in edges {
-            if edge.is_arc() {
-                push_arc(edge, up, right, local, &mut pieces);
-            } else {
-                push_piece(local(edge.start), local(edge.end), None, &mut pieces);
-            }
-        }
+        let pieces = cut(edges, origin, up, right);
         let mut this = Sublevel {
             up,
             right,
@@ -141,7 +92,7 @@ impl Sublevel {
         match self.slab_at(v) {
             None => 0.0,
             Some(slab) if v >= slab.top && slab.top == self.slabs[self.slabs.len() - 1].top => self.total,
-            Some(slab) => slab.area_below + self.area_in(slab, v),
+            Some(slab) => slab.area_below + self.measure(slab, v).1,
         }
     }
 
@@ -149,7 +100,7 @@ impl Sublevel {
     pub fn width_at(&self, level: f64) -> f64 {
         let v = level - self.origin_level;
         match self.slab_at(v) {
-            Some(slab) if v <= slab.top => self.width_in(slab, v),
+            Some(slab) if v <= slab.top => self.measure(slab, v).0,
             _ => 0.0,
         }
     }
@@ -238,46 +189,47 @@ impl Sublevel {
         (n_parts, n_basins)
     }
 
+    /// Sweeps upward: the next border is the next end of a piece that is crossed, or the next start of another.
     fn cut_into_slabs(&mut self) {
-        // In closed chains every level is that of the start of some piece.
-        let mut levels: Vec<f64> =
-            self.pieces.iter().map(|p| if p.is_right { p.low[1] } else { p.high[1] }).collect();
-        levels.sort_unstable_by(f64::total_cmp);
-        levels.dedup();
-        let mut rising: Vec<u32> = (0..self.pieces.len() as u32).collect();
-        rising.sort_unstable_by(|&a, &b| self.pieces[a as usize].low[1].total_cmp(&self.pieces[b as usize].low[1]));
+        let mut rising: Vec<(f64, u32)> = self.pieces.iter().map(|p| p.low[1]).zip(0..).collect();
+        rising.sort_unstable_by(|a, b| a.0.total_cmp(&b.0));
         let mut rising = rising.into_iter().peekable();
-        let mut active: Vec<(f64, u32)> = Vec::new();
+        let Some(&(mut bottom, _)) = rising.peek() else { return };
+        self.slabs.reserve(self.pieces.len());
+        self.crossing.reserve(4 * self.pieces.len());
+        let mut active: Vec<(f64, Crossing)> = Vec::with_capacity(8);
         let mut area = 0.0;
-        self.slabs.reserve(levels.len());
-        self.crossing.reserve(4 * levels.len());
-        for pair in levels.windows(2) {
-            let (bottom, top) = (pair[0], pair[1]);
-            active.retain(|&(_, i)| self.pieces[i as usize].high[1] > bottom);
-            while let Some(i) = rising.next_if(|&i| self.pieces[i as usize].low[1] <= bottom) {
-                active.push((0.0, i));
+        loop {
+            let pieces = &self.pieces;
+            active.retain(|(_, c)| pieces[c.piece_idx as usize].high[1] > bottom);
+            while let Some((_, piece_idx)) = rising.next_if(|next| next.0 <= bottom) {
+                active.push((0.0, Crossing { piece_idx, u_bottom: 0.0 }));
+            }
+            let ends = active.iter().map(|(_, c)| pieces[c.piece_idx as usize].high[1]);
+            let top = ends.chain(rising.peek().map(|next| next.0)).fold(f64::INFINITY, f64::min);
+            if top == f64::INFINITY {
+                break;
             }
             let middle = 0.5 * (bottom + top);
-            for (u, i) in &mut active {
-                *u = self.pieces[*i as usize].u_at(middle);
+            let (mut width_bottom, mut has_arcs) = (0.0, false);
+            for (u_middle, c) in &mut active {
+                let piece = &pieces[c.piece_idx as usize];
+                c.u_bottom = piece.u_at(bottom);
+                *u_middle = piece.u_at(middle);
+                width_bottom += piece.side() * c.u_bottom;
+                has_arcs |= piece.arc.is_some();
             }
             active.sort_unstable_by(|a, b| a.0.total_cmp(&b.0));
             let first = self.crossing.len();
-            self.crossing.extend(active.iter().map(|&(_, i)| i));
-            let mut slab = Slab {
-                bottom,
-                top,
-                first,
-                n: active.len(),
-                area_below: area,
-                width_bottom: 0.0,
-                width_top: 0.0,
-                has_arcs: active.iter().any(|&(_, i)| self.pieces[i as usize].arc.is_some()),
-            };
-            slab.width_bottom = self.width_in(&slab, bottom);
-            slab.width_top = self.width_in(&slab, top);
-            area += self.area_between(&slab, top, slab.width_top);
+            self.crossing.extend(active.iter().map(|&(_, c)| c));
+            let width_bottom = f64::max(width_bottom, 0.0);
+            let n = active.len();
+            let mut slab = Slab { bottom, top, first, n, area_below: area, width_bottom, width_top: 0.0, has_arcs };
+            let (width_top, area_within) = self.measure(&slab, top);
+            slab.width_top = width_top;
+            area += area_within;
             self.slabs.push(slab);
+            bottom = top;
         }
         self.total = area;
     }
@@ -288,38 +240,26 @@ impl Sublevel {
         (after > 0).then(|| &self.slabs[after - 1])
     }
 
-    fn crossing_of(&self, slab: &Slab) -> impl Iterator<Item = &Piece> {
-        self.crossing[slab.first..slab.first + slab.n].iter().map(|&i| &self.pieces[i as usize])
+    fn crossing_of(&self, slab: &Slab) -> &[Crossing] {
+        &self.crossing[slab.first..slab.first + slab.n]
     }
 
     fn strips(&self, slab: &Slab) -> impl Iterator<Item = (&Piece, &Piece)> {
-        self.crossing[slab.first..slab.first + slab.n]
-            .chunks_exact(2)
-            .map(|pair| (&self.pieces[pair[0] as usize], &self.pieces[pair[1] as usize]))
+        let piece = |c: &Crossing| &self.pieces[c.piece_idx as usize];
+        self.crossing_of(slab).chunks_exact(2).map(move |pair| (piece(&pair[0]), piece(&pair[1])))
     }
 
-    fn width_in(&self, slab: &Slab, v: f64) -> f64 {
-        let sum: f64 = self.crossing_of(slab).map(|p| if p.is_right { p.u_at(v) } else { -p.u_at(v) }).sum();
-        sum.max(0.0)
-    }
-
-    /// Area of the slab below `v`.
-    fn area_in(&self, slab: &Slab, v: f64) -> f64 {
-        self.area_between(slab, v, self.width_in(slab, v))
-    }
-
-    /// Area of the slab below `v`, where it is `width` wide.
-    fn area_between(&self, slab: &Slab, v: f64, width: f64) -> f64 {
-        let trapezoid = 0.5 * (slab.width_bottom + width) * (v - slab.bottom);
-        if !slab.has_arcs {
-            return trapezoid;
+    /// Width of the slab at `v`, and its area below: trapezoid and circular segments.
+    fn measure(&self, slab: &Slab, v: f64) -> (f64, f64) {
+        let (mut width, mut segments) = (0.0, 0.0);
+        for c in self.crossing_of(slab) {
+            let piece = &self.pieces[c.piece_idx as usize];
+            let u = piece.u_at(v);
+            width += piece.side() * u;
+            segments += piece.segment_area([c.u_bottom, slab.bottom], [u, v]);
         }
-        let segments: f64 = self
-            .crossing_of(slab)
-            .filter(|p| p.arc.is_some())
-            .map(|p| p.segment_area([p.u_at(slab.bottom), slab.bottom], [p.u_at(v), v]))
-            .sum();
-        trapezoid + segments
+        let width = f64::max(width, 0.0);
+        (width, 0.5 * (slab.width_bottom + width) * (v - slab.bottom) + segments)
     }
 
     /// Safeguarded Newton steps on area(rise) = missing; the area's derivative is the width.
@@ -327,8 +267,8 @@ impl Sublevel {
         let (mut low, mut high) = (0.0, slab.top - slab.bottom);
         let mut rise = guess;
         for _ in 0..80 {
-            let width = self.width_in(slab, slab.bottom + rise);
-            let error = self.area_between(slab, slab.bottom + rise, width) - missing;
+            let (width, area) = self.measure(slab, slab.bottom + rise);
+            let error = area - missing;
             if error > 0.0 {
                 high = rise
             } else {
@@ -350,41 +290,6 @@ fn root_of(parent: &mut [usize], mut i: usize) -> usize {
         i = parent[i];
     }
     i
-}
-
-fn push_piece(from: [f64; 2], to: [f64; 2], arc: Option<([f64; 2], f64)>, pieces: &mut Vec<Piece>) {
-    if from[1] == to[1] {
-        return;
-    }
-    let is_right = to[1] > from[1];
-    let (low, high) = if is_right { (from, to) } else { (to, from) };
-    let gain = (high[0] - low[0]) / (high[1] - low[1]);
-    pieces.push(Piece { low, high, is_right, gain, arc });
-}
-
-/// Cuts an arc where it turns along `up`, and at the quarter points between, where its angle is ill-conditioned
-/// as a function of the chord no more.
-fn push_arc(edge: &Edge, up: Vec2, right: Vec2, local: impl Fn(Point) -> [f64; 2], pieces: &mut Vec<Piece>) {
-    let radius = edge.radius();
-    // Point minus centre: the radius, at right angles to the tangent.
-    let out = |t: f64| {
-        let tangent = edge.tangent_at(t);
-        Vec2::new(tangent.y, -tangent.x) * radius
-    };
-    let end = |t: f64| (t, [right.dot(&out(t)), up.dot(&out(t))]);
-    let mut ends = vec![end(0.0), end(1.0)];
-    for t in edge.turning_points(up) {
-        ends.push((t, [0.0, up.dot(&out(t)).signum() * radius.abs()]));
-    }
-    for t in edge.turning_points(right) {
-        ends.push((t, [right.dot(&out(t)).signum() * radius.abs(), 0.0]));
-    }
-    ends.sort_unstable_by(|a, b| a.0.total_cmp(&b.0));
-    for pair in ends.windows(2) {
-        let ((t0, out0), (t1, out1)) = (pair[0], pair[1]);
-        let (from, to) = (local(edge.point_at(t0)), local(edge.point_at(t1)));
-        push_piece(from, to, Some((if to[1] > from[1] { out0 } else { out1 }, radius)), pieces);
-    }
 }
 
 #[cfg(test)]

@@ -6,8 +6,8 @@ use crate::app::Edit;
 use crate::cases::{Accel, AccelUnit, Attitude, LoadCase};
 use crate::units::{Quantity, Unit, number};
 
-use super::field::{self, Number};
-use super::{Command, Desk, font, formula};
+use super::number::Number;
+use super::{Command, Desk, field, font, formula};
 
 const LEVEL: f64 = 0.0;
 

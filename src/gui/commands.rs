@@ -250,16 +250,16 @@ impl Row {
     }
 }
 
-/// The commands whose keys were pressed. Keys without a modifier belong to a text field while it has the focus.
+/// The commands whose keys were pressed. While a text is typed, keys are its own save those of files and help.
 pub fn pressed(ctx: &egui::Context, doc: &Document, view: &View) -> Vec<Command> {
-    let is_typing = ctx.egui_wants_keyboard_input();
+    let is_typing = ctx.text_edit_focused();
     let mut rows: Vec<&Row> = TABLE.iter().filter(|row| row.shortcut.is_some()).collect();
     // The fullest set of modifiers first: egui takes Ctrl+Shift+Z for Ctrl+Z too.
     rows.sort_by_key(|row| row.shortcut.map_or(0, |s| u8::from(!s.modifiers.shift)));
     let mut out = Vec::new();
     for row in rows {
         let Some(shortcut) = row.shortcut else { continue };
-        if is_typing && shortcut.modifiers.is_none() && shortcut.logical_key != Key::F1 {
+        if is_typing && !matches!(row.menu, Menu::File | Menu::Help) {
             continue;
         }
         if (row.is_enabled)(doc, view) && ctx.input_mut(|i| i.consume_shortcut(&shortcut)) {

@@ -18,6 +18,7 @@ mod layout;
 pub mod look;
 pub mod marks;
 mod modals;
+mod number;
 mod plots;
 mod problems;
 mod settings;

@@ -23,6 +23,12 @@ pub fn strip_ui(ui: &mut Ui, rect: Rect, card_width: f32, has_drawings: bool, de
         let width = GAP + (n + 1) as f32 * (card_width + GAP);
         let (whole, _) = ui.allocate_exact_size(vec2(width, rect.height()), Sense::hover());
         let place = |i: usize| Rect::from_min_size(whole.min + vec2(GAP + i as f32 * (card_width + GAP), GAP), card);
+        // A case that was chosen elsewhere comes into view.
+        let seen = egui::Id::unique("case in view");
+        if ui.data(|d| d.get_temp::<usize>(seen)) != Some(desk.view.case_idx) {
+            ui.data_mut(|d| d.insert_temp(seen, desk.view.case_idx));
+            ui.scroll_to_rect(place(desk.view.case_idx).expand(GAP), None);
+        }
         let mut moved = None;
         for i in 0..n {
             let response = card_ui(ui, place(i), i, has_drawings, desk);

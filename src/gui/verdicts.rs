@@ -55,7 +55,7 @@ fn head_ui(ui: &mut Ui, rect: Rect, desk: &Desk, column: &mut VerdictColumn) {
     let y = rect.center().y + 3.0;
     let title = ui.painter().text(pos2(rect.left(), y), Align2::LEFT_CENTER, "Verdicts", font::heading(), look.ink);
     let words = if column.is_this_case_only { "this case only" } else { "all cases" };
-    let link = Rect::from_min_max(pos2(title.right() + 16.0, y - 10.0), pos2(rect.right(), y + 10.0));
+    let link = Rect::from_min_max(pos2(title.right() + 16.0, y - 9.0), pos2(rect.right(), y + 11.0));
     let response = field::link_ui(ui, link, Align::Min, words, &format!("Verdicts shown, {words}"), look)
         .on_hover_text("Show the verdicts of all cases, or of the chosen one only");
     if response.clicked() {
@@ -149,7 +149,7 @@ fn row_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: usize, 
 fn third_line_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: usize) {
     let look = desk.look;
     let (small, strong) = (font::small, font::small_figure);
-    let place = format!("   {}, case {}", verdict.place_words, case_idx + 1);
+    let place = format!("   case {}, {}", case_idx + 1, verdict.place_words);
     let job = match (verdict.demand, verdict.limit) {
         (Some(demand), Some(limit)) if verdict.state != State::NotJudged => {
             let unit = desk.unit_near(demand.quantity, demand.si.abs().max(limit.si.abs()));

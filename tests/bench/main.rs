@@ -2,6 +2,8 @@
 //!
 //! `cargo bench` runs all of it, `cargo bench -- kernel` the sections whose name holds the word.
 
+#[cfg(feature = "gui")]
+mod frame;
 mod kernel;
 #[path = "../it/support/mod.rs"]
 #[allow(dead_code)] // The checks use the rest of it.
@@ -9,8 +11,13 @@ mod support;
 mod timing;
 
 /// Name and body of every section, in the order printed.
-const SECTIONS: &[(&str, fn())] =
-    &[("kernel", kernel::run), ("precision", kernel::precision), ("demos", kernel::demos)];
+const SECTIONS: &[(&str, fn())] = &[
+    ("kernel", kernel::run),
+    ("precision", kernel::precision),
+    ("demos", kernel::demos),
+    #[cfg(feature = "gui")]
+    ("frame", frame::frame),
+];
 
 fn main() {
     let wanted: Vec<String> = std::env::args().skip(1).filter(|arg| !arg.starts_with('-')).collect();

@@ -32,7 +32,7 @@ fn areas_and_pools_agree_with_a_polygon_library() {
         let clear = sample.edges().iter().all(|e| (up.dot(&e.start.coords) - level).abs() > 1e-5 * (high - low));
         prop_assume!(clear);
         let pieces = geo_below(&region, up, level);
-        let (got, want) = (sublevel.area_below(level), geo_measure(&pieces).area);
+        let (got, want) = (sublevel.area_below(level), geo_measure(&pieces).0);
         let allowed = 1e-7 * sublevel.total_area();
         prop_assert!((got - want).abs() <= allowed, "share {share}: got {got:e}, clipped {want:e}");
         prop_assert_eq!(sublevel.n_pools(level), pieces.0.len(), "pools at share {}", share);
@@ -48,7 +48,7 @@ fn levels_agree_with_clipping_and_bisection() {
         let size = high - low;
         while high - low > 1e-10 * size {
             let middle = 0.5 * (low + high);
-            if geo_measure(&geo_below(&region, up, middle)).area < area { low = middle } else { high = middle }
+            if geo_measure(&geo_below(&region, up, middle)).0 < area { low = middle } else { high = middle }
         }
         let got = Sublevel::new(&sample.edges(), up).level_for_area(area);
         // The library's grid blurs the area; where the surface is short, the level is blurred more.
@@ -69,7 +69,7 @@ fn centroids_agree_with_quadrature_and_a_polygon_library() {
         // The level itself moves the centroid; both carry rounding of the section's place and size.
         prop_assert!(off <= 1e-9 * (high - low), "share {share}: got {}, quadrature {want}", settled.centroid);
         let region = geo_region(&sample.outline, &sample.obstacles);
-        let clipped = geo_measure(&geo_below(&region, up, settled.level_m)).centroid;
+        let clipped = geo_measure(&geo_below(&region, up, settled.level_m)).1;
         let off = (settled.centroid - clipped).norm();
         // Chords for arcs: an area off by up to 1e-6 of the section's, seen from a body of its share.
         prop_assert!(off <= 1e-5 * (high - low) / share, "share {share}: got {}, clipped {clipped}", settled.centroid);

@@ -240,6 +240,86 @@ fn a_bad_file_lists_its_problems_and_keeps_the_document() {
 }
 
 #[test]
+fn a_dropped_file_is_opened() {
+    #[derive(Debug)]
+    struct Dropped(std::path::PathBuf);
+    impl egui::DroppedFile for Dropped {
+        fn path(&self) -> &Path {
+            &self.0
+        }
+        fn bytes(&self) -> Result<Vec<u8>, String> {
+            std::fs::read(&self.0).map_err(|error| error.to_string())
+        }
+    }
+    let dir = tempfile::tempdir().unwrap();
+    let path = dir.path().join("dropped.ron");
+    std::fs::write(&path, EXAMPLES[1].text).unwrap();
+    let mut harness = window();
+    harness.input_mut().dropped_files.push(std::sync::Arc::new(Dropped(path.clone())));
+    harness.run();
+    assert_eq!(doc(&harness).path.as_deref(), Some(path.as_path()));
+    assert_eq!(*doc(&harness).study(), load(&path).unwrap());
+}
+
+#[test]
+fn an_unconfirmed_record_is_confirmed_from_the_working_of_its_verdict() {
+    let mut harness = window();
+    let Derived::Judged { results, .. } = doc(&harness).derived() else { panic!() };
+    let (case_idx, verdict) = results
+        .ranked()
+        .into_iter()
+        .map(|(c, v)| (c, &results.cases[c].verdicts[v]))
+        .find(|(_, verdict)| verdict.unconfirmed_record.is_some())
+        .expect("the first example has a verdict on an unconfirmed record");
+    let record_idx = verdict.unconfirmed_record.unwrap();
+    let start = format!("{}, ", verdict.criterion);
+    let end = format!(", case {}", case_idx + 1);
+    harness
+        .get_all_by_label_contains(&end)
+        .find(|node| node.accesskit_node().label().is_some_and(|l| l.starts_with(&start) && l.ends_with(&end)))
+        .expect("its row")
+        .click();
+    harness.run();
+    harness.get_by_label("Confirm this record").scroll_to_me();
+    harness.run();
+    harness.get_by_label("Confirm this record").click();
+    harness.run();
+    assert!(doc(&harness).study().records[record_idx].confirmed);
+}
+
+#[test]
+fn keys_belong_to_the_text_that_is_typed() {
+    let mut harness = window();
+    type_into(&mut harness, "Fill", "60");
+    harness.get_by_role_and_label(Role::SpinButton, "Density").click();
+    harness.run();
+    for (modifiers, key) in
+        [(Modifiers::COMMAND, Key::Z), (Modifiers::NONE, Key::PageDown), (Modifiers::COMMAND, Key::Delete)]
+    {
+        harness.key_press_modifiers(modifiers, key);
+        harness.run();
+    }
+    assert_eq!(fill(&harness), Fill::Share(0.6), "the study is not undone while a text is typed");
+    assert_eq!(doc(&harness).undo_label(), Some("Set fill"));
+}
+
+#[test]
+fn menus_open_and_carry_out_what_they_say() {
+    let mut harness = window_of_size(1440.0, 900.0);
+    type_into(&mut harness, "Fill", "60");
+    harness.get_by_label("Edit").click();
+    harness.run();
+    harness.get_by_label_contains("Undo set fill").click();
+    harness.run();
+    assert!(!doc(&harness).is_unsaved());
+    harness.get_by_label("Case").click();
+    harness.run();
+    harness.get_by_label_contains("Duplicate").click();
+    harness.run();
+    assert_eq!(doc(&harness).undo_label(), Some("Add load case"));
+}
+
+#[test]
 fn a_study_is_saved_through_the_dialog_and_reads_back_the_same() {
     let dir = tempfile::tempdir().unwrap();
     let mut harness = window();

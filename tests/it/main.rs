@@ -4,6 +4,7 @@ mod arbitrary;
 mod bad_sections;
 #[cfg(feature = "gui")]
 mod board;
+mod brims;
 mod cli;
 mod clipper;
 mod degenerate;

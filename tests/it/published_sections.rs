@@ -158,6 +158,7 @@ fn solid(name: &str) -> (Section, f64) {
     }
 }
 
+/// Went wrong once: an arc that touches the lowest line of its width law was integrated across the kink there.
 #[test]
 fn solids_with_the_same_horizontal_slices() {
     let mut findings = Findings::default();

@@ -4,7 +4,8 @@ use egui::{CornerRadius, Key, Rect, Response, Sense, Ui, WidgetInfo, pos2, vec2}
 
 use crate::analysis::{State, Still};
 use crate::app::Edit;
-use crate::gui::field::{self, Number};
+use crate::gui::field;
+use crate::gui::number::Number;
 use crate::gui::{Desk, Proposal, marks};
 use crate::study::Fill;
 use crate::units::{Quantity, fixed};

@@ -4,7 +4,8 @@ use egui::Ui;
 
 use crate::app::Edit;
 use crate::gui::Desk;
-use crate::gui::field::{self, Number};
+use crate::gui::field;
+use crate::gui::number::Number;
 use crate::liquid::Liquid;
 use crate::units::Quantity;
 

@@ -22,6 +22,9 @@ pub struct TankColumn {
     shows_all_edges: bool,
     open_record: Option<usize>,
     is_over_board: bool,
+    /// The part that was asked for from the folded headings.
+    wanted: Option<usize>,
+    last_wanted: usize,
 }
 
 /// A part of the column under its own heading.
@@ -47,6 +50,7 @@ pub fn tank_ui(ui: &mut Ui, rect: Rect, is_folded: bool, desk: &mut Desk, column
         return;
     }
     headings_ui(ui, rect, desk, column);
+    ui.painter().vline(ui.painter().round_to_pixel_center(rect.right()), rect.y_range(), (1.0, desk.look.line));
     if column.is_over_board {
         let over = Rect::from_min_size(rect.right_top(), vec2(248.0, rect.height()));
         let area = egui::Area::new(egui::Id::unique("tank column")).fixed_pos(over.min).order(egui::Order::Middle);
@@ -67,7 +71,11 @@ fn parts_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, column: &mut TankColumn) {
         ui.scope_builder(UiBuilder::new().max_rect(inset), |ui| {
             ui.spacing_mut().item_spacing = Vec2::ZERO;
             ui.add_space(1.0);
-            for (_, part_ui) in PARTS {
+            for (i, (_, part_ui)) in PARTS.iter().enumerate() {
+                if column.wanted == Some(i) {
+                    ui.scroll_to_cursor(Some(egui::Align::TOP));
+                    column.wanted = None;
+                }
                 part_ui(ui, desk, column);
             }
             ui.add_space(16.0);
@@ -80,24 +88,24 @@ fn headings_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, column: &mut TankColumn
     let mut child = ui.new_child(UiBuilder::new().max_rect(inset).id_salt("tank headings"));
     child.set_clip_rect(rect);
     child.spacing_mut().item_spacing = Vec2::ZERO;
-    for (title, _) in PARTS {
+    for (i, (title, _)) in PARTS.iter().enumerate() {
         let row = field::row_rect(&mut child).expand2(vec2(0.0, 2.0));
-        let words = title.split(' ').next_back().unwrap_or(title);
-        let words = if *title == "Requirement records" {
-            "Records"
-        } else if *title == "Named points" {
-            "Points"
-        } else {
-            words
-        };
-        let words = match *title {
-            "Width law" => "Width",
-            "Gas and air" => "Gas",
-            _ => words,
-        };
-        if field::link_ui(&mut child, row, egui::Align::Min, words, title, desk.look).clicked() {
-            column.is_over_board = !column.is_over_board;
+        if field::link_ui(&mut child, row, egui::Align::Min, short(title), title, desk.look).clicked() {
+            let is_shown_already = column.is_over_board && column.last_wanted == i;
+            column.is_over_board = !is_shown_already;
+            (column.wanted, column.last_wanted) = (Some(i), i);
         }
         child.allocate_exact_size(vec2(1.0, 5.0), Sense::hover());
+    }
+}
+
+/// A title for the folded column.
+fn short(title: &str) -> &str {
+    match title {
+        "Width law" => "Width",
+        "Gas and air" => "Gas",
+        "Requirement records" => "Records",
+        "Named points" => "Points",
+        title => title,
     }
 }

@@ -4,7 +4,8 @@ use egui::{Align, Shape, Stroke, Ui, pos2};
 
 use crate::app::Edit;
 use crate::geom::{Point, Vec2};
-use crate::gui::field::{self, Number};
+use crate::gui::field;
+use crate::gui::number::Number;
 use crate::gui::{Desk, Selected, font};
 use crate::section::EdgeKind;
 use crate::study::NamedPoint;

@@ -6,7 +6,8 @@ use egui::{Align, Rect, Response, Role, Sense, Ui, WidgetInfo, pos2, vec2};
 
 use crate::app::Edit;
 use crate::geom::{Edge, Point};
-use crate::gui::field::{self, Number};
+use crate::gui::field;
+use crate::gui::number::Number;
 use crate::gui::{Desk, Selected, font};
 use crate::section::{EdgeKind, Obstacle, Vertex};
 use crate::units::{Measure, Quantity};
@@ -122,7 +123,15 @@ fn edge_row_ui(ui: &mut Ui, desk: &mut Desk, i: usize, is_selected: bool) -> Res
     };
     let words = if edge.name.is_empty() { kind.to_owned() } else { format!("{kind}, {}", edge.name) };
     let rect = field::row_rect(ui);
-    let response = list_row_ui(ui, rect, desk, is_selected, &words, &format!("Edge {}, {words}", i + 1), 58.0);
+    let response = list_row_ui(
+        ui,
+        rect,
+        desk,
+        is_selected,
+        &words,
+        &format!("Edge {}, {words}", i + 1),
+        if geometry.is_arc() { 58.0 } else { 44.0 },
+    );
     field::paint_fitting(ui, rect, Align::Min, &(i + 1).to_string(), font::body(), desk.look.ink3);
     let length = desk.unit(Quantity::Length);
     if geometry.is_arc() {
@@ -140,7 +149,7 @@ fn edge_row_ui(ui: &mut Ui, desk: &mut Desk, i: usize, is_selected: bool) -> Res
         let unit = rect.with_min_x(rect.right() - field::UNIT_COLUMN);
         field::paint_fitting(ui, unit, Align::Min, length.symbol, font::small(), desk.look.ink3);
     }
-    response
+    response.on_hover_text(words)
 }
 
 fn edge_fields_ui(ui: &mut Ui, desk: &mut Desk, i: usize) {

@@ -3,7 +3,8 @@
 use egui::{Align, Ui, pos2};
 
 use crate::app::Edit;
-use crate::gui::field::{self, Number};
+use crate::gui::field;
+use crate::gui::number::Number;
 use crate::gui::{Desk, font, marks};
 use crate::study::{Limit, Record};
 

@@ -5,7 +5,8 @@ use egui::Ui;
 use crate::app::Edit;
 use crate::geom::Point;
 use crate::gui::Desk;
-use crate::gui::field::{self, Number};
+use crate::gui::field;
+use crate::gui::number::Number;
 use crate::units::Quantity;
 
 use super::TankColumn;

@@ -3,7 +3,8 @@
 use egui::{Align, Ui};
 
 use crate::app::Edit;
-use crate::gui::field::{self, Number};
+use crate::gui::field;
+use crate::gui::number::Number;
 use crate::gui::{Desk, font};
 use crate::section::WidthLaw;
 use crate::units::Quantity;

@@ -13,6 +13,10 @@ pub struct Below {
     pub area: f64,
     /// Undefined where the area is zero.
     pub centroid: Point,
+    /// Integral of the depth below the level over the area.
+    pub pressed: f64,
+    /// Where that integral acts; undefined where it is zero.
+    pub pressed_at: Point,
 }
 
 /// The axis along the level lines, so that (along, up) is right-handed.
@@ -21,11 +25,13 @@ pub fn along(up: Vec2) -> Vec2 {
 }
 
 /// Area and centroid of the part of the region with `up . x < level`: contour integrals of u dv, u2/2 dv and
-/// u v dv over the parts of the edges below the level. The surface itself adds nothing, since dv = 0 on it.
+/// u v dv over the parts of the edges below the level; and the same weighted with the depth. The surface itself adds
+/// nothing, since dv = 0 on it.
 pub fn quadrature(edges: &[Edge], up: Vec2, level: f64) -> Below {
     let origin = edges[0].start;
     let (u_axis, level) = (along(up), level - up.dot(&origin.coords));
-    let (mut area, mut moment_u, mut moment_v) = (0.0, 0.0, 0.0);
+    // Integrals of 1, u and v: plain, and weighted with the depth.
+    let (mut plain, mut deep) = ([0.0; 3], [0.0; 3]);
     for edge in edges {
         let length = edge.length();
         let u = |t: f64| u_axis.dot(&(edge.point_at(t) - origin));
@@ -36,13 +42,15 @@ pub fn quadrature(edges: &[Edge], up: Vec2, level: f64) -> Below {
             for &(node, weight) in GAUSS_LEGENDRE.iter() {
                 let t = from + (to - from) * node;
                 let (u, v, dv) = (u(t), v(t), dv(t) * weight * (to - from));
-                area += u * dv;
-                moment_u += 0.5 * u * u * dv;
-                moment_v += u * v * dv;
+                for (i, term) in [u * dv, 0.5 * u * u * dv, u * v * dv].into_iter().enumerate() {
+                    plain[i] += term;
+                    deep[i] += term * (level - v);
+                }
             }
         }
     }
-    Below { area, centroid: origin + (u_axis * moment_u + up * moment_v) / area }
+    let at = |[whole, u, v]: [f64; 3]| origin + (u_axis * u + up * v) / whole;
+    Below { area: plain[0], centroid: at(plain), pressed: deep[0], pressed_at: at(deep) }
 }
 
 /// The same by `geo`, for straight edges: the pieces below the level.
@@ -51,9 +59,9 @@ pub fn geo_below(region: &MultiPolygon, up: Vec2, level: f64) -> MultiPolygon {
 }
 
 /// Area and centroid of pieces.
-pub fn geo_measure(pieces: &MultiPolygon) -> Below {
+pub fn geo_measure(pieces: &MultiPolygon) -> (f64, Point) {
     let centroid = pieces.centroid().map_or(Point::new(f64::NAN, f64::NAN), |c| Point::new(c.x(), c.y()));
-    Below { area: pieces.unsigned_area(), centroid }
+    (pieces.unsigned_area(), centroid)
 }
 
 /// A region for `geo`: outline and holes, every arc cut into 200 chords.

@@ -1,18 +1,20 @@
 //! The window: lays the regions out, lets every panel read and propose, and applies what was proposed in one place at
 //! the end of the frame.
 
+mod filing;
+mod opened;
+
 use std::path::{Path, PathBuf};
 use std::time::Instant;
 
 use egui::{CursorIcon, Sense, Ui, UiBuilder, ViewportCommand};
 
-use crate::analysis::{Results, State, Verdict};
-use crate::app::{self, Derived, Document, EXAMPLES, Edit, FileError};
+use crate::analysis::State;
+use crate::app::{Derived, Document, Edit};
 use crate::cases::{Accel, Attitude, LoadCase};
-use crate::problem::Place;
 use crate::study::Study;
 
-use super::files::{Dialogs, EXTENSION, FileChooser, Purpose};
+use super::files::{Dialogs, FileChooser, Purpose};
 use super::layout::{self, Regions};
 use super::modals::{self, Unsaved};
 use super::plots::PlotArea;
@@ -22,6 +24,9 @@ use super::tank::TankColumn;
 use super::verdicts::VerdictColumn;
 use super::{Command, Desk, Look, Proposal, Selected, View};
 use super::{board, case_head, commands, header, look, plots, starter, status, strip, tank, verdicts};
+
+use filing::{Intent, example};
+use opened::OpenVerdict;
 
 /// The window's whole state. It runs on a bare [`egui::Context`].
 pub struct Window {
@@ -42,40 +47,6 @@ pub struct Window {
     judged_ms: Option<f64>,
     open_verdict: Option<OpenVerdict>,
     window_title: String,
-}
-
-/// Something that would leave the open document behind.
-#[derive(Clone, Debug, PartialEq)]
-enum Intent {
-    New,
-    Choose,
-    Open(PathBuf),
-    Example(usize),
-    Close,
-}
-
-/// The opened verdict by name, so that it stays open when the order changes.
-#[derive(Clone, Debug, PartialEq)]
-struct OpenVerdict {
-    revision: u64,
-    case_idx: usize,
-    criterion: &'static str,
-    place: Place,
-}
-
-impl OpenVerdict {
-    fn of(results: &Results, (case_idx, verdict_idx): (usize, usize), revision: u64) -> Option<OpenVerdict> {
-        let verdict = results.cases.get(case_idx)?.verdicts.get(verdict_idx)?;
-        Some(OpenVerdict { revision, case_idx, criterion: verdict.criterion, place: verdict.place.clone() })
-    }
-
-    /// The same verdict in other results, at the same place if there still is one.
-    fn find(&self, results: &Results) -> Option<(usize, usize)> {
-        let verdicts = &results.cases.get(self.case_idx)?.verdicts;
-        let same = |v: &&Verdict| v.criterion == self.criterion;
-        let here = verdicts.iter().position(|v| same(&v) && v.place == self.place);
-        here.or_else(|| verdicts.iter().position(|v| same(&v))).map(|v| (self.case_idx, v))
-    }
 }
 
 impl Window {
@@ -191,18 +162,6 @@ impl Window {
         }
     }
 
-    /// Opens a file; where it cannot be read its problems are listed and the open document is kept.
-    pub fn open(&mut self, path: &Path) {
-        match app::load(path) {
-            Ok(study) => {
-                self.replace(study, Some(path.to_owned()));
-                self.settings.remember(path);
-                self.event = format!("opened {}", path.display());
-            }
-            Err(error) => self.trouble = Some(trouble(error, "opened")),
-        }
-    }
-
     fn regions_ui(&mut self, ui: &mut Ui, regions: &Regions, look: &'static Look, out: &mut Vec<Proposal>) {
         ui.painter().rect_filled(ui.max_rect(), 0.0, look.panel);
         let mut desk = Desk { doc: &self.doc, view: &mut self.view, look, out };
@@ -223,7 +182,9 @@ impl Window {
         }
         strip::strip_ui(ui, regions.strip, regions.card_width, regions.cards_have_drawings, &mut desk);
         verdicts::verdicts_ui(ui, regions.verdicts, regions.verdict_row, &mut desk, &mut self.verdicts);
-        status::status_ui(ui, regions.status, &desk, &self.event, self.judged_ms);
+        let is_dropping = ui.input(|i| !i.raw.hovered_files.is_empty());
+        let event = if is_dropping { "Let go to open the scenario" } else { &self.event };
+        status::status_ui(ui, regions.status, &desk, event, self.judged_ms);
     }
 
     fn dividers_ui(&mut self, ui: &Ui, regions: &Regions, look: &Look) {
@@ -277,18 +238,6 @@ impl Window {
         }
     }
 
-    fn dropped_files(&mut self, ui: &Ui) {
-        let path = ui.input(|i| {
-            i.raw.dropped_files.iter().map(|file| file.path().to_owned()).find(|path| !path.as_os_str().is_empty())
-        });
-        if let Some(path) = path {
-            self.intend(ui.ctx(), Intent::Open(path));
-        }
-        if ui.input(|i| !i.raw.hovered_files.is_empty()) {
-            self.event = "drop a scenario file to open it".to_owned();
-        }
-    }
-
     fn apply(&mut self, ctx: &egui::Context, proposal: Proposal) {
         let (revision, start) = (self.doc.revision(), Instant::now());
         match proposal {
@@ -335,50 +284,12 @@ impl Window {
         self.open_verdict = self.view.open_verdict.and_then(|at| OpenVerdict::of(results, at, revision));
     }
 
-    fn guard_close(&mut self, ctx: &egui::Context) {
-        if ctx.input(|i| i.viewport().close_requested()) && !self.may_close {
-            if self.doc.is_unsaved() {
-                ctx.send_viewport_cmd(ViewportCommand::CancelClose);
-                self.intend(ctx, Intent::Close);
-            } else {
-                self.may_close = true;
-            }
-        }
-    }
-
     fn title(&mut self, ctx: &egui::Context) {
         let mark = if self.doc.is_unsaved() { "*" } else { "" };
         let title = format!("{mark}{} - brimwright", title_or(self.doc.study(), "Untitled"));
         if title != self.window_title {
             ctx.send_viewport_cmd(ViewportCommand::Title(title.clone()));
             self.window_title = title;
-        }
-    }
-
-    fn intend(&mut self, ctx: &egui::Context, intent: Intent) {
-        self.intent = Some(intent);
-        if self.doc.is_unsaved() {
-            self.asks_unsaved = true;
-        } else {
-            self.carry_out(ctx);
-        }
-    }
-
-    fn carry_out(&mut self, ctx: &egui::Context) {
-        match self.intent.take() {
-            None => {}
-            Some(Intent::New) => self.replace(starter::study(), None),
-            Some(Intent::Choose) => self.chooser.ask(ctx, Purpose::Open, self.proposed_path()),
-            Some(Intent::Open(path)) => self.open(&path),
-            Some(Intent::Example(i)) => {
-                if let Some(study) = example(i) {
-                    self.replace(study, None);
-                }
-            }
-            Some(Intent::Close) => {
-                self.may_close = true;
-                ctx.send_viewport_cmd(ViewportCommand::Close);
-            }
         }
     }
 
@@ -401,38 +312,6 @@ impl Window {
         if results.cases[case_idx].verdicts[verdict_idx].state == State::Fails {
             self.view.open_verdict = Some((case_idx, verdict_idx));
         }
-    }
-
-    fn save(&mut self, ctx: &egui::Context) {
-        match self.doc.path.clone() {
-            Some(path) => self.save_to(ctx, &path),
-            None => self.chooser.ask(ctx, Purpose::Save, self.proposed_path()),
-        }
-    }
-
-    fn save_to(&mut self, ctx: &egui::Context, path: &Path) {
-        match app::save_atomic(path, self.doc.study()) {
-            Ok(()) => {
-                self.doc.mark_saved(path.to_owned());
-                self.settings.remember(path);
-                self.event = format!("saved to {}", path.display());
-                self.carry_out(ctx);
-            }
-            Err(error) => {
-                self.intent = None;
-                self.trouble = Some(trouble(error, "saved"));
-            }
-        }
-    }
-
-    fn proposed_path(&self) -> PathBuf {
-        if let Some(path) = &self.doc.path {
-            return path.clone();
-        }
-        let title = title_or(self.doc.study(), "tank").to_lowercase();
-        let name: String = title.chars().map(|c| if c.is_alphanumeric() { c } else { '-' }).collect();
-        let folder = self.settings.recent.first().and_then(|path| path.parent()).unwrap_or(Path::new(""));
-        folder.join(format!("{}.{EXTENSION}", name.trim_matches('-')))
     }
 
     fn delete_selected(&mut self) {
@@ -464,10 +343,6 @@ impl Window {
     }
 }
 
-fn example(i: usize) -> Option<Study> {
-    EXAMPLES.get(i).and_then(|example| crate::scenario::parse(example.text.as_bytes()).ok())
-}
-
 fn rest_case(study: &Study) -> LoadCase {
     LoadCase {
         name: copy_name(study, "Rest"),
@@ -490,13 +365,4 @@ fn copy_name(study: &Study, name: &str) -> String {
 
 fn title_or(study: &Study, other: &str) -> String {
     if study.title.is_empty() { other.to_owned() } else { study.title.clone() }
-}
-
-fn trouble(error: FileError, verb: &str) -> FileTrouble {
-    let title = format!("`{}` could not be {verb}", file_name(error.path()));
-    FileTrouble { title, problems: error.into_problems() }
-}
-
-fn file_name(path: &Path) -> String {
-    path.file_name().unwrap_or_default().to_string_lossy().into_owned()
 }
