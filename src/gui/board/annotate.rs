@@ -127,7 +127,9 @@ impl Pen<'_> {
 
     fn paint_faults(&self, labels: &mut Labels) {
         for fault in &self.scene.model.faults {
-            let at = self.scene.at(fault.at);
+            // Off the board it waits at the edge.
+            let room = self.scene.screen.rect.shrink2(vec2(18.0, 18.0).min(0.5 * self.scene.screen.rect.size()));
+            let at = room.clamp(self.scene.at(fault.at));
             let state = if fault.severity == Severity::Fault { State::Fails } else { State::Close };
             let color = self.look.state(state);
             let halo = Stroke::new(6.0, self.look.board);
@@ -153,10 +155,8 @@ impl Pen<'_> {
                 off(24.0, -8.0, Align2::LEFT_BOTTOM),
                 off(-24.0, -8.0, Align2::RIGHT_BOTTOM),
             ];
-            if self.scene.screen.rect.contains(at) {
-                let rect = labels.place_anyway(number.size(), &places);
-                self.put(rect, number);
-            }
+            let rect = labels.place_anyway(number.size(), &places);
+            self.put(rect, number);
         }
         if let Some(middle) = self.scene.model.last_good.first().map(|points| points[points.len() / 2]) {
             let text = self.text("last good outline, dashed", font::small(), self.look.ink2);

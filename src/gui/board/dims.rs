@@ -41,9 +41,8 @@ pub fn paint_freeboard(painter: &Painter, scene: &Scene, freeboard: &Freeboard, 
     let side = Side::choose(scene, brim.x, texts[0].size.x, texts[1].size.x);
     let [x_available, x_required] = side.lines.map(|x| painter.round_to_pixel_center(x));
     let end = x_required + 8.0 * side.sign;
-    for x in [x_available, x_required] {
-        let (top, bottom) = (required_y.min(brim.y), still_y);
-        lines::segment(painter, [pos2(x, top), pos2(x, bottom)], Stroke::new(5.0, look.board));
+    for (x, top) in [(x_available, brim.y), (x_required, required_y)] {
+        lines::segment(painter, [pos2(x, top), pos2(x, still_y)], Stroke::new(3.5, look.board));
     }
     lines::segment(painter, [brim, pos2(end, brim.y)], Stroke::new(1.0, look.ink3));
     let bounds = scene.bounds().x_range();
