@@ -272,7 +272,7 @@ impl Study {
     /// Capacity and fill, m3; a fault where the fill lies outside the tank.
     fn fill_volume(&self, vessel: &Vessel, problems: &mut Vec<Problem>) -> (f64, f64) {
         let tilted = vessel.tilted(Vec2::y());
-        let capacity = tilted.capacity_m3();
+        let capacity = vessel.capacity_m3();
         let (bottom, top) = tilted.span();
         let slack = 1e-9;
         let (value, low, high, unit) = match self.fill {

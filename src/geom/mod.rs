@@ -10,7 +10,7 @@ mod sublevel;
 
 pub use edge::{Edge, rotate};
 pub use path::Path;
-pub use sublevel::Sublevel;
+pub use sublevel::{Sublevel, Until};
 
 /// A place, in metres: x is s (right), y is z (up).
 pub type Point = nalgebra::Point2<f64>;

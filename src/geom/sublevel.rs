@@ -21,12 +21,32 @@ struct Slab {
     has_arcs: bool,
 }
 
+/// How far up a section is cut.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Until {
+    /// To its top.
+    All,
+    /// At least to this level.
+    Level(f64),
+    /// At least until this area lies below.
+    Area(f64),
+}
+
 /// A piece that crosses a slab.
 #[derive(Clone, Copy, Debug)]
 struct Crossing {
     piece_idx: u32,
     /// u at the slab's bottom.
     u_bottom: f64,
+}
+
+/// A piece that the sweep crosses, with its u at the borders and in the middle of the present slab.
+#[derive(Clone, Copy, Debug, Default)]
+struct Active {
+    piece_idx: u32,
+    u_bottom: f64,
+    u_middle: f64,
+    u_top: f64,
 }
 
 /// A region seen along one direction: area against level and back.
@@ -49,6 +69,11 @@ pub struct Sublevel {
 impl Sublevel {
     /// `edges` are closed chains with the region on their left, in any order, not crossing; `up` is a unit vector.
     pub fn new(edges: &[Edge], up: Vec2) -> Sublevel {
+        Sublevel::up_to(edges, up, Until::All)
+    }
+
+    /// The same, cut only as far up as asked: what lies above is taken as not there.
+    pub fn up_to(edges: &[Edge], up: Vec2, until: Until) -> Sublevel {
         let right = Vec2::new(up.y, -up.x);
         let origin = edges.first().map_or(Point::origin(), |e| e.start);
         let pieces = cut(edges, origin, up, right);
@@ -62,7 +87,7 @@ impl Sublevel {
             crossing: Vec::new(),
             total: 0.0,
         };
-        this.cut_into_slabs();
+        this.cut_into_slabs(until);
         this
     }
 
@@ -190,45 +215,56 @@ impl Sublevel {
     }
 
     /// Sweeps upward: the next border is the next end of a piece that is crossed, or the next start of another.
-    fn cut_into_slabs(&mut self) {
+    fn cut_into_slabs(&mut self, until: Until) {
+        let (last_level, last_area) = match until {
+            Until::All => (f64::INFINITY, f64::INFINITY),
+            Until::Level(level) => (level - self.origin_level, f64::INFINITY),
+            Until::Area(area) => (f64::INFINITY, area),
+        };
         let mut rising: Vec<(f64, u32)> = self.pieces.iter().map(|p| p.low[1]).zip(0..).collect();
         rising.sort_unstable_by(|a, b| a.0.total_cmp(&b.0));
         let mut rising = rising.into_iter().peekable();
         let Some(&(mut bottom, _)) = rising.peek() else { return };
         self.slabs.reserve(self.pieces.len());
         self.crossing.reserve(4 * self.pieces.len());
-        let mut active: Vec<(f64, Crossing)> = Vec::with_capacity(8);
+        let mut active: Vec<Active> = Vec::with_capacity(8);
         let mut area = 0.0;
         loop {
             let pieces = &self.pieces;
-            active.retain(|(_, c)| pieces[c.piece_idx as usize].high[1] > bottom);
+            active.retain(|a| pieces[a.piece_idx as usize].high[1] > bottom);
             while let Some((_, piece_idx)) = rising.next_if(|next| next.0 <= bottom) {
-                active.push((0.0, Crossing { piece_idx, u_bottom: 0.0 }));
+                active.push(Active { piece_idx, u_top: pieces[piece_idx as usize].low[0], ..Active::default() });
             }
-            let ends = active.iter().map(|(_, c)| pieces[c.piece_idx as usize].high[1]);
+            let ends = active.iter().map(|a| pieces[a.piece_idx as usize].high[1]);
             let top = ends.chain(rising.peek().map(|next| next.0)).fold(f64::INFINITY, f64::min);
             if top == f64::INFINITY {
                 break;
             }
             let middle = 0.5 * (bottom + top);
-            let (mut width_bottom, mut has_arcs) = (0.0, false);
-            for (u_middle, c) in &mut active {
-                let piece = &pieces[c.piece_idx as usize];
-                c.u_bottom = piece.u_at(bottom);
-                *u_middle = piece.u_at(middle);
-                width_bottom += piece.side() * c.u_bottom;
-                has_arcs |= piece.arc.is_some();
+            let (mut width_bottom, mut width_top, mut segments, mut has_arcs) = (0.0, 0.0, 0.0, false);
+            for a in &mut active {
+                let piece = &pieces[a.piece_idx as usize];
+                a.u_bottom = a.u_top;
+                a.u_top = piece.u_at(top);
+                a.u_middle = 0.5 * (a.u_bottom + a.u_top);
+                width_bottom += piece.side() * a.u_bottom;
+                width_top += piece.side() * a.u_top;
+                if piece.arc.is_some() {
+                    has_arcs = true;
+                    a.u_middle = piece.u_at(middle);
+                    segments += piece.segment_area([a.u_bottom, bottom], [a.u_top, top]);
+                }
             }
-            active.sort_unstable_by(|a, b| a.0.total_cmp(&b.0));
-            let first = self.crossing.len();
-            self.crossing.extend(active.iter().map(|&(_, c)| c));
-            let width_bottom = f64::max(width_bottom, 0.0);
-            let n = active.len();
-            let mut slab = Slab { bottom, top, first, n, area_below: area, width_bottom, width_top: 0.0, has_arcs };
-            let (width_top, area_within) = self.measure(&slab, top);
-            slab.width_top = width_top;
-            area += area_within;
-            self.slabs.push(slab);
+            active.sort_unstable_by(|a, b| a.u_middle.total_cmp(&b.u_middle));
+            let (width_bottom, width_top) = (f64::max(width_bottom, 0.0), f64::max(width_top, 0.0));
+            let (first, n) = (self.crossing.len(), active.len());
+            let crossing = active.iter().map(|a| Crossing { piece_idx: a.piece_idx, u_bottom: a.u_bottom });
+            self.crossing.extend(crossing);
+            self.slabs.push(Slab { bottom, top, first, n, area_below: area, width_bottom, width_top, has_arcs });
+            area += 0.5 * (width_bottom + width_top) * (top - bottom) + segments;
+            if top >= last_level || area >= last_area {
+                break;
+            }
             bottom = top;
         }
         self.total = area;

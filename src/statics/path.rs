@@ -141,7 +141,8 @@ impl Spill {
         // The end itself is never reached by a finite acceleration.
         turns.extend((1..N_SAMPLES).map(|i| case + (end - case) * i as f64 / N_SAMPLES as f64));
         turns.dedup();
-        let slack = 1e-12 * way.at(0.0).capacity_m3;
+        let capacity = vessel.capacity_m3();
+        let slack = 1e-12 * capacity;
         let mut left = volume_m3;
         let samples: Vec<Stop> = turns.iter().map(|&turned| way.at(turned)).collect();
         let mut before = 0.0;
@@ -151,7 +152,7 @@ impl Spill {
                 && i + 1 < samples.len()
                 && stop.holds_m3 <= samples[i - 1].holds_m3
                 && stop.holds_m3 <= samples[i + 1].holds_m3
-                && stop.holds_m3 < stop.capacity_m3;
+                && stop.holds_m3 < capacity;
             if is_dip {
                 let high = if stop.turned <= case { turns[i + 1].min(case) } else { turns[i + 1] };
                 let (turned, _) = golden_min(turns[i - 1], high, 1e-7, |t| way.at(t).holds_m3);
@@ -201,7 +202,6 @@ struct Stop {
     turned: f64,
     /// Volume below the lowest brim, m3; the capacity without mouths.
     holds_m3: f64,
-    capacity_m3: f64,
     brim_level: f64,
     lip: Option<Lip>,
 }
@@ -209,21 +209,13 @@ struct Stop {
 impl Way<'_> {
     fn at(&self, turned: f64) -> Stop {
         let up = self.ramp.up(turned);
-        let tilted = self.vessel.tilted(up);
-        let lowest = self
-            .mouths
-            .iter()
-            .enumerate()
-            .map(|(mouth_idx, m)| (m.brim(self.region, up), mouth_idx))
-            .min_by(|a, b| a.0.0.total_cmp(&b.0.0));
-        let capacity_m3 = tilted.capacity_m3();
-        match lowest {
-            None => Stop { turned, holds_m3: capacity_m3, capacity_m3, brim_level: tilted.span().1, lip: None },
-            Some(((level, brim), mouth_idx)) => Stop {
+        let brims = self.mouths.iter().enumerate().map(|(mouth_idx, m)| (m.brim(self.region, up), mouth_idx));
+        match brims.min_by(|a, b| a.0.0.total_cmp(&b.0.0)) {
+            None => Stop { turned, holds_m3: self.vessel.capacity_m3(), brim_level: f64::INFINITY, lip: None },
+            Some(((brim_level, brim), mouth_idx)) => Stop {
                 turned,
-                holds_m3: tilted.volume_below(level),
-                capacity_m3,
-                brim_level: level,
+                holds_m3: self.vessel.tilted_below(up, brim_level).volume_below(brim_level),
+                brim_level,
                 lip: Some(Lip { mouth_idx, brim }),
             },
         }
@@ -231,10 +223,7 @@ impl Way<'_> {
 
     /// Whether the liquid stands in several pools there.
     fn is_parted(&self, stop: &Stop, volume_m3: f64) -> bool {
-        let tilted = self.vessel.tilted(self.ramp.up(stop.turned));
-        if tilted.is_one_basin(stop.brim_level) {
-            return false;
-        }
-        tilted.n_pools(tilted.level_for_volume(volume_m3)) > 1
+        let tilted = self.vessel.tilted_below(self.ramp.up(stop.turned), stop.brim_level);
+        !tilted.is_one_basin(stop.brim_level) && tilted.n_pools(tilted.level_for_volume(volume_m3)) > 1
     }
 }

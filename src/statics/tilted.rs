@@ -1,6 +1,6 @@
 //! A section seen along one effective gravity: volume below a level and back, with the width law.
 
-use crate::geom::{Edge, Point, Sublevel, Vec2};
+use crate::geom::{Edge, Point, Sublevel, Until, Vec2};
 use crate::num::{gauss, tanh_sinh};
 use crate::section::WidthLaw;
 
@@ -27,16 +27,26 @@ pub struct Vessel {
     width: WidthLaw,
     /// Under each edge: - integral of Omega ds; empty for a constant width.
     under: Vec<f64>,
+    capacity_m3: f64,
 }
 
 impl Vessel {
     /// `edges` are closed chains with the region on their left.
     pub fn new(edges: Vec<Edge>, width: WidthLaw) -> Vessel {
-        let under = match width.constant() {
-            Some(_) => Vec::new(),
-            None => edges.iter().map(|e| under_edge(e, &width)).collect(),
+        let (under, capacity_m3) = match width.constant() {
+            Some(w) => (Vec::new(), w * Sublevel::new(&edges, Vec2::y()).total_area()),
+            None => {
+                let under: Vec<f64> = edges.iter().map(|e| under_edge(e, &width)).collect();
+                let sum = under.iter().sum();
+                (under, sum)
+            }
         };
-        Vessel { edges, width, under }
+        Vessel { edges, width, under, capacity_m3 }
+    }
+
+    /// Volume of the whole region, m3.
+    pub fn capacity_m3(&self) -> f64 {
+        self.capacity_m3
     }
 
     /// Its edges.
@@ -51,12 +61,13 @@ impl Vessel {
 
     /// Seen along a direction; `up` is a unit vector.
     pub fn tilted(&self, up: Vec2) -> Tilted<'_> {
-        let sublevel = Sublevel::new(&self.edges, up);
-        let capacity_m3 = match self.width.constant() {
-            Some(w) => sublevel.total_area() * w,
-            None => self.under.iter().sum(),
-        };
-        Tilted { vessel: self, sublevel, capacity_m3 }
+        Tilted { vessel: self, sublevel: Sublevel::new(&self.edges, up) }
+    }
+
+    /// The same, to be asked about levels up to `level` only; saves work where the width is constant.
+    pub fn tilted_below(&self, up: Vec2, level: f64) -> Tilted<'_> {
+        let until = if self.width.constant().is_some() { Until::Level(level) } else { Until::All };
+        Tilted { vessel: self, sublevel: Sublevel::up_to(&self.edges, up, until) }
     }
 }
 
@@ -69,18 +80,12 @@ impl Vessel {
 pub struct Tilted<'a> {
     vessel: &'a Vessel,
     sublevel: Sublevel,
-    capacity_m3: f64,
 }
 
 impl Tilted<'_> {
     /// The direction.
     pub fn up(&self) -> Vec2 {
         self.sublevel.up()
-    }
-
-    /// Volume of the whole region, m3.
-    pub fn capacity_m3(&self) -> f64 {
-        self.capacity_m3
     }
 
     /// Lowest and highest level, m.
@@ -97,7 +102,7 @@ impl Tilted<'_> {
             return 0.0;
         }
         if level >= self.sublevel.highest() {
-            return self.capacity_m3;
+            return self.vessel.capacity_m3;
         }
         let (up, width) = (self.up(), &self.vessel.width);
         let mut walls = 0.0;
@@ -109,7 +114,7 @@ impl Tilted<'_> {
         }
         // The surface closes the contour from right to left.
         let surface: f64 = self.chords(level).iter().map(|c| under_edge(&Edge::line(c.right, c.left), width)).sum();
-        (walls + surface).clamp(0.0, self.capacity_m3)
+        (walls + surface).clamp(0.0, self.vessel.capacity_m3)
     }
 
     /// The level below which `volume` (m3) lies, clamped to the span; safeguarded Newton steps where the width
@@ -122,11 +127,11 @@ impl Tilted<'_> {
         if volume <= 0.0 {
             return low;
         }
-        if volume >= self.capacity_m3 {
+        if volume >= self.vessel.capacity_m3 {
             return high;
         }
         let size = high - low;
-        let mut level = self.sublevel.level_for_area(volume / self.capacity_m3 * self.sublevel.total_area());
+        let mut level = self.sublevel.level_for_area(volume / self.vessel.capacity_m3 * self.sublevel.total_area());
         for _ in 0..100 {
             let error = self.volume_below(level) - volume;
             if error > 0.0 {
@@ -135,7 +140,7 @@ impl Tilted<'_> {
                 low = level
             }
             // Two roundings of the capacity: the sum's own accuracy.
-            if error.abs() <= 2.0 * f64::EPSILON * self.capacity_m3 || high - low <= f64::EPSILON * size {
+            if error.abs() <= 2.0 * f64::EPSILON * self.vessel.capacity_m3 || high - low <= f64::EPSILON * size {
                 break;
             }
             let next = level - error / self.surface_area(level);
@@ -153,7 +158,7 @@ impl Tilted<'_> {
             .iter()
             .map(|c| {
                 let dz = c.right.y - c.left.y;
-                let mean = if dz.abs() > 1e-6 * self.capacity_m3.cbrt() {
+                let mean = if dz.abs() > 1e-6 * self.vessel.capacity_m3.cbrt() {
                     (self.vessel.width.omega(c.right.y) - self.vessel.width.omega(c.left.y)) / dz
                 } else {
                     self.vessel.width.width(0.5 * (c.left.y + c.right.y))

@@ -5,7 +5,7 @@ use std::hint::black_box;
 
 use brimwright::analysis;
 use brimwright::app::EXAMPLES;
-use brimwright::geom::{Edge, Sublevel, Vec2};
+use brimwright::geom::{Edge, Sublevel, Until, Vec2};
 use brimwright::scenario;
 use geo::{Area, MultiPolygon};
 use proptest::strategy::{Strategy, ValueTree};
@@ -33,7 +33,8 @@ pub fn run() {
             areas.iter().for_each(|&area| _ = black_box(sublevel.chords(sublevel.level_for_area(area))));
         });
         print_rate("  the same with the ends of the surface", N_FILLS as f64 / surface, 1e6);
-        let fresh = median_s(|| ups.iter().for_each(|&up| _ = black_box(settle(&outline, up))));
+        let half = 0.5 * sublevel.total_area();
+        let fresh = median_s(|| ups.iter().for_each(|&up| _ = black_box(settle(&outline, up, half))));
         print_rate(&format!("{N_EDGES} {what}, a new direction each"), ups.len() as f64 / fresh, 1e5);
         if !arcs {
             compare_with_clipping(&outline, &ups, surface / N_FILLS as f64, fresh / ups.len() as f64);
@@ -45,8 +46,9 @@ pub fn run() {
 /// that it has seen before is worth nothing.
 fn compare_with_clipping(outline: &[Edge], ups: &[Vec2], given_s: f64, fresh_s: f64) {
     let region = geo_region(outline, &[]);
+    let want = 0.5 * region.unsigned_area();
     let few = &ups[..20];
-    let clip = || few.iter().for_each(|&up| _ = black_box(settle_by_clipping(&region, outline, up)));
+    let clip = || few.iter().for_each(|&up| _ = black_box(settle_by_clipping(&region, outline, up, want)));
     let clip_s = median_s(clip) / few.len() as f64;
     println!("  the same by clipping with `geo` under an Illinois root finder {:>9.0} /s", 1.0 / clip_s);
     for (what, ours_s) in [("direction given, fills differ", given_s), ("a new direction each", fresh_s)] {
@@ -54,18 +56,17 @@ fn compare_with_clipping(outline: &[Edge], ups: &[Vec2], given_s: f64, fresh_s: 
         let word = if ratio >= 50.0 { "reached" } else { "missed" };
         println!("    ours, {what:<50} {ratio:>6.0} times   aim        50 times   {word}");
     }
-    let apart = few.iter().map(|&up| (settle(outline, up) - settle_by_clipping(&region, outline, up)).abs());
+    let apart =
+        few.iter().map(|&up| (settle(outline, up, want) - settle_by_clipping(&region, outline, up, want)).abs());
     println!("    levels agree to {:.1e} of the section's size", apart.fold(0.0, f64::max) / size(outline));
 }
 
-/// Half full, along a direction.
-fn settle(outline: &[Edge], up: Vec2) -> f64 {
-    let sublevel = Sublevel::new(outline, up);
-    sublevel.level_for_area(0.5 * sublevel.total_area())
+/// The level of an area, along a direction never seen before.
+fn settle(outline: &[Edge], up: Vec2, want: f64) -> f64 {
+    Sublevel::up_to(outline, up, Until::Area(want)).level_for_area(want)
 }
 
-fn settle_by_clipping(region: &MultiPolygon, outline: &[Edge], up: Vec2) -> f64 {
-    let want = 0.5 * region.unsigned_area();
+fn settle_by_clipping(region: &MultiPolygon, outline: &[Edge], up: Vec2, want: f64) -> f64 {
     let (mut low, mut high) = outline.iter().fold((f64::MAX, f64::MIN), |(low, high), e| {
         let level = up.dot(&e.start.coords);
         (low.min(level), high.max(level))

@@ -178,7 +178,7 @@ pub fn level_edit(scene: &Scene, z: f64) -> Option<Edit> {
         Fill::Level(_) => Fill::Level(z),
         Fill::Ullage(_) => Fill::Ullage(tidy(high - z)),
         Fill::Volume(_) => Fill::Volume(still.volume_below(z)),
-        Fill::Share(_) => Fill::Share((still.volume_below(z) / still.capacity_m3()).clamp(0.0, 1.0)),
+        Fill::Share(_) => Fill::Share((still.volume_below(z) / study.capacity_m3()).clamp(0.0, 1.0)),
     };
     z.is_finite().then_some(Edit::Fill(fill))
 }
