@@ -22,7 +22,7 @@ use super::scene::Scene;
 /// Draws all of it.
 pub fn annotate(painter: &Painter, scene: &Scene, look: &Look) {
     let mut labels = off_walls(scene);
-    labels.keep_off(dial_area(scene));
+    scene.dial.areas(&scene.hanging).into_iter().for_each(|area| labels.keep_off(area));
     for piece in &scene.model.surface {
         labels.keep_off_line(&[scene.at(piece.left), scene.at(piece.right)]);
     }
@@ -33,9 +33,14 @@ pub fn annotate(painter: &Painter, scene: &Scene, look: &Look) {
     let pen = Pen { painter, scene, look };
     pen.paint_reason(&mut labels);
     pen.paint_faults(&mut labels);
-    let reach = scene.model.freeboard.map(|f| paint_freeboard(painter, scene, &f, &mut labels, look));
+    let still = pen.paint_still_level();
+    if let Some(freeboard) = &scene.model.freeboard {
+        paint_freeboard(painter, scene, freeboard, &mut labels, look);
+    }
     pen.paint_brims(&mut labels);
-    pen.paint_still(&mut labels, reach);
+    if let Some(still) = still {
+        pen.paint_still_label(&mut labels, still);
+    }
     pen.paint_governs(&mut labels);
     pen.paint_loads(&mut labels);
     pen.paint_isobar_labels(&mut labels);
@@ -72,13 +77,6 @@ pub fn paint_feedback(painter: &Painter, scene: &Scene, pos: Pos2, feedback: &Fe
     painter.galley(rect.min, words, look.accent);
 }
 
-/// The part of the board that the bob and the legend keep for themselves.
-pub fn dial_area(scene: &Scene) -> Rect {
-    let dial = &scene.dial;
-    let lowest = dial.lowest(&scene.hanging).min(dial.rect.bottom());
-    dial.rect.with_max_y(lowest + 6.0).expand2(vec2(6.0, 4.0))
-}
-
 /// Labels that shall not cover a wall, a mouth or an obstacle.
 fn off_walls(scene: &Scene) -> Labels {
     let mut labels = Labels::new(scene.screen.rect);
@@ -89,6 +87,14 @@ fn off_walls(scene: &Scene) -> Labels {
         labels.keep_off_line(&scene.screen.line(points));
     }
     labels
+}
+
+/// The still level on the screen.
+struct Still {
+    text: Arc<Galley>,
+    y: f32,
+    left: f32,
+    right: f32,
 }
 
 struct Pen<'a> {
@@ -121,7 +127,9 @@ impl Pen<'_> {
 
     fn paint_faults(&self, labels: &mut Labels) {
         for fault in &self.scene.model.faults {
-            let at = self.scene.at(fault.at);
+            // Off the board it waits at the edge.
+            let room = self.scene.screen.rect.shrink2(vec2(18.0, 18.0).min(0.5 * self.scene.screen.rect.size()));
+            let at = room.clamp(self.scene.at(fault.at));
             let state = if fault.severity == Severity::Fault { State::Fails } else { State::Close };
             let color = self.look.state(state);
             let halo = Stroke::new(6.0, self.look.board);
@@ -147,10 +155,8 @@ impl Pen<'_> {
                 off(24.0, -8.0, Align2::LEFT_BOTTOM),
                 off(-24.0, -8.0, Align2::RIGHT_BOTTOM),
             ];
-            if self.scene.screen.rect.contains(at) {
-                let rect = labels.place_anyway(number.size(), &places);
-                self.put(rect, number);
-            }
+            let rect = labels.place_anyway(number.size(), &places);
+            self.put(rect, number);
         }
         if let Some(middle) = self.scene.model.last_good.first().map(|points| points[points.len() / 2]) {
             let text = self.text("last good outline, dashed", font::small(), self.look.ink2);
@@ -181,23 +187,23 @@ impl Pen<'_> {
         }
     }
 
-    fn paint_still(&self, labels: &mut Labels, reach: Option<f32>) {
-        let Some(z) = self.scene.model.still_z_m else { return };
+    /// The dashed line, and the words that go to it.
+    fn paint_still_level(&self) -> Option<Still> {
+        let z = self.scene.model.still_z_m?;
         let y = self.painter.round_to_pixel_center(self.scene.at(Point::new(0.0, z)).y);
         let level = Measure::new(Quantity::Length, z).text_to(self.scene.units, 4);
         let text = self.text(format!("still {level}"), font::small(), self.look.ink2);
         let area = self.scene.screen.rect;
         let bounds = self.scene.bounds();
         let left = (bounds.left() - text.size().x - 10.0).max(area.left() + 6.0);
-        let right = (bounds.right() + 14.0).min(self.scene.dial.rect.left() - 4.0);
-        let (from, to) = match reach {
-            Some(x) => (left.min(x), right.max(x)),
-            None => (left, right),
-        };
-        lines::dashed(self.painter, &[pos2(from, y), pos2(to, y)], Stroke::new(1.0, self.look.ink3), 6.0, 4.0);
-        if !area.y_range().contains(y) {
-            return;
-        }
+        let right = (bounds.right() + 14.0).min(area.right());
+        lines::dashed(self.painter, &[pos2(left, y), pos2(right, y)], Stroke::new(1.0, self.look.ink3), 6.0, 4.0);
+        area.y_range().contains(y).then_some(Still { text, y, left, right })
+    }
+
+    fn paint_still_label(&self, labels: &mut Labels, still: Still) {
+        let Still { text, y, left, right } = still;
+        let bounds = self.scene.bounds();
         let beside = [
             (pos2(left, y - 2.0), Align2::LEFT_BOTTOM),
             (pos2(left, y + 2.0), Align2::LEFT_TOP),
@@ -206,7 +212,7 @@ impl Pen<'_> {
         ];
         let along = (0..)
             .map(|k| left + 12.0 * k as f32)
-            .take_while(|x| *x < to)
+            .take_while(|x| *x < right)
             .flat_map(|x| [(pos2(x, y - 2.0), Align2::LEFT_BOTTOM), (pos2(x, y + 2.0), Align2::LEFT_TOP)]);
         if let Some(rect) = labels.place(text.size(), beside.into_iter().chain(along)) {
             self.put(rect, text);
@@ -238,19 +244,28 @@ impl Pen<'_> {
         sorted.sort_by(|a, b| b.force_n.norm().total_cmp(&a.force_n.norm()));
         for load in sorted {
             let along = self.scene.screen.screen_vec(load.force_n).normalized();
-            let tail = self.scene.at(load.on_edge);
-            let length = 14.0 + 40.0 * (load.force_n.norm() / largest).sqrt() as f32;
-            let tip = tail + along * length;
+            let on_edge = self.scene.at(load.on_edge);
+            let wanted = 14.0 + 40.0 * (load.force_n.norm() / largest).sqrt() as f32;
+            let room = self.scene.screen.rect.shrink(4.0);
+            // Outward from the wall; toward it from inside where the board ends before.
+            let lengths = (0..).map(|k| wanted - k as f32).take_while(|l| *l >= wanted.min(20.0));
+            let outward = lengths.into_iter().find(|l| room.contains(on_edge + along * *l));
+            let (tail, tip, out) = match outward {
+                Some(length) => (on_edge, on_edge + along * length, along),
+                None => (on_edge - along * wanted, on_edge, -along),
+            };
             lines::arrow(self.painter, tail, tip, Stroke::new(1.4, self.look.ink), self.look.board);
             labels.keep_off_line(&[tail, tip]);
             let force = Measure::new(Quantity::Force, load.force_n.norm()).text(self.scene.units);
             let text = self.text(force, font::small_figure(), self.look.ink);
-            let at = tip + along * 5.0;
-            let side = along.rot90() * 8.0;
+            let (end, middle) = (if out == along { tip } else { tail }, tail + (tip - tail) * 0.5);
+            let side = along.rot90();
             let places = [
-                (at, align_toward(along)),
-                (tip + side, align_toward(along.rot90())),
-                (tip - side, align_toward(-along.rot90())),
+                (end + out * 5.0, align_toward(out)),
+                (end + side * 8.0, align_toward(side)),
+                (end - side * 8.0, align_toward(-side)),
+                (middle + side * 8.0, align_toward(side)),
+                (middle - side * 8.0, align_toward(-side)),
             ];
             if let Some(rect) = labels.place(text.size(), places) {
                 self.put(rect, text);
@@ -314,7 +329,7 @@ impl Pen<'_> {
         }
         if self.scene.judged.is_some() {
             let at = self.scene.at(model.moment_about);
-            for stroke in [Stroke::new(5.0, self.look.board), Stroke::new(1.25, self.look.ink3)] {
+            for stroke in [Stroke::new(3.25, self.look.board), Stroke::new(1.25, self.look.ink3)] {
                 for arm in [vec2(6.0, 0.0), vec2(0.0, 6.0)] {
                     lines::segment(self.painter, [at - arm, at + arm], stroke);
                 }

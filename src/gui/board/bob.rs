@@ -4,6 +4,7 @@
 
 use egui::{Align2, Painter, Pos2, Rect, Shape, Stroke, pos2, vec2};
 
+use crate::geom::Vec2;
 use crate::gui::{Look, font};
 use crate::units::{Measure, Quantity, UnitSystem};
 
@@ -36,54 +37,59 @@ pub struct Dial {
 #[derive(Clone, Debug, Default, PartialEq)]
 pub struct Hanging {
     /// Effective gravity of the case shown, m/s2; none while the section has faults.
-    pub now: Option<crate::geom::Vec2>,
+    pub now: Option<Vec2>,
     /// Effective gravity at rest.
-    pub rest: crate::geom::Vec2,
+    pub rest: Vec2,
     /// Tilt of the settled surface, radians.
     pub tilt_rad: Option<f64>,
     /// Other cases: number as shown, effective gravity.
-    pub others: Vec<(usize, crate::geom::Vec2)>,
+    pub others: Vec<(usize, Vec2)>,
     /// The pointer is over it.
     pub is_pointed_at: bool,
 }
 
 impl Dial {
-    /// A block at the right of the drawing area, in a scale in which all of `gravities` stay inside it.
-    pub fn new(area: Rect, gravities: impl IntoIterator<Item = crate::geom::Vec2>, units: UnitSystem) -> Dial {
-        let gravities: Vec<crate::geom::Vec2> = gravities.into_iter().collect();
+    /// A block at the right of the drawing area, in a scale in which all of `shown` stay inside it, and `others`
+    /// too unless that would make it less than half as large.
+    pub fn new(area: Rect, shown: &[Vec2], others: &[Vec2], units: UnitSystem) -> Dial {
         let width = (0.26 * area.width()).clamp(116.0, 196.0).min(area.width());
         let rect = Rect::from_min_max(pos2(area.right() - width - 8.0, area.top() + 8.0), area.max);
         // Under the words, and lower where the bob of some case hangs upward.
-        let words = if width < WIDE { 52.0 } else { 36.0 };
-        let up = if gravities.iter().any(|g| g.y > 0.0) { DROP + 30.0 } else { 28.0 };
-        let pivot = pos2(rect.center().x, rect.top() + words + up);
+        let words = words_height(width);
+        let up = if shown.iter().chain(others).any(|g| g.y > 0.0) { DROP + 30.0 } else { 28.0 };
+        let top = rect.top() + words + up;
         let wanted = ((area.height() - 244.0) / 16.0).clamp(6.0, 14.0);
-        let side = (0.5 * rect.width() - 14.0).max(1.0);
-        let (down, up) = ((rect.bottom() - pivot.y - DROP - 12.0).max(1.0), (up - DROP).max(1.0));
-        let scale = gravities.into_iter().fold(wanted, |scale, g| {
-            let (x, y) = (g.x as f32, -g.y as f32);
-            let room = if y > 0.0 { down } else { up };
-            scale.min(side / x.abs().max(1e-3)).min(room / y.abs().max(1e-3))
-        });
+        let (side, down) = (rect.width() - 28.0, rect.bottom() - top - DROP - 12.0);
+        let fit = |reach: Reach| {
+            let rooms = [(side, reach.right - reach.left), (down, reach.down), (up - DROP, reach.up)];
+            rooms.into_iter().fold(wanted, |scale, (room, needed)| scale.min(room.max(1.0) / needed.max(1e-3)))
+        };
+        let all = Reach::of(shown.iter().chain(others));
+        let (least, scale) = (0.5 * fit(Reach::of(shown)), fit(all));
+        let (reach, scale) = if scale >= least { (all, scale) } else { (Reach::of(shown), 2.0 * least) };
+        let scale = scale.max(1e-6);
+        // In the middle, unless that would leave a bob outside.
+        let x = rect.center().x.min(rect.right() - 14.0 - reach.right * scale);
+        let pivot = pos2(x.max(rect.left() + 14.0 - reach.left * scale), top);
         let unit = Quantity::Acceleration.unit(units).in_si as f32;
         let mut steps = (0..7).flat_map(|k| [2.0, 5.0, 10.0].map(|m| m * 10f32.powi(k) * unit));
         let ring_step = steps.find(|step| step * scale >= 10.0).unwrap_or(f32::MAX);
-        Dial { rect, pivot, scale: scale.max(1e-6), ring_step }
+        Dial { rect, pivot, scale, ring_step }
     }
 
     /// Where the thread ends for an effective gravity.
-    pub fn tip(&self, gravity: crate::geom::Vec2) -> Pos2 {
+    pub fn tip(&self, gravity: Vec2) -> Pos2 {
         self.pivot + vec2(gravity.x as f32, -gravity.y as f32) * self.scale
     }
 
     /// The effective gravity for which the thread ends at `pos`.
-    pub fn gravity_at(&self, pos: Pos2) -> crate::geom::Vec2 {
+    pub fn gravity_at(&self, pos: Pos2) -> Vec2 {
         let off = (pos - self.pivot) / self.scale;
-        crate::geom::Vec2::new(f64::from(off.x), f64::from(-off.y))
+        Vec2::new(f64::from(off.x), f64::from(-off.y))
     }
 
     /// Whether `pos` is on the drop or on the end of the thread.
-    pub fn is_on_drop(&self, gravity: crate::geom::Vec2, pos: Pos2) -> bool {
+    pub fn is_on_drop(&self, gravity: Vec2, pos: Pos2) -> bool {
         let tip = self.tip(gravity);
         let off = pos - tip;
         let along = self.hangs_along(gravity);
@@ -91,23 +97,76 @@ impl Dial {
         (-6.0..=DROP + 3.0).contains(&down) && across.abs() <= 9.0
     }
 
-    /// Lowest point that the drawing needs.
-    pub fn lowest(&self, hanging: &Hanging) -> f32 {
-        let rings = self.tip(hanging.rest).y + self.rings().last().unwrap_or(0.0) * self.scale;
-        let others = hanging.others.iter().map(|(_, g)| self.tip(*g).y + 6.0);
-        let held = hanging.now.iter().chain([&hanging.rest]).map(|&g| self.tip(g).y + DROP);
-        others.chain(held).fold(rings, f32::max)
+    /// What the words, and the drawing under them, keep for themselves.
+    pub fn areas(&self, hanging: &Hanging) -> [Rect; 2] {
+        let words = self.rect.with_max_y(self.rect.top() + words_height(self.rect.width()));
+        let mark = |at: Pos2, half: f32| Rect::from_center_size(at, egui::Vec2::splat(2.0 * half));
+        let rings = self.rings(hanging.rest).last().unwrap_or(0.0) * self.scale;
+        let mut drawing = mark(self.pivot, 12.0).union(mark(self.tip(hanging.rest), rings + 2.0));
+        let tips = hanging.others.iter().map(|(_, g)| self.tip(*g)).filter(|tip| self.shows(*tip));
+        for tip in tips {
+            drawing = drawing.union(mark(tip, 14.0));
+        }
+        if let Some(now) = hanging.now {
+            drawing = drawing
+                .union(mark(self.tip(now), 8.0))
+                .union(mark(self.tip(now) + self.hangs_along(now) * DROP, 6.0));
+        } else {
+            drawing = drawing.union(self.rect.with_min_y(self.pivot.y).with_max_y(self.pivot.y + 130.0));
+        }
+        [words.expand(4.0), drawing]
     }
 
-    fn hangs_along(&self, gravity: crate::geom::Vec2) -> egui::Vec2 {
+    /// Lowest point that the drawing needs.
+    pub fn lowest(&self, hanging: &Hanging) -> f32 {
+        self.areas(hanging)[1].bottom()
+    }
+
+    fn hangs_along(&self, gravity: Vec2) -> egui::Vec2 {
         let along = (self.tip(gravity) - self.pivot).normalized();
         if along == egui::Vec2::ZERO { vec2(0.0, 1.0) } else { along }
     }
 
     /// Radii of the rings about rest, m/s2, as many as the block has room for.
-    fn rings(&self) -> impl Iterator<Item = f32> + use<> {
-        let (step, most) = (self.ring_step, 0.5 * self.rect.width() / self.scale);
+    fn rings(&self, rest: Vec2) -> impl Iterator<Item = f32> + use<> {
+        let x = self.tip(rest).x;
+        let room = (x - self.rect.left()).min(self.rect.right() - x) + 6.0;
+        let (step, most) = (self.ring_step, room / self.scale);
         (1..=3).map(move |k| k as f32 * step).filter(move |radius| *radius <= most)
+    }
+
+    /// Whether the block has room for a mark at `tip`.
+    fn shows(&self, tip: Pos2) -> bool {
+        self.rect.with_min_y(self.rect.top() + 30.0).contains(tip)
+    }
+}
+
+/// Height of the words above the drawing.
+fn words_height(block_width: f32) -> f32 {
+    if block_width < WIDE { 52.0 } else { 36.0 }
+}
+
+/// How far effective gravities reach from the pivot, m/s2.
+#[derive(Clone, Copy)]
+struct Reach {
+    left: f32,
+    right: f32,
+    up: f32,
+    down: f32,
+}
+
+impl Reach {
+    fn of<'g>(gravities: impl IntoIterator<Item = &'g Vec2>) -> Reach {
+        let nothing = Reach { left: 0.0, right: 0.0, up: 0.0, down: 0.0 };
+        gravities.into_iter().fold(nothing, |reach, g| {
+            let (x, y) = (g.x as f32, -g.y as f32);
+            Reach {
+                left: reach.left.min(x),
+                right: reach.right.max(x),
+                up: reach.up.max(-y),
+                down: reach.down.max(y),
+            }
+        })
     }
 }
 
@@ -143,9 +202,8 @@ pub fn paint_bob(painter: &Painter, dial: &Dial, hanging: &Hanging, units: UnitS
         painter.galley(rect.left_top() + vec2(0.0, 19.0 + 16.0 * i as f32), row, look.ink);
     }
 
-    let rest = dial.tip(hanging.rest);
     let mut labels = Labels::new(rect.expand(6.0));
-    paint_rings(painter, dial, rest, &mut labels, units, look);
+    paint_rings(painter, dial, hanging, &mut labels, units, look);
     paint_cases(painter, dial, hanging, &mut labels, look);
 
     let (tip, along) = (dial.tip(now), dial.hangs_along(now));
@@ -185,12 +243,20 @@ fn paint_pivot(painter: &Painter, pivot: Pos2, color: egui::Color32) {
     painter.circle_filled(pivot, 2.2, color);
 }
 
-fn paint_rings(painter: &Painter, dial: &Dial, rest: Pos2, labels: &mut Labels, units: UnitSystem, look: &Look) {
+fn paint_rings(
+    painter: &Painter,
+    dial: &Dial,
+    hanging: &Hanging,
+    labels: &mut Labels,
+    units: UnitSystem,
+    look: &Look,
+) {
+    let rest = dial.tip(hanging.rest);
     let ring = Stroke::new(1.0, look.line2);
-    let reach = vec2(0.0, dial.rings().last().unwrap_or(0.0) * dial.scale);
+    let reach = vec2(0.0, dial.rings(hanging.rest).last().unwrap_or(0.0) * dial.scale);
     lines::dashed(painter, &[rest - reach, rest + reach], ring, 1.2, 2.3);
     let unit = Quantity::Acceleration.unit(units);
-    for accel in dial.rings() {
+    for accel in dial.rings(hanging.rest) {
         let radius = accel * dial.scale;
         painter.circle_stroke(rest, radius, ring);
         let at = rest + radius * egui::Vec2::angled(2.2);
@@ -220,6 +286,9 @@ fn paint_cases(painter: &Painter, dial: &Dial, hanging: &Hanging, labels: &mut L
     }
     for (number, gravity) in &hanging.others {
         let at = dial.tip(*gravity);
+        if !dial.shows(at) {
+            continue;
+        }
         painter.circle(at, 3.2, look.board, Stroke::new(1.25, look.ink2));
         let galley = painter.layout_no_wrap(number.to_string(), font::tick_figure(), look.ink2);
         let places = [
@@ -237,13 +306,13 @@ fn paint_cases(painter: &Painter, dial: &Dial, hanging: &Hanging, labels: &mut L
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::geom::Vec2;
+    use Vec2;
 
     #[test]
     fn tip_and_gravity_invert_each_other_and_all_cases_fit() {
         let area = Rect::from_min_size(pos2(264.0, 90.0), vec2(704.0, 398.0));
         let gravities = [Vec2::new(3.92, -9.81), Vec2::new(-25.0, -4.0), Vec2::new(0.0, 6.0), Vec2::new(0.0, 0.0)];
-        let dial = Dial::new(area, gravities, UnitSystem::Si);
+        let dial = Dial::new(area, &gravities, &[], UnitSystem::Si);
         for g in gravities {
             let tip = dial.tip(g);
             assert!(dial.rect.contains(tip), "{g:?} hangs at {tip:?}, outside {:?}", dial.rect);
@@ -256,9 +325,20 @@ mod tests {
     }
 
     #[test]
+    fn one_extreme_case_does_not_shrink_the_others_to_nothing() {
+        let area = Rect::from_min_size(pos2(0.0, 0.0), vec2(704.0, 430.0));
+        let (rest, dropped) = (Vec2::new(0.0, -9.81), Vec2::new(0.0, -980.0));
+        let quiet = Dial::new(area, &[rest], &[], UnitSystem::Si);
+        let beside = Dial::new(area, &[rest], &[dropped], UnitSystem::Si);
+        assert_eq!(beside.scale, quiet.scale);
+        let shown = Dial::new(area, &[rest, dropped], &[], UnitSystem::Si);
+        assert!(shown.rect.contains(shown.tip(dropped)), "its own bob is on the board");
+    }
+
+    #[test]
     fn the_scale_is_the_one_of_the_drawing_when_all_fits() {
         let area = Rect::from_min_size(pos2(0.0, 0.0), vec2(704.0, 430.0));
-        let dial = Dial::new(area, [Vec2::new(3.92, -9.81)], UnitSystem::Si);
+        let dial = Dial::new(area, &[Vec2::new(3.92, -9.81)], &[], UnitSystem::Si);
         assert!((dial.scale - 11.6).abs() < 0.1, "{}", dial.scale);
     }
 }

@@ -14,14 +14,8 @@ use super::lines;
 use super::model::Freeboard;
 use super::scene::Scene;
 
-/// Draws the dimension, and takes its place among the labels. Gives the x that the still level has to reach.
-pub fn paint_freeboard(
-    painter: &Painter,
-    scene: &Scene,
-    freeboard: &Freeboard,
-    labels: &mut Labels,
-    look: &Look,
-) -> f32 {
+/// Draws the dimension, and takes its place among the labels.
+pub fn paint_freeboard(painter: &Painter, scene: &Scene, freeboard: &Freeboard, labels: &mut Labels, look: &Look) {
     let brim = scene.at(freeboard.brim);
     let still_y = scene.at(Point::new(0.0, freeboard.still_z_m)).y;
     let required_y = still_y - (freeboard.required_m * scene.screen.scale()) as f32;
@@ -47,7 +41,13 @@ pub fn paint_freeboard(
     let side = Side::choose(scene, brim.x, texts[0].size.x, texts[1].size.x);
     let [x_available, x_required] = side.lines.map(|x| painter.round_to_pixel_center(x));
     let end = x_required + 8.0 * side.sign;
+    for (x, top) in [(x_available, brim.y), (x_required, required_y)] {
+        lines::segment(painter, [pos2(x, top), pos2(x, still_y)], Stroke::new(3.5, look.board));
+    }
     lines::segment(painter, [brim, pos2(end, brim.y)], Stroke::new(1.0, look.ink3));
+    let bounds = scene.bounds().x_range();
+    let edge = if side.sign > 0.0 { bounds.max.min(end) } else { bounds.min.max(end) };
+    lines::dashed(painter, &[pos2(edge, still_y), pos2(end, still_y)], Stroke::new(1.0, look.ink3), 6.0, 4.0);
     lines::dimension(painter, [pos2(x_available, brim.y), pos2(x_available, still_y)], Stroke::new(1.0, look.ink2));
     let pen = if fails { Stroke::new(1.5, required_ink) } else { Stroke::new(1.0, required_ink) };
     lines::dimension(painter, [pos2(x_required, required_y), pos2(x_required, still_y)], pen);
@@ -81,7 +81,6 @@ pub fn paint_freeboard(
         let rect = labels.place_anyway(block.size, &places);
         block.paint(painter, rect, outward, look);
     }
-    end
 }
 
 /// Aligns text that lies on this side of a line, its near edge at the line.

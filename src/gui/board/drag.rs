@@ -213,6 +213,10 @@ fn bend_edits(scene: &Scene, i: usize, wish: Point, keys: Modifiers) -> (Vec<Edi
 
 fn level_edits(scene: &Scene, z: f64, keys: Modifiers) -> (Vec<Edit>, Feedback) {
     let (z, reason) = snapper(scene, keys, Target::StillLevel).level(z);
+    let z = scene.judged.map_or(z, |(study, _)| {
+        let (low, high) = study.tilted(Vec2::y()).span();
+        z.clamp(low, high)
+    });
     let level = Measure::new(Quantity::Length, z).text_to(scene.units, 4);
     let share = scene.judged.map(|(_, r)| Measure::new(Quantity::Share, r.still.share).text(scene.units));
     let words = format!("still {level}, {}", share.unwrap_or_default());

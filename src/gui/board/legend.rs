@@ -5,6 +5,7 @@ use egui::{Align2, Painter, Rect, pos2, vec2};
 use crate::gui::{Look, font};
 use crate::units::{Quantity, fixed, number};
 
+use super::liquid::Tint;
 use super::scene::Scene;
 
 /// The tints with their pressures, under the bob, where there is room.
@@ -15,7 +16,8 @@ pub fn paint_legend(painter: &Painter, scene: &Scene, look: &Look) {
     let width = dial.rect.width() - 34.0;
     let bar =
         Rect::from_min_max(pos2(dial.rect.left(), bottom - 28.0), pos2(dial.rect.left() + width, bottom - 17.0));
-    if bar.top() - 20.0 < dial.lowest(&scene.hanging) || scene.model.bands.is_empty() {
+    let is_tinted = scene.model.bands.iter().any(|b| b.tint != Tint::NotJudged);
+    if bar.top() - 20.0 < dial.lowest(&scene.hanging) || !is_tinted {
         return;
     }
     let paper = Rect::from_min_max(bar.min - vec2(6.0, 18.0), pos2(dial.rect.right(), bottom + 2.0));

@@ -109,8 +109,9 @@ fn paint_scene(painter: &Painter, scene: &Scene, view: &View, hovered: Option<Ta
     paint::paint_surface(painter, screen, model, paint::BOARD_PENS, look);
     paint::paint_last_good(painter, screen, model, look);
     paint::paint_walls(painter, screen, model, paint::BOARD_PENS, look);
-    if annotate::dial_area(scene).intersects(scene.bounds()) {
-        painter.rect_filled(annotate::dial_area(scene), 0.0, look.board.gamma_multiply(0.86));
+    // A section that has been zoomed or moved under the bob shows through its paper.
+    for area in scene.dial.areas(&scene.hanging).into_iter().filter(|area| area.intersects(scene.bounds())) {
+        painter.rect_filled(area, 0.0, look.board.gamma_multiply(0.86));
     }
     annotate::annotate(painter, scene, look);
     bob::paint_bob(painter, &scene.dial, &scene.hanging, scene.units, look);

@@ -288,7 +288,7 @@ fn place_of(study: &Study, place: &Place) -> Option<Point> {
             let edges = section.obstacles.get(obstacle_idx)?.edges();
             match edge_idx {
                 Some(i) => edges.get(i)?.point_at(0.5),
-                None => edges.first()?.start,
+                None => Point::from(edges.iter().map(|e| e.start.coords).sum::<Vec2>() / edges.len().max(1) as f64),
             }
         }
         Place::Point(i) => study.points.get(i)?.at,

@@ -90,7 +90,9 @@ fn begin(ui: &Ui, canvas: &Response, scene: &Scene, view: &mut View, out: &mut V
 /// Ends the drag, calls it off, or hands it back.
 fn go_on(ui: &Ui, canvas: &Response, scene: &Scene, drag: Drag, out: &mut Vec<Proposal>) -> Option<Drag> {
     let is_called_off = ui.input(|i| i.key_pressed(Key::Escape));
-    let is_over = is_called_off || !canvas.dragged();
+    // An undo in the middle of a drag ends it: what follows must not become steps of its own.
+    let is_undone = ui.input(|i| i.modifiers.command && (i.key_down(Key::Z) || i.key_down(Key::Y)));
+    let is_over = is_called_off || is_undone || !canvas.dragged();
     if !is_over {
         return Some(drag);
     }

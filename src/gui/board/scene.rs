@@ -50,21 +50,26 @@ impl<'a> Scene<'a> {
             Derived::Faulty { .. } => None,
         };
         let results = judged.map(|(_, results)| results);
-        let gravities = results.iter().flat_map(|r| &r.cases).map(|c| c.gravity.vec);
-        let rest = Vec2::new(0.0, -study.gravity_m_per_s2);
-        let dial = held_dial.unwrap_or_else(|| Dial::new(area, gravities.chain([rest]), view.units));
+        let case = results.and_then(|r| r.cases.get(view.case_idx));
+        let level = Vec2::new(0.0, -study.gravity_m_per_s2);
+        let rest = case.map_or(level, |c| c.gravity.vec + c.accel);
+        let now = case.map_or(rest, |c| c.gravity.vec);
+        let others = results.map(|r| other_cases(r, view.case_idx)).unwrap_or_default();
+        let dial = held_dial.unwrap_or_else(|| {
+            let others: Vec<Vec2> = others.iter().map(|(_, g)| *g).collect();
+            Dial::new(area, &[rest, now], &others, view.units)
+        });
         let edges = if study.section.outline.is_empty() { Vec::new() } else { study.section.edges() };
         let screen = match view.camera {
             Some(camera) => Screen::new(area, camera),
             None => fitted(study, &edges, area, &dial),
         };
         let model = cached_model(ui, id, doc, view, &screen);
-        let case = results.and_then(|r| r.cases.get(view.case_idx));
         let hanging = Hanging {
-            now: results.map(|_| case.map_or(rest, |c| c.gravity.vec)),
-            rest: case.map_or(rest, |c| c.gravity.vec + c.accel),
+            now: results.map(|_| now),
+            rest,
             tilt_rad: case.map_or(Some(0.0), |c| c.gravity.tilt_rad),
-            others: results.map(|r| other_cases(r, view.case_idx)).unwrap_or_default(),
+            others,
             is_pointed_at: false,
         };
         Scene { study, judged, case_idx: view.case_idx, model, edges, screen, dial, hanging, units: view.units }

@@ -60,6 +60,26 @@ fn escape_calls_a_drag_off() {
 }
 
 #[test]
+fn an_undo_in_the_middle_of_a_drag_ends_it() {
+    let mut board = open(study());
+    let before = board.state().doc.study().clone();
+    let (from, to) = (center(vertex(&board, 3)), at(&board, 0.5, 0.7));
+    press(&mut board, from, to);
+    board.key_down_modifiers(Modifiers::COMMAND, Key::Z);
+    board.step();
+    // What the window does when the command's key is pressed.
+    board.state_mut().doc.undo();
+    board.key_up_modifiers(Modifiers::COMMAND, Key::Z);
+    board.step();
+    board.hover_at(at(&board, 0.2, 0.6));
+    board.step();
+    board.drop_at(to);
+    board.run_steps(2);
+    assert_eq!(*board.state().doc.study(), before);
+    assert_eq!(board.state().doc.undo_label(), None, "no step is left behind");
+}
+
+#[test]
 fn the_bob_hangs_under_the_pointer_that_drags_it() {
     let mut board = open(study());
     let bob = |board: &Board| center(board.get_by_label_contains("Plumb bob"));
