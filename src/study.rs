@@ -142,9 +142,16 @@ impl Study {
 
     /// The largest freeboard allowance of the records, m, and the record; zero without one.
     pub fn freeboard_allowance_m(&self) -> (f64, Option<usize>) {
-        self.records_of(|l| if let Limit::FreeboardAllowance(m) = l { Some(*m) } else { None })
-            .max_by(|a, b| a.1.total_cmp(&b.1))
-            .map_or((0.0, None), |(i, m)| (m, Some(i)))
+        self.largest_of(|l| if let Limit::FreeboardAllowance(m) = l { Some(*m) } else { None })
+    }
+
+    /// The largest margin over the vapour pressure of the records, Pa, and the record; zero without one.
+    pub fn vapour_margin_pa(&self) -> (f64, Option<usize>) {
+        self.largest_of(|l| if let Limit::VapourMargin(pa) = l { Some(*pa) } else { None })
+    }
+
+    fn largest_of(&self, kind: fn(&Limit) -> Option<f64>) -> (f64, Option<usize>) {
+        self.records_of(kind).max_by(|a, b| a.1.total_cmp(&b.1)).map_or((0.0, None), |(i, x)| (x, Some(i)))
     }
 
     /// The door: a valid study, or every fault and warning, each with its place.

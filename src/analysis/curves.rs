@@ -1,6 +1,6 @@
 //! The curves of one load case, for the plots.
 
-use crate::criteria::FreeboardFill;
+use crate::criteria::{CONTAINED, FreeboardFill};
 use crate::geom::Vec2;
 use crate::statics::{Carried, Rims, effective_gravity, pressure_at};
 use crate::study::ValidStudy;
@@ -54,7 +54,7 @@ fn tilt_curve(study: &ValidStudy, results: &Results, case_idx: usize) -> TiltCur
             tilt_at(x).map(|tilt| [x, tilt])
         })
         .collect();
-    let contained = results.cases[case_idx].verdicts.iter().find(|v| v.criterion == "Contained");
+    let contained = results.cases[case_idx].verdicts.iter().find(|v| v.criterion == CONTAINED);
     let spills_at = contained
         .filter(|v| v.demand.is_some_and(|d| d.quantity == crate::units::Quantity::Acceleration))
         .and_then(|v| v.limit)

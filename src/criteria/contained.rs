@@ -11,7 +11,8 @@ use super::{Context, Criterion, Outcome, Sense, State, Verdict, WorkLine};
 
 pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
 
-const NAME: &str = "Contained";
+/// Its name, which the curves look it up by.
+pub const NAME: &str = "Contained";
 
 fn judge(context: &Context) -> Outcome {
     Outcome { verdicts: vec![verdict(context)], absent: Vec::new() }

@@ -136,9 +136,20 @@ impl Context<'_> {
         edges.iter().min_by(|a, b| distance(a).total_cmp(&distance(b))).map_or(Place::Whole, |&i| Place::Edge(i))
     }
 
-    /// Requirement records of one kind, with their index.
-    pub fn records<'s>(&'s self, kind: fn(&Limit) -> Option<f64>) -> impl Iterator<Item = (usize, f64)> + 's {
-        self.study.study().records_of(kind)
+    /// The settled state, or why nothing can be judged by it.
+    pub fn judged(&self) -> Result<&Settled, &str> {
+        match &self.blocked {
+            Some(reason) => Err(reason),
+            None => self.settled,
+        }
+    }
+
+    /// One verdict for each requirement record of a kind, from the record's value.
+    pub fn by_records(&self, kind: fn(&Limit) -> Option<f64>, verdict: impl Fn(f64) -> Verdict) -> Vec<Verdict> {
+        let records = self.study.study().records_of(kind);
+        records
+            .map(|(i, limit)| Verdict { unconfirmed_record: self.unconfirmed(Some(i)), ..verdict(limit) })
+            .collect()
     }
 
     /// The index of a record when it is not confirmed.

@@ -10,6 +10,7 @@ mod roof;
 mod vapour;
 mod verdict;
 
+pub use contained::NAME as CONTAINED;
 pub use context::Context;
 pub use freeboard::FreeboardFill;
 pub use verdict::*;

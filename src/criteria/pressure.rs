@@ -11,30 +11,23 @@ pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
 const NAME: &str = "Pressure";
 
 fn judge(context: &Context) -> Outcome {
-    let mut outcome = Outcome::default();
-    let limits = context.records(|l| if let Limit::WallPressure(pa) = l { Some(*pa) } else { None });
-    for (record_idx, limit_pa) in limits {
-        outcome.verdicts.push(Verdict {
-            unconfirmed_record: context.unconfirmed(Some(record_idx)),
-            ..verdict(context, limit_pa)
-        });
+    let limit = |l: &Limit| if let Limit::WallPressure(pa) = l { Some(*pa) } else { None };
+    let verdicts = context.by_records(limit, |limit_pa| verdict(context, limit_pa));
+    if !verdicts.is_empty() {
+        return Outcome { verdicts, absent: Vec::new() };
     }
-    if let (true, Ok(settled)) = (outcome.verdicts.is_empty(), context.settled) {
-        let peak = Measure::new(Quantity::GagePressure, settled.peak_pa);
-        outcome.absent.push(Absent {
-            criterion: NAME,
-            place_words: "walls".to_owned(),
-            reason: Phrase::new("no pressure limit is given; the highest gage pressure is {}", [peak]),
-        });
-    }
-    outcome
+    let reason = match context.settled {
+        Ok(settled) => {
+            let peak = Measure::new(Quantity::GagePressure, settled.peak_pa);
+            Phrase::new("no pressure limit is given; the highest gage pressure is {}", [peak])
+        }
+        Err(_) => "no pressure limit is given".into(),
+    };
+    Outcome { verdicts, absent: vec![Absent { criterion: NAME, place_words: "walls".to_owned(), reason }] }
 }
 
 fn verdict(context: &Context, limit_pa: f64) -> Verdict {
-    if let Some(reason) = &context.blocked {
-        return context.not_judged(NAME, Sense::AtMost, reason.clone());
-    }
-    let settled = match context.settled {
+    let settled = match context.judged() {
         Ok(settled) => settled,
         Err(reason) => return context.not_judged(NAME, Sense::AtMost, reason.to_owned()),
     };

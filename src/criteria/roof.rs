@@ -14,39 +14,33 @@ pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
 const NAME: &str = "Roof contact";
 
 fn judge(context: &Context) -> Outcome {
-    let mut outcome = Outcome::default();
-    let limits = context.records(|l| if let Limit::RoofPressure(pa) = l { Some(*pa) } else { None });
-    for (record_idx, limit_pa) in limits {
-        outcome.verdicts.push(Verdict {
-            unconfirmed_record: context.unconfirmed(Some(record_idx)),
-            ..verdict(context, limit_pa)
-        });
+    let limit = |l: &Limit| if let Limit::RoofPressure(pa) = l { Some(*pa) } else { None };
+    let verdicts = context.by_records(limit, |limit_pa| verdict(context, limit_pa));
+    if !verdicts.is_empty() {
+        return Outcome { verdicts, absent: Vec::new() };
     }
-    if let (true, Ok(settled)) = (outcome.verdicts.is_empty(), context.settled) {
-        let reason = match &settled.roof {
-            None => "the settled liquid does not reach the roof".into(),
-            Some(roof) => Phrase::new(
-                "no roof limit is given; the liquid wets {} of roof, at up to {}",
-                [
-                    Measure::new(Quantity::Length, roof.wetted_length_m),
-                    Measure::new(Quantity::GagePressure, roof.peak_pa),
-                ],
-            ),
-        };
-        let place_words = settled
-            .roof
-            .as_ref()
-            .map_or_else(|| "roof".to_owned(), |r| context.study.study().section.edge_label(r.edge_idx));
-        outcome.absent.push(Absent { criterion: NAME, place_words, reason });
-    }
-    outcome
+    let contact = context.settled.map(|settled| settled.roof.as_ref());
+    let reason = match contact {
+        Err(_) => "no roof limit is given".into(),
+        Ok(None) => "the settled liquid does not reach the roof".into(),
+        Ok(Some(roof)) => Phrase::new(
+            "no roof limit is given; the liquid wets {} of roof, at up to {}",
+            [
+                Measure::new(Quantity::Length, roof.wetted_length_m),
+                Measure::new(Quantity::GagePressure, roof.peak_pa),
+            ],
+        ),
+    };
+    let section = &context.study.study().section;
+    let place_words = match contact {
+        Ok(Some(roof)) => section.edge_label(roof.edge_idx),
+        _ => "roof".to_owned(),
+    };
+    Outcome { verdicts, absent: vec![Absent { criterion: NAME, place_words, reason }] }
 }
 
 fn verdict(context: &Context, limit_pa: f64) -> Verdict {
-    if let Some(reason) = &context.blocked {
-        return context.not_judged(NAME, Sense::AtMost, reason.clone());
-    }
-    let settled = match context.settled {
+    let settled = match context.judged() {
         Ok(settled) => settled,
         Err(reason) => return context.not_judged(NAME, Sense::AtMost, reason.to_owned()),
     };

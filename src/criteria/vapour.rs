@@ -2,7 +2,6 @@
 //! Source: [VapourMargin].
 
 use crate::sources::Source;
-use crate::study::Limit;
 use crate::units::{Measure, Quantity, number};
 
 use super::{Absent, Context, Criterion, Outcome, Sense, Verdict, WorkLine};
@@ -25,17 +24,11 @@ fn verdict(context: &Context, vapour_pa: f64) -> Verdict {
         source: Source::VapourMargin,
         ..context.not_judged(NAME, Sense::AtLeast, reason.to_owned())
     };
-    if let Some(reason) = &context.blocked {
-        return not_judged(reason);
-    }
-    let settled = match context.settled {
+    let settled = match context.judged() {
         Ok(settled) => settled,
         Err(reason) => return not_judged(reason),
     };
-    let (margin, record_idx) = context
-        .records(|l| if let Limit::VapourMargin(pa) = l { Some(*pa) } else { None })
-        .max_by(|a, b| a.1.total_cmp(&b.1))
-        .map_or((0.0, None), |(i, pa)| (pa, Some(i)));
+    let (margin, record_idx) = context.study.study().vapour_margin_pa();
     let pressure = |pa: f64| Measure::new(Quantity::AbsolutePressure, pa);
     let lowest = settled.lowest_abs_pa;
     let study = context.study.study();
