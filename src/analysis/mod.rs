@@ -8,8 +8,9 @@ use rayon::prelude::*;
 use crate::cases::LoadCase;
 use crate::criteria::{self, Context, Outcome};
 use crate::geom::{Point, Vec2};
-use crate::statics::{Ramp, Rims, Setting, Spill, effective_gravity, settle};
+use crate::statics::{Ramp, Rims, Setting, Spill, effective_gravity, pressure_at, settle};
 use crate::study::ValidStudy;
+use crate::units::{Measure, Quantity};
 
 pub use curves::curves;
 pub use results::*;
@@ -49,6 +50,16 @@ pub fn run(study: &ValidStudy) -> Results {
         pressure_scale_pa: nice_scale(highest_pa),
         warnings: study.warnings().to_vec(),
     }
+}
+
+/// Gage pressure at a place in the settled liquid of a load case, gas included; none outside the liquid.
+pub fn gage_pressure_at(study: &ValidStudy, case: &CaseResult, p: Point) -> Option<Measure> {
+    let (settled, up) = (case.settled.as_ref().ok()?, case.gravity.up?);
+    let inputs = study.study();
+    let weight = inputs.liquid.density_kg_per_m3 * case.gravity.magnitude;
+    let liquid_pa = pressure_at(p, settled.level_m, up, weight);
+    let is_liquid = liquid_pa >= 0.0 && inputs.section.contains(p);
+    is_liquid.then(|| Measure::new(Quantity::GagePressure, inputs.ullage_gage_pa + liquid_pa))
 }
 
 /// The load case, judged, and the volume that its way holds, where that could be judged.

@@ -1,5 +1,7 @@
 //! A closed chain of edges.
 
+use crate::num::bisect;
+
 use super::{Edge, Point, Vec2, cross};
 
 /// A closed chain: each edge starts where the one before ends, the first where the last ends.
@@ -51,24 +53,11 @@ impl Path {
             .fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), (l, h)| (low.min(l.0), high.max(h.0)))
     }
 
-    /// Whether `p` lies inside, by winding: the angle under which the chain is seen from `p`. Points on the chain
-    /// may go either way.
+    /// Whether `p` lies inside: a ray to the right crosses the chain an odd number of times. Points on the chain may
+    /// go either way.
     pub fn contains(&self, p: Point) -> bool {
-        let mut winding = 0.0;
-        for e in &self.edges {
-            let (a, b) = (e.start - p, e.end - p);
-            winding += cross(a, b).atan2(a.dot(&b));
-            // A point between arc and chord is passed on the other side.
-            if let Some(center) = e.center() {
-                let side = cross(e.chord(), p - e.start);
-                let in_disc = (p - center).norm() < e.radius().abs();
-                let beyond_chord = if e.sweep > 0.0 { side < 0.0 } else { side > 0.0 };
-                if in_disc && beyond_chord {
-                    winding += std::f64::consts::TAU * e.sweep.signum();
-                }
-            }
-        }
-        (winding / std::f64::consts::TAU).round() as i64 != 0
+        let n_crossings: usize = self.edges.iter().map(|e| n_right_of(e, p)).sum();
+        n_crossings % 2 == 1
     }
 
     /// Points for drawing, no further than `sagitta` from the true curve. Never used for a result.
@@ -78,5 +67,60 @@ impl Path {
             e.flatten_into(sagitta, &mut out);
         }
         out
+    }
+}
+
+/// How often an edge crosses the ray from `p` to the right. Stretches between turning points take in their lower
+/// end and leave out their upper one, so that a shared vertex counts once.
+fn n_right_of(e: &Edge, p: Point) -> usize {
+    let height = |t: f64| e.point_at(t).y - p.y;
+    let mut stops = e.turning_points(Vec2::y());
+    stops.push(1.0);
+    let mut from = 0.0;
+    let mut n = 0;
+    for to in stops {
+        let (low, high) = (height(from), height(to));
+        if (low <= 0.0) != (high <= 0.0) {
+            let t = if e.is_arc() {
+                bisect(from, to, f64::EPSILON, |t| (height(t) <= 0.0) == (high <= 0.0))
+            } else {
+                low / (low - high)
+            };
+            n += usize::from(e.point_at(t).x > p.x);
+        }
+        from = to;
+    }
+    n
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_point_on_a_chord_or_level_with_a_vertex_is_judged_by_the_chain() {
+        let (left, right) = (Point::new(-1.0, 0.0), Point::new(1.0, 0.0));
+        let half = std::f64::consts::PI;
+        let ring = Path::new(vec![
+            Edge { start: left, end: right, sweep: half },
+            Edge { start: right, end: left, sweep: half },
+        ]);
+        let square = Path::polygon(&[(0.0, 0.0), (1.0, 0.0), (1.0, 1.0), (0.0, 1.0)].map(|(s, z)| Point::new(s, z)));
+        let checks = [
+            (&ring, (0.0, 0.0), true),
+            (&ring, (0.0, 0.999), true),
+            (&ring, (0.8, 0.8), false),
+            (&ring, (-2.0, 0.0), false),
+            (&ring, (-2.0, 1.0), false),
+            (&square, (0.5, 0.5), true),
+            (&square, (-0.5, 0.0), false),
+            (&square, (-0.5, 1.0), false),
+            (&square, (1.5, 0.5), false),
+        ];
+        for (path, (s, z), want) in checks {
+            for path in [path.clone(), path.reversed()] {
+                assert_eq!(path.contains(Point::new(s, z)), want, "({s}, {z})");
+            }
+        }
     }
 }

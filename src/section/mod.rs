@@ -6,7 +6,7 @@ mod check;
 mod mouth;
 mod width;
 
-use crate::geom::{Edge, Point};
+use crate::geom::{Edge, Path, Point};
 
 pub use check::{Region, RegionEdge, check};
 pub use mouth::Mouth;
@@ -76,6 +76,12 @@ impl Section {
     /// All edges of the outline as geometry.
     pub fn edges(&self) -> Vec<Edge> {
         (0..self.outline.len()).map(|i| self.edge(i)).collect()
+    }
+
+    /// Whether a place lies inside the outline and outside every obstacle.
+    pub fn contains(&self, p: Point) -> bool {
+        let is_in = |edges: Vec<Edge>| Path::new(edges).contains(p);
+        is_in(self.edges()) && !self.obstacles.iter().any(|o| is_in(o.edges()))
     }
 
     /// The name shown for an edge: its own, or `edge 3`.

@@ -7,6 +7,7 @@ use std::path::Path;
 use brimwright::analysis::{self, Results, State};
 use brimwright::app::{EXAMPLES, Edit, apply};
 use brimwright::cases::{Accel, AccelUnit};
+use brimwright::geom::{Point, Vec2};
 use brimwright::scenario;
 use brimwright::study::{Fill, Study};
 use brimwright::units::UnitSystem;
@@ -138,4 +139,31 @@ fn a_newcomer_mends_the_first_example_by_fill_or_by_the_bob() {
         apply(&mut mended, &edit);
         assert_eq!(judge(&mended).count(State::Fails), 0, "after {edit:?}");
     }
+}
+
+#[test]
+fn pressure_anywhere_agrees_with_the_named_points_and_stops_at_obstacles() {
+    let mut n_wet = 0;
+    for example in EXAMPLES {
+        let study = study(example.text).validate().unwrap_or_else(|problems| panic!("{problems:?}"));
+        for case in &analysis::run(&study).cases {
+            let Ok(settled) = &case.settled else { continue };
+            for point in settled.points.iter().filter(|p| p.wet) {
+                let got = analysis::gage_pressure_at(&study, case, point.at).map(|m| m.si);
+                // A point on the wall itself may go either way.
+                if let Some(got) = got {
+                    n_wet += 1;
+                    let (want, name) = (point.gage_pa, &point.name);
+                    assert!((got - want).abs() <= 1e-12 * want, "{name} in {}: {got} Pa, not {want}", case.name);
+                }
+            }
+            for obstacle in &study.study().section.obstacles {
+                let n = obstacle.vertices.len() as f64;
+                let sum = obstacle.vertices.iter().fold(Vec2::zeros(), |sum, v| sum + v.start.coords);
+                let middle = Point::from(sum / n);
+                assert_eq!(analysis::gage_pressure_at(&study, case, middle), None, "inside {}", obstacle.name);
+            }
+        }
+    }
+    assert!(n_wet > 20, "only {n_wet} points are wet");
 }

@@ -3,7 +3,9 @@
 
 use egui::{CursorIcon, Id, Key, Modifiers, PointerButton, Pos2, Response, Ui};
 
+use crate::analysis;
 use crate::app::Edit;
+use crate::geom::Point;
 use crate::gui::{Proposal, Selected, View};
 
 use super::bob::Dial;
@@ -138,7 +140,7 @@ fn hover(
         Some(t) => Some(t.words(scene)),
     };
     let on = what.map(|w| format!("on {w}")).unwrap_or_default();
-    view.status = status(&place_words(p, scene), &on);
+    view.status = status(&status(&place_words(p, scene), &pressure_words(p, scene)), &on);
     if canvas.double_clicked() {
         if let Some(Target::Edge(i) | Target::Middle(i)) = target {
             out.push(Proposal::Edit(split(scene, i, pos, keys)));
@@ -172,6 +174,14 @@ fn held_target(drag: &Drag) -> Option<Target> {
         Held::StillLevel(_) => Some(Target::StillLevel),
         Held::Bob { .. } => Some(Target::Bob),
     }
+}
+
+/// Gage pressure under the pointer, where there is liquid.
+fn pressure_words(p: Point, scene: &Scene) -> String {
+    let pressure = scene
+        .judged
+        .and_then(|(study, results)| analysis::gage_pressure_at(study, results.cases.get(scene.case_idx)?, p));
+    pressure.map_or_else(String::new, |p| p.text(scene.units))
 }
 
 fn status(words: &str, reason: &str) -> String {
