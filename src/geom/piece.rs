@@ -72,12 +72,16 @@ pub(super) fn cut(edges: &[Edge], origin: Point, up: Vec2, right: Vec2) -> Vec<P
         [right.dot(&d), up.dot(&d)]
     };
     let mut pieces = Vec::with_capacity(edges.len() + 8);
+    let mut last = (origin, [0.0; 2]);
     for edge in edges {
+        let from = if edge.start == last.0 { last.1 } else { local(edge.start) };
+        let to = local(edge.end);
         if edge.is_arc() {
-            push_arc(edge, up, right, local, &mut pieces);
+            push_arc(edge, (from, to), up, right, local, &mut pieces);
         } else {
-            push_piece(local(edge.start), local(edge.end), None, &mut pieces);
+            push_piece(from, to, None, &mut pieces);
         }
+        last = (edge.end, to);
     }
     pieces
 }
@@ -94,7 +98,14 @@ fn push_piece(from: [f64; 2], to: [f64; 2], arc: Option<([f64; 2], f64)>, pieces
 
 /// Cuts an arc where it turns along `up`, and at the quarter points between, where its angle is ill-conditioned
 /// as a function of the chord no more.
-fn push_arc(edge: &Edge, up: Vec2, right: Vec2, local: impl Fn(Point) -> [f64; 2], pieces: &mut Vec<Piece>) {
+fn push_arc(
+    edge: &Edge,
+    (from, end): ([f64; 2], [f64; 2]),
+    up: Vec2,
+    right: Vec2,
+    local: impl Fn(Point) -> [f64; 2],
+    pieces: &mut Vec<Piece>,
+) {
     let radius = edge.radius();
     // Point minus centre: the radius, at right angles to the tangent.
     let out = |t: f64| {
@@ -102,7 +113,7 @@ fn push_arc(edge: &Edge, up: Vec2, right: Vec2, local: impl Fn(Point) -> [f64; 2
         let out = Vec2::new(tangent.y, -tangent.x) * radius;
         [right.dot(&out), up.dot(&out)]
     };
-    let (mut from, mut from_out) = (local(edge.start), out(0.0));
+    let (mut from, mut from_out) = (from, out(0.0));
     let turned = from_angle(radius, from_out);
     let mut push = |to: [f64; 2], to_out: [f64; 2]| {
         let low_out = if to[1] > from[1] { from_out } else { to_out };
@@ -124,7 +135,7 @@ fn push_arc(edge: &Edge, up: Vec2, right: Vec2, local: impl Fn(Point) -> [f64; 2
         }
         k += 1.0;
     }
-    push(local(edge.end), end_out);
+    push(end, end_out);
 }
 
 /// Angle of a point about the centre, growing along the arc whichever way it turns.

@@ -225,12 +225,13 @@ impl Sublevel {
         let pieces = &self.pieces;
         // Only low points need sorting: from there the chains lead up, piece by piece.
         let starts = (0..pieces.len()).filter(|&i| !is_led_to(pieces, i));
-        let mut rising: Vec<(f64, u32)> = starts.map(|i| (pieces[i].low[1], i as u32)).collect();
+        let mut rising: Vec<(f64, u32)> = Vec::with_capacity(pieces.len());
+        rising.extend(starts.map(|i| (pieces[i].low[1], i as u32)));
         rising.sort_unstable_by(|a, b| a.0.total_cmp(&b.0));
         let mut rising = rising.into_iter().peekable();
         let Some(&(mut bottom, _)) = rising.peek() else { return };
-        self.slabs.reserve(self.pieces.len());
-        self.crossing.reserve(4 * self.pieces.len());
+        self.slabs.reserve(pieces.len());
+        self.crossing.reserve(4 * pieces.len());
         let mut active: Vec<Active> = Vec::with_capacity(8);
         let mut area = 0.0;
         loop {
@@ -242,6 +243,7 @@ impl Sublevel {
                 (a.piece, a.piece_idx) = (&pieces[next], next as u32);
                 true
             });
+            let n_before = active.len();
             while let Some((_, piece_idx)) = rising.next_if(|next| next.0 <= bottom) {
                 let piece = &pieces[piece_idx as usize];
                 active.push(Active { piece, piece_idx, u_bottom: 0.0, u_middle: 0.0, u_top: piece.low[0] });
@@ -251,22 +253,24 @@ impl Sublevel {
             if top == f64::INFINITY {
                 break;
             }
-            let middle = 0.5 * (bottom + top);
             let (mut width_bottom, mut width_top, mut segments, mut has_arcs) = (0.0, 0.0, 0.0, false);
             for a in &mut active {
                 let piece = a.piece;
                 a.u_bottom = a.u_top;
                 a.u_top = piece.u_at(top);
-                a.u_middle = 0.5 * (a.u_bottom + a.u_top);
                 width_bottom += piece.side() * a.u_bottom;
                 width_top += piece.side() * a.u_top;
                 if piece.arc.is_some() {
                     has_arcs = true;
-                    a.u_middle = piece.u_at(middle);
                     segments += piece.segment_area([a.u_bottom, bottom], [a.u_top, top]);
                 }
             }
-            active.sort_unstable_by(|a, b| a.u_middle.total_cmp(&b.u_middle));
+            // Pieces do not cross: only new ones need to find their place.
+            if active.len() > n_before {
+                let middle = 0.5 * (bottom + top);
+                active.iter_mut().for_each(|a| a.u_middle = a.piece.u_at(middle));
+                active.sort_unstable_by(|a, b| a.u_middle.total_cmp(&b.u_middle));
+            }
             let (width_bottom, width_top) = (f64::max(width_bottom, 0.0), f64::max(width_top, 0.0));
             let (first, n) = (self.crossing.len() as u32, active.len() as u32);
             let crossing = active.iter().map(|a| Crossing { piece_idx: a.piece_idx, u_bottom: a.u_bottom });
