@@ -11,7 +11,7 @@ pub fn frame() {
     for (width, height) in [(1280.0, 800.0), (1920.0, 1080.0)] {
         let mut stage = Stage::new(width, height);
         let frame = median_s(|| stage.frame(Vec::new()));
-        print_rate(&format!("{width} x {height}, all regions and plots"), 1.0 / frame, 120.0);
+        print_rate(&format!("{width} x {height}, all regions and plots"), 1.0 / frame, 250.0);
         let mut right = false;
         stage.frame(vec![Event::PointerMoved(stage.on_fill_bar(0.9)), press(stage.on_fill_bar(0.9), true)]);
         let drag = median_s(|| {
