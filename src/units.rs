@@ -179,8 +179,11 @@ impl Measure {
 
     /// Number and unit, rounded to `significant` figures; SI values far below the usual unit take a smaller one.
     pub fn text_to(self, system: UnitSystem, significant: usize) -> String {
-        let unit = self.quantity.unit_near(system, self.si);
-        let number = number(unit.from_si(self.si), significant);
+        let near = self.quantity.unit_near(system, self.si);
+        // What even the smallest unit shows as a row of zeros is the rounding of a sum.
+        let si = if self.si.abs() < 1e-4 * near.in_si { 0.0 } else { self.si };
+        let unit = self.quantity.unit_near(system, si);
+        let number = number(unit.from_si(si), significant);
         match unit.symbol {
             "" => number,
             "°" => format!("{number}°"),
@@ -307,6 +310,7 @@ mod tests {
         assert_eq!(text(Quantity::Volume, 11.17), "11.2 m³");
         assert_eq!(text(Quantity::Force, 0.00067), "0.670 mN");
         assert_eq!(text(Quantity::Moment, 0.0), "0.00 kN m");
+        assert_eq!(text(Quantity::Moment, -3e-12), "0.00 kN m");
         assert_eq!(text(Quantity::GagePressure, 2.5), "2.50 Pa");
     }
 

@@ -53,6 +53,8 @@ pub enum Command {
     MoveCaseLeft,
     /// Move the chosen case one place to the right.
     MoveCaseRight,
+    /// The settled state of the chosen case in numbers.
+    Loads,
     /// What the program is, and what it does not do.
     About,
 }
@@ -224,6 +226,14 @@ pub const TABLE: &[Row] = &[
         on(CTRL, Key::PageDown),
         "Move the chosen case one place to the right",
         has_case_after,
+    ),
+    group(
+        Command::Loads,
+        Menu::Case,
+        "Settled state and loads",
+        on(CTRL, Key::L),
+        "Volumes, centroid, pressure, and the load on every edge",
+        has_case,
     ),
     row(
         Command::About,

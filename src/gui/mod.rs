@@ -15,6 +15,7 @@ mod formula;
 mod header;
 mod launch;
 mod layout;
+mod loads;
 pub mod look;
 pub mod marks;
 mod modals;

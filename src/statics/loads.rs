@@ -86,7 +86,8 @@ pub fn loads(
     let is_constant = width.constant().is_some();
     Loads {
         edges,
-        sides_force_n: if is_constant { Vec2::zeros() } else { total - force },
+        // The side walls' normals have no s component.
+        sides_force_n: if is_constant { Vec2::zeros() } else { Vec2::new(0.0, total.y - force.y) },
         sides_moment_n_m: if is_constant { 0.0 } else { total_moment - moment },
         total_force_n: total,
         total_moment_n_m: total_moment,

@@ -6,7 +6,7 @@ use brimwright::app::{Derived, Document, EXAMPLES, load};
 use brimwright::gui::commands::TABLE;
 use brimwright::gui::{Command, Dialogs, Settings, Window, look};
 use brimwright::study::Fill;
-use brimwright::units::UnitSystem;
+use brimwright::units::{Measure, Quantity, UnitSystem};
 use egui::accesskit::Role;
 use egui::{Event, Key, Modifiers, ViewportCommand, ViewportEvent, ViewportId};
 use egui_kittest::Harness;
@@ -415,4 +415,24 @@ fn every_example_opens_without_a_fault() {
         assert!(matches!(doc(&harness).derived(), Derived::Judged { .. }), "{}", example.file_name);
         assert!(!doc(&harness).is_unsaved(), "{}", example.file_name);
     }
+}
+
+#[test]
+fn loads_of_the_chosen_case_are_listed_edge_by_edge() {
+    let mut harness = window();
+    run(&mut harness, Command::Loads);
+    let Derived::Judged { results, .. } = doc(&harness).derived() else { panic!("the first example is sound") };
+    // The first example opens on its worst case.
+    let (case_idx, _) = results.ranked()[0];
+    let settled = results.cases[case_idx].settled.as_ref().expect("it settles");
+    let total = Measure::new(Quantity::Force, settled.total_force_n.y).text(UnitSystem::Si);
+    let walls: Vec<String> = settled.edges.iter().filter(|e| e.is_wall).map(|e| e.name.clone()).collect();
+    assert!(harness.query_all_by_label(&total).next().is_some(), "no {total}");
+    harness.get_by_label("all together");
+    for wall in walls {
+        assert!(harness.query_all_by_label(&wall).next().is_some(), "no row {wall}");
+    }
+    harness.get_by_label("Close").click();
+    harness.run();
+    assert!(harness.query_by_label("all together").is_none());
 }

@@ -23,7 +23,7 @@ use super::settings::Settings;
 use super::tank::TankColumn;
 use super::verdicts::VerdictColumn;
 use super::{Command, Desk, Look, Proposal, Selected, View};
-use super::{board, case_head, commands, header, look, plots, starter, status, strip, tank, verdicts};
+use super::{board, case_head, commands, header, loads, look, plots, starter, status, strip, tank, verdicts};
 
 use filing::{Intent, example};
 use opened::OpenVerdict;
@@ -42,6 +42,7 @@ pub struct Window {
     intent: Option<Intent>,
     asks_unsaved: bool,
     shows_about: bool,
+    shows_loads: bool,
     may_close: bool,
     event: String,
     judged_ms: Option<f64>,
@@ -67,6 +68,7 @@ impl Window {
             intent: None,
             asks_unsaved: false,
             shows_about: false,
+            shows_loads: false,
             may_close: false,
             event: String::new(),
             judged_ms: None,
@@ -99,7 +101,7 @@ impl Window {
     pub fn ui(&mut self, ui: &mut Ui) {
         let look = Look::of(ui.ctx().theme());
         let mut out: Vec<Proposal> = Vec::new();
-        let is_asking = self.asks_unsaved || self.shows_about || self.chooser.is_open();
+        let is_asking = self.asks_unsaved || self.shows_about || self.shows_loads || self.chooser.is_open();
         if !is_asking {
             out.extend(commands::pressed(ui.ctx(), &self.doc, &self.view).into_iter().map(Proposal::Run));
         }
@@ -158,6 +160,7 @@ impl Window {
             }
             Command::MoveCaseLeft => self.move_case(case_idx, case_idx.saturating_sub(1)),
             Command::MoveCaseRight => self.move_case(case_idx, case_idx + 1),
+            Command::Loads => self.shows_loads = true,
             Command::About => self.shows_about = true,
         }
     }
@@ -229,6 +232,13 @@ impl Window {
         }
         if self.shows_about && modals::about_ui(ctx, look) {
             self.shows_about = false;
+        }
+        if self.shows_loads {
+            let case = match self.doc.derived() {
+                Derived::Judged { results, .. } => results.cases.get(self.view.case_idx),
+                Derived::Faulty { .. } => None,
+            };
+            self.shows_loads = case.is_some_and(|case| !loads::loads_ui(ctx, look, case, self.view.units));
         }
         match self.chooser.ui(ctx, look) {
             Some((Purpose::Open, Some(path))) => self.open(&path),
