@@ -122,8 +122,8 @@ const N_SAMPLES: usize = 48;
 impl Spill {
     /// Follows `volume_m3` along `ramp`.
     ///
-    /// Spilled volume counts as gone: after a spill the volume is what the brim left. Accuracy: turns to 1e-14 rad,
-    /// volumes as [`super::Tilted`].
+    /// Spilled volume counts as gone: after a spill the volume is what the brim left. Accuracy: the first spill to
+    /// 1e-14 rad, the least volume to 1e-10 rad, volumes as [`super::Tilted`].
     /// Source: `BrimPath`.
     pub fn trace(ramp: &Ramp, region: &Region, vessel: &Vessel, mouths: &[Mouth], volume_m3: f64) -> Spill {
         let way = Way { ramp, region, vessel, mouths };
@@ -155,7 +155,7 @@ impl Spill {
                 && stop.holds_m3 < capacity;
             if is_dip {
                 let high = if stop.turned <= case { turns[i + 1].min(case) } else { turns[i + 1] };
-                let (turned, _) = golden_min(turns[i - 1], high, 1e-7, |t| way.at(t).holds_m3);
+                let (turned, _) = golden_min(turns[i - 1], high, 1e-10, |t| way.at(t).holds_m3);
                 let refined = way.at(turned);
                 if refined.holds_m3 < stop.holds_m3 {
                     stop = refined;
