@@ -41,16 +41,17 @@ const UTILISATION_ROUNDING: f64 = 1e-9;
 impl Context<'_> {
     /// A verdict from demand and limit. The demand is compared in `sense`.
     pub fn verdict(&self, criterion: &'static str, demand: Measure, limit: Measure, sense: Sense) -> Verdict {
-        let (top, bottom) = match sense {
-            Sense::AtMost => (demand.si.max(0.0), limit.si),
-            Sense::AtLeast => (limit.si.max(0.0), demand.si),
+        let (smaller, larger) = match sense {
+            Sense::AtMost => (demand.si, limit.si),
+            Sense::AtLeast => (limit.si, demand.si),
         };
-        let utilisation = if top == 0.0 {
+        // Nothing is a share of zero or less: then the comparison alone decides.
+        let utilisation = if larger > 0.0 {
+            smaller.max(0.0) / larger
+        } else if smaller <= larger {
             0.0
-        } else if bottom <= 0.0 {
-            f64::INFINITY
         } else {
-            top / bottom
+            f64::INFINITY
         };
         Verdict {
             state: state_of(utilisation),

@@ -33,7 +33,7 @@ fn verdict(context: &Context, limit_pa: f64) -> Verdict {
     };
     let pressure = |pa: f64| Measure::new(Quantity::GagePressure, pa);
     let study = context.study.study();
-    let weight = study.liquid.density_kg_per_m3 * context.gravity.magnitude;
+    let weight = study.liquid.weight_pa_per_m(context.gravity.magnitude);
     let gas = study.ullage_gage_pa;
     let words = settled.edges.iter().find(|e| e.place == settled.peak_place).map(|e| e.name.clone());
     Verdict {

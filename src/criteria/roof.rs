@@ -52,7 +52,7 @@ fn verdict(context: &Context, limit_pa: f64) -> Verdict {
             ..context.verdict(NAME, pressure(0.0), pressure(limit_pa), Sense::AtMost)
         };
     };
-    let weight = context.study.study().liquid.density_kg_per_m3 * context.gravity.magnitude;
+    let weight = context.study.study().liquid.weight_pa_per_m(context.gravity.magnitude);
     Verdict {
         place: Place::Edge(roof.edge_idx),
         place_words: context.study.study().section.edge_label(roof.edge_idx),

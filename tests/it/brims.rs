@@ -116,3 +116,19 @@ fn whatever_is_sound_is_judged_without_nan_and_no_surface_stands_above_a_brim() 
         }
     });
 }
+
+/// Went wrong once: where the still level stood above the mouth and the tilt took a little off it, a negative demand
+/// was called no demand, and freeboard held.
+#[test]
+fn a_still_level_above_the_mouth_has_no_freeboard_until_the_tilt_takes_it_below() {
+    // A closed tank with an open well at the right, joined along the floor; the well's rim lies at z = 0.5 m.
+    let corners = [(0.0, 0.0), (2.0, 0.0), (2.0, 0.5), (1.5, 0.5), (1.5, 0.2), (1.0, 0.2), (1.0, 1.0), (0.0, 1.0)];
+    let study = study(section(&polygon(&corners), &[2], 1.0), Fill::Level(0.6));
+    for (a_s, want) in [(0.3, State::Fails), (6.0, State::Holds)] {
+        let case = judge_case(&study, held(a_s, 0.0));
+        let freeboard = verdict(&case, "Freeboard").expect("the well has upright walls");
+        let (demand, limit) = (freeboard.demand.unwrap().si, freeboard.limit.unwrap().si);
+        assert_eq!(freeboard.state, want, "{demand} m against {limit} m at {a_s} m/s2");
+        assert!(demand < 0.0 && limit < 0.0, "{demand} m, {limit} m");
+    }
+}
