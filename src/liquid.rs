@@ -20,6 +20,11 @@ impl Liquid {
     /// Source: IAPWS R1-76(2014), evaluated with the open library CoolProp: 72.8168 mN/m.
     pub const FALLBACK_SURFACE_TENSION_N_PER_M: f64 = 0.072_816_8;
 
+    /// Growth of pressure with depth along effective gravity, rho |G|, Pa/m.
+    pub fn weight_pa_per_m(&self, gravity_m_per_s2: f64) -> f64 {
+        self.density_kg_per_m3 * gravity_m_per_s2
+    }
+
     /// The surface tension to use, N/m.
     pub fn surface_tension(&self) -> f64 {
         self.surface_tension_n_per_m.unwrap_or(Self::FALLBACK_SURFACE_TENSION_N_PER_M)

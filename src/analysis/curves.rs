@@ -66,13 +66,14 @@ fn tilt_curve(study: &ValidStudy, results: &Results, case_idx: usize) -> TiltCur
 
 fn wall_curve(study: &ValidStudy, results: &Results, result: &CaseResult) -> WallCurve {
     let inputs = study.study();
-    let density = inputs.liquid.density_kg_per_m3;
     let gas = inputs.ullage_gage_pa;
     let section = &inputs.section;
     let mut curve = WallCurve::default();
-    let rest = (Vec2::y(), results.still.level_z_m, density * inputs.gravity_m_per_s2);
+    let rest = (Vec2::y(), results.still.level_z_m, inputs.liquid.weight_pa_per_m(inputs.gravity_m_per_s2));
     let now = match (&result.settled, result.gravity.up) {
-        (Ok(settled), Some(up)) => Some((up, settled.level_m, density * result.gravity.magnitude)),
+        (Ok(settled), Some(up)) => {
+            Some((up, settled.level_m, inputs.liquid.weight_pa_per_m(result.gravity.magnitude)))
+        }
         _ => None,
     };
     let mut length = 0.0;

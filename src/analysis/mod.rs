@@ -10,7 +10,7 @@ use crate::criteria::{self, Context, Outcome};
 use crate::geom::{Point, Vec2};
 use crate::statics::{Ramp, Rims, Setting, Spill, effective_gravity, pressure_at, settle};
 use crate::study::ValidStudy;
-use crate::units::{Measure, Quantity};
+use crate::units::{Measure, Quantity, number};
 
 pub use curves::curves;
 pub use results::*;
@@ -22,12 +22,13 @@ pub fn run(study: &ValidStudy) -> Results {
     let volume = study.fill_volume_m3();
     let level = still_tilted.level_for_volume(volume);
     let (bottom, top) = still_tilted.span();
-    let still_length_m = length_m(&still_tilted.chords(level));
+    let surface = still_tilted.chords(level);
+    let still_length_m = length_m(&surface);
     let judged: Vec<(CaseResult, Option<f64>)> =
         inputs.cases.par_iter().map(|case| judge_case(study, case, level, still_length_m)).collect();
     let holds = judged.iter().filter_map(|(_, holds)| *holds).reduce(f64::min);
     let cases: Vec<CaseResult> = judged.into_iter().map(|(case, _)| case).collect();
-    let rest_pa = inputs.liquid.density_kg_per_m3 * inputs.gravity_m_per_s2 * (level - bottom);
+    let rest_pa = inputs.liquid.weight_pa_per_m(inputs.gravity_m_per_s2) * (level - bottom);
     let highest_pa = cases
         .iter()
         .filter_map(|c| c.settled.as_ref().ok())
@@ -43,7 +44,7 @@ pub fn run(study: &ValidStudy) -> Results {
             ullage_m: top - level,
             depth_m: level - bottom,
             mass_kg: volume * inputs.liquid.density_kg_per_m3,
-            surface: still_tilted.chords(level),
+            surface,
             highest_share: holds.map(|v| v.min(capacity_m3) / capacity_m3),
         },
         cases,
@@ -56,7 +57,7 @@ pub fn run(study: &ValidStudy) -> Results {
 pub fn gage_pressure_at(study: &ValidStudy, case: &CaseResult, p: Point) -> Option<Measure> {
     let (settled, up) = (case.settled.as_ref().ok()?, case.gravity.up?);
     let inputs = study.study();
-    let weight = inputs.liquid.density_kg_per_m3 * case.gravity.magnitude;
+    let weight = inputs.liquid.weight_pa_per_m(case.gravity.magnitude);
     let liquid_pa = pressure_at(p, settled.level_m, up, weight);
     let is_liquid = liquid_pa >= 0.0 && inputs.section.contains(p);
     is_liquid.then(|| Measure::new(Quantity::GagePressure, inputs.ullage_gage_pa + liquid_pa))
@@ -110,7 +111,7 @@ fn settle_case(study: &ValidStudy, gravity: &EffectiveGravity, spill: Option<&Sp
     let setting = Setting {
         volume_m3,
         spilled_m3: filled - volume_m3,
-        weight_pa_per_m: inputs.liquid.density_kg_per_m3 * gravity.magnitude,
+        weight_pa_per_m: inputs.liquid.weight_pa_per_m(gravity.magnitude),
         gas_pa: inputs.ullage_gage_pa,
         air_pa: inputs.air_pressure_abs_pa,
         moment_about: inputs.moment_about,
@@ -135,11 +136,11 @@ fn blocked(
     }
     let liquid = &study.study().liquid;
     let length = length_m(&settled?.surface).max(still_length_m);
-    let bond = liquid.density_kg_per_m3 * gravity.magnitude * length * length / liquid.surface_tension();
+    let bond = liquid.weight_pa_per_m(gravity.magnitude) * length * length / liquid.surface_tension();
     (length > 0.0 && bond < LEAST_BOND_NUMBER).then(|| {
         format!(
             "capillarity: Bond number {} is below {LEAST_BOND_NUMBER:.0}, surface tension shapes the surface",
-            crate::units::number(bond, 2)
+            number(bond, 2)
         )
     })
 }

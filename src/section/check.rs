@@ -2,7 +2,7 @@
 
 use std::f64::consts::TAU;
 
-use crate::geom::{Edge, Path, Point, Vec2};
+use crate::geom::{Edge, Path, Point, Vec2, cross};
 use crate::problem::{Place, Problem};
 
 use super::{EdgeKind, Section, WidthLaw};
@@ -335,10 +335,10 @@ fn meetings(a: &Edge, b: &Edge, slack: f64) -> Vec<Point> {
     match (a.center(), b.center()) {
         (None, None) => {
             let (d, e) = (a.chord(), b.chord());
-            let det = d.x * e.y - d.y * e.x;
+            let det = cross(d, e);
             if det != 0.0 {
                 let w = b.start - a.start;
-                let (t, u) = ((w.x * e.y - w.y * e.x) / det, (w.x * d.y - w.y * d.x) / det);
+                let (t, u) = (cross(w, e) / det, cross(w, d) / det);
                 if (0.0..=1.0).contains(&t) && (0.0..=1.0).contains(&u) {
                     out.push(a.point_at(t));
                 }

@@ -5,7 +5,7 @@
 
 use std::f64::consts::PI;
 
-use crate::geom::{Point, Vec2};
+use crate::geom::{Point, Vec2, cross};
 use crate::num::{golden_min, root};
 use crate::section::{Mouth, Region};
 
@@ -37,14 +37,10 @@ impl Ramp {
         let delta = -accel;
         let end = g_at_rest + delta;
         let tilt = |g: Vec2| g.x.atan2(-g.y);
-        let turn = |to: Vec2| {
-            let (cross, dot) = (g_at_rest.x * to.y - g_at_rest.y * to.x, g_at_rest.dot(&to));
-            cross.atan2(dot)
-        };
+        let turn = |to: Vec2| cross(g_at_rest, to).atan2(g_at_rest.dot(&to));
         let to_case = turn(end);
         // Along gravity the direction does not turn, however hard the tank accelerates.
-        let is_along =
-            (g_at_rest.x * delta.y - g_at_rest.y * delta.x).abs() <= 1e-12 * g_at_rest.norm() * accel.norm();
+        let is_along = cross(g_at_rest, delta).abs() <= 1e-12 * g_at_rest.norm() * accel.norm();
         let to_end = if is_along { to_case } else { turn(delta) };
         let rounding = 1e-12 * (g_at_rest.norm() + accel.norm());
         let through_zero = end.norm() <= rounding || to_case.abs() >= PI - 1e-12;
@@ -73,7 +69,7 @@ impl Ramp {
             Kind::Straight { start, delta } => {
                 let up = self.up(turned);
                 // start + share delta is parallel to -up.
-                let (s, d) = (start.x * up.y - start.y * up.x, delta.x * up.y - delta.y * up.x);
+                let (s, d) = (cross(start, up), cross(delta, up));
                 if d == 0.0 { f64::INFINITY } else { (-s / d).max(0.0) }
             }
         }

@@ -49,16 +49,6 @@ impl Vessel {
         self.capacity_m3
     }
 
-    /// Its edges.
-    pub fn edges(&self) -> &[Edge] {
-        &self.edges
-    }
-
-    /// Its width law.
-    pub fn width(&self) -> &WidthLaw {
-        &self.width
-    }
-
     /// Seen along a direction; `up` is a unit vector.
     pub fn tilted(&self, up: Vec2) -> Tilted<'_> {
         Tilted { vessel: self, sublevel: Sublevel::new(&self.edges, up) }
@@ -150,7 +140,7 @@ impl Tilted<'_> {
     }
 
     /// Area of the surface at `level`, m2: chords weighted with the width.
-    pub fn surface_area(&self, level: f64) -> f64 {
+    fn surface_area(&self, level: f64) -> f64 {
         if let Some(w) = self.vessel.width.constant() {
             return w * self.sublevel.width_at(level);
         }

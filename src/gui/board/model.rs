@@ -151,13 +151,13 @@ impl BoardModel {
             up: Vec2::y(),
             level_m: results.still.level_z_m,
             gas_pa: inputs.ullage_gage_pa,
-            weight_pa_per_m: inputs.liquid.density_kg_per_m3 * inputs.gravity_m_per_s2,
+            weight_pa_per_m: inputs.liquid.weight_pa_per_m(inputs.gravity_m_per_s2),
         };
         match case.map(|c| (c, &c.settled)) {
             Some((case, Ok(settled))) => {
                 body.up = case.gravity.up.unwrap_or(body.up);
                 body.level_m = settled.level_m;
-                body.weight_pa_per_m = inputs.liquid.density_kg_per_m3 * case.gravity.magnitude;
+                body.weight_pa_per_m = inputs.liquid.weight_pa_per_m(case.gravity.magnitude);
                 model.surface = settled.surface.clone();
                 model.centroid = Some(settled.centroid);
                 for (mark, result) in model.points.iter_mut().zip(&settled.points) {
