@@ -1,6 +1,6 @@
 //! The look: every colour, the pressure map, and what egui is told of both themes. Nobody else writes a colour.
 //!
-//! Knows no study. The fonts and text styles are in [`super::font`].
+//! Knows no study. The fonts and text styles are in `super::font`.
 
 use std::sync::Arc;
 

@@ -1,11 +1,8 @@
-//! Small marks that every panel shares: the cup, the bar, the trust strip, rings and triangles, halos, hatches.
+//! Small marks that every panel shares: the cup, the bar, the trust strip, rings and triangles, hatches.
 //!
-//! `*_ui` allocate and speak (AccessKit); `paint_*` only draw. Knows no panel.
+//! They only draw; whoever shows them gives them room and words for AccessKit. Knows no panel.
 
-use egui::{
-    Align2, Color32, CornerRadius, Painter, Pos2, Rect, Response, Role, Sense, Shape, Stroke, StrokeKind, Ui,
-};
-use egui::{Vec2, WidgetInfo, pos2, vec2};
+use egui::{Align2, CornerRadius, Painter, Pos2, Rect, Response, Shape, Stroke, StrokeKind, Vec2, pos2, vec2};
 
 use crate::analysis::{Reach, State, Trust};
 
@@ -13,14 +10,6 @@ use super::{Look, font};
 
 /// Utilisation at which a bar ends; what is above is told by the number.
 pub const BAR_SCALE: f32 = 1.25;
-
-/// The mark of a state, `size` points high.
-pub fn cup_ui(ui: &mut Ui, state: State, size: f32, look: &Look) -> Response {
-    let (rect, response) = ui.allocate_exact_size(Vec2::splat(size), Sense::hover());
-    paint_cup(ui.painter(), rect.center(), size, state, look);
-    response.widget_info(|| WidgetInfo::labeled(Role::Image, true, state.word()));
-    response
-}
 
 /// The mark of a state: low, at the brim, tipped and spilling, dashed and empty with a question mark.
 pub fn paint_cup(painter: &Painter, center: Pos2, size: f32, state: State, look: &Look) {
@@ -65,13 +54,6 @@ pub fn paint_cup(painter: &Painter, center: Pos2, size: f32, state: State, look:
     }
 }
 
-/// Utilisation as a bar with its limit at 80 % of the width; `width` wide, 10 high.
-pub fn bar_ui(ui: &mut Ui, width: f32, utilisation: Option<f64>, state: State, look: &Look) -> Response {
-    let (rect, response) = ui.allocate_exact_size(vec2(width, 10.0), Sense::hover());
-    paint_bar(ui.painter(), rect, utilisation, state, look);
-    response
-}
-
 /// Draws a utilisation bar, 6 high, in the middle of `rect`.
 pub fn paint_bar(painter: &Painter, rect: Rect, utilisation: Option<f64>, state: State, look: &Look) {
     let x_of = |u: f32| rect.left() + rect.width() * (u / BAR_SCALE).clamp(0.0, 1.0);
@@ -97,14 +79,6 @@ pub fn paint_bar(painter: &Painter, rect: Rect, utilisation: Option<f64>, state:
     painter.vline(limit_x, egui::Rangef::new(track.center().y - 6.0, track.center().y + 6.0), (1.25, look.ink));
     let close_x = painter.round_to_pixel_center(x_of(0.9));
     painter.vline(close_x, egui::Rangef::new(track.bottom(), track.bottom() + 3.0), (1.0, look.ink3));
-}
-
-/// The five squares that tell how far a method is inside its range. Hover names them with their numbers.
-pub fn trust_ui(ui: &mut Ui, trust: &[Trust], look: &Look) -> Response {
-    let (rect, response) = ui.allocate_exact_size(vec2(trust_width(trust.len()), 8.0), Sense::hover());
-    paint_trust(ui.painter(), rect.right_center(), trust, look);
-    response.widget_info(|| WidgetInfo::labeled(Role::Image, true, trust_words(trust)));
-    response
 }
 
 /// Width of a trust strip of `n` squares.
@@ -169,29 +143,6 @@ pub fn paint_warning(painter: &Painter, center: Pos2, radius: f32, number: usize
     let path = vec![corner(0.0, -1.1), corner(1.1, 0.85), corner(-1.1, 0.85)];
     painter.add(Shape::convex_polygon(path, look.board, Stroke::new(1.75, color)));
     painter.text(corner(0.0, 0.28), Align2::CENTER_CENTER, number.to_string(), font::tick_figure(), color);
-}
-
-/// A line cased in a halo of the drawing ground, 2 points each side.
-pub fn paint_halo_line(painter: &Painter, points: &[Pos2], stroke: Stroke, look: &Look) {
-    painter.line(points.to_vec(), Stroke::new(stroke.width + 4.0, look.board));
-    painter.line(points.to_vec(), stroke);
-}
-
-/// Text on a rectangle of the drawing ground. Gives the text's place.
-pub fn paint_halo_text(
-    painter: &Painter,
-    pos: Pos2,
-    anchor: Align2,
-    text: impl ToString,
-    font: egui::FontId,
-    color: Color32,
-    look: &Look,
-) -> Rect {
-    let galley = painter.layout_no_wrap(text.to_string(), font, color);
-    let rect = anchor.anchor_size(pos, galley.size());
-    painter.rect_filled(rect.expand2(vec2(2.0, -1.0)), CornerRadius::ZERO, look.board);
-    painter.galley(rect.min, galley, color);
-    rect
 }
 
 /// A 45 degree hatch that fills `rect`.
