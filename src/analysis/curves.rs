@@ -1,6 +1,6 @@
 //! The curves of one load case, for the plots.
 
-use crate::criteria::{CONTAINED, FreeboardFill};
+use crate::criteria::FreeboardFill;
 use crate::geom::Vec2;
 use crate::statics::{Carried, Rims, effective_gravity, pressure_at};
 use crate::study::ValidStudy;
@@ -99,6 +99,11 @@ fn wall_curve(study: &ValidStudy, results: &Results, result: &CaseResult) -> Wal
 fn freeboard_curve(study: &ValidStudy, result: &CaseResult) -> FreeboardCurve {
     const N_POINTS: u32 = 48;
     let absent = |reason: String| FreeboardCurve { absent: Some(reason), ..FreeboardCurve::default() };
+    // Where the verdict is not judged the curve claims nothing either.
+    let verdicts: Vec<&Verdict> = result.verdicts.iter().filter(|v| v.criterion == FREEBOARD).collect();
+    if let (Some(first), true) = (verdicts.first(), verdicts.iter().all(|v| v.state == State::NotJudged)) {
+        return absent(format!("not judged: {}", first.remark));
+    }
     let Some(rims) =
         result.gravity.up.and_then(|up| Rims::new(study.region(), &study.study().section.width, study.mouths(), up))
     else {

@@ -3,7 +3,7 @@
 use crate::geom::Vec2;
 use crate::problem::Problem;
 
-pub use crate::criteria::{Absent, Reach, Sense, State, Trust, Verdict, WorkLine};
+pub use crate::criteria::{Absent, CONTAINED, FREEBOARD, Reach, Sense, State, Trust, Verdict, WorkLine};
 pub use crate::statics::{Chord, EdgeLoad, EffectiveGravity, PointPressure, RoofContact, Settled};
 
 /// The tank standing level and at rest, and the fill in every way of giving it.

@@ -14,7 +14,8 @@ use super::{Absent, Context, Criterion, Outcome, Sense, State, Verdict, WorkLine
 
 pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
 
-const NAME: &str = "Freeboard";
+/// Its name, which the curves look it up by.
+pub const NAME: &str = "Freeboard";
 
 fn judge(context: &Context) -> Outcome {
     let mut outcome = Outcome::default();

@@ -12,7 +12,7 @@ mod verdict;
 
 pub use contained::NAME as CONTAINED;
 pub use context::Context;
-pub use freeboard::FreeboardFill;
+pub use freeboard::{FreeboardFill, NAME as FREEBOARD};
 pub use verdict::*;
 
 /// What a criterion gives: verdicts, and checks that do not apply with the reason.

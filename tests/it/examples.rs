@@ -167,3 +167,20 @@ fn pressure_anywhere_agrees_with_the_named_points_and_stops_at_obstacles() {
     }
     assert!(n_wet > 20, "only {n_wet} points are wet");
 }
+
+/// Went wrong once: the tray's freeboard was not judged, and its plot said `holds to 100 %`.
+#[test]
+fn a_freeboard_that_is_not_judged_has_no_curve() {
+    for example in EXAMPLES {
+        let study = study(example.text).validate().unwrap_or_else(|problems| panic!("{problems:?}"));
+        let results = analysis::run(&study);
+        for (i, case) in results.cases.iter().enumerate() {
+            let states: Vec<State> =
+                case.verdicts.iter().filter(|v| v.criterion == "Freeboard").map(|v| v.state).collect();
+            let curve = analysis::curves(&study, &results, i).freeboard;
+            let want = states.iter().any(|&s| s != State::NotJudged);
+            assert_eq!(!curve.required.is_empty(), want, "{}, {}: {states:?}", example.file_name, case.name);
+            assert_eq!(curve.absent.is_none(), want, "{}, {}", example.file_name, case.name);
+        }
+    }
+}

@@ -3,7 +3,7 @@
 //! Pure, and free of any screen: the board lays it out in points, a drawing on paper may lay it out in
 //! millimetres. It computes no physics; every number comes from [`Results`].
 
-use crate::analysis::{CaseResult, Chord, Results, Sense, Settled, State, Verdict};
+use crate::analysis::{CaseResult, Chord, FREEBOARD, Results, Sense, Settled, State, Verdict};
 use crate::geom::{Edge, Point, Vec2, cross};
 use crate::problem::{Place, Problem, Severity};
 use crate::section::{EdgeKind, Section};
@@ -314,9 +314,6 @@ fn freeboard(case: &CaseResult, still_z_m: f64) -> Option<Freeboard> {
     };
     Some(Freeboard { brim: verdict.at?, still_z_m, available_m, required_m, state: verdict.state })
 }
-
-/// Name of the criterion whose dimension is drawn.
-const FREEBOARD: &str = "Freeboard";
 
 /// Where the line of action through `through` along `force` meets the edge; the nearest point of the edge when
 /// it meets it nowhere.
