@@ -1,16 +1,17 @@
 //! Pools and pour-over of random sections with plates, against the brute-force sampler; and the sampler against a
 //! polygon library, and against itself.
 
-use brimwright::geom::{Path, Point, Vec2};
+use brimwright::geom::{Edge, Path, Point, Vec2};
 use brimwright::section::check;
 use geo::{Area, BooleanOps, Coord, LineString, MultiPolygon, Polygon};
 use proptest::prelude::*;
 
 use crate::support::clip::{geo_below, geo_region};
 use crate::support::grid::Grid;
-use crate::support::grid_pools::{PouredOver, components, filled_at_rest, pour_over, turn};
+use crate::support::grid_pools::{GridPool, PouredOver, components, filled_at_rest, pour_over, turn};
 use crate::support::plated::{Plated, plated, pull, straight};
 use crate::support::random::{config, direction, share};
+use crate::support::shapes::circle;
 
 #[test]
 fn random_sections_with_plates_have_no_faults() {
@@ -38,8 +39,26 @@ fn sampled_components_agree_with_a_polygon_library() {
 }
 
 #[test]
+fn no_grid_leaks_where_a_plate_ends_on_a_round_wall() {
+    // Chords of arcs leave room at the plate's foot: outside the pipe, which bulges into the region.
+    let pipe = circle(0.5).into_iter().map(|e| Edge { start: lifted(e.start), end: lifted(e.end), ..e }).collect();
+    let plated = Plated::tank(circle(1.0))
+        .with_obstacle(pipe)
+        .with_plate(&[(0.0, 0.0), (0.0, 0.5)])
+        .with_plate(&[(0.3, 1.4), (0.6, 1.8)]);
+    for n_across in 16..48 {
+        let parts = components(&Grid::new(&plated, n_across), Vec2::y(), 3.0);
+        assert_eq!(parts.len(), 2, "{n_across} across: {parts:?}");
+    }
+}
+
+fn lifted(p: Point) -> Point {
+    p + Vec2::y() * 0.5
+}
+
+#[test]
 fn a_sampled_pour_over_loses_nothing_and_does_not_hang_on_its_grid() {
-    proptest!(config(12, 83), |(plated in plated(), pull in pull(), share in share())| {
+    proptest!(config(12, 83), |(plated in plated(), pull in pull(), share in 0.1..0.7)| {
         let area = share * plated.area();
         let grids = [(40, 20), (31, 13)].map(|(n_across, n_steps)| (Grid::new(&plated, n_across), n_steps));
         let [fine, coarse] = grids.each_ref().map(|(grid, n_steps)| sampled(grid, area, pull, *n_steps));
@@ -48,12 +67,27 @@ fn a_sampled_pour_over_loses_nothing_and_does_not_hang_on_its_grid() {
         prop_assert!((stays + fine.end.left() - area).abs() <= grids[0].0.cell_area());
         let off = (fine.end.left() - coarse.end.left()).abs();
         prop_assert!(off <= allowed, "gone: off by {off:e}, allowed {allowed:e}");
-        for pool in fine.end.pools() {
-            let other = coarse.end.pool_at(pool.deepest).map_or(0.0, |pool| pool.area);
-            let off = (pool.area - other).abs();
-            prop_assert!(off <= allowed, "{pool:?}: off by {off:e}, allowed {allowed:e}");
-        }
+        let step: f64 = grids.iter().map(|(grid, _)| grid.step).sum();
+        let (fine, coarse, up) = (fine.end.pools(), coarse.end.pools(), -pull.normalize());
+        prop_assert_eq!(unmatched(&fine, &coarse, up, allowed, step), None);
+        prop_assert_eq!(unmatched(&coarse, &fine, up, allowed, step), None);
     });
+}
+
+/// The first of `pools` that has no like among `others`: the one with the nearest centroid differs in area, or in moment
+/// about its centroid, by more than an area of `allowed` can explain, or in how deep it is by more than `step`.
+fn unmatched(pools: &[GridPool], others: &[GridPool], up: Vec2, allowed: f64, step: f64) -> Option<String> {
+    pools.iter().filter(|pool| pool.area > allowed).find_map(|pool| {
+        let off = |other: &GridPool| (other.centroid - pool.centroid).norm();
+        let Some(other) = others.iter().min_by(|a, b| off(a).total_cmp(&off(b))) else {
+            return Some(format!("{pool:?} against none"));
+        };
+        let size = others.iter().chain(pools).map(off).fold(pool.area.sqrt(), f64::max);
+        let is_like = (other.area - pool.area).abs() <= allowed
+            && off(other) * pool.area <= allowed * size
+            && up.dot(&(other.deepest - pool.deepest)).abs() <= step;
+        (!is_like).then(|| format!("{pool:?} against {other:?}, allowed {allowed:e} and {step:e}"))
+    })
 }
 
 /// Liquid that goes from rest to a pull.

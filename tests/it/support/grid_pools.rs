@@ -17,6 +17,7 @@ use super::grid::Grid;
 #[derive(Clone, Debug)]
 pub struct GridPool {
     pub area: f64,
+    pub centroid: Point,
     pub deepest: Point,
     /// Level of its highest node.
     pub level: f64,
@@ -40,7 +41,7 @@ pub struct Standing<'a> {
     landing: HashMap<u32, u32>,
 }
 
-#[derive(Clone, Default)]
+#[derive(Default)]
 struct Pool {
     /// Nodes next to wet ones, the lowest first, by rank.
     border: BinaryHeap<Reverse<u32>>,
@@ -48,6 +49,8 @@ struct Pool {
     deepest: Option<u32>,
     stands_at: u32,
     n_cells: usize,
+    /// Sum of where its cells are.
+    moment: Vec2,
 }
 
 /// What becomes of liquid that a pool is given.
@@ -76,9 +79,12 @@ pub fn components(grid: &Grid, up: Vec2, level: f64) -> Vec<GridPool> {
             continue;
         }
         is_seen[start] = true;
-        let (mut stack, mut deepest, mut n_cells) = (vec![start], start, 0);
+        let (mut stack, mut deepest, mut n_cells, mut moment) = (vec![start], start, 0.0, Vec2::zeros());
         while let Some(node) = stack.pop() {
-            n_cells += usize::from(node < grid.n_cells);
+            if node < grid.n_cells {
+                n_cells += 1.0;
+                moment += grid.at[node].coords;
+            }
             if height[node] < height[deepest] {
                 deepest = node;
             }
@@ -88,7 +94,8 @@ pub fn components(grid: &Grid, up: Vec2, level: f64) -> Vec<GridPool> {
                 }
             }
         }
-        out.push(GridPool { area: n_cells as f64 * grid.cell_area(), deepest: grid.at[deepest], level });
+        let (area, centroid) = (n_cells * grid.cell_area(), Point::from(moment / n_cells));
+        out.push(GridPool { area, centroid, deepest: grid.at[deepest], level });
     }
     out.sort_by(|a, b| b.area.total_cmp(&a.area));
     out
@@ -166,8 +173,8 @@ impl<'a> Standing<'a> {
 
     /// All pools, the largest first.
     pub fn pools(&self) -> Vec<GridPool> {
-        let mut out: Vec<GridPool> =
-            (0..self.pools.len()).filter(|&i| self.root(i) == i).map(|i| self.shown(i)).collect();
+        let is_body = |&i: &usize| self.root(i) == i && self.pools[i].n_cells > 0;
+        let mut out: Vec<GridPool> = (0..self.pools.len()).filter(is_body).map(|i| self.shown(i)).collect();
         out.sort_by(|a, b| b.area.total_cmp(&a.area));
         out
     }
@@ -182,6 +189,7 @@ impl<'a> Standing<'a> {
         let at = |rank: u32| grid.at[self.order[rank as usize] as usize];
         GridPool {
             area: pool.n_cells as f64 * grid.cell_area(),
+            centroid: Point::from(pool.moment / pool.n_cells as f64),
             deepest: at(pool.deepest.expect("a pool has a node")),
             level: self.up.dot(&at(pool.stands_at).coords),
         }
@@ -259,6 +267,7 @@ impl<'a> Standing<'a> {
             }
             if (node as usize) < self.grid.n_cells {
                 self.pools[pool].n_cells += 1;
+                self.pools[pool].moment += self.grid.at[node as usize].coords;
                 return Given::Kept;
             }
         }
@@ -272,6 +281,7 @@ impl<'a> Standing<'a> {
         kept.deepest = kept.deepest.min(gone.deepest);
         kept.stands_at = kept.stands_at.max(gone.stands_at);
         kept.n_cells += gone.n_cells;
+        kept.moment += gone.moment;
     }
 
     /// The low point that liquid reaches from a node. It falls along the plumb line: of the lower nodes next to it, it

@@ -93,16 +93,17 @@ fn plated_star(arcs: bool) -> impl Strategy<Value = Plated> {
         let above = |e: &Edge| e.start.x > center.x && e.end.x <= center.x && e.start.y + e.end.y > 2.0 * center.y;
         let mouth = (0..n).find(|&i| is_open && above(&sample.outline[i]));
         let walls: Vec<&Edge> = (0..n).filter(|&i| Some(i) != mouth).map(|i| &sample.outline[i]).collect();
+        let clear = if sample.obstacles.is_empty() { 0.2 } else { 0.85 };
         let mut is_through = false;
         let mut plates = vec![];
         for (i, &(along, from, to, hold)) in seeds.iter().enumerate() {
             // Every plate has an edge of its own: spokes to different edges do not meet outside the centre.
             let Some(wall) = walls.get(i * walls.len() / seeds.len()) else { continue };
             let foot = wall.point_at(along);
-            // Clear of the obstacles, which lie within 0.8 of the room.
+            // Clear of the obstacles, which lie within 0.8 of the room, or else of the centre.
             let spoke = |share: f64| {
                 let reach = (foot - center).norm();
-                let inner = 0.85 * room.min(reach);
+                let inner = clear * room.min(reach);
                 center + (foot - center) * ((inner + (1.0 - share) * (reach - inner)) / reach)
             };
             match hold {
