@@ -1,6 +1,10 @@
 //! Builders, reference tables and an independent clipper for the checks against the outside.
 
 pub mod clip;
+pub mod grid;
+pub mod grid_pools;
+pub mod hand_cases;
+pub mod plated;
 pub mod random;
 pub mod shapes;
 pub mod table;
