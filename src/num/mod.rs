@@ -4,4 +4,4 @@ mod quad;
 mod root;
 
 pub use quad::{gauss, tanh_sinh};
-pub use root::{bisect, golden_min, root};
+pub use root::{bisect, bracket, root};
