@@ -8,6 +8,11 @@ use crate::section::{self, Mouth, Region, Section};
 use crate::statics::{Tilted, Vessel};
 use crate::units::{Measure, Quantity};
 
+/// Discharge coefficient of an opening in a thin plate where the user gives none.
+///
+/// Source: sharp-edged orifices 0.60 to 0.62, Brater & King, Handbook of Hydraulics (value from memory).
+pub const DISCHARGE_COEFFICIENT: f64 = 0.6;
+
 /// How much liquid, as it was given. Levels are of the tank standing level and at rest.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Fill {
@@ -32,6 +37,35 @@ pub enum Limit {
     FreeboardAllowance(f64),
     /// Margin of the lowest absolute pressure over the vapour pressure: at least, Pa.
     VapourMargin(f64),
+    /// Volume of a cell between walls and plates: at most `m3`, or else filled up to `empty_to` or from `full_from`
+    /// on, as shares of its capacity.
+    CellVolume {
+        /// At most, m3.
+        m3: f64,
+        /// A larger cell may be filled up to this share.
+        empty_to: f64,
+        /// A larger cell may be filled from this share on.
+        full_from: f64,
+    },
+    /// Solid area of a plate as a share of the cross-section of the tank where it stands: at least.
+    PlateCoverage(f64),
+    /// Clear distance between neighbouring plates, or plate and end, along s: at most, m.
+    PlateSpacing(f64),
+    /// Open area of a plate as a share of the cross-section of the tank where it stands: at least.
+    OpenShareAtLeast(f64),
+    /// The same: at most.
+    OpenShareAtMost(f64),
+    /// Every cell drains to the sump with the tank level and at rest.
+    DrainPath,
+    /// The gas of every cell reaches a mouth with the tank level and at rest.
+    VentPath,
+    /// Filling or emptying at a rated flow: levels of neighbouring cells differ by at most `difference_m`.
+    RatedFlow {
+        /// Flow, m3/s.
+        flow_m3_per_s: f64,
+        /// Difference of levels across a plate: at most, m.
+        difference_m: f64,
+    },
 }
 
 impl Limit {
@@ -41,12 +75,25 @@ impl Limit {
             Limit::WallPressure(pa) | Limit::RoofPressure(pa) => Measure::new(Quantity::GagePressure, pa),
             Limit::FreeboardAllowance(m) => Measure::new(Quantity::Length, m),
             Limit::VapourMargin(pa) => Measure::new(Quantity::AbsolutePressure, pa),
+            Limit::CellVolume { m3, .. } => Measure::new(Quantity::Volume, m3),
+            Limit::PlateCoverage(share) | Limit::OpenShareAtLeast(share) | Limit::OpenShareAtMost(share) => {
+                Measure::new(Quantity::Share, share)
+            }
+            Limit::PlateSpacing(m) => Measure::new(Quantity::Length, m),
+            Limit::DrainPath | Limit::VentPath => Measure::new(Quantity::Count, 0.0),
+            Limit::RatedFlow { difference_m, .. } => Measure::new(Quantity::Length, difference_m),
         }
     }
 
     /// Whether the value is a ceiling rather than a floor.
     pub fn is_ceiling(self) -> bool {
-        matches!(self, Limit::WallPressure(_) | Limit::RoofPressure(_))
+        !matches!(
+            self,
+            Limit::FreeboardAllowance(_)
+                | Limit::VapourMargin(_)
+                | Limit::PlateCoverage(_)
+                | Limit::OpenShareAtLeast(_)
+        )
     }
 }
 
@@ -74,6 +121,20 @@ pub struct NamedPoint {
     pub name: String,
     /// Where, metres.
     pub at: Point,
+}
+
+/// A compartment that holds its own fill, and perhaps its own liquid: a part of the section that no opening joins to
+/// the rest.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Compartment {
+    /// As shown.
+    pub name: String,
+    /// A point inside it, metres.
+    pub at: Point,
+    /// Its liquid; none: the study's.
+    pub liquid: Option<Liquid>,
+    /// Its fill: shares are of the compartment's capacity, ullage counts from its highest point.
+    pub fill: Fill,
 }
 
 /// A note that someone left beside a verdict.
@@ -108,8 +169,14 @@ pub struct Study {
     pub section: Section,
     /// The liquid.
     pub liquid: Liquid,
-    /// How much of it.
+    /// How much of it, in all compartments that have no fill of their own.
     pub fill: Fill,
+    /// Compartments with a fill of their own.
+    pub compartments: Vec<Compartment>,
+    /// Where the tank is emptied from, if it is told, metres.
+    pub sump: Option<Point>,
+    /// Discharge coefficient C_d of openings.
+    pub discharge_coefficient: f64,
     /// Load cases, in the order shown.
     pub cases: Vec<LoadCase>,
     /// Points at which pressure is asked for.

@@ -198,12 +198,20 @@ struct Record {
 }
 
 #[derive(Deserialize)]
-#[serde(rename_all = "snake_case")]
+#[serde(rename_all = "snake_case", deny_unknown_fields)]
 enum Limit {
     WallPressureGageKpa(Num),
     RoofPressureGageKpa(Num),
     FreeboardAllowanceMm(Num),
     VapourMarginKpa(Num),
+    CellVolume { at_most_m3: Num, or_filled_to_percent: Num, or_from_percent: Num },
+    PlateCoveragePercent(Num),
+    PlateSpacingMm(Num),
+    OpenShareAtLeastPercent(Num),
+    OpenShareAtMostPercent(Num),
+    DrainPath,
+    VentPath,
+    RatedFlow { flow_m3_per_s: Num, difference_mm: Num },
 }
 
 #[derive(Deserialize)]
@@ -275,6 +283,7 @@ impl From<Scenario> for Study {
             section: Section {
                 outline: file.outline.map(OutlineEdge::from),
                 obstacles: file.obstacles.map(section::Obstacle::from),
+                plates: Vec::new(),
                 width: file.width.into(),
             },
             liquid: liquid::Liquid {
@@ -289,6 +298,9 @@ impl From<Scenario> for Study {
                 Fill::LevelMm(v) => study::Fill::Level(v.mm()),
                 Fill::UllageMm(v) => study::Fill::Ullage(v.mm()),
             },
+            compartments: Vec::new(),
+            sump: None,
+            discharge_coefficient: study::DISCHARGE_COEFFICIENT,
             cases: file.cases.map(LoadCase::from),
             points: file.points.map(|p| NamedPoint { name: p.name, at: point(p.s_mm, p.z_mm) }),
             moment_about: point(file.moment_about.s_mm, file.moment_about.z_mm),
@@ -360,6 +372,8 @@ impl From<Case> for LoadCase {
                 Attitude::HeelDeg(deg) => cases::Attitude::HeelDeg(deg.si()),
             },
             onset_s: case.onset_s.map(Num::si),
+            duration_s: None,
+            release: false,
             source: case.source,
             note: case.note,
         }
@@ -375,6 +389,20 @@ impl From<Record> for study::Record {
                 Limit::RoofPressureGageKpa(v) => study::Limit::RoofPressure(v.kpa()),
                 Limit::FreeboardAllowanceMm(v) => study::Limit::FreeboardAllowance(v.mm()),
                 Limit::VapourMarginKpa(v) => study::Limit::VapourMargin(v.kpa()),
+                Limit::CellVolume { at_most_m3, or_filled_to_percent, or_from_percent } => study::Limit::CellVolume {
+                    m3: at_most_m3.si(),
+                    empty_to: or_filled_to_percent.percent(),
+                    full_from: or_from_percent.percent(),
+                },
+                Limit::PlateCoveragePercent(v) => study::Limit::PlateCoverage(v.percent()),
+                Limit::PlateSpacingMm(v) => study::Limit::PlateSpacing(v.mm()),
+                Limit::OpenShareAtLeastPercent(v) => study::Limit::OpenShareAtLeast(v.percent()),
+                Limit::OpenShareAtMostPercent(v) => study::Limit::OpenShareAtMost(v.percent()),
+                Limit::DrainPath => study::Limit::DrainPath,
+                Limit::VentPath => study::Limit::VentPath,
+                Limit::RatedFlow { flow_m3_per_s, difference_mm } => {
+                    study::Limit::RatedFlow { flow_m3_per_s: flow_m3_per_s.si(), difference_m: difference_mm.mm() }
+                }
             },
             clause: record.clause,
             edition: record.edition,

@@ -4,12 +4,14 @@
 
 mod check;
 mod mouth;
+mod plate;
 mod width;
 
 use crate::geom::{Edge, Path, Point};
 
 pub use check::{Region, RegionEdge, check};
 pub use mouth::Mouth;
+pub use plate::{Opening, OpeningShape, Panel, PanelEdges, Plate};
 pub use width::WidthLaw;
 
 /// Whether an edge holds liquid back.
@@ -61,6 +63,8 @@ pub struct Section {
     pub outline: Vec<OutlineEdge>,
     /// Obstacles.
     pub obstacles: Vec<Obstacle>,
+    /// Plates.
+    pub plates: Vec<Plate>,
     /// Out-of-plane width.
     pub width: WidthLaw,
 }

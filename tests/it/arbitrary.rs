@@ -100,7 +100,16 @@ fn case_name() -> impl Strategy<Value = String> {
 
 fn case() -> impl Strategy<Value = LoadCase> {
     (case_name(), accel(), attitude(), option::of(number()), text(), text()).prop_map(
-        |(name, accel, attitude, onset_s, source, note)| LoadCase { name, accel, attitude, onset_s, source, note },
+        |(name, accel, attitude, onset_s, source, note)| LoadCase {
+            name,
+            accel,
+            attitude,
+            onset_s,
+            duration_s: None,
+            release: false,
+            source,
+            note,
+        },
     )
 }
 
@@ -151,9 +160,12 @@ pub fn study() -> impl Strategy<Value = Study> {
             gravity_m_per_s2,
             air_pressure_abs_pa,
             ullage_gage_pa,
-            section: Section { outline, obstacles, width },
+            section: Section { outline, obstacles, plates: vec![], width },
             liquid,
             fill,
+            compartments: vec![],
+            sump: None,
+            discharge_coefficient: 0.6,
             cases,
             points,
             moment_about,

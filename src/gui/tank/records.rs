@@ -18,13 +18,29 @@ enum Kind {
     RoofPressure,
     FreeboardAllowance,
     VapourMargin,
+    CellVolume,
+    PlateCoverage,
+    PlateSpacing,
+    OpenShareAtLeast,
+    OpenShareAtMost,
+    DrainPath,
+    VentPath,
+    RatedFlow,
 }
 
-const KINDS: [(Kind, &str); 4] = [
+const KINDS: [(Kind, &str); 12] = [
     (Kind::WallPressure, "wall pressure"),
     (Kind::RoofPressure, "roof pressure"),
     (Kind::FreeboardAllowance, "freeboard allowance"),
     (Kind::VapourMargin, "vapour margin"),
+    (Kind::CellVolume, "cell volume"),
+    (Kind::PlateCoverage, "plate coverage"),
+    (Kind::PlateSpacing, "plate spacing"),
+    (Kind::OpenShareAtLeast, "open share, least"),
+    (Kind::OpenShareAtMost, "open share, most"),
+    (Kind::DrainPath, "drain path"),
+    (Kind::VentPath, "vent path"),
+    (Kind::RatedFlow, "rated flow"),
 ];
 
 pub(super) fn records_ui(ui: &mut Ui, desk: &mut Desk, column: &mut TankColumn) {
@@ -132,6 +148,14 @@ fn parts(limit: Limit) -> (Kind, f64) {
         Limit::RoofPressure(v) => (Kind::RoofPressure, v),
         Limit::FreeboardAllowance(v) => (Kind::FreeboardAllowance, v),
         Limit::VapourMargin(v) => (Kind::VapourMargin, v),
+        Limit::CellVolume { m3, .. } => (Kind::CellVolume, m3),
+        Limit::PlateCoverage(v) => (Kind::PlateCoverage, v),
+        Limit::PlateSpacing(v) => (Kind::PlateSpacing, v),
+        Limit::OpenShareAtLeast(v) => (Kind::OpenShareAtLeast, v),
+        Limit::OpenShareAtMost(v) => (Kind::OpenShareAtMost, v),
+        Limit::DrainPath => (Kind::DrainPath, 0.0),
+        Limit::VentPath => (Kind::VentPath, 0.0),
+        Limit::RatedFlow { difference_m, .. } => (Kind::RatedFlow, difference_m),
     }
 }
 
@@ -141,5 +165,13 @@ fn limit(kind: Kind, value: f64) -> Limit {
         Kind::RoofPressure => Limit::RoofPressure(value),
         Kind::FreeboardAllowance => Limit::FreeboardAllowance(value),
         Kind::VapourMargin => Limit::VapourMargin(value),
+        Kind::CellVolume => Limit::CellVolume { m3: value, empty_to: 0.2, full_from: 0.8 },
+        Kind::PlateCoverage => Limit::PlateCoverage(value),
+        Kind::PlateSpacing => Limit::PlateSpacing(value),
+        Kind::OpenShareAtLeast => Limit::OpenShareAtLeast(value),
+        Kind::OpenShareAtMost => Limit::OpenShareAtMost(value),
+        Kind::DrainPath => Limit::DrainPath,
+        Kind::VentPath => Limit::VentPath,
+        Kind::RatedFlow => Limit::RatedFlow { flow_m3_per_s: 0.01, difference_m: value },
     }
 }

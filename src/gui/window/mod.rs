@@ -359,6 +359,8 @@ fn rest_case(study: &Study) -> LoadCase {
         accel: Accel::REST,
         attitude: Attitude::Level,
         onset_s: None,
+        duration_s: None,
+        release: false,
         source: String::new(),
         note: String::new(),
     }

@@ -37,6 +37,9 @@ pub fn study(section: Section, fill: Fill) -> Study {
             surface_tension_n_per_m: None,
         },
         fill,
+        compartments: vec![],
+        sump: None,
+        discharge_coefficient: 0.6,
         cases: vec![held(0.0, 0.0)],
         points: vec![],
         moment_about: Point::origin(),
@@ -52,6 +55,8 @@ pub fn held(a_s: f64, a_z: f64) -> LoadCase {
         accel: Accel::Components { a_s, a_z, unit: AccelUnit::MPerS2 },
         attitude: Attitude::Level,
         onset_s: None,
+        duration_s: None,
+        release: false,
         source: String::new(),
         note: String::new(),
     }
