@@ -58,7 +58,7 @@ impl LegendreSeries {
         self.0.iter().zip(polynomials).map(|(c, p)| c * p).sum()
     }
 
-    /// The integral of the product of two series over -1..1, exactly: sum of 2 c[n] d[n] / (2n + 1).
+    /// The integral of the product of two series over -1..1, exactly: sum of `2 c[n] d[n] / (2n + 1)`.
     pub fn dot(&self, other: &LegendreSeries) -> f64 {
         let terms = self.0.iter().zip(&other.0).enumerate();
         terms.map(|(n, (c, d))| 2.0 * c * d / (2 * n + 1) as f64).sum()

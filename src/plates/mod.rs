@@ -1,4 +1,4 @@
-//! Bending of plates under pressure: panels between stiffeners, one-way strips, and the strength of both.
+//! Bending of plates under pressure: panels between stiffeners, one-way strips, and the strength of panels.
 //!
 //! A [`Profile`] is the net pressure along a plate. A [`SolvedPanel`] is made once for its geometry and bent by any
 //! profile; [`strength`] turns what it carries into stress, deflection and thickness for a material. A [`Strip`] is a

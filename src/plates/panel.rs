@@ -132,9 +132,10 @@ impl SolvedPanel {
 
     /// Solves the stiffness of a panel: of the order of a millisecond for usual ratios of its sides.
     ///
-    /// Accuracy between ratios of 1/10 and 10: moments and deflection 2e-4 of the largest, reactions 1 %. Beside
-    /// the corner of a clamped side and a free top the theory's moment oscillates and its reaction grows without
-    /// bound (a local solution behaves as r^(2.07 + 0.44 i) for Poisson's ratio 0.3): moments within 3 % there.
+    /// Accuracy between ratios of 1/10 and 10: moments and deflection 2e-4 of the largest, reactions 1 %. Beside the
+    /// corner of a clamped side and a free top the theory's moment oscillates and its reaction grows without bound (a
+    /// local solution behaves as r^(2.07 + 0.44 i) for Poisson's ratio 0.3): moments within 3 % and reactions within
+    /// about 10 % there.
     ///
     /// Errors: a side that is no number above zero, Poisson's ratio outside 0..0.5, a panel too slender
     /// ([`SolvedPanel::MOST_SLENDER`]).

@@ -15,6 +15,8 @@ mod files;
 mod gui;
 mod json;
 mod panels;
+mod pools_by_hand;
+mod pools_sampled;
 mod program;
 mod properties;
 mod properties_loads;
