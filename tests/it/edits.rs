@@ -305,11 +305,14 @@ proptest! {
         prop_assert!(!edit.label().is_empty());
         let n = before.section.outline.len();
         let (m, k) = (before.section.obstacles.len(), before.cases.len());
+        let plates = &before.section.plates;
         let is_beyond = match edit {
             Edit::MoveVertex(i, _) | Edit::BendEdge(i, _) | Edit::EdgeKind(i, _) | Edit::EdgeName(i, _)
             | Edit::SplitEdge(i, _) | Edit::RemoveVertex(i) => i >= n,
             Edit::MoveObstacleVertex(i, v, _) => i >= m || v >= before.section.obstacles[i].vertices.len(),
             Edit::ShiftObstacle(i, ..) | Edit::RemoveObstacle(i) => i >= m,
+            Edit::Plate(i, _) | Edit::ShiftPlate(i, ..) | Edit::RemovePlate(i) => i >= plates.len(),
+            Edit::MovePlatePoint(i, c, _) => i >= plates.len() || c >= plates[i].points.len(),
             Edit::CaseAccel(i, _) | Edit::CaseAttitude(i, _) | Edit::Case(i, _) | Edit::RemoveCase(i) => i >= k,
             Edit::ReorderCase(i, j) => i >= k || j >= k,
             _ => false,
