@@ -1,4 +1,6 @@
 //! Studies and edits at random, for properties. Any finite input may come, sensible or not.
+//!
+//! What is large is boxed: a strategy as one value would outgrow the stack of a test.
 
 use brimwright::app::Edit;
 use brimwright::cases::{Accel, AccelUnit, Attitude, LoadCase};
@@ -64,13 +66,13 @@ fn opening() -> impl Strategy<Value = Opening> {
 }
 
 /// Any plate.
-pub fn plate() -> impl Strategy<Value = Plate> {
+pub fn plate() -> BoxedStrategy<Plate> {
     let panel = (option::of(number()), any::<bool>()).prop_map(|(stiffener_spacing_m, clamped)| Panel {
         stiffener_spacing_m,
         edges: if clamped { PanelEdges::Clamped } else { PanelEdges::SimplySupported },
     });
-    (text(), vec(point(), 0..4), number(), number(), text(), panel, vec(opening(), 0..3)).prop_map(
-        |(name, points, thickness_m, corrosion_m, material, panel, openings)| Plate {
+    (text(), vec(point(), 0..4), number(), number(), text(), panel, vec(opening(), 0..3))
+        .prop_map(|(name, points, thickness_m, corrosion_m, material, panel, openings)| Plate {
             name,
             points,
             thickness_m,
@@ -78,8 +80,8 @@ pub fn plate() -> impl Strategy<Value = Plate> {
             material,
             panel,
             openings,
-        },
-    )
+        })
+        .boxed()
 }
 
 fn width() -> impl Strategy<Value = WidthLaw> {
@@ -100,13 +102,15 @@ fn fill() -> impl Strategy<Value = Fill> {
         .prop_map(|(way, v)| [Fill::Volume(v), Fill::Share(v), Fill::Level(v), Fill::Ullage(v)][way])
 }
 
-fn liquid() -> impl Strategy<Value = Liquid> {
-    (text(), number(), option::of(number()), option::of(number())).prop_map(|(name, rho, vapour, sigma)| Liquid {
-        name,
-        density_kg_per_m3: rho,
-        vapour_pressure_abs_pa: vapour,
-        surface_tension_n_per_m: sigma,
-    })
+fn liquid() -> BoxedStrategy<Liquid> {
+    (text(), number(), option::of(number()), option::of(number()))
+        .prop_map(|(name, rho, vapour, sigma)| Liquid {
+            name,
+            density_kg_per_m3: rho,
+            vapour_pressure_abs_pa: vapour,
+            surface_tension_n_per_m: sigma,
+        })
+        .boxed()
 }
 
 fn compartment() -> impl Strategy<Value = Compartment> {
@@ -155,7 +159,7 @@ fn case() -> impl Strategy<Value = LoadCase> {
     )
 }
 
-fn limit() -> impl Strategy<Value = Limit> {
+fn limit() -> BoxedStrategy<Limit> {
     prop_oneof![
         number().prop_map(Limit::WallPressure),
         number().prop_map(Limit::RoofPressure),
@@ -175,6 +179,7 @@ fn limit() -> impl Strategy<Value = Limit> {
         (number(), number())
             .prop_map(|(flow_m3_per_s, difference_m)| Limit::RatedFlow { flow_m3_per_s, difference_m }),
     ]
+    .boxed()
 }
 
 fn record() -> impl Strategy<Value = Record> {
@@ -204,7 +209,7 @@ pub fn config() -> ProptestConfig {
 }
 
 /// Any study.
-pub fn study() -> impl Strategy<Value = Study> {
+pub fn study() -> BoxedStrategy<Study> {
     let words = [text(), text(), text(), text()];
     let physics = (number(), number(), number(), liquid(), fill());
     let section = (vec(outline_edge(), 0..8), vec(obstacle(), 0..3), vec(plate(), 0..3), width())
@@ -212,38 +217,40 @@ pub fn study() -> impl Strategy<Value = Study> {
     // Few studies name another coefficient than the usual one.
     let flow = (vec(compartment(), 0..3), option::of(point()), prop_oneof![Just(0.6), number()]);
     let rest = (vec(case(), 0..4), vec(named_point(), 0..3), point(), vec(record(), 0..3), vec(note(), 0..3));
-    (words, physics, section, flow, rest).prop_map(
-        |(
-            [title, author, revision, notes],
-            (gravity_m_per_s2, air_pressure_abs_pa, ullage_gage_pa, liquid, fill),
-            section,
-            (compartments, sump, discharge_coefficient),
-            (cases, points, moment_about, records, verdict_notes),
-        )| Study {
-            title,
-            author,
-            revision,
-            notes,
-            gravity_m_per_s2,
-            air_pressure_abs_pa,
-            ullage_gage_pa,
-            section,
-            liquid,
-            fill,
-            compartments,
-            sump,
-            discharge_coefficient,
-            cases,
-            points,
-            moment_about,
-            records,
-            verdict_notes,
-        },
-    )
+    (words, physics, section, flow, rest)
+        .prop_map(
+            |(
+                [title, author, revision, notes],
+                (gravity_m_per_s2, air_pressure_abs_pa, ullage_gage_pa, liquid, fill),
+                section,
+                (compartments, sump, discharge_coefficient),
+                (cases, points, moment_about, records, verdict_notes),
+            )| Study {
+                title,
+                author,
+                revision,
+                notes,
+                gravity_m_per_s2,
+                air_pressure_abs_pa,
+                ullage_gage_pa,
+                section,
+                liquid,
+                fill,
+                compartments,
+                sump,
+                discharge_coefficient,
+                cases,
+                points,
+                moment_about,
+                records,
+                verdict_notes,
+            },
+        )
+        .boxed()
 }
 
 /// Any edit; indices are in range or a little beyond.
-pub fn edit() -> impl Strategy<Value = Edit> {
+pub fn edit() -> BoxedStrategy<Edit> {
     let i = || 0..9_usize;
     prop_oneof![
         study().prop_map(|s| Edit::Replace(Box::new(s))),
@@ -286,4 +293,5 @@ pub fn edit() -> impl Strategy<Value = Edit> {
         point().prop_map(Edit::MomentAbout),
         (case_name(), "[pq]", text()).prop_map(|(c, k, t)| Edit::VerdictNote(c, k, t)),
     ]
+    .boxed()
 }
