@@ -7,10 +7,7 @@
 use std::f64::consts::TAU;
 
 use crate::geom::{Edge, Path, Point, Vec2};
-use crate::section::{Opening, Panel, Plate, Section};
-
-/// An end stands on a wall that is no further away than this share of the section's diagonal.
-const STANDS_WITHIN: f64 = 1e-4;
+use crate::section::{Opening, Panel, Plate, STANDS_WITHIN, Section};
 
 /// Lengths below this share of the section's diagonal, or of a plate, are taken as zero.
 const SLACK: f64 = 1e-9;
