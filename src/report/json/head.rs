@@ -6,6 +6,7 @@ use crate::sources;
 use crate::study::Record;
 
 use super::super::{CAUTION, Counts, Report};
+use super::parts::{CellRow, CompartmentRow, DrawnPlate};
 use super::{Num, Piece, num, source_key};
 
 #[derive(Clone, Debug, Serialize)]
@@ -21,6 +22,9 @@ pub(super) struct Judged {
     capacity_m3: Num,
     liquid: Liquid,
     still: Still,
+    cells: Vec<CellRow>,
+    compartments: Vec<CompartmentRow>,
+    plates: Vec<DrawnPlate>,
     records: Vec<RecordRow>,
     bibliography: Vec<Entry>,
     counts: Counts,
@@ -56,6 +60,9 @@ impl Judged {
                 highest_share: still.highest_share.and_then(num),
                 surface: still.surface.iter().map(Piece::new).collect(),
             },
+            cells: CellRow::all(report),
+            compartments: CompartmentRow::all(report),
+            plates: DrawnPlate::all(report),
             records: study.records.iter().map(RecordRow::new).collect(),
             bibliography: sources::all()
                 .filter(|(key, _)| report.verdicts().any(|v| v.source == *key))

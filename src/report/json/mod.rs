@@ -5,6 +5,9 @@
 
 mod case;
 mod head;
+mod loads;
+mod parts;
+mod state;
 mod verdict;
 
 use serde::Serialize;
@@ -199,7 +202,8 @@ mod tests {
         assert_eq!(held["verdicts"][1]["unconfirmed_record"], "Tray wall");
         assert_eq!(held["absent"][0]["criterion"], "Roof contact");
         assert_eq!(dropped["settled"], Value::Null);
-        assert_eq!(dropped["unsettled"], "free fall: effective gravity is zero");
+        assert_eq!(dropped["missing"][0]["state"], "settled");
+        assert_eq!(dropped["missing"][0]["reason"], "free fall: effective gravity is zero");
         assert_eq!(dropped["verdicts"][0]["state"], "not judged");
         assert_eq!(dropped["verdicts"][0]["unit"], Value::Null);
     }
