@@ -17,10 +17,21 @@ use crate::analysis::{CaseResult, Compartment, Results, State, Verdict};
 use crate::cases::LoadCase;
 use crate::liquid::Liquid;
 use crate::problem::Place;
-use crate::study::Study;
+use crate::study::{Limit, Record, Study};
+use crate::units::Measure;
 
 /// What every output says at its end.
 pub const CAUTION: &str = "A design aid, settled states only: local codes and a licensed engineer decide.";
+
+/// The value of a requirement record, and whether it is a ceiling or a floor; none where the record is a rule without
+/// a number.
+fn value_of(record: &Record) -> Option<(&'static str, Measure)> {
+    let sense = if record.limit.is_ceiling() { "at most" } else { "at least" };
+    match record.limit {
+        Limit::DrainPath | Limit::VentPath => None,
+        limit => Some((sense, limit.measure())),
+    }
+}
 
 /// A judged study, and which of its load cases are shown.
 #[derive(Clone, Debug)]

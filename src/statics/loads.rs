@@ -109,6 +109,9 @@ pub(super) fn edge_loads(
     loads
 }
 
+/// Net loads and pressures below this share of those on one side are what rounding leaves of equal ones.
+const ROUNDING: f64 = 1e-12;
+
 /// Net loads across every plate.
 pub(super) fn plate_loads(
     section: &Section,
@@ -122,17 +125,21 @@ pub(super) fn plate_loads(
         .map(|plate_idx| {
             let is_own = |w: &&WetPart| matches!(w.wall, Wall::Plate { plate_idx: p, .. } if p == plate_idx);
             let parts: Vec<&WetPart> = wet.iter().filter(is_own).collect();
-            let (mut force, mut moment, mut net) = (Vec2::zeros(), 0.0, 0.0);
+            let (mut force, mut moment, mut net, mut size) = (Vec2::zeros(), 0.0, 0.0, 0.0);
             let mut highest_on = None;
             for part in &parts {
                 let (f, m) = resultant(&part.edge, &section.width, press[part.body_idx], up, about);
                 force += f;
                 moment += m;
+                size += f.norm();
                 // The face's right-hand normal is the plate's own on its left side, the opposite on the right.
                 let tangent = part.edge.tangent_at(0.5);
                 let outward = f.dot(&Vec2::new(tangent.y, -tangent.x));
                 net += if is_left(part) { outward } else { -outward };
                 raise(&mut highest_on, highest(&part.edge, press[part.body_idx], up));
+            }
+            if force.norm() <= ROUNDING * size {
+                (force, moment, net) = (Vec2::zeros(), 0.0, 0.0);
             }
             let stretches = stretches(&parts, press, up);
             let plate = &section.plates[plate_idx];
@@ -173,6 +180,7 @@ fn stretches(parts: &[&WetPart], press: &[Press], up: Vec2) -> Vec<Stretch> {
     for w in stops.windows(2) {
         let middle = 0.5 * (w[0] + w[1]);
         let mut pa = [0.0; 2];
+        let mut sizes = [0.0_f64; 2];
         let mut is_wet = false;
         for part in parts {
             let [a, b] = part.along_m;
@@ -185,8 +193,11 @@ fn stretches(parts: &[&WetPart], press: &[Press], up: Vec2) -> Vec<Stretch> {
                 let p = part.edge.point_at((along - a) / (b - a));
                 let liquid = pressure_at(p, level_m, up, weight_pa_per_m);
                 pa[i] += if is_left(part) { liquid } else { -liquid };
+                sizes[i] = sizes[i].max(liquid.abs());
             }
         }
+        let size = sizes[0].max(sizes[1]);
+        pa = pa.map(|pa| if pa.abs() <= ROUNDING * size { 0.0 } else { pa });
         if is_wet {
             out.push(Stretch { from_m: w[0], to_m: w[1], from_pa: pa[0], to_pa: pa[1] });
         }

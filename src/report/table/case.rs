@@ -35,6 +35,11 @@ impl Table<'_> {
             Ok(settled) => self.settled(case, settled),
             Err(reason) => self.fact("settled", [format!("no settled state: {reason}")]),
         }
+        if let (Ok(settled), Some(Ok(sealed))) = (&case.settled, &case.sealed)
+            && self.reads_as(sealed, Some(settled))
+        {
+            self.fact("sealed", ["with openings shut as settled, to the figures shown"]);
+        }
         for (label, state) in [("sealed", &case.sealed), ("released", &case.released)] {
             if let Some(Err(reason)) = state {
                 self.fact(label, [format!("no {label} state: {reason}")]);

@@ -5,6 +5,7 @@ use crate::units::Quantity;
 
 use super::super::grid::{Grid, Side};
 use super::super::lines::{WIDTH, left, width};
+use super::super::value_of;
 use super::{Report, Table, plural};
 
 impl Table<'_> {
@@ -63,9 +64,9 @@ impl Table<'_> {
                 .records
                 .iter()
                 .map(|record| {
-                    let bound = if record.limit.is_ceiling() { "at most" } else { "at least" };
                     let mark = if record.confirmed { "" } else { " (unconfirmed)" };
-                    format!("{} {bound} {}{mark}", record.title, record.limit.measure().text(self.units))
+                    let value = value_of(record).map(|(sense, limit)| format!(" {sense} {}", limit.text(self.units)));
+                    format!("{}{}{mark}", record.title, value.unwrap_or_default())
                 })
                 .collect::<Vec<_>>(),
         );
@@ -82,12 +83,13 @@ impl Table<'_> {
         if results.cells.len() < 2 {
             return;
         }
+        let has_several = results.compartments.len() > 1;
         let mut grid = Grid::new(&[
             ("cell", Side::Left),
             ("capacity", Side::Right),
             ("area", Side::Right),
             ("still", Side::Right),
-            ("compartment", Side::Left),
+            (if has_several { "compartment" } else { "" }, Side::Left),
         ]);
         for cell in &results.cells {
             grid.row([
@@ -95,7 +97,7 @@ impl Table<'_> {
                 self.level(Quantity::Volume, cell.capacity_m3),
                 self.level(Quantity::Area, cell.area_m2),
                 self.level(Quantity::Volume, cell.still_m3),
-                self.report.compartment_name(cell.compartment),
+                if has_several { self.report.compartment_name(cell.compartment) } else { String::new() },
             ]);
         }
         grid.write(&mut self.lines);

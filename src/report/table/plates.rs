@@ -7,13 +7,12 @@ use crate::units::{Measure, Quantity};
 
 use super::super::grid::{Grid, Side};
 use super::Table;
-use super::states::states_of;
 
 impl Table<'_> {
     /// The net load on every plate in each state.
     pub(super) fn plate_loads(&mut self, case: &CaseResult) {
         let plates = &self.report.study.section.plates;
-        let states = states_of(case);
+        let states = self.states_of(case);
         let mut grid = Grid::new(&[
             ("plate", Side::Left),
             ("state", Side::Left),
@@ -36,13 +35,16 @@ impl Table<'_> {
 
     fn plate_load(&self, state: &str, plate: &Plate, load: &PlateLoad) -> [String; 4] {
         let none = || "–".to_owned();
+        let peak = load.peak.map(|(pa, at)| (self.signed(Quantity::GagePressure, pa), at));
+        let peak = peak.filter(|(pressure, _)| !reads_zero(pressure));
+        let net = self.signed(Quantity::Force, load.net_n);
+        // What rounding leaves of equal pressures acts nowhere.
+        let acts_at = load.acts_at.filter(|_| peak.is_some());
         [
             state.to_owned(),
-            self.signed(Quantity::Force, load.net_n),
-            load.acts_at.map_or_else(none, |at| self.along(plate, at)),
-            load.peak.map_or_else(none, |(pa, at)| {
-                format!("{} at {}", self.signed(Quantity::GagePressure, pa), self.along(plate, at))
-            }),
+            net,
+            acts_at.map_or_else(none, |at| self.along(plate, at)),
+            peak.map_or_else(none, |(pressure, at)| format!("{pressure} at {}", self.along(plate, at))),
         ]
     }
 
@@ -59,6 +61,11 @@ impl Table<'_> {
     /// With a plus where it is above zero.
     fn signed(&self, quantity: Quantity, si: f64) -> String {
         let text = Measure::new(quantity, si).text(self.units);
-        if si > 0.0 && text.contains(|c| ('1'..='9').contains(&c)) { format!("+{text}") } else { text }
+        if si > 0.0 && !reads_zero(&text) { format!("+{text}") } else { text }
     }
+}
+
+/// Whether a measure's text shows no digit but zero.
+fn reads_zero(text: &str) -> bool {
+    !text.contains(|c| ('1'..='9').contains(&c))
 }
