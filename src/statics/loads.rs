@@ -175,7 +175,9 @@ fn is_left(part: &WetPart) -> bool {
 fn stretches(parts: &[&WetPart], press: &[Press], up: Vec2) -> Vec<Stretch> {
     let mut stops: Vec<f64> = parts.iter().flat_map(|p| p.along_m).collect();
     stops.sort_unstable_by(f64::total_cmp);
-    stops.dedup();
+    // Both sides end at the same places, but for rounding: no stretch lies between.
+    let slack = ROUNDING * stops.last().zip(stops.first()).map_or(0.0, |(last, first)| last - first);
+    stops.dedup_by(|b, a| *b - *a <= slack);
     let mut out: Vec<Stretch> = Vec::new();
     for w in stops.windows(2) {
         let middle = 0.5 * (w[0] + w[1]);
