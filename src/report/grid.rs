@@ -79,7 +79,8 @@ impl Grid {
             *text = LEAST_TEXT.min(*text);
         }
         let others: usize = columns[1..].iter().map(|w| w + BETWEEN).sum();
-        columns[0] = columns[0].min(WIDTH.saturating_sub(INDENT + others).max(LEAST_NAME));
+        let most = WIDTH.saturating_sub(INDENT + others).max(LEAST_NAME);
+        columns[0] = self.rows.iter().map(|row| width(&row[0])).filter(|&w| w <= most).max().unwrap_or(0);
         columns
     }
 }
@@ -106,11 +107,14 @@ mod tests {
     #[test]
     fn a_long_name_has_a_line_of_its_own_and_long_text_wraps() {
         let mut grid = Grid::new(&[("cell", Side::Left), ("still", Side::Right), ("in", Side::Left)]);
-        grid.row(["n".repeat(79), "1 m³".into(), ["word"; 20].join(" ")]);
+        grid.row([["name"; 20].join(" "), "1 m³".into(), ["word"; 20].join(" ")]);
         grid.row(["b".into(), "2 m³".into(), "aft".into()]);
         let text = text(&grid);
         assert!(text.lines().all(|line| width(line) <= 80), "{text}");
-        assert_eq!(text.split_whitespace().filter(|w| *w == "word").count(), 20, "{text}");
+        for (word, n) in [("name", 20), ("word", 20)] {
+            assert_eq!(text.split_whitespace().filter(|w| *w == word).count(), n, "{text}");
+        }
+        assert!(text.ends_with("\n   b      2 m³  aft\n"), "the other names keep their column: {text}");
     }
 
     #[test]

@@ -146,7 +146,8 @@ pub(super) fn plate_loads(
             let mut peak: Option<(f64, Point)> = None;
             for s in &stretches {
                 for (along, pa) in [(s.from_m, s.from_pa), (s.to_m, s.to_pa)] {
-                    if pa != 0.0 && peak.is_none_or(|p| pa.abs() > p.0.abs()) {
+                    // The first of equals.
+                    if pa != 0.0 && peak.is_none_or(|p| pa.abs() > p.0.abs() * (1.0 + ROUNDING)) {
                         peak = Some((pa, plate.point_at(along)));
                     }
                 }

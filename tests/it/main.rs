@@ -23,6 +23,7 @@ mod published_forces;
 mod published_rigid;
 mod published_sections;
 mod reference;
+mod report;
 mod scenario;
 mod support;
 mod tidy;

@@ -40,7 +40,8 @@ impl Table<'_> {
         {
             self.fact("sealed", ["with openings shut as settled, to the figures shown"]);
         }
-        for (label, state) in [("sealed", &case.sealed), ("released", &case.released)] {
+        let others = [("sealed", &case.sealed), ("released", &case.released)];
+        for (label, state) in others.into_iter().filter(|_| case.settled.is_ok()) {
             if let Some(Err(reason)) = state {
                 self.fact(label, [format!("no {label} state: {reason}")]);
             }

@@ -92,6 +92,8 @@ mod tests {
     use super::super::fixture;
     use super::super::lines::{WIDTH, width};
     use super::*;
+    use crate::analysis::MouthSpill;
+    use crate::section::EdgeKind;
 
     fn shown(units: UnitSystem) -> String {
         let (study, results) = (fixture::study(), fixture::results());
@@ -128,6 +130,65 @@ mod tests {
     }
 
     #[test]
+    fn several_pools_states_and_plates_have_tables() {
+        let text = shown(UnitSystem::Si);
+        for want in [
+            "
+   cell     capacity       area      still
+   cell 1  0.2500 m³  0.5000 m²  0.2000 m³
+   cell 2  0.7400 m³   1.480 m²  0.5900 m³
+
+   plate  thickness  openings  as drawn
+   sill     3.00 mm         1  s 500.0 mm, z 0.000 mm to 700.0 mm
+",
+            "
+   pools        volume     level  surface                 stands in
+   settled   0.6200 m³  790.0 mm  s 500.0 mm to 2\u{2009}000 mm  cell 2
+             0.1600 m³  670.0 mm  s 0.000 mm to 500.0 mm  cell 1
+   sealed    0.5900 m³  790.0 mm  s 500.0 mm to 2\u{2009}000 mm  cell 2
+",
+            "
+   state             still      settled       sealed     released
+   cell 1        0.2000 m³    0.1600 m³    0.1900 m³    0.1700 m³
+   cell 2        0.5900 m³    0.6200 m³    0.5900 m³    0.6100 m³
+   spilled                    0.0100 m³    0.0100 m³    0.0100 m³
+",
+            "
+   plate  state      net load  acts at     greatest net pressure
+   sill   settled   −0.410 kN  z 293.0 mm  −1.19 kPa at z 50.00 mm
+          sealed    +0.230 kN  z 293.0 mm  −1.19 kPa at z 50.00 mm
+",
+            "   poured    0.0300 m³ to the right over sill at s 500.0 mm, z 700.0 mm\n",
+            "   trapped   after the release 0.0200 m³ more in cell 2 than before\n",
+            "               rim, right end · sealed bound · own derivation, brim path\n",
+        ] {
+            assert!(text.contains(want), "want\n{want}in\n{text}");
+        }
+    }
+
+    #[test]
+    fn a_sealed_state_that_reads_as_the_settled_one_is_not_shown_twice() {
+        let (study, mut results) = (fixture::study(), fixture::results());
+        results.cases[0].sealed = Some(results.cases[0].settled.clone());
+        let text = text(&Report::new("tray.ron", &study, &results), UnitSystem::Si);
+        assert!(text.contains("   sealed    with openings shut as settled, to the figures shown\n"), "{text}");
+        assert!(!text.contains("          sealed  "), "{text}");
+    }
+
+    #[test]
+    fn of_several_mouths_each_is_told_what_it_spilled() {
+        let (mut study, mut results) = (fixture::study(), fixture::results());
+        study.section.outline[0].kind = EdgeKind::Mouth;
+        study.section.outline[0].name = "drain".into();
+        let settled = results.cases[0].settled.as_mut().expect("a settled state");
+        let spills = [(1, 0.007), (0, 0.003)];
+        settled.spills = spills.map(|(mouth_idx, volume_m3)| MouthSpill { mouth_idx, volume_m3 }).into();
+        let text = text(&Report::new("tray.ron", &study, &results), UnitSystem::Si);
+        let want = "0.0100 m³ spilled: 7.00 L by rim, 3.00 L by drain";
+        assert!(text.contains(want), "want {want} in\n{text}");
+    }
+
+    #[test]
     fn the_highest_fill_is_rounded_down_so_that_it_holds() {
         let (study, mut results) = (fixture::study(), fixture::results());
         results.still.highest_share = Some(0.545_94);
@@ -139,7 +200,7 @@ mod tests {
     fn what_is_not_judged_or_absent_says_why() {
         let text = shown(UnitSystem::Si);
         for want in [
-            "   settled   no settled state: free fall: effective gravity is zero\n",
+            "   settled   no settled state: free fall: effective gravity is zero\n\n",
             "   not judged  Contained        –  –\n",
             "               capillarity rules the surface\n",
             "   absent      Roof contact\n               tank: no edge of the outline is a shut roof\n",
