@@ -110,7 +110,7 @@ pub(super) fn edge_loads(
 }
 
 /// Net loads and pressures below this share of those on one side are what rounding leaves of equal ones.
-const ROUNDING: f64 = 1e-12;
+const ROUNDING: f64 = 1e-11;
 
 /// Net loads across every plate.
 pub(super) fn plate_loads(
@@ -180,10 +180,10 @@ fn stretches(parts: &[&WetPart], press: &[Press], up: Vec2) -> Vec<Stretch> {
     let slack = ROUNDING * stops.last().zip(stops.first()).map_or(0.0, |(last, first)| last - first);
     stops.dedup_by(|b, a| *b - *a <= slack);
     let mut out: Vec<Stretch> = Vec::new();
+    let mut size = 0.0_f64;
     for w in stops.windows(2) {
         let middle = 0.5 * (w[0] + w[1]);
         let mut pa = [0.0; 2];
-        let mut sizes = [0.0_f64; 2];
         let mut is_wet = false;
         for part in parts {
             let [a, b] = part.along_m;
@@ -196,13 +196,16 @@ fn stretches(parts: &[&WetPart], press: &[Press], up: Vec2) -> Vec<Stretch> {
                 let p = part.edge.point_at((along - a) / (b - a));
                 let liquid = pressure_at(p, level_m, up, weight_pa_per_m);
                 pa[i] += if is_left(part) { liquid } else { -liquid };
-                sizes[i] = sizes[i].max(liquid.abs());
+                size = size.max(liquid);
             }
         }
-        let size = sizes[0].max(sizes[1]);
-        pa = pa.map(|pa| if pa.abs() <= ROUNDING * size { 0.0 } else { pa });
         if is_wet {
             out.push(Stretch { from_m: w[0], to_m: w[1], from_pa: pa[0], to_pa: pa[1] });
+        }
+    }
+    for pa in out.iter_mut().flat_map(|s| [&mut s.from_pa, &mut s.to_pa]) {
+        if pa.abs() <= ROUNDING * size {
+            *pa = 0.0;
         }
     }
     out

@@ -121,6 +121,23 @@ fn has_row(text: &str, row: &str) {
 }
 
 #[test]
+fn a_plate_within_one_pool_carries_nothing() {
+    // Both sides of it are pressed alike, wherever its openings lie. Settled, on a slope, with liquid over its tip.
+    for i in 0..24 {
+        let (from_m, to_m) = (0.017 * f64::from(i), 0.017 * f64::from(i) + 0.071);
+        let gap = Opening { name: "gap".into(), from_m, to_m, shape: OpeningShape::Share(0.5) };
+        let mut study = weir(Some(gap));
+        (study.fill, study.cases) = (Fill::Volume(2.4), vec![held(0.3 * GRAVITY, 0.0)]);
+        let plate = json_of(&study, &judge(&study))["cases"][0]["settled"]["plates"][0].clone();
+        assert_eq!(plate["net_n"], 0.0, "gap from {from_m} to {to_m} m: {plate:#}");
+        for key in ["acts_at_s_m", "acts_at_z_m", "peak_net_pa", "peak_s_m", "peak_z_m"] {
+            assert_eq!(plate[key], Value::Null, "gap from {from_m} to {to_m} m, {key}: {plate:#}");
+        }
+        assert!(plate["highest_gage_pa"].as_f64().is_some_and(|pa| pa > 0.6 * WATER * GRAVITY), "{plate:#}");
+    }
+}
+
+#[test]
 fn a_tank_without_plates_has_neither_cells_nor_bounds_in_its_text() {
     let study = study(Plated::tank(rectangle(2.0, 2.0)).with_mouth(2).section(), Fill::Volume(0.8));
     let text = text_of(&study, &judge(&study));

@@ -6,8 +6,11 @@ use crate::units::Quantity;
 use super::super::grid::{Grid, Side};
 use super::Table;
 
+/// A number of a state, SI.
+type Of = fn(&Settled) -> f64;
+
 /// What is shown of states that stand beside one another, after their cells.
-const DIFFERENCES: [(&str, Quantity, fn(&Settled) -> f64); 6] = [
+const DIFFERENCES: [(&str, Quantity, Of); 6] = [
     ("spilled", Quantity::Volume, |state| state.spilled_m3),
     ("reaches z", Quantity::Length, |state| state.highest_wetted.y),
     ("highest gage", Quantity::GagePressure, |state| state.peak_pa),
@@ -28,8 +31,12 @@ impl Table<'_> {
 
     /// Whether nothing that is shown of a state differs from another.
     pub(super) fn reads_as(&self, state: &Settled, other: Option<&Settled>) -> bool {
+        let net = |s: &Settled| -> Vec<String> {
+            s.plates.iter().map(|plate| self.measure(Quantity::Force, plate.net_n)).collect()
+        };
         other.is_some_and(|other| {
-            self.held(state) == self.held(other) && self.differences(state) == self.differences(other)
+            let is_held = self.held(state) == self.held(other);
+            is_held && self.differences(state) == self.differences(other) && net(state) == net(other)
         })
     }
 
