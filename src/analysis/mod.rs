@@ -1,6 +1,7 @@
 //! The one facade: a valid study in, results out. Pure: no files, no clock, no screen.
 
 mod cells;
+mod compartments;
 mod curves;
 mod results;
 mod ways;
@@ -63,7 +64,7 @@ pub fn run(study: &ValidStudy) -> Results {
             highest_share: holds.map(|v| v.min(common_capacity) / common_capacity),
         },
         cells: cells::still(study),
-        compartments: cells::compartments(study),
+        compartments: compartments::compartments(study),
         cases,
         pressure_scale_pa: nice_scale(highest_pa),
         warnings: study.warnings().to_vec(),
@@ -137,7 +138,7 @@ fn judge_case(
     let Outcome { verdicts, absent } = criteria::judge(&context);
     let released = case.release.then(|| settle_released(study, course));
     let trapped = match (&released, course.ramp) {
-        (Some(Ok(released)), Some(ramp)) => cells::trapped(study, &ramp, released),
+        (Some(Ok(released)), Some(ramp)) => compartments::trapped(study, &ramp, released),
         _ => Vec::new(),
     };
     let pours = course.ways.first().and_then(|w| w.as_ref()).and_then(|w| w.stop.as_ref());

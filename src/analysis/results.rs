@@ -37,7 +37,7 @@ pub struct Cell {
     pub name: String,
     /// A point inside it.
     pub inside: Point,
-    /// The compartment that it is a part of.
+    /// The compartment that it is a part of: cells that openings join.
     pub compartment: usize,
     /// Its area in the section, m2.
     pub area_m2: f64,
@@ -45,24 +45,6 @@ pub struct Cell {
     pub capacity_m3: f64,
     /// What it holds standing level and at rest, m3.
     pub still_m3: f64,
-}
-
-/// A tight part of the section.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Compartment {
-    /// As shown.
-    pub name: String,
-    /// Its entry in the study, where it has a fill of its own.
-    pub own_idx: Option<usize>,
-}
-
-/// Liquid that a cell holds after a release beyond what it held at rest before.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Trapped {
-    /// Which cell.
-    pub cell_idx: usize,
-    /// How much more, m3.
-    pub volume_m3: f64,
 }
 
 /// One load case, judged.
@@ -111,6 +93,24 @@ impl CaseResult {
     pub fn worst(&self) -> Option<&Verdict> {
         self.verdicts.first()
     }
+}
+
+/// A tight part of the section.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Compartment {
+    /// As shown.
+    pub name: String,
+    /// Its entry in the study, where it has a fill of its own.
+    pub own_idx: Option<usize>,
+}
+
+/// Liquid that a cell holds after a release beyond what it held at rest before.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Trapped {
+    /// Which cell.
+    pub cell_idx: usize,
+    /// How much more, m3.
+    pub volume_m3: f64,
 }
 
 /// Results of a study.

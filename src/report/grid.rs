@@ -44,6 +44,9 @@ impl Grid {
         let columns = self.columns();
         let last = columns.len() - 1;
         lines.gap();
+        if INDENT + columns.iter().map(|w| w + BETWEEN).sum::<usize>() - BETWEEN > WIDTH {
+            return self.write_as_facts(lines);
+        }
         for row in &self.rows {
             let mut first = row[0].as_str();
             if width(first) > columns[0] {
@@ -57,6 +60,22 @@ impl Grid {
             }
             start += &" ".repeat(BETWEEN);
             lines.facts(&start, [self.in_column(last, &row[last], columns[last])]);
+        }
+    }
+
+    /// Where numbers are too long to stand beside one another: row by row, each with its heading.
+    fn write_as_facts(&self, lines: &mut Lines) {
+        let headings = &self.rows[0];
+        for row in &self.rows[1..] {
+            let start = if row[0].is_empty() { String::new() } else { format!("{}  ", row[0]) };
+            let rest = headings.iter().zip(row).skip(1).filter(|(_, text)| !text.is_empty());
+            let facts = rest.map(|(heading, text)| format!("{heading} {text}").trim_start().to_owned());
+            if width(&start) + INDENT > WIDTH / 2 {
+                lines.facts(&" ".repeat(INDENT), [start]);
+                lines.facts(&" ".repeat(2 * INDENT), facts);
+            } else {
+                lines.facts(&(" ".repeat(INDENT) + &start), facts);
+            }
         }
     }
 
@@ -115,6 +134,17 @@ mod tests {
             assert_eq!(text.split_whitespace().filter(|w| *w == word).count(), n, "{text}");
         }
         assert!(text.ends_with("\n   b      2 m³  aft\n"), "the other names keep their column: {text}");
+    }
+
+    #[test]
+    fn numbers_too_long_for_columns_stand_row_by_row() {
+        let mut grid = Grid::new(&[("state", Side::Left), ("settled", Side::Right), ("sealed", Side::Right)]);
+        grid.row(["moment".into(), "1".repeat(36) + " lbf ft", "2".repeat(36) + " lbf ft"]);
+        let (settled, sealed) = ("1".repeat(36), "2".repeat(36));
+        assert_eq!(
+            text(&grid),
+            format!("\n   moment  settled {settled} lbf ft\n           sealed {sealed} lbf ft\n")
+        );
     }
 
     #[test]

@@ -4,9 +4,19 @@ use crate::section::{Region, WidthLaw};
 
 use super::pools::{Body, Look};
 
-/// For each body, the volume of its liquid in each cell of the region, m3. `look` is along the bodies' direction, under
-/// any bound: cells are cut finer.
-pub fn cell_volumes(region: &Region, width: &WidthLaw, look: &Look, bodies: &[Body]) -> Vec<Vec<f64>> {
+/// Volume of the bodies' liquid in each cell of the region, m3. `look` is along the bodies' direction, under any bound:
+/// cells are cut finer.
+pub fn cell_volumes(region: &Region, width: &WidthLaw, look: &Look, bodies: &[Body]) -> Vec<f64> {
+    sums(region, &cell_volumes_by_body(region, width, look, bodies))
+}
+
+/// What each cell holds of all bodies, m3.
+pub(super) fn sums(region: &Region, by_body: &[Vec<f64>]) -> Vec<f64> {
+    (0..region.cells().n_parts()).map(|cell| by_body.iter().map(|body| body[cell]).sum()).collect()
+}
+
+/// The same for each body by itself.
+pub(super) fn cell_volumes_by_body(region: &Region, width: &WidthLaw, look: &Look, bodies: &[Body]) -> Vec<Vec<f64>> {
     let cells = region.cells();
     if cells.n_parts() == 1 {
         return bodies.iter().map(|b| vec![b.volume_m3]).collect();

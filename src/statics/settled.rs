@@ -4,7 +4,7 @@ use crate::geom::{Edge, Point, Vec2, cross};
 use crate::problem::Place;
 use crate::section::{Face, Region, Section, Wall};
 
-use super::cells::cell_volumes;
+use super::cells::{cell_volumes_by_body, sums};
 use super::loads::{EdgeLoad, PlateLoad, Press, centroid, edge_loads, plate_loads, pressure_at};
 use super::pools::{Body, Look};
 use super::pour_over::MouthSpill;
@@ -156,7 +156,7 @@ pub fn settle(section: &Section, region: &Region, look: &Look, bodies: &[Body], 
     let edges = edge_loads(section, region, &wet, &press, up, about);
     let plates = plate_loads(section, region, &wet, &press, up, about);
     let most = bodies.iter().map(|b| b.volume_m3).fold(0.0, f64::max);
-    let in_cells = cell_volumes(region, width, look, bodies);
+    let in_cells = cell_volumes_by_body(region, width, look, bodies);
     let mut pools = Vec::new();
     let (mut total, mut total_moment, mut mass) = (Vec2::zeros(), 0.0, 0.0);
     let mut moments = Vec2::zeros();
@@ -224,7 +224,7 @@ pub fn settle(section: &Section, region: &Region, look: &Look, bodies: &[Body], 
         total_force_n: total,
         total_moment_n_m: total_moment,
         pools,
-        cells_m3: (0..region.cells().n_parts()).map(|c| in_cells.iter().map(|body| body[c]).sum()).collect(),
+        cells_m3: sums(region, &in_cells),
     }
 }
 

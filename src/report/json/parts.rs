@@ -2,7 +2,7 @@
 
 use serde::Serialize;
 
-use crate::section::Plate;
+use crate::section::{Plate, WidthLaw};
 
 use super::super::Report;
 use super::{Num, coordinates, num};
@@ -71,15 +71,18 @@ pub(super) struct DrawnPlate {
     thickness_m: Num,
     corrosion_m: Num,
     material: String,
+    solid_share: Num,
     openings: Vec<OpeningRow>,
 }
 
 impl DrawnPlate {
     pub(super) fn all(report: &Report) -> Vec<DrawnPlate> {
-        report.study.section.plates.iter().enumerate().map(|(idx, plate)| DrawnPlate::new(idx, plate)).collect()
+        let section = &report.study.section;
+        let plates = section.plates.iter().enumerate();
+        plates.map(|(idx, plate)| DrawnPlate::new(idx, plate, &section.width)).collect()
     }
 
-    fn new(idx: usize, plate: &Plate) -> DrawnPlate {
+    fn new(idx: usize, plate: &Plate, width: &WidthLaw) -> DrawnPlate {
         DrawnPlate {
             name: plate.label(idx),
             corners: plate.points.iter().map(|p| Corner { s_m: num(p.x), z_m: num(p.y) }).collect(),
@@ -87,6 +90,7 @@ impl DrawnPlate {
             thickness_m: num(plate.thickness_m),
             corrosion_m: num(plate.corrosion_m),
             material: plate.material.clone(),
+            solid_share: num(plate.solid_share(width)),
             openings: plate
                 .openings
                 .iter()

@@ -107,14 +107,15 @@ impl Table<'_> {
         let mut grid = Grid::new(&[
             ("plate", Side::Left),
             ("thickness", Side::Right),
-            ("openings", Side::Right),
+            ("solid", Side::Right),
             ("as drawn", Side::Left),
         ]);
-        for (idx, plate) in self.report.study.section.plates.iter().enumerate() {
+        let section = &self.report.study.section;
+        for (idx, plate) in section.plates.iter().enumerate() {
             grid.row([
                 plate.label(idx),
                 self.measure(Quantity::Length, plate.thickness_m),
-                plate.openings.len().to_string(),
+                self.measure(Quantity::Share, plate.solid_share(&section.width)),
                 self.drawn(plate),
             ]);
         }

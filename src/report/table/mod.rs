@@ -138,8 +138,8 @@ mod tests {
    cell 1  0.2500 m³  0.5000 m²  0.2000 m³
    cell 2  0.7400 m³   1.480 m²  0.5900 m³
 
-   plate  thickness  openings  as drawn
-   sill     3.00 mm         1  s 500.0 mm, z 0.000 mm to 700.0 mm
+   plate  thickness   solid  as drawn
+   sill     3.00 mm  97.1 %  s 500.0 mm, z 0.000 mm to 700.0 mm
 ",
             "
    pools        volume     level  surface                 stands in
@@ -216,11 +216,17 @@ mod tests {
         study.title = long.clone();
         study.liquid.name = long.clone();
         study.records[0].title = long.clone();
+        study.section.plates[0].name = long.clone();
+        study.section.outline[2].name = long.clone();
+        results.cells[1].name = long.clone();
         results.cases[0].name = long.clone();
         results.cases[0].verdicts[0].place_words = long;
-        let text = text(&Report::new("tray.ron", &study, &results), UnitSystem::Si);
-        for line in text.lines() {
-            assert!(width(line) <= WIDTH, "{} columns: {line}", width(line));
+        results.cases[0].settled.as_mut().expect("a settled state").total_moment_n_m = -7.8e9;
+        for units in [UnitSystem::Si, UnitSystem::UsCustomary] {
+            let text = text(&Report::new("tray.ron", &study, &results), units);
+            for line in text.lines() {
+                assert!(width(line) <= WIDTH, "{} columns: {line}", width(line));
+            }
         }
     }
 
