@@ -70,7 +70,12 @@ fn a_sill_that_traps_liquid_reads_as_worked_out() {
         let got = case.pointer(pointer).and_then(Value::as_f64).unwrap_or_else(|| panic!("{pointer} of {case:#}"));
         assert!((got - want).abs() <= 1e-9 * want.abs().max(1.0), "{pointer}: want {want}, got {got}");
     }
-    for (pointer, want) in [("/pours/0/sill", "sill"), ("/trapped/0/cell", "cell 1")] {
+    for (pointer, want) in [
+        ("/pours/0/sill", "sill"),
+        ("/trapped/0/cell", "cell 1"),
+        ("/settled/pools/0/cells/0", "cell 1"),
+        ("/settled/pools/1/cells/0", "cell 2"),
+    ] {
         assert_eq!(case.pointer(pointer).and_then(Value::as_str), Some(want), "{pointer} of {case:#}");
     }
     assert_eq!((&case["pours"][0]["to_right"], &case["sealed"]), (&Value::Bool(false), &Value::Null));
