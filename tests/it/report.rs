@@ -12,6 +12,7 @@ use serde_json::Value;
 
 use crate::json::adds_up;
 use crate::support::plated::{self, Plated};
+use crate::support::random::config;
 use crate::support::shapes::rectangle;
 use crate::support::{GRAVITY, WATER, held, judge, study};
 
@@ -152,7 +153,7 @@ fn a_tank_without_plates_has_neither_cells_nor_bounds_in_its_text() {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(16))]
+    #![proptest_config(config(16, 0x7e57))]
 
     #[test]
     fn whatever_the_plates_text_keeps_its_width_and_numbers_add_up(
