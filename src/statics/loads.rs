@@ -139,7 +139,10 @@ pub(super) fn plate_loads(
                 raise(&mut highest_on, highest(&part.edge, press[part.body_idx], up));
             }
             if force.norm() <= ROUNDING * size {
-                (force, moment, net) = (Vec2::zeros(), 0.0, 0.0);
+                force = Vec2::zeros();
+            }
+            if net.abs() <= ROUNDING * size {
+                net = 0.0;
             }
             let stretches = stretches(&parts, press, up);
             let plate = &section.plates[plate_idx];
