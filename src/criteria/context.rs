@@ -3,12 +3,11 @@
 use crate::cases::LoadCase;
 use crate::geom::{Point, Vec2};
 use crate::problem::Place;
-use crate::sources::Source;
 use crate::statics::{Bound, EffectiveGravity, PourOver, Rims, Route, Settled};
 use crate::study::{Limit, ValidStudy};
 use crate::units::{Measure, Phrase, Quantity};
 
-use super::{Reach, Sense, State, Trust, Verdict};
+use super::{Reach, Sense, Trust, Verdict};
 
 /// Physics of one load case.
 pub struct Context<'a> {
@@ -54,56 +53,15 @@ impl View<'_> {
     }
 }
 
-/// Utilisation beyond which a verdict is close.
-const CLOSE_ABOVE: f64 = 0.9;
-
-/// Rounding of a utilisation: a brim that is exactly reached is not yet passed.
-const UTILISATION_ROUNDING: f64 = 1e-9;
-
 impl Context<'_> {
     /// A verdict from demand and limit. The demand is compared in `sense`.
     pub fn verdict(&self, criterion: &'static str, demand: Measure, limit: Measure, sense: Sense) -> Verdict {
-        let (smaller, larger) = match sense {
-            Sense::AtMost => (demand.si, limit.si),
-            Sense::AtLeast => (limit.si, demand.si),
-        };
-        // Nothing is a share of zero or less: then the comparison alone decides.
-        let utilisation = if larger > 0.0 {
-            smaller.max(0.0) / larger
-        } else if smaller <= larger {
-            0.0
-        } else {
-            f64::INFINITY
-        };
-        Verdict {
-            state: state_of(utilisation),
-            demand: Some(demand),
-            limit: Some(limit),
-            utilisation: Some(utilisation),
-            ..self.not_judged(criterion, sense, String::new())
-        }
+        Verdict::judged(criterion, demand, limit, sense, self.trust())
     }
 
     /// A verdict that is not judged, and why.
     pub fn not_judged(&self, criterion: &'static str, sense: Sense, reason: String) -> Verdict {
-        Verdict {
-            criterion,
-            state: State::NotJudged,
-            demand: None,
-            limit: None,
-            sense,
-            utilisation: None,
-            place: Place::Whole,
-            place_words: "tank".to_owned(),
-            at: None,
-            working: Vec::new(),
-            mend: Vec::new(),
-            source: Source::RigidAcceleration,
-            trust: self.trust(),
-            remark: reason,
-            unconfirmed_record: None,
-            bound: None,
-        }
+        Verdict::not_judged(criterion, sense, reason, self.trust())
     }
 
     /// What to do: a fill, rounded down, so that the one shown holds.
@@ -187,16 +145,5 @@ impl Context<'_> {
     /// The index of a record when it is not confirmed.
     pub fn unconfirmed(&self, record_idx: Option<usize>) -> Option<usize> {
         record_idx.filter(|&i| !self.study.study().records[i].confirmed)
-    }
-}
-
-/// State of a utilisation.
-pub(super) fn state_of(utilisation: f64) -> State {
-    if utilisation > 1.0 + UTILISATION_ROUNDING {
-        State::Fails
-    } else if utilisation > CLOSE_ABOVE {
-        State::Close
-    } else {
-        State::Holds
     }
 }

@@ -47,6 +47,7 @@ pub(super) fn study() -> Study {
         compartments: vec![],
         sump: None,
         discharge_coefficient: crate::study::DISCHARGE_COEFFICIENT,
+        materials: vec![],
         cases: vec![
             LoadCase {
                 name: "Transfer stop".into(),

@@ -301,6 +301,7 @@ impl From<Scenario> for Study {
             compartments: Vec::new(),
             sump: None,
             discharge_coefficient: study::DISCHARGE_COEFFICIENT,
+            materials: Vec::new(),
             cases: file.cases.map(LoadCase::from),
             points: file.points.map(|p| NamedPoint { name: p.name, at: point(p.s_mm, p.z_mm) }),
             moment_about: point(file.moment_about.s_mm, file.moment_about.z_mm),

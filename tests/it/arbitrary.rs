@@ -166,6 +166,7 @@ pub fn study() -> impl Strategy<Value = Study> {
             compartments: vec![],
             sump: None,
             discharge_coefficient: 0.6,
+            materials: vec![],
             cases,
             points,
             moment_about,

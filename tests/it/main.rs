@@ -14,9 +14,9 @@ mod files;
 #[cfg(feature = "gui")]
 mod gui;
 mod json;
+mod panels;
 mod pools_by_hand;
 mod pools_sampled;
-mod panels;
 mod program;
 mod properties;
 mod properties_loads;
