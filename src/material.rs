@@ -1,5 +1,5 @@
-//! What a plate is made of. A small table in `assets/materials.ron` says for every row where its numbers come from; users
-//! add rows of their own. Knows no plate and no load.
+//! What a plate is made of. A small table in `assets/materials.ron` says for every row where its numbers come from;
+//! users add rows of their own. Knows no plate and no load.
 
 use std::sync::LazyLock;
 

@@ -19,6 +19,11 @@ impl LegendreSeries {
         LegendreSeries(coefficients)
     }
 
+    /// How many coefficients it has.
+    pub fn n_coefficients(&self) -> usize {
+        self.0.len()
+    }
+
     /// The derivative: P_n' = sum of (2m + 1) P_m over m = n - 1, n - 3, ...
     pub fn derivative(&self) -> LegendreSeries {
         let n = self.0.len();
@@ -45,16 +50,15 @@ impl LegendreSeries {
 
     /// The value at x.
     pub fn at(&self, x: f64) -> f64 {
-        let (mut last, mut this, mut sum) = (0.0, 1.0, 0.0);
-        for (n, c) in self.0.iter().enumerate() {
-            sum += c * this;
-            let n = n as f64;
-            (last, this) = (this, ((2.0 * n + 1.0) * x * this - n * last) / (n + 1.0));
-        }
-        sum
+        self.sum(&legendre_polynomials(self.0.len(), x))
     }
 
-    /// The integral of the product of two series over -1..1, exactly: sum of 2 c[n] d[n] / (2n + 1).
+    /// The value where P_0, P_1, ... have the given values, at least as many as the series has coefficients.
+    pub fn sum(&self, polynomials: &[f64]) -> f64 {
+        self.0.iter().zip(polynomials).map(|(c, p)| c * p).sum()
+    }
+
+    /// The integral of the product of two series over -1..1, exactly: sum of `2 c[n] d[n] / (2n + 1)`.
     pub fn dot(&self, other: &LegendreSeries) -> f64 {
         let terms = self.0.iter().zip(&other.0).enumerate();
         terms.map(|(n, (c, d))| 2.0 * c * d / (2 * n + 1) as f64).sum()
@@ -64,6 +68,17 @@ impl LegendreSeries {
     pub fn mean(&self) -> f64 {
         self.0.first().copied().unwrap_or(0.0)
     }
+}
+
+/// The values of the first `n` polynomials P_0, P_1, ... at x.
+pub fn legendre_polynomials(n: usize, x: f64) -> Vec<f64> {
+    let (mut last, mut this) = (0.0, 1.0);
+    let mut values = Vec::with_capacity(n);
+    for n in (0..n).map(|n| n as f64) {
+        values.push(this);
+        (last, this) = (this, ((2.0 * n + 1.0) * x * this - n * last) / (n + 1.0));
+    }
+    values
 }
 
 #[cfg(test)]

@@ -3,13 +3,14 @@
 
 use nalgebra::{DMatrix, DVector};
 
-use crate::num::LegendreSeries;
+use crate::num::{LegendreSeries, legendre_polynomials};
 
 /// How the two ends of a side are held.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub(super) enum Ends {
     Simple,
     Clamped,
+    Free,
     SimpleFree,
     ClampedFree,
 }
@@ -60,8 +61,10 @@ impl Basis {
 
     /// Values at points.
     pub fn samples(&self, points: &[f64]) -> Samples {
-        [0, 1, 2, 3].map(|order| {
-            DMatrix::from_fn(points.len(), self.len(), |point, i| self.orders[order][i].at(points[point]))
+        let n = self.functions().iter().map(LegendreSeries::n_coefficients).max().unwrap_or(0);
+        let polynomials: Vec<_> = points.iter().map(|x| legendre_polynomials(n, *x)).collect();
+        self.orders.each_ref().map(|functions| {
+            DMatrix::from_fn(points.len(), self.len(), |point, i| functions[i].sum(&polynomials[point]))
         })
     }
 
@@ -79,6 +82,8 @@ fn function(ends: Ends, i: usize) -> LegendreSeries {
         (Ends::Simple, 0) => LegendreSeries::new(vec![-1.0, 0.0, 1.0]),
         (Ends::Simple, 1) => LegendreSeries::new(vec![0.0, -1.0, 0.0, 1.0]),
         (Ends::Simple | Ends::ClampedFree, i) => bubble(i),
+        (Ends::Free, i @ (0 | 1)) => LegendreSeries::polynomial(i),
+        (Ends::Free, i) => function(Ends::Simple, i - 2),
         (Ends::Clamped, i) => bubble(i + 2),
         (Ends::SimpleFree, 0) => LegendreSeries::polynomial(0).integral(),
         (Ends::SimpleFree, i) => bubble(i - 1),
@@ -95,6 +100,7 @@ mod tests {
         for (ends, must_vanish) in [
             (Ends::Simple, [true, false, true, false]),
             (Ends::Clamped, [true, true, true, true]),
+            (Ends::Free, [false, false, false, false]),
             (Ends::SimpleFree, [true, false, false, false]),
             (Ends::ClampedFree, [true, true, false, false]),
         ] {
@@ -109,7 +115,7 @@ mod tests {
 
     #[test]
     fn even_functions_are_even() {
-        for ends in [Ends::Simple, Ends::Clamped] {
+        for ends in [Ends::Simple, Ends::Clamped, Ends::Free] {
             let [values, ..] = Basis::even(ends, 6).samples(&[-0.37, 0.37]);
             let difference = (values.row(0) - values.row(1)).amax();
             assert!(difference < 1e-15, "{ends:?}: {difference}");

@@ -3,10 +3,10 @@
 use nalgebra::{DMatrix, DVector};
 
 use super::bent::{Bent, PointState};
-use super::panel::{Panel, Support};
+use super::panel::SolvedPanel;
 
-/// A largest value and where it is; panels are alike left and right, and the left place is given. In a panel wider than
-/// [`Panel::MOST_SLENDER`] heights, places across are stretched to its width.
+/// A largest value and where it is; panels are alike left and right, and the left place is given. In a panel wider
+/// than [`SolvedPanel::MOST_SLENDER`] heights, places across are stretched to its width.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Peak {
     /// The value, signed.
@@ -31,8 +31,8 @@ pub struct Extremes {
 pub struct EdgeReaction {
     /// Mean force along the edge, N/m, without the forces in its corners.
     pub mean_n_per_m: f64,
-    /// Force of largest magnitude along the edge (Kirchhoff's), N/m, signed. The last tenth of a clamped side below a
-    /// free top is left out, where the theory's grows without bound.
+    /// Force of largest magnitude along the edge (Kirchhoff's), N/m, signed. The tenth of a clamped side beside a
+    /// free edge is left out, where the theory's grows without bound.
     pub peak_n_per_m: f64,
     /// Where: m from the left end of a bottom or top edge, from the lower end of a side.
     pub peak_at_m: f64,
@@ -59,8 +59,8 @@ pub struct Bending {
     pub von_mises: Peak,
     /// Each of the two sides.
     pub sides: EdgeReaction,
-    /// The bottom edge.
-    pub bottom: EdgeReaction,
+    /// The bottom edge; none where it is free.
+    pub bottom: Option<EdgeReaction>,
     /// The top edge; none where it is free.
     pub top: Option<EdgeReaction>,
     /// Force in each bottom corner, N, below zero where the corner must be held down; zero where edges are clamped.
@@ -70,9 +70,9 @@ pub struct Bending {
 }
 
 impl Bending {
-    /// The moment M to judge by, stress = 6 M / t^2, without sign: the larger of the handbooks' principal moment and of
-    /// von Mises's. The latter is larger only where twist rules: in the corners of simply supported panels (a square
-    /// one by 18 %) and beside a free top.
+    /// The moment M to judge by, stress = 6 M / t^2, without sign: the larger of the handbooks' principal moment and
+    /// of von Mises's. The latter is larger only where twist rules: in the corners of simply supported panels (a
+    /// square one by 18 %) and beside a free top.
     pub fn governing(&self) -> Peak {
         let principal = Peak { value: self.principal.value.abs(), ..self.principal };
         if self.von_mises.value > principal.value { self.von_mises } else { principal }
@@ -85,12 +85,15 @@ pub(super) fn of(bent: &Bent) -> Bending {
     let grid = Grid::new(bent);
     let twist_at = |y_m: f64| if geometry.support.is_clamped() { 0.0 } else { bent.at(0.0, y_m).twist_n };
     let last = grid.states.ncols() - 1;
-    let (mut sides, bottom) = (grid.side(), grid.level_edge(0, 1.0));
-    if geometry.support == Support::ClampedFreeTop {
-        // A spike in the top corners escapes the integral along the side: by equilibrium.
-        let Panel { half: [hx, _], unit_m, .. } = bent.panel;
-        let load_n_per_m = bent.load_n / geometry.width_m;
-        sides.mean_n_per_m = hx * unit_m * (load_n_per_m - bottom.mean_n_per_m) / geometry.height_m;
+    let support = geometry.support;
+    let bottom = (!support.is_free_at_bottom()).then(|| grid.level_edge(0, 1.0));
+    let top = (!support.is_free_at_top()).then(|| grid.level_edge(last, -1.0));
+    let mut sides = grid.side();
+    if support.is_clamped() && top.is_none() {
+        // A spike beside the free edge escapes the integral along the side: by equilibrium.
+        let SolvedPanel { half: [hx, _], unit_m, .. } = bent.panel;
+        let at_bottom = bottom.map_or(0.0, |edge| edge.mean_n_per_m);
+        sides.mean_n_per_m = hx * unit_m * (bent.load_n / geometry.width_m - at_bottom) / geometry.height_m;
     }
     Bending {
         load_n: bent.load_n,
@@ -101,7 +104,7 @@ pub(super) fn of(bent: &Bent) -> Bending {
         von_mises: grid.largest(PointState::von_mises_n),
         sides,
         bottom,
-        top: (!geometry.support.is_free_at_top()).then(|| grid.level_edge(last, -1.0)),
+        top,
         bottom_corner_n: 2.0 * twist_at(0.0),
         top_corner_n: -2.0 * twist_at(geometry.height_m),
     }
@@ -115,7 +118,7 @@ struct Grid<'a> {
 
 impl<'a> Grid<'a> {
     fn new(bent: &'a Bent<'a>) -> Grid<'a> {
-        let Panel { x, y, half: [hx, hy], .. } = bent.panel;
+        let SolvedPanel { x, y, half: [hx, hy], .. } = bent.panel;
         let along = [0, 1, 2].map(|q| &bent.coefficients * y.samples[q].transpose() / hy.powi(q as i32));
         let field = |p: usize, q: usize| &x.samples[p] * &along[q] / hx.powi(p as i32);
         let (w, w_xx, w_yy, w_xy) = (field(0, 0), field(2, 0), field(0, 2), field(1, 1));
@@ -138,12 +141,11 @@ impl<'a> Grid<'a> {
         Extremes { high: self.highest(of), low: Peak { value: -low.value, ..low } }
     }
 
-    /// The summit of a value: the highest point, moved to where the value bends over and taken there; zero where all is
-    /// below.
+    /// The summit of a value: the highest point, moved to where the value bends over and taken there; zero where all
+    /// is below.
     fn highest(&self, of: impl Fn(&PointState) -> f64) -> Peak {
-        let Panel { x, y, .. } = self.bent.panel;
+        let SolvedPanel { x, y, .. } = self.bent.panel;
         let values = self.states.map(|s| of(&s));
-        // What is no number counts as the highest, so that it is not lost.
         let best = values.iter().enumerate().max_by(|a, b| a.1.total_cmp(b.1));
         let (k, top) = best.map_or((0, 0.0), |(k, value)| (k, *value));
         if top <= 0.0 {
@@ -159,16 +161,19 @@ impl<'a> Grid<'a> {
 
     /// A side: V = -(w_xxx + (2 - nu) w_xyy) at its left end.
     fn side(&self) -> EdgeReaction {
-        let Panel { x, y, half: [hx, hy], unit_m, .. } = self.bent.panel;
+        let SolvedPanel { x, y, half: [hx, hy], unit_m, .. } = self.bent.panel;
         let geometry = self.bent.panel.geometry();
         let slope = x.samples[1].row(0) * &self.bent.coefficients * (2.0 - geometry.poisson) / *hx / (hy * hy);
         let third = x.samples[3].row(0) * &self.bent.coefficients / hx.powi(3);
         let force = -(&third * y.samples[0].transpose() + &slope * y.samples[2].transpose()) * *unit_m;
         let mean = -(third * y.basis.means(0) + slope * y.basis.means(2))[0] * unit_m;
-        let has_singular_end = geometry.support == Support::ClampedFreeTop;
-        let within = |eta: f64| !has_singular_end || eta <= 0.8;
-        let n = y.points.iter().take_while(|eta| within(**eta)).count();
-        let (peak_at, peak) = largest_along(&y.points[..n], &force.iter().copied().take(n).collect::<Vec<_>>());
+        // -1..1 is the whole side, and a tenth of it 0.2.
+        let is_spiked = |is_free| geometry.support.is_clamped() && is_free;
+        let from = if is_spiked(geometry.support.is_free_at_bottom()) { -0.8 } else { -1.0 };
+        let to = if is_spiked(geometry.support.is_free_at_top()) { 0.8 } else { 1.0 };
+        let kept = y.points.iter().copied().zip(force.iter().copied()).filter(|(eta, _)| (from..=to).contains(eta));
+        let (points, forces): (Vec<f64>, Vec<f64>) = kept.unzip();
+        let (peak_at, peak) = largest_along(&points, &forces);
         let moments: Vec<f64> = self.states.row(0).iter().map(|s| s.across_n).collect();
         let (moment_at, moment_n) = self.edge_moment(&y.points, &moments);
         EdgeReaction {
@@ -183,7 +188,7 @@ impl<'a> Grid<'a> {
     /// The bottom edge (`j` first, `sign` 1) or the top edge (`j` last, `sign` -1):
     /// V = -sign (w_yyy + (2 - nu) w_xxy).
     fn level_edge(&self, j: usize, sign: f64) -> EdgeReaction {
-        let Panel { x, y, half: [hx, hy], unit_m, .. } = self.bent.panel;
+        let SolvedPanel { x, y, half: [hx, hy], unit_m, .. } = self.bent.panel;
         let poisson = self.bent.panel.geometry().poisson;
         let at_edge = |q: usize| -> DVector<f64> { &self.bent.coefficients * y.samples[q].row(j).transpose() };
         let (slope, third) = (at_edge(1) * (2.0 - poisson) / *hy / (hx * hx), at_edge(3) / hy.powi(3));
@@ -223,8 +228,8 @@ fn largest_along(points: &[f64], values: &[f64]) -> (f64, f64) {
     (at, value + sign * over)
 }
 
-/// The summit near the highest of sampled values, at index `i`, by the parabola through it and its neighbours: where it
-/// is, and how far it stands above the sample. At either end, the sample itself.
+/// The summit near the highest of sampled values, at index `i`, by the parabola through it and its neighbours: where
+/// it is, and how far it stands above the sample. At either end, the sample itself.
 fn summit(points: &[f64], values: impl Iterator<Item = f64>, i: usize) -> (f64, f64) {
     if i == 0 || i + 1 >= points.len() {
         return (points[i], 0.0);

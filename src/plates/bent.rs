@@ -3,19 +3,19 @@
 use nalgebra::DMatrix;
 
 use super::bending::{self, Bending};
-use super::panel::Panel;
+use super::panel::SolvedPanel;
 
 /// A panel under a pressure.
 #[derive(Clone, Debug)]
 pub struct Bent<'a> {
-    pub(super) panel: &'a Panel,
+    pub(super) panel: &'a SolvedPanel,
     /// Of the products of functions: one row a function across, one column a function along the height.
     pub(super) coefficients: DMatrix<f64>,
     pub(super) load_n: f64,
 }
 
-/// A bent panel at a point. Positive: pressed back, and hollowed, as a positive pressure does it, so that the face away
-/// from the pressure is stretched.
+/// A bent panel at a point. Positive: pressed back, and hollowed, as a positive pressure does it, so that the face
+/// away from the pressure is stretched.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct PointState {
     /// Deflection times the rigidity D = E t^3 / (12 (1 - nu^2)), N m2.
@@ -44,7 +44,8 @@ impl PointState {
 }
 
 impl Bent<'_> {
-    /// The state at a point, in metres from the left side and from the bottom edge; beyond the panel, at its edge.
+    /// The state at a point, in metres from the left side and from the bottom edge; beyond the panel, at its edge. In
+    /// a panel wider than [`SolvedPanel::MOST_SLENDER`] heights, places across are stretched to its width.
     pub fn at(&self, x_m: f64, y_m: f64) -> PointState {
         let geometry = self.panel.geometry();
         let point = |at: f64, side: f64| (2.0 * (at / side) - 1.0).clamp(-1.0, 1.0);

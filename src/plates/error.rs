@@ -29,9 +29,9 @@ pub enum PlateError {
         /// What can be calculated.
         most: f64,
     },
-    /// Hinged along the bottom, free at the top, and too wide for its sides to hold it.
+    /// Free at the top, not clamped along the bottom, and too wide for its sides to hold it.
     #[error(
-        "the panel is {ratio:.0} times as wide as high, hinged along its bottom and free at its top, so hardly anything holds it; clamp its bottom, hold its top or set stiffeners at most {most:.0} heights apart"
+        "the panel is {ratio:.0} times as wide as high and its top is free, so hardly anything but its far sides holds it; clamp its bottom, hold its top or set stiffeners at most {most:.0} heights apart"
     )]
     TooWide {
         /// Width by height.

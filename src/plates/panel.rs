@@ -26,6 +26,10 @@ pub enum Support {
     SimpleFreeTop,
     /// Sides and bottom are held and cannot turn; the top edge is free.
     ClampedFreeTop,
+    /// The sides are held and turn freely; bottom and top edge are free.
+    SimpleSides,
+    /// The sides are held and cannot turn; bottom and top edge are free.
+    ClampedSides,
 }
 
 impl Support {
@@ -36,17 +40,29 @@ impl Support {
             Support::Clamped => "clamped",
             Support::SimpleFreeTop => "simply supported, top edge free",
             Support::ClampedFreeTop => "clamped, top edge free",
+            Support::SimpleSides => "simply supported along its sides, bottom and top edge free",
+            Support::ClampedSides => "clamped along its sides, bottom and top edge free",
         }
     }
 
     /// Whether the held edges cannot turn.
     pub fn is_clamped(self) -> bool {
-        matches!(self, Support::Clamped | Support::ClampedFreeTop)
+        matches!(self, Support::Clamped | Support::ClampedFreeTop | Support::ClampedSides)
+    }
+
+    /// Whether the bottom edge is free.
+    pub fn is_free_at_bottom(self) -> bool {
+        matches!(self, Support::SimpleSides | Support::ClampedSides)
     }
 
     /// Whether the top edge is free.
     pub fn is_free_at_top(self) -> bool {
-        matches!(self, Support::SimpleFreeTop | Support::ClampedFreeTop)
+        !matches!(self, Support::Simple | Support::Clamped)
+    }
+
+    /// Whether a panel that is much wider than high is a strip in its middle, held along its bottom.
+    fn spans_along_height(self) -> bool {
+        matches!(self, Support::Simple | Support::Clamped | Support::ClampedFreeTop)
     }
 }
 
@@ -65,7 +81,7 @@ pub struct PanelGeometry {
 
 /// A panel whose stiffness is solved: keep it as long as its geometry holds, and bend it as often as wanted.
 #[derive(Clone, Debug)]
-pub struct Panel {
+pub struct SolvedPanel {
     geometry: PanelGeometry,
     /// Length unit of the solution, m: the shorter side.
     pub(super) unit_m: f64,
@@ -94,20 +110,36 @@ struct Block {
     stiffness: Cholesky<f64, Dyn>,
 }
 
-impl Panel {
-    /// How many times as long as wide a panel is solved. A wider one, held along its bottom by more than a hinge,
-    /// is bent there as at this ratio, since its middle is a strip; other panels beyond are refused.
+impl PanelGeometry {
+    /// A panel of a plate across a tank of `tank_width_m`: between its stiffeners, or, where it has none or they
+    /// stand wider apart, from side wall to side wall.
+    pub fn of_plate(
+        tank_width_m: f64,
+        stiffener_spacing_m: Option<f64>,
+        height_m: f64,
+        support: Support,
+        poisson: f64,
+    ) -> PanelGeometry {
+        let width_m = stiffener_spacing_m.filter(|spacing| *spacing < tank_width_m).unwrap_or(tank_width_m);
+        PanelGeometry { width_m, height_m, support, poisson }
+    }
+}
+
+impl SolvedPanel {
+    /// Up to which ratio of its sides a panel is solved. A wider one whose bottom and top, or clamped bottom alone,
+    /// hold it is bent as at this ratio, since its middle is a strip; other panels beyond are refused.
     pub const MOST_SLENDER: f64 = 20.0;
 
     /// Solves the stiffness of a panel: of the order of a millisecond for usual ratios of its sides.
     ///
-    /// Accuracy between ratios of 1/10 and 10: moments and deflection 2e-4 of the largest, reactions 1 %. Beside
-    /// the corner of a clamped side and a free top the theory's moment oscillates and its reaction grows without
-    /// bound (a local solution behaves as r^(2.07 + 0.44 i) for Poisson's ratio 0.3): moments within 3 % there.
+    /// Accuracy between ratios of 1/10 and 10: moments and deflection 2e-4 of the largest, reactions 1 %. Beside the
+    /// corner of a clamped side and a free top the theory's moment oscillates and its reaction grows without bound (a
+    /// local solution behaves as r^(2.07 + 0.44 i) for Poisson's ratio 0.3): moments within 3 % and reactions within
+    /// about 10 % there.
     ///
     /// Errors: a side that is no number above zero, Poisson's ratio outside 0..0.5, a panel too slender
-    /// ([`Panel::MOST_SLENDER`]).
-    pub fn solve(geometry: PanelGeometry) -> Result<Panel, PlateError> {
+    /// ([`SolvedPanel::MOST_SLENDER`]).
+    pub fn new(geometry: PanelGeometry) -> Result<SolvedPanel, PlateError> {
         let PanelGeometry { width_m, height_m, support, poisson } = geometry;
         for (what, value_m) in [("the panel's width", width_m), ("the panel's height", height_m)] {
             if !(value_m.is_finite() && value_m > 0.0) {
@@ -121,15 +153,15 @@ impl Panel {
         if tall > most {
             return Err(PlateError::TooTall { ratio: tall, most });
         }
-        if wide > most && support == Support::SimpleFreeTop {
+        if wide > most && !support.spans_along_height() {
             return Err(PlateError::TooWide { ratio: wide, most });
         }
         // Half as many across, since only even ones are wanted there; an even count of them converges best.
-        Panel::with_counts(geometry, 2 * n_functions(wide).div_ceil(4), n_functions(tall))
+        SolvedPanel::with_counts(geometry, 2 * n_functions(wide).div_ceil(4), n_functions(tall))
     }
 
-    /// As [`Panel::solve`], for given counts of functions across (even ones) and along the height.
-    pub(super) fn with_counts(geometry: PanelGeometry, n_x: usize, n_y: usize) -> Result<Panel, PlateError> {
+    /// As [`SolvedPanel::new`], for given counts of functions across (even ones) and along the height.
+    pub(super) fn with_counts(geometry: PanelGeometry, n_x: usize, n_y: usize) -> Result<SolvedPanel, PlateError> {
         let PanelGeometry { width_m, height_m, support, poisson } = geometry;
         let unit_m = width_m.min(height_m);
         let half = [0.5 * (width_m / unit_m).min(Self::MOST_SLENDER), 0.5 * height_m / unit_m];
@@ -138,10 +170,12 @@ impl Panel {
             Support::Clamped => (Ends::Clamped, Ends::Clamped),
             Support::SimpleFreeTop => (Ends::Simple, Ends::SimpleFree),
             Support::ClampedFreeTop => (Ends::Clamped, Ends::ClampedFree),
+            Support::SimpleSides => (Ends::Simple, Ends::Free),
+            Support::ClampedSides => (Ends::Clamped, Ends::Free),
         };
         let (x, y) = (Basis::even(x_ends, n_x), Basis::new(y_ends, n_y));
         // Where bottom and top are held alike, what is even along y does not couple with what is odd.
-        let parts: Vec<Vec<usize>> = if support.is_free_at_top() {
+        let parts: Vec<Vec<usize>> = if support.is_free_at_top() != support.is_free_at_bottom() {
             vec![(0..n_y).collect()]
         } else {
             vec![(0..n_y).step_by(2).collect(), (1..n_y).step_by(2).collect()]
@@ -154,11 +188,11 @@ impl Panel {
         let blocks = parts.into_iter().map(stiffness).collect::<Result<_, PlateError>>()?;
         let integrals = y.functions().iter().map(|f| [f.integral(), f.integral().integral()]).collect();
         // Points lie closer together toward the edges, as the functions' own turning points do.
-        let (n_left, n_along) = (n_x + 4, 2 * n_y + 5);
+        let (n_left, n_along) = (2 * n_x + 3, 2 * n_y + 5);
         let left = (0..n_left).map(|i| -(FRAC_PI_2 * i as f64 / (n_left - 1) as f64).cos()).collect();
         let along = (0..n_along).map(|i| -(PI * i as f64 / (n_along - 1) as f64).cos()).collect();
         let (x, y) = (Direction::new(x, left), Direction::new(y, along));
-        Ok(Panel { geometry, unit_m, half, x, y, integrals, blocks })
+        Ok(SolvedPanel { geometry, unit_m, half, x, y, integrals, blocks })
     }
 
     /// What it was solved for.
@@ -167,7 +201,9 @@ impl Panel {
     }
 
     /// Bends it by a net pressure along its height, from the bottom up, alike all across.
-    pub fn bend(&self, pressure: &Profile) -> Bent<'_> {
+    ///
+    /// Errors: sizes and pressures beyond what numbers hold.
+    pub fn bend(&self, pressure: &Profile) -> Result<Bent<'_>, PlateError> {
         let across = self.work_across();
         let along = self.work_along(pressure);
         let mut coefficients = DMatrix::zeros(across.len(), along.len());
@@ -180,7 +216,15 @@ impl Panel {
             }
         }
         let load_n = pressure.resultant_n_per_m(self.geometry.height_m) * self.geometry.width_m;
-        Bent { panel: self, coefficients, load_n }
+        // With room for what derivatives add.
+        let scale = self.unit_m.powi(4);
+        let is_within = scale.is_normal() && (coefficients.amax() * scale * 1e12).is_finite();
+        let has_numbers = coefficients.iter().all(|c| c.is_finite()) && load_n.is_finite();
+        if is_within && has_numbers {
+            Ok(Bent { panel: self, coefficients, load_n })
+        } else {
+            Err(PlateError::OutOfNumbers)
+        }
     }
 
     /// The work of a pressure that is alike all across on each function along x.
@@ -244,11 +288,11 @@ mod tests {
     /// The work of a uniform pressure on a square panel with `n` functions along its height.
     fn compliance(support: Support, n: usize) -> f64 {
         let geometry = PanelGeometry { width_m: 1.0, height_m: 1.0, support, poisson: 0.3 };
-        let panel = Panel::with_counts(geometry, n / 2, n).unwrap();
+        let panel = SolvedPanel::with_counts(geometry, n / 2, n).unwrap();
         let pressure = Profile::linear(1.0, 1.0, 1.0).unwrap();
         let along = DVector::from_vec(panel.work_along(&pressure));
         let across = panel.work_across();
-        (across.transpose() * panel.bend(&pressure).coefficients * along)[0]
+        (across.transpose() * panel.bend(&pressure).unwrap().coefficients * along)[0]
     }
 
     #[test]
@@ -274,7 +318,7 @@ mod tests {
     #[test]
     fn bad_geometry_is_refused_in_words() {
         let solve = |width_m, height_m, support, poisson| {
-            Panel::solve(PanelGeometry { width_m, height_m, support, poisson }).err().map(|e| e.to_string())
+            SolvedPanel::new(PanelGeometry { width_m, height_m, support, poisson }).err().map(|e| e.to_string())
         };
         for (width, height, support, poisson, word) in [
             (0.0, 1.0, Support::Simple, 0.3, "width"),
@@ -284,7 +328,8 @@ mod tests {
             (1.0, 1.0, Support::Clamped, 0.6, "Poisson"),
             (1.0, 1.0, Support::Clamped, f64::NAN, "Poisson"),
             (1.0, 21.0, Support::Clamped, 0.3, "21 times as high as wide"),
-            (21.0, 1.0, Support::SimpleFreeTop, 0.3, "hardly anything holds it"),
+            (21.0, 1.0, Support::SimpleFreeTop, 0.3, "hardly anything but its far sides"),
+            (21.0, 1.0, Support::ClampedSides, 0.3, "hardly anything but its far sides"),
         ] {
             let error = solve(width, height, support, poisson);
             let has_word = error.as_ref().is_some_and(|e| e.contains(word));

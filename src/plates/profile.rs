@@ -47,6 +47,11 @@ impl Profile {
         Profile::new(vec![(0.0, start_pa), (length_m, end_pa)])
     }
 
+    /// As seen from the other end of a plate of `length_m`.
+    pub fn turned(&self, length_m: f64) -> Profile {
+        Profile { points: self.points.iter().rev().map(|(at, pressure)| (length_m - at, *pressure)).collect() }
+    }
+
     /// The parts of its pieces between the start of the plate and `length_m`.
     pub fn pieces(&self, length_m: f64) -> impl Iterator<Item = Piece> {
         self.points.windows(2).filter_map(move |pair| {
@@ -78,6 +83,8 @@ mod tests {
         ];
         assert_eq!(pieces, want);
         assert_eq!(profile.resultant_n_per_m(2.0), 0.0);
+        let turned: Vec<(f64, f64)> = profile.turned(2.0).pieces(2.0).map(|p| (p.from_pa, p.to_pa)).collect();
+        assert_eq!(turned, [(-4.0, -2.0), (4.0, 2.0)]);
     }
 
     #[test]

@@ -1,11 +1,11 @@
 //! The strength of a panel: stress, deflection and required thickness for a material, with the corrosion allowance
 //! taken off first.
 //!
-//! Stress at the surface is 6 M / t^2 with M the panel's governing moment and t the net thickness, so it falls as 1 / t^2
-//! and the required thickness is a closed form. Where thin-plate theory of small deflections is left, the result says
-//! so; it judges nothing itself. Source: [PlateBending].
+//! Stress at the surface is 6 M / t^2 with M the panel's governing moment and t the net thickness, so it falls as 1 /
+//! t^2 and the required thickness is a closed form. Where thin-plate theory of small deflections is left, the result
+//! says so; it judges nothing itself. Source: [PlateBending].
 
-use super::{Bending, Panel, PlateError, Profile};
+use super::{Bending, PlateError, Profile, SolvedPanel};
 use crate::material::Material;
 
 /// A panel's strength under a pressure.
@@ -58,12 +58,12 @@ pub const MOST_DEFLECTION_TO_THICKNESS: f64 = 0.5;
 /// Net thickness over the shorter side above which a plate is not thin. Common practice.
 pub const MOST_THICKNESS_TO_SIDE: f64 = 0.1;
 
-/// The strength of a panel of a material under a net pressure along its height. The panel must have been solved for the
-/// material's Poisson's ratio.
+/// The strength of a panel of a material under a net pressure along its height. The panel must have been solved for
+/// the material's Poisson's ratio.
 ///
 /// Errors: values of the material or thicknesses that make no sense, an allowance that leaves nothing of the plate.
 pub fn strength(
-    panel: &Panel,
+    panel: &SolvedPanel,
     pressure: &Profile,
     material: &Material,
     thickness_m: f64,
@@ -71,7 +71,7 @@ pub fn strength(
 ) -> Result<Strength, PlateError> {
     check(panel, material)?;
     let net_thickness_m = net_thickness(thickness_m, corrosion_allowance_m)?;
-    let bending = panel.bend(pressure).bending();
+    let bending = panel.bend(pressure)?.bending();
     let geometry = panel.geometry();
     let stress = |moment_n: f64| 6.0 * moment_n.abs() / (net_thickness_m * net_thickness_m);
     let (governing_n, allowable_pa) = (bending.governing().value, material.allowable_pa());
@@ -118,7 +118,7 @@ pub fn net_thickness(thickness_m: f64, corrosion_allowance_m: f64) -> Result<f64
     Ok(thickness_m - corrosion_allowance_m)
 }
 
-fn check(panel: &Panel, material: &Material) -> Result<(), PlateError> {
+fn check(panel: &SolvedPanel, material: &Material) -> Result<(), PlateError> {
     let name = || material.name.clone();
     for (what, value) in [
         ("yield stress in Pa", material.yield_pa),
