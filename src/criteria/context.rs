@@ -7,7 +7,7 @@ use crate::statics::{Bound, EffectiveGravity, PourOver, Rims, Route, Settled};
 use crate::study::{Limit, ValidStudy};
 use crate::units::{Measure, Phrase, Quantity};
 
-use super::{Reach, Sense, Trust, Verdict};
+use super::{Reach, Sense, Trust, Verdict, by_records, unconfirmed};
 
 /// Physics of one load case.
 pub struct Context<'a> {
@@ -136,14 +136,11 @@ impl Context<'_> {
 
     /// One verdict for each requirement record of a kind, from the record's value.
     pub fn by_records(&self, kind: fn(&Limit) -> Option<f64>, verdict: impl Fn(f64) -> Verdict) -> Vec<Verdict> {
-        let records = self.study.study().records_of(kind);
-        records
-            .map(|(i, limit)| Verdict { unconfirmed_record: self.unconfirmed(Some(i)), ..verdict(limit) })
-            .collect()
+        by_records(self.study, kind, verdict)
     }
 
     /// The index of a record when it is not confirmed.
     pub fn unconfirmed(&self, record_idx: Option<usize>) -> Option<usize> {
-        record_idx.filter(|&i| !self.study.study().records[i].confirmed)
+        unconfirmed(self.study, record_idx)
     }
 }

@@ -169,13 +169,7 @@ impl Verdict {
             State::Holds
         };
         let (demand, limit, utilisation) = (Some(demand), Some(limit), Some(utilisation));
-        Verdict {
-            state,
-            demand,
-            limit,
-            utilisation,
-            ..Verdict::not_judged(criterion, sense, String::new(), trust)
-        }
+        Verdict { state, demand, limit, utilisation, ..Verdict::not_judged(criterion, sense, String::new(), trust) }
     }
 
     /// Not judged, and why.

@@ -161,6 +161,7 @@ pub(super) fn results() -> Results {
             surface: vec![Chord { left: Point::new(0.0, 0.8), right: Point::new(2.0, 0.8) }],
             highest_share: Some(0.786),
         },
+        layout: Outcome::default(),
         cells: vec![Cell {
             name: "cell 1".into(),
             inside: Point::new(1.0, 0.5),

@@ -128,7 +128,8 @@ impl Study {
         }
         for (plate_idx, plate) in self.section.plates.iter().enumerate() {
             if !plate.material.is_empty() && self.material(&plate.material).is_none() {
-                let message = format!("its material {:?} is neither in the scenario nor in the table", plate.material);
+                let message =
+                    format!("its material {:?} is neither in the scenario nor in the table", plate.material);
                 let place = Place::Plate { plate_idx, opening_idx: None };
                 problems.push(Problem::warning(place, message, "choose one of the table, or add it"));
             }

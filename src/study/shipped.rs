@@ -129,7 +129,8 @@ mod tests {
             assert!(limits.iter().any(has), "{inches} in");
         }
         let gallon = Quantity::Flow.unit(UnitSystem::UsCustomary).to_si(1000.0);
-        let has = |l: &Limit| matches!(l, Limit::RatedFlow { flow_m3_per_s, .. } if (flow_m3_per_s - gallon).abs() < 1e-6);
+        let has =
+            |l: &Limit| matches!(l, Limit::RatedFlow { flow_m3_per_s, .. } if (flow_m3_per_s - gallon).abs() < 1e-6);
         assert!(limits.iter().any(has), "1000 gal/min, {gallon} m3/s");
     }
 }

@@ -14,6 +14,7 @@ mod files;
 #[cfg(feature = "gui")]
 mod gui;
 mod json;
+mod layout_rules;
 mod panels;
 mod pools_by_hand;
 mod pools_sampled;
