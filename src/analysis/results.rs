@@ -8,8 +8,8 @@ pub use crate::criteria::{
 };
 pub use crate::plates::Cell;
 pub use crate::statics::{
-    Bound, Chord, EdgeLoad, EffectiveGravity, PlateLoad, PointPressure, Pool, Pour, RoofContact, Route, Settled,
-    Stretch,
+    Bound, Chord, EdgeLoad, EffectiveGravity, GasPocket, PlateLoad, PointPressure, Pool, Pour, RoofContact, Route,
+    Settled, Stretch,
 };
 
 /// The tank standing level and at rest, and the fill in every way of giving it.

@@ -3,11 +3,11 @@
 use crate::cases::LoadCase;
 use crate::geom::{Point, Vec2};
 use crate::problem::Place;
-use crate::statics::{Bound, EffectiveGravity, PourOver, Rims, Route, Settled};
+use crate::statics::{Bound, EffectiveGravity, GasPocket, PourOver, Rims, Route, Settled};
 use crate::study::{Limit, ValidStudy};
-use crate::units::{Measure, Phrase, Quantity};
+use crate::units::{Measure, Phrase, Quantity, UnitSystem};
 
-use super::{Reach, Sense, Trust, Verdict, by_records, unconfirmed};
+use super::{Reach, Sense, State, Trust, Verdict, by_records, unconfirmed};
 
 /// Physics of one load case.
 pub struct Context<'a> {
@@ -124,9 +124,37 @@ impl Context<'_> {
         let all = self
             .views
             .iter()
-            .map(|view| Verdict { bound: (self.views.len() > 1).then_some(view.bound), ..verdict(view) });
+            .map(|view| (view, verdict(view)))
+            .map(|(view, verdict)| self.over_gas(view, verdict))
+            .map(|(view, verdict)| Verdict { bound: (self.views.len() > 1).then_some(view.bound), ..verdict });
         let worse = |a: Verdict, b: Verdict| if b.order(&a).is_lt() { b } else { a };
         all.reduce(worse).expect("a case has a bound")
+    }
+
+    /// A verdict that rests on a gas pocket which touches no mouth never holds: it is not judged, since the liquid has been
+    /// followed as if the gas were vented. One that fails still does, and says so. With nothing moved from rest
+    /// the pocket is as it was.
+    fn over_gas<'v>(&self, view: &'v View<'v>, verdict: Verdict) -> (&'v View<'v>, Verdict) {
+        let has_moved = view.way.and_then(|w| w.stop.as_ref()).is_some_and(|stop| stop.turned_rad > 0.0);
+        let pockets = view.settled.map_or(&[][..], |settled| &settled.gas);
+        if !has_moved || pockets.is_empty() || verdict.state == State::NotJudged {
+            return (view, verdict);
+        }
+        let compartment = verdict.at.and_then(|at| self.study.region().open().part_at(at));
+        let is_beside = |p: &&GasPocket| compartment.is_none_or(|c| c == p.compartment);
+        let Some(pocket) = pockets.iter().find(is_beside) else { return (view, verdict) };
+        let volume = Measure::new(Quantity::Volume, pocket.volume_m3).text(UnitSystem::Si);
+        let words = format!(
+            "{volume} of gas in cell {} touches no mouth, and the liquid was followed as if it were vented",
+            pocket.cell_idx + 1
+        );
+        if verdict.state == State::Fails {
+            let remark = if verdict.remark.is_empty() { words } else { format!("{}; {words}", verdict.remark) };
+            return (view, Verdict { remark, ..verdict });
+        }
+        let Verdict { place, place_words, at, source, unconfirmed_record, .. } = verdict;
+        let unsure = self.not_judged(verdict.criterion, verdict.sense, words);
+        (view, Verdict { place, place_words, at, source, unconfirmed_record, ..unsure })
     }
 
     /// The settled bound.

@@ -148,6 +148,7 @@ pub(super) fn results() -> Results {
         roof: Some(RoofContact { wetted_length_m: 0.1, peak_pa: 120.0, at: Point::new(2.0, 1.0), edge_idx: 3 }),
         plates: vec![],
         cells_m3: vec![0.78],
+        gas: vec![],
     };
     Results {
         capacity_m3: 0.99,

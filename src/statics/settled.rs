@@ -5,6 +5,7 @@ use crate::problem::Place;
 use crate::section::{Face, Region, Section, Wall};
 
 use super::cells::cell_volumes;
+use super::gas::{GasPocket, gas_pockets};
 use super::loads::{EdgeLoad, PlateLoad, Press, centroid, edge_loads, plate_loads, pressure_at};
 use super::pools::{Body, Look};
 use super::tilted::Chord;
@@ -100,6 +101,8 @@ pub struct Settled {
     pub roof: Option<RoofContact>,
     /// Volume of liquid in each cell of the region, m3.
     pub cells_m3: Vec<f64>,
+    /// Gas that touches no mouth, the largest pocket first.
+    pub gas: Vec<GasPocket>,
 }
 
 impl Settled {
@@ -217,6 +220,7 @@ pub fn settle(section: &Section, region: &Region, look: &Look, bodies: &[Body], 
         total_moment_n_m: total_moment,
         pools,
         cells_m3: cell_volumes(region, width, look, bodies),
+        gas: gas_pockets(section, region, look, bodies),
     }
 }
 

@@ -11,6 +11,7 @@ mod degenerate;
 mod edits;
 mod examples;
 mod files;
+mod gas_pockets;
 #[cfg(feature = "gui")]
 mod gui;
 mod json;
