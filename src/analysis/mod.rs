@@ -9,8 +9,9 @@ mod ways;
 use rayon::prelude::*;
 
 use crate::cases::LoadCase;
-use crate::criteria::{self, Context, Outcome, View};
+use crate::criteria::{self, Context, Standing, View};
 use crate::geom::{Point, Vec2};
+use crate::plates::dividers;
 use crate::statics::{Body, Rims, Setting, Stop, pressure_at, settle, spills};
 use crate::study::ValidStudy;
 use crate::units::{Measure, Quantity, number};
@@ -46,6 +47,9 @@ pub fn run(study: &ValidStudy) -> Results {
     let highest_pa =
         cases.iter().flat_map(|c| c.states()).map(|(_, s)| s.peak_pa - inputs.ullage_gage_pa).fold(rest_pa, f64::max);
     let capacity_m3 = study.capacity_m3();
+    let cells = cells::still(study);
+    let dividers = dividers(&inputs.section, study.region());
+    let layout = criteria::judge_layout(&Standing { study, cells: &cells, dividers });
     let common_capacity = common.map_or(capacity_m3, |start| start.vessel.capacity_m3());
     Results {
         capacity_m3,
@@ -63,8 +67,9 @@ pub fn run(study: &ValidStudy) -> Results {
             surface,
             highest_share: holds.map(|v| v.min(common_capacity) / common_capacity),
         },
-        cells: cells::still(study),
+        cells,
         compartments: compartments::compartments(study),
+        layout,
         cases,
         pressure_scale_pa: nice_scale(highest_pa),
         warnings: study.warnings().to_vec(),

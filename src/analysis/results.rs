@@ -1,12 +1,15 @@
 //! What a judgement gives: every number that is shown to anyone comes from here.
 
-use crate::geom::{Point, Vec2};
+use crate::geom::Vec2;
 use crate::problem::Problem;
 
-pub use crate::criteria::{Absent, CONTAINED, FREEBOARD, Reach, Sense, State, Trust, Verdict, WorkLine};
+pub use crate::criteria::{
+    Absent, CONTAINED, FREEBOARD, LAYOUT, Outcome, Reach, Sense, State, Trust, Verdict, WorkLine,
+};
+pub use crate::plates::Cell;
 pub use crate::statics::{
-    Bound, Chord, EdgeLoad, EffectiveGravity, MouthSpill, PlateLoad, PointPressure, Pool, Pour, RoofContact, Route,
-    Settled, Stretch,
+    Bound, Chord, EdgeLoad, EffectiveGravity, GasPocket, MouthSpill, PlateLoad, PointPressure, Pool, Pour,
+    RoofContact, Route, Settled, Stretch,
 };
 
 /// The tank standing level and at rest, and the fill in every way of giving it.
@@ -28,23 +31,6 @@ pub struct Still {
     pub surface: Vec<Chord>,
     /// Highest fill, as a share of capacity, that no judged load case spills; none where none could be judged.
     pub highest_share: Option<f64>,
-}
-
-/// A part of the section between walls and plates.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Cell {
-    /// As shown.
-    pub name: String,
-    /// A point inside it.
-    pub inside: Point,
-    /// The compartment that it is a part of: cells that openings join.
-    pub compartment: usize,
-    /// Its area in the section, m2.
-    pub area_m2: f64,
-    /// Its capacity, m3.
-    pub capacity_m3: f64,
-    /// What it holds standing level and at rest, m3.
-    pub still_m3: f64,
 }
 
 /// One load case, judged.
@@ -124,6 +110,8 @@ pub struct Results {
     pub cells: Vec<Cell>,
     /// The compartments: cells that openings join.
     pub compartments: Vec<Compartment>,
+    /// The layout of plates, judged once for the tank standing level and at rest; worst first.
+    pub layout: Outcome,
     /// One a load case, in the study's order.
     pub cases: Vec<CaseResult>,
     /// Full scale of the pressure tints, Pa: one nice number for all cases.
@@ -133,9 +121,10 @@ pub struct Results {
 }
 
 impl Results {
-    /// Count of verdicts in a state, over all cases.
+    /// Count of verdicts in a state, of the layout and over all cases.
     pub fn count(&self, state: State) -> usize {
-        self.cases.iter().flat_map(|c| &c.verdicts).filter(|v| v.state == state).count()
+        let of_cases = self.cases.iter().flat_map(|c| &c.verdicts);
+        self.layout.verdicts.iter().chain(of_cases).filter(|v| v.state == state).count()
     }
 
     /// Indices (case, verdict) of all verdicts, worst first.

@@ -62,6 +62,7 @@ pub(super) fn study() -> Study {
         compartments: vec![],
         sump: None,
         discharge_coefficient: crate::study::DISCHARGE_COEFFICIENT,
+        materials: vec![],
         cases: vec![
             LoadCase {
                 name: "Transfer stop".into(),
@@ -179,6 +180,7 @@ fn settled() -> Settled {
         ],
         roof: Some(RoofContact { wetted_length_m: 0.1, peak_pa: 120.0, at: Point::new(2.0, 1.0), edge_idx: 3 }),
         cells_m3: vec![0.16, 0.62],
+        gas: vec![],
     }
 }
 
@@ -215,6 +217,7 @@ pub(super) fn results() -> Results {
         },
         cells: vec![cell("cell 1", 0.25, 0.5, 0.2), cell("cell 2", 1.4, 1.48, 0.59)],
         compartments: vec![Compartment { name: "compartment 1".into(), own_idx: None }],
+        layout: Outcome::default(),
         cases: vec![
             CaseResult {
                 name: "Transfer stop".into(),

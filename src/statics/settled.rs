@@ -5,6 +5,7 @@ use crate::problem::Place;
 use crate::section::{Face, Region, Section, Wall};
 
 use super::cells::{cell_volumes_by_body, sums};
+use super::gas::{GasPocket, gas_pockets};
 use super::loads::{EdgeLoad, PlateLoad, Press, centroid, edge_loads, plate_loads, pressure_at};
 use super::pools::{Body, Look};
 use super::pour_over::MouthSpill;
@@ -105,6 +106,8 @@ pub struct Settled {
     pub roof: Option<RoofContact>,
     /// Volume of liquid in each cell of the region, m3.
     pub cells_m3: Vec<f64>,
+    /// Gas that touches no mouth, the largest pocket first.
+    pub gas: Vec<GasPocket>,
 }
 
 impl Settled {
@@ -225,6 +228,7 @@ pub fn settle(section: &Section, region: &Region, look: &Look, bodies: &[Body], 
         total_moment_n_m: total_moment,
         pools,
         cells_m3: sums(region, &in_cells),
+        gas: gas_pockets(section, region, look, bodies),
     }
 }
 

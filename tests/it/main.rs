@@ -11,9 +11,11 @@ mod degenerate;
 mod edits;
 mod examples;
 mod files;
+mod gas_pockets;
 #[cfg(feature = "gui")]
 mod gui;
 mod json;
+mod layout_rules;
 mod panels;
 mod pools_by_hand;
 mod pools_sampled;
