@@ -11,6 +11,8 @@ use super::{Command, Desk, field, font, formula};
 
 const LEVEL: f64 = 0.0;
 
+const RELEASE_WORDS: &str = "Followed by a slow release back to rest: shows what stays trapped behind sills";
+
 /// The row in `rect`.
 pub fn case_head_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk) {
     let look = desk.look;
@@ -169,6 +171,15 @@ fn more_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, i: usize, case: &LoadCase) 
             .optional()
             .try_row_ui(ui, desk, |si| Ok(with(&|c| c.onset_s = si)))
             .on_hover_text("Time over which the acceleration builds up; the settled verdicts do not use it");
+        Number::new(("duration", i), "Then held for", 0.0, desk.unit(Quantity::Time))
+            .or_none(case.duration_s)
+            .optional()
+            .try_row_ui(ui, desk, |si| Ok(with(&|c| c.duration_s = si)))
+            .on_hover_text("Time for which the acceleration is then held; none: for long");
+        let mut release = case.release;
+        if ui.checkbox(&mut release, "Then released").on_hover_text(RELEASE_WORDS).changed() {
+            desk.edit(with(&|c| c.release = release));
+        }
         field::text_row_ui(ui, desk, ("case source", i), "Source", &case.source, |t| with(&|c| c.source = t.clone()));
         field::text_row_ui(ui, desk, ("case note", i), "Note", &case.note, |t| with(&|c| c.note = t.clone()));
     });

@@ -6,7 +6,7 @@ use egui::{Key, KeyboardShortcut, Modifiers, ThemePreference};
 use crate::app::Document;
 use crate::units::UnitSystem;
 
-use super::{Selected, View};
+use super::{Selected, View, plating};
 
 /// Something that the user can ask for from a menu or with a key.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -29,6 +29,12 @@ pub enum Command {
     Undo,
     /// Bring the last undone step back.
     Redo,
+    /// Take up the pen that draws a plate, or put it away.
+    DrawPlate,
+    /// A copy of the chosen plate beside it.
+    DuplicatePlate,
+    /// All plates at equal distances.
+    SpacePlates,
     /// Delete what is chosen on the board.
     DeleteSelected,
     /// Show the whole section.
@@ -129,11 +135,35 @@ pub const TABLE: &[Row] = &[
     row(Command::Undo, Menu::Edit, "Undo", on(CTRL, Key::Z), "Take the last step back", can_undo),
     row(Command::Redo, Menu::Edit, "Redo", on(CTRL_SHIFT, Key::Z), "Bring the last undone step back", can_redo),
     group(
+        Command::DrawPlate,
+        Menu::Edit,
+        "Draw a plate",
+        on(Modifiers::NONE, Key::P),
+        "Drag from wall to wall on the board; an end may stay free",
+        always,
+    ),
+    row(
+        Command::DuplicatePlate,
+        Menu::Edit,
+        "Duplicate the plate",
+        on(CTRL_SHIFT, Key::D),
+        "A copy of the chosen plate beside it, from wall to wall like the first",
+        has_plate,
+    ),
+    row(
+        Command::SpacePlates,
+        Menu::Edit,
+        "Space the plates equally",
+        NO,
+        "Move the plates to equal distances; ends on walls stay on them",
+        has_spaced_plates,
+    ),
+    group(
         Command::DeleteSelected,
         Menu::Edit,
         "Delete what is chosen",
         on(Modifiers::NONE, Key::Delete),
-        "Take out the vertex, obstacle or point that is chosen on the board",
+        "Take out the vertex, plate, opening, obstacle or point that is chosen on the board",
         can_delete,
     ),
     row(
@@ -321,8 +351,16 @@ fn can_redo(doc: &Document, _: &View) -> bool {
     doc.redo_label().is_some()
 }
 
-fn can_delete(_: &Document, view: &View) -> bool {
-    matches!(view.selected, Some(Selected::Vertex(_) | Selected::Obstacle(_) | Selected::Point(_)))
+fn can_delete(doc: &Document, view: &View) -> bool {
+    view.selected.is_some_and(|selected| selected.removal(doc.study()).is_some())
+}
+
+fn has_plate(_: &Document, view: &View) -> bool {
+    view.selected.and_then(Selected::plate).is_some()
+}
+
+fn has_spaced_plates(doc: &Document, _: &View) -> bool {
+    plating::equally_spaced(&doc.study().section).is_some()
 }
 
 fn has_case(doc: &Document, view: &View) -> bool {

@@ -1,26 +1,10 @@
 //! View state, and what panels propose. Nothing here is part of the document.
 
 use crate::app::Edit;
+use crate::geom::Point;
 use crate::units::UnitSystem;
 
-use super::Command;
-
-/// What the user has chosen on the board or in a column.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
-pub enum Selected {
-    /// An edge of the outline.
-    Edge(usize),
-    /// The vertex at which an edge of the outline starts.
-    Vertex(usize),
-    /// A whole obstacle.
-    Obstacle(usize),
-    /// One vertex of an obstacle.
-    ObstacleVertex(usize, usize),
-    /// A named point.
-    Point(usize),
-    /// The plumb bob.
-    Bob,
-}
+use super::{Command, Selected};
 
 /// What is chosen, how it is shown. Panels may change it in place.
 #[derive(Clone, Debug, Default, PartialEq)]
@@ -35,8 +19,17 @@ pub struct View {
     pub units: UnitSystem,
     /// Board camera: points a metre, and the section point in the middle; none until first fitted.
     pub camera: Option<Camera>,
+    /// The pen that draws a plate, while the user holds it.
+    pub pen: Option<Pen>,
     /// What the status line says at the left: position under the pointer, or why something snapped.
     pub status: String,
+}
+
+/// The pen that draws a plate.
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
+pub struct Pen {
+    /// Where the plate begins, once that is set.
+    pub from: Option<Point>,
 }
 
 /// Where the board looks.

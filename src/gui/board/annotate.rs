@@ -26,25 +26,26 @@ pub fn annotate(painter: &Painter, scene: &Scene, look: &Look) {
     for piece in &scene.model.surface {
         labels.keep_off_line(&[scene.at(piece.left), scene.at(piece.right)]);
     }
-    let marks = scene.model.points.iter().map(|p| p.at).chain(scene.model.centroid);
+    let named = scene.model.points.iter().chain(&scene.model.compartments).map(|p| p.at);
+    let marks = named.chain(scene.model.sump).chain(scene.model.centroid);
     for at in marks.chain(scene.judged.map(|_| scene.model.moment_about)) {
         labels.keep_off(Rect::from_center_size(scene.at(at), Vec2::splat(11.0)));
     }
-    let pen = Pen { painter, scene, look };
-    pen.paint_reason(&mut labels);
-    pen.paint_faults(&mut labels);
-    let still = pen.paint_still_level();
+    let writer = Writer { painter, scene, look };
+    writer.paint_reason(&mut labels);
+    writer.paint_faults(&mut labels);
+    let still = writer.paint_still_level();
     if let Some(freeboard) = &scene.model.freeboard {
         paint_freeboard(painter, scene, freeboard, &mut labels, look);
     }
-    pen.paint_brims(&mut labels);
+    writer.paint_brims(&mut labels);
     if let Some(still) = still {
-        pen.paint_still_label(&mut labels, still);
+        writer.paint_still_label(&mut labels, still);
     }
-    pen.paint_governs(&mut labels);
-    pen.paint_loads(&mut labels);
-    pen.paint_isobar_labels(&mut labels);
-    pen.paint_points(&mut labels);
+    writer.paint_governs(&mut labels);
+    writer.paint_loads(&mut labels);
+    writer.paint_isobar_labels(&mut labels);
+    writer.paint_places(&mut labels);
     paint_legend(painter, scene, look);
 }
 
@@ -52,6 +53,11 @@ pub fn annotate(painter: &Painter, scene: &Scene, look: &Look) {
 pub fn paint_feedback(painter: &Painter, scene: &Scene, pos: Pos2, feedback: &Feedback, look: &Look) {
     let hint = Stroke::new(1.2, look.accent);
     let at = feedback.at.map_or(pos, |p| scene.at(p));
+    if let Some(line) = feedback.line {
+        let ends = line.map(|p| scene.at(p));
+        lines::segment(painter, ends, Stroke::new(6.25, look.board));
+        lines::segment(painter, ends, Stroke::new(2.25, look.accent));
+    }
     if feedback.at.is_some() {
         for arm in [vec2(58.0, 0.0), vec2(0.0, 58.0)] {
             lines::dashed(painter, &[at - arm, at + arm], hint, 2.0, 3.0);
@@ -77,13 +83,13 @@ pub fn paint_feedback(painter: &Painter, scene: &Scene, pos: Pos2, feedback: &Fe
     painter.galley(rect.min, words, look.accent);
 }
 
-/// Labels that shall not cover a wall, a mouth or an obstacle.
+/// Labels that shall not cover a wall, a mouth, an obstacle or a plate.
 fn off_walls(scene: &Scene) -> Labels {
     let mut labels = Labels::new(scene.screen.rect);
     for edge in &scene.model.edges {
         labels.keep_off_line(&scene.screen.line(&edge.points));
     }
-    for points in &scene.model.obstacles {
+    for points in scene.model.obstacles.iter().chain(scene.model.plates.iter().map(|plate| &plate.points)) {
         labels.keep_off_line(&scene.screen.line(points));
     }
     labels
@@ -97,19 +103,20 @@ struct Still {
     right: f32,
 }
 
-struct Pen<'a> {
-    painter: &'a Painter,
-    scene: &'a Scene<'a>,
-    look: &'a Look,
+/// Writes on the drawing.
+pub(super) struct Writer<'a> {
+    pub(super) painter: &'a Painter,
+    pub(super) scene: &'a Scene<'a>,
+    pub(super) look: &'a Look,
 }
 
-impl Pen<'_> {
-    fn text(&self, text: impl Into<String>, font: FontId, color: Color32) -> Arc<Galley> {
+impl Writer<'_> {
+    pub(super) fn text(&self, text: impl Into<String>, font: FontId, color: Color32) -> Arc<Galley> {
         self.painter.layout_no_wrap(text.into(), font, color)
     }
 
     /// Text on a piece of paper of its own.
-    fn put(&self, rect: Rect, text: Arc<Galley>) {
+    pub(super) fn put(&self, rect: Rect, text: Arc<Galley>) {
         self.painter.rect_filled(rect.expand2(vec2(2.0, -1.0)), 0.0, self.look.board);
         self.painter.galley(rect.min, text, self.look.ink);
     }
@@ -280,7 +287,7 @@ impl Pen<'_> {
         let unit = Quantity::GagePressure.unit(self.scene.units);
         let decimals = decimals_of(unit.from_si(tints.step_pa));
         let mut needs_unit = true;
-        for isobar in model.isobars.iter().rev() {
+        for isobar in model.isobars() {
             let (Some(first), Some(last)) = (isobar.chords.first(), isobar.chords.last()) else { continue };
             let (left, right) = (self.scene.at(first[0]), self.scene.at(last[1]));
             let along = (right - left).normalized();
@@ -306,55 +313,10 @@ impl Pen<'_> {
             }
         }
     }
-
-    fn paint_points(&self, labels: &mut Labels) {
-        let model = &self.scene.model;
-        for point in &model.points {
-            let at = self.scene.at(point.at);
-            self.painter.circle(at, 3.0, self.look.ink, Stroke::new(2.0, self.look.board));
-            let gage = point.gage_pa.map(|pa| Measure::new(Quantity::GagePressure, pa).text(self.scene.units));
-            let words = [Some(point.name.clone()), gage].into_iter().flatten().collect::<Vec<_>>().join("  ");
-            let text = self.text(words, font::tick(), self.look.ink);
-            if let Some(rect) = labels.place(text.size(), around(at, 8.0)) {
-                self.put(rect, text);
-            }
-        }
-        if let Some(centroid) = model.centroid {
-            let at = self.scene.at(centroid);
-            paint_centroid(self.painter, at, self.look);
-            let text = self.text("centroid", font::tick(), self.look.ink);
-            if let Some(rect) = labels.place(text.size(), around(at, 10.0)) {
-                self.put(rect, text);
-            }
-        }
-        if self.scene.judged.is_some() {
-            let at = self.scene.at(model.moment_about);
-            for stroke in [Stroke::new(3.25, self.look.board), Stroke::new(1.25, self.look.ink3)] {
-                for arm in [vec2(6.0, 0.0), vec2(0.0, 6.0)] {
-                    lines::segment(self.painter, [at - arm, at + arm], stroke);
-                }
-            }
-            self.painter.circle_stroke(at, 3.0, Stroke::new(1.0, self.look.ink3));
-            let text = self.text("moment point", font::tick(), self.look.ink3);
-            if let Some(rect) = labels.place(text.size(), around(at, 8.0)) {
-                self.put(rect, text);
-            }
-        }
-    }
 }
 
-/// The usual mark of a centre of gravity: a circle with two dark quarters.
-fn paint_centroid(painter: &Painter, at: Pos2, look: &Look) {
-    painter.circle(at, 7.5, look.board, Stroke::NONE);
-    for from in [0.0, std::f32::consts::PI] {
-        let arc = (0..=6).map(|i| at + 5.5 * Vec2::angled(from + std::f32::consts::FRAC_PI_2 * i as f32 / 6.0));
-        let wedge = std::iter::once(at).chain(arc).collect();
-        painter.add(Shape::convex_polygon(wedge, look.ink, Stroke::NONE));
-    }
-    painter.circle_stroke(at, 5.5, Stroke::new(1.25, look.ink));
-}
-
-fn around(at: Pos2, off: f32) -> [(Pos2, Align2); 6] {
+/// Places for a label round a mark, as far off.
+pub(super) fn around(at: Pos2, off: f32) -> [(Pos2, Align2); 6] {
     [
         (at + vec2(off, 0.0), Align2::LEFT_CENTER),
         (at - vec2(off, 0.0), Align2::RIGHT_CENTER),

@@ -73,9 +73,20 @@ pub struct Isobar {
     pub chords: Vec<[Point; 2]>,
 }
 
-/// A body of liquid with one level.
-#[derive(Clone, Copy, Debug)]
+/// One body of liquid, tinted.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct Pool {
+    /// From the floor up.
+    pub bands: Vec<Band>,
+    /// From the surface down.
+    pub isobars: Vec<Isobar>,
+}
+
+/// A body of liquid with one level, and where it may be: its part of the section, empty above the level.
+#[derive(Clone, Debug)]
 pub struct Body {
+    /// Closed chains, even-odd: the walls round it and what stands in it.
+    pub loops: Vec<Vec<Point>>,
     /// Against effective gravity.
     pub up: Vec2,
     /// Level v = up . x of its surface, m.
@@ -87,16 +98,17 @@ pub struct Body {
 }
 
 impl Body {
-    /// Its bands, from the floor up, and isobars, from the surface down, inside the closed chains `loops`.
-    pub fn tinted(&self, loops: &[Vec<Point>], tints: Option<TintScale>) -> (Vec<Band>, Vec<Isobar>) {
-        let Some((floor, roof)) = extent(loops, self.up) else { return Default::default() };
+    /// Its bands and isobars. All bodies of a drawing share one scale, so that their tints compare.
+    pub fn tinted(&self, tints: Option<TintScale>) -> Pool {
+        let loops = &self.loops;
+        let Some((floor, roof)) = extent(loops, self.up) else { return Pool::default() };
         let level = self.level_m.min(roof);
         if level <= floor {
-            return Default::default();
+            return Pool::default();
         }
         let Some(tints) = tints.filter(|_| self.weight_pa_per_m > 0.0) else {
             let strips = bands(loops, self.up, &[floor, level]).remove(0);
-            return (vec![Band { tint: Tint::NotJudged, strips }], Vec::new());
+            return Pool { bands: vec![Band { tint: Tint::NotJudged, strips }], isobars: Vec::new() };
         };
         let pressure_at = |v: f64| self.gas_pa + self.weight_pa_per_m * (self.level_m - v);
         let level_of = |i: usize| self.level_m - (tints.gage_pa(i) - self.gas_pa) / self.weight_pa_per_m;
@@ -115,7 +127,7 @@ impl Body {
                 Band { tint: if idx < tints.n { Tint::Step(idx) } else { Tint::AboveScale }, strips }
             })
             .collect();
-        (bands, isobars)
+        Pool { bands, isobars }
     }
 }
 
@@ -144,9 +156,9 @@ mod tests {
     fn bands_follow_the_pressure() {
         // A unit square of water to z = 0.9 m, gas at 1 kPa: 1 kPa at the surface, 9.8 kPa at the floor.
         let square = [(0.0, 0.0), (1.0, 0.0), (1.0, 1.0), (0.0, 1.0)].map(|(s, z)| Point::new(s, z)).to_vec();
-        let body = Body { up: Vec2::y(), level_m: 0.9, gas_pa: 1e3, weight_pa_per_m: 9800.0 };
+        let body = Body { loops: vec![square], up: Vec2::y(), level_m: 0.9, gas_pa: 1e3, weight_pa_per_m: 9800.0 };
         let tints = TintScale { step_pa: 2e3, first: 0, n: 4 };
-        let (bands, isobars) = body.tinted(&[square], Some(tints));
+        let Pool { bands, isobars } = body.tinted(Some(tints));
         let got: Vec<(Tint, f64)> =
             bands.iter().map(|b| (b.tint, b.strips.iter().map(Strip::area).sum::<f64>())).collect();
         let thick = 2e3 / 9800.0;

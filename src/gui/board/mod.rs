@@ -6,10 +6,12 @@
 //!
 //! [`Edit`]: crate::app::Edit
 
+mod anchors;
 mod annotate;
 mod bob;
 mod dims;
 mod drag;
+mod handles;
 mod keys;
 mod labels;
 mod legend;
@@ -18,6 +20,10 @@ mod liquid;
 mod menu;
 mod model;
 mod paint;
+mod paint_plate;
+mod pen;
+mod places;
+mod plate_drag;
 mod pointer;
 mod rulers;
 mod scene;
@@ -25,6 +31,7 @@ mod screen;
 mod snap;
 mod strips;
 mod target;
+mod words;
 
 use egui::{Align2, Id, Painter, Rect, Role, Sense, Ui, WidgetInfo};
 
@@ -73,6 +80,9 @@ pub fn board_ui(ui: &mut Ui, doc: &Document, view: &mut View, look: &Look, out: 
     if let Some(pos) = pointing.pos.filter(|_| pointing.is_dragging) {
         annotate::paint_feedback(&inside, &scene, pos, &pointing.feedback, look);
     }
+    if let Some(pen) = view.pen {
+        pen::paint_hint(&inside, &scene, pen, look);
+    }
     rulers::paint_rulers(&painter, board, &scene.screen, view.units, pointing.pos, look);
     super::marks::paint_focus(&painter, board.shrink(5.0), &canvas, look);
     menu::menu_ui(ui, &canvas, &scene, view, out);
@@ -94,6 +104,7 @@ pub fn thumbnail_ui(
     let painter = painter.with_clip_rect(painter.clip_rect().intersect(rect));
     paint::paint_liquid(&painter, &screen, &model, paint::CARD_PENS, look);
     paint::paint_surface(&painter, &screen, &model, paint::CARD_PENS, look);
+    paint_plate::paint_plates(&painter, &screen, &model, paint::CARD_PENS, look);
     paint::paint_walls(&painter, &screen, &model, paint::CARD_PENS, look);
 }
 
@@ -108,6 +119,7 @@ fn paint_scene(painter: &Painter, scene: &Scene, view: &View, hovered: Option<Ta
     paint::paint_glow(painter, scene, view.selected, hovered, look);
     paint::paint_surface(painter, screen, model, paint::BOARD_PENS, look);
     paint::paint_last_good(painter, screen, model, look);
+    paint_plate::paint_plates(painter, screen, model, paint::BOARD_PENS, look);
     paint::paint_walls(painter, screen, model, paint::BOARD_PENS, look);
     // A section that has been zoomed or moved under the bob shows through its paper.
     for area in scene.dial.areas(&scene.hanging).into_iter().filter(|area| area.intersects(scene.bounds())) {
@@ -115,5 +127,5 @@ fn paint_scene(painter: &Painter, scene: &Scene, view: &View, hovered: Option<Ta
     }
     annotate::annotate(painter, scene, look);
     bob::paint_bob(painter, &scene.dial, &scene.hanging, scene.units, look);
-    paint::paint_handles(painter, scene, view.selected, hovered, look);
+    handles::paint_handles(painter, scene, view.selected, hovered, look);
 }

@@ -2,7 +2,7 @@
 //!
 //! Draws what the model says and nothing else; labels and dimensions are in `annotate`.
 
-use egui::{Color32, Mesh, Painter, Pos2, Rect, Shape, Stroke, StrokeKind, pos2, vec2};
+use egui::{Color32, Mesh, Painter, Pos2, Shape, Stroke, pos2};
 
 use crate::geom::{Point, Vec2};
 use crate::gui::{Look, Selected};
@@ -14,30 +14,32 @@ use super::model::BoardModel;
 use super::scene::Scene;
 use super::screen::Screen;
 use super::strips::{Strip, bands, chords, extent};
-use super::target::Target;
+use super::target::{Target, target_of};
 
 /// Widths of the lines of a section.
 #[derive(Clone, Copy, Debug)]
 pub struct Pens {
     /// Walls.
     pub wall: f32,
+    /// Plates.
+    pub plate: f32,
     /// The settled surface.
     pub surface: f32,
-    /// Isobars; none where zero.
+    /// Isobars; where zero neither they nor ticks at openings.
     pub isobar: f32,
 }
 
 /// The board's own pens.
-pub const BOARD_PENS: Pens = Pens { wall: 2.5, surface: 1.9, isobar: 0.75 };
+pub const BOARD_PENS: Pens = Pens { wall: 2.5, plate: 2.25, surface: 1.9, isobar: 0.75 };
 
 /// Pens of a small drawing.
-pub const CARD_PENS: Pens = Pens { wall: 1.5, surface: 1.25, isobar: 0.0 };
+pub const CARD_PENS: Pens = Pens { wall: 1.5, plate: 1.25, surface: 1.25, isobar: 0.0 };
 
 /// Liquid: tints, hatch above full scale, isobars.
 pub fn paint_liquid(painter: &Painter, screen: &Screen, model: &BoardModel, pens: Pens, look: &Look) {
     let n = model.tints.map_or(1, |t| t.n);
     let mut mesh = Mesh::default();
-    for band in &model.bands {
+    for band in model.bands() {
         let color = match band.tint {
             Tint::Step(i) => look.band(i, n),
             Tint::AboveScale => look.band(n - 1, n),
@@ -46,13 +48,13 @@ pub fn paint_liquid(painter: &Painter, screen: &Screen, model: &BoardModel, pens
         band.strips.iter().for_each(|strip| fill(&mut mesh, screen, strip, color));
     }
     painter.add(mesh);
-    for band in model.bands.iter().filter(|b| b.tint == Tint::AboveScale) {
+    for band in model.bands().filter(|b| b.tint == Tint::AboveScale) {
         let stroke = Stroke::new(0.75, look.board.gamma_multiply(0.55));
         band.strips.iter().for_each(|strip| hatch(painter, screen, strip.polygon(), stroke));
     }
     if pens.isobar > 0.0 {
         let stroke = Stroke::new(pens.isobar, look.ink.gamma_multiply(0.55));
-        for [a, b] in model.isobars.iter().flat_map(|i| &i.chords) {
+        for [a, b] in model.isobars().flat_map(|i| &i.chords) {
             lines::segment(painter, [screen.screen_from_section(*a), screen.screen_from_section(*b)], stroke);
         }
     }
@@ -123,10 +125,17 @@ pub fn paint_glow(
         painter.add(Shape::line(screen.line(points), glow));
     }
     let under_pointer = hovered.map(|t| (t, Stroke::new(8.5, look.ink.gamma_multiply(0.18))));
-    let chosen = selected.map(|s| (super::pointer::target_of(s), glow));
+    let chosen = selected.map(|s| (target_of(s), glow));
     for (target, stroke) in under_pointer.into_iter().chain(chosen) {
         let path = match target {
             Target::Edge(i) | Target::Middle(i) => scene.model.edges.get(i).map(|e| screen.line(&e.points)),
+            Target::Plate(i) | Target::PlatePoint(i, _) => {
+                scene.model.plates.get(i).map(|plate| screen.line(&plate.points))
+            }
+            Target::Opening(i, o) | Target::OpeningEnd(i, o, _) => {
+                let openings = scene.model.plates.get(i).map(|plate| &plate.openings);
+                openings.and_then(|openings| openings.get(o)).map(|opening| screen.line(&opening.points))
+            }
             Target::Obstacle(i) => scene.model.obstacles.get(i).map(|points| {
                 let mut path = screen.line(points);
                 path.extend(path.first().copied());
@@ -142,51 +151,6 @@ pub fn paint_glow(
         if let Some(path) = path.filter(|p| p.len() > 1) {
             painter.add(Shape::line(path, stroke));
         }
-    }
-}
-
-/// Square handles at vertices, round ones at the middles of edges, for what is chosen or pointed at.
-pub fn paint_handles(
-    painter: &Painter,
-    scene: &Scene,
-    selected: Option<Selected>,
-    hovered: Option<Target>,
-    look: &Look,
-) {
-    let n = scene.edges.len();
-    let mut shown: Vec<(Target, bool)> = Vec::new();
-    let mut show = |target: Target, is_chosen: bool| {
-        match target {
-            Target::Edge(i) | Target::Middle(i) if i < n => {
-                let ends = [Target::Vertex(i), Target::Vertex((i + 1) % n), Target::Middle(i)];
-                shown.extend(ends.map(|t| (t, is_chosen)));
-            }
-            Target::Vertex(i) if i < n => {
-                let around = [Target::Vertex((i + n - 1) % n), Target::Vertex((i + 1) % n)];
-                shown.extend(around.map(|t| (t, false)));
-                shown.push((target, is_chosen));
-            }
-            Target::Obstacle(i) | Target::ObstacleVertex(i, _) if is_chosen => {
-                let n = scene.study.section.obstacles.get(i).map_or(0, |o| o.vertices.len());
-                shown.extend((0..n).map(|j| (Target::ObstacleVertex(i, j), target == Target::ObstacleVertex(i, j))));
-            }
-            Target::Point(_) | Target::MomentPoint => shown.push((target, is_chosen)),
-            _ => {}
-        };
-    };
-    hovered.into_iter().for_each(|t| show(t, false));
-    selected.into_iter().for_each(|s| show(super::pointer::target_of(s), true));
-    for (target, is_chosen) in shown {
-        let Some(at) = target.handle(scene).filter(|p| scene.screen.rect.expand(8.0).contains(*p)) else { continue };
-        let stroke = if is_chosen { Stroke::new(1.5, look.accent) } else { Stroke::new(1.25, look.ink2) };
-        match target {
-            Target::Middle(_) => painter.circle(at, 4.0, look.board, stroke),
-            Target::Point(_) | Target::MomentPoint => painter.circle_stroke(at, 8.0, stroke),
-            _ => {
-                let rect = Rect::from_center_size(at, vec2(8.0, 8.0));
-                painter.rect(rect, 0.0, look.board, stroke, StrokeKind::Middle)
-            }
-        };
     }
 }
 

@@ -104,6 +104,7 @@ fn view() -> View {
         open_verdict: None,
         units: UnitSystem::Si,
         camera: None,
+        pen: None,
         status: String::new(),
     }
 }

@@ -3,14 +3,25 @@
 //! Pure, and free of any screen: the board lays it out in points, a drawing on paper may lay it out in
 //! millimetres. It computes no physics; every number comes from [`Results`].
 
-use crate::analysis::{CaseResult, Chord, FREEBOARD, Results, Sense, Settled, State, Verdict};
-use crate::geom::{Edge, Point, Vec2, cross};
-use crate::problem::{Place, Problem, Severity};
+mod load;
+mod marks;
+mod plate;
+
+use crate::analysis::{Chord, Results, Settled, Verdict};
+use crate::geom::{Edge, Point, Vec2};
+use crate::problem::{Place, Problem};
 use crate::section::{EdgeKind, Section};
 use crate::study::{Study, ValidStudy};
-use crate::units::{Measure, Quantity, UnitSystem};
+use crate::units::{Quantity, UnitSystem};
 
-use super::liquid::{Band, Body, Isobar, TintScale};
+use super::liquid::{Band, Body, Isobar, Pool, TintScale};
+
+use load::where_met;
+use marks::{brims, freeboard, place_of};
+
+pub use load::Load;
+pub use marks::{Brim, FaultMark, Freeboard, Governs, PointMark};
+pub use plate::PlateLine;
 
 /// How fine, and which numbers.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -30,70 +41,6 @@ pub struct EdgeLine {
     pub kind: EdgeKind,
 }
 
-/// The lowest point of a mouth as effective gravity sees it.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Brim {
-    /// Where.
-    pub at: Point,
-    /// Whether it is the one that governs.
-    pub governs: bool,
-}
-
-/// Required against available freeboard at a mouth.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Freeboard {
-    /// The mouth's lowest point.
-    pub brim: Point,
-    /// z of the still surface, m.
-    pub still_z_m: f64,
-    /// m.
-    pub available_m: f64,
-    /// m.
-    pub required_m: f64,
-    /// State of the verdict.
-    pub state: State,
-}
-
-/// The load of the liquid on one edge.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Load {
-    /// Where its line of action meets the edge.
-    pub on_edge: Point,
-    /// On the tank, N.
-    pub force_n: Vec2,
-}
-
-/// The place at which the chosen verdict governs.
-#[derive(Clone, Debug, Default, PartialEq)]
-pub struct Governs {
-    /// Lines that glow.
-    pub glow: Vec<Vec<Point>>,
-    /// The point, with the number asked for there.
-    pub at: Option<(Point, Option<Measure>)>,
-}
-
-/// A named point.
-#[derive(Clone, Debug, PartialEq)]
-pub struct PointMark {
-    /// Where.
-    pub at: Point,
-    /// Its name.
-    pub name: String,
-    /// Pa gage, when judged.
-    pub gage_pa: Option<f64>,
-}
-
-/// A numbered fault or warning.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct FaultMark {
-    /// As in the list of problems, from one.
-    pub number: usize,
-    /// Fault or warning.
-    pub severity: Severity,
-    /// Where.
-    pub at: Point,
-}
-
 /// Everything that the board shows of one load case.
 #[derive(Clone, Debug, PartialEq)]
 pub struct BoardModel {
@@ -101,14 +48,14 @@ pub struct BoardModel {
     pub edges: Vec<EdgeLine>,
     /// Obstacles, closed.
     pub obstacles: Vec<Vec<Point>>,
+    /// Plates, in the study's order.
+    pub plates: Vec<PlateLine>,
     /// Edges of the last good outline that the faulty one lacks.
     pub last_good: Vec<Vec<Point>>,
     /// Steps of the tints.
     pub tints: Option<TintScale>,
-    /// The liquid, from the floor up.
-    pub bands: Vec<Band>,
-    /// From the surface down.
-    pub isobars: Vec<Isobar>,
+    /// The liquid, one body after the other.
+    pub pools: Vec<Pool>,
     /// Pieces of the settled surface.
     pub surface: Vec<Chord>,
     /// z of the still surface, m.
@@ -125,6 +72,10 @@ pub struct BoardModel {
     pub governs: Governs,
     /// Named points.
     pub points: Vec<PointMark>,
+    /// Compartments with a fill of their own.
+    pub compartments: Vec<PointMark>,
+    /// Where the tank is emptied from.
+    pub sump: Option<Point>,
     /// Point about which moments are taken.
     pub moment_about: Point,
     /// Centroid of the liquid.
@@ -148,6 +99,7 @@ impl BoardModel {
         model.still_z_m = Some(results.still.level_z_m);
         let case = results.cases.get(case_idx);
         let mut body = Body {
+            loops: model.loops(),
             up: Vec2::y(),
             level_m: results.still.level_z_m,
             gas_pa: inputs.ullage_gage_pa,
@@ -170,7 +122,7 @@ impl BoardModel {
             }
             None => model.surface = results.still.surface.clone(),
         }
-        (model.bands, model.isobars) = body.tinted(&model.loops(), model.tints);
+        model.pools = vec![body.tinted(model.tints)];
         if let Some(case) = case {
             model.freeboard = freeboard(case, results.still.level_z_m);
             if let Some(verdict) = open_verdict.and_then(|i| case.verdicts.get(i)) {
@@ -194,6 +146,16 @@ impl BoardModel {
         model
     }
 
+    /// All tinted bands.
+    pub fn bands(&self) -> impl Iterator<Item = &Band> {
+        self.pools.iter().flat_map(|pool| &pool.bands)
+    }
+
+    /// All isobars, those of one body after the other, the deepest of each first.
+    pub fn isobars(&self) -> impl Iterator<Item = &Isobar> {
+        self.pools.iter().flat_map(|pool| pool.isobars.iter().rev())
+    }
+
     /// Smallest and largest (s, z) of all lines; none without lines.
     pub fn bounds(&self) -> Option<(Point, Point)> {
         let points = self.edges.iter().flat_map(|e| &e.points).chain(self.obstacles.iter().flatten());
@@ -210,10 +172,9 @@ impl BoardModel {
             .map(|(edge, drawn)| EdgeLine { points: flatten(edge, detail.sagitta_m), kind: drawn.kind })
             .collect();
         let obstacles = section.obstacles.iter().map(|o| flatten_loop(&o.edges(), detail.sagitta_m)).collect();
-        let points = (study.points.iter())
-            .filter(|p| p.at.coords.iter().all(|c| c.is_finite()))
-            .map(|p| PointMark { at: p.at, name: p.name.clone(), gage_pa: None })
-            .collect();
+        let mark = |at: Point, name: &str| PointMark { at, name: name.to_owned(), gage_pa: None };
+        let points = study.points.iter().map(|p| mark(p.at, &p.name)).filter(is_placed).collect();
+        let compartments = study.compartments.iter().map(|c| mark(c.at, &c.name)).filter(is_placed).collect();
         let faults = (problems.iter().enumerate())
             .filter_map(|(i, p)| {
                 let at = place_of(study, &p.place)?;
@@ -223,10 +184,10 @@ impl BoardModel {
         BoardModel {
             edges,
             obstacles,
+            plates: section.plates.iter().map(PlateLine::new).collect(),
             last_good: Vec::new(),
             tints: None,
-            bands: Vec::new(),
-            isobars: Vec::new(),
+            pools: Vec::new(),
             surface: Vec::new(),
             still_z_m: None,
             not_judged: None,
@@ -235,10 +196,22 @@ impl BoardModel {
             loads: Vec::new(),
             governs: Governs::default(),
             points,
+            compartments,
+            sump: study.sump.filter(|p| p.coords.iter().all(|c| c.is_finite())),
             moment_about: study.moment_about,
             centroid: None,
             faults,
         }
+    }
+
+    /// The line of a plate, or of one of its openings.
+    fn plate_line(&self, plate_idx: usize, opening_idx: Option<usize>) -> Vec<Vec<Point>> {
+        let plate = self.plates.get(plate_idx);
+        let line = plate.and_then(|plate| match opening_idx {
+            Some(i) => plate.openings.get(i).map(|opening| &opening.points),
+            None => Some(&plate.points),
+        });
+        line.filter(|points| points.len() > 1).cloned().into_iter().collect()
     }
 
     /// The region as closed chains: outline and obstacles.
@@ -255,6 +228,7 @@ impl BoardModel {
                 Some(points) => vec![points.iter().chain(points.first()).copied().collect()],
                 None => Vec::new(),
             },
+            Place::Plate { plate_idx, opening_idx } => self.plate_line(*plate_idx, *opening_idx),
             _ => Vec::new(),
         };
         self.governs.at = verdict.at.map(|at| (at, verdict.demand));
@@ -277,53 +251,8 @@ impl BoardModel {
     }
 }
 
-/// The point of a place on the section, where it has one.
-fn place_of(study: &Study, place: &Place) -> Option<Point> {
-    let section = &study.section;
-    let at = match *place {
-        Place::Edge(i) if i < section.outline.len() => section.edge(i).point_at(0.5),
-        Place::Vertex(i) => section.outline.get(i)?.start,
-        Place::Crossing { at_m: [s, z], .. } => Point::new(s, z),
-        Place::Obstacle { obstacle_idx, edge_idx } => {
-            let edges = section.obstacles.get(obstacle_idx)?.edges();
-            match edge_idx {
-                Some(i) => edges.get(i)?.point_at(0.5),
-                None => Point::from(edges.iter().map(|e| e.start.coords).sum::<Vec2>() / edges.len().max(1) as f64),
-            }
-        }
-        Place::Point(i) => study.points.get(i)?.at,
-        _ => return None,
-    };
-    at.coords.iter().all(|c| c.is_finite()).then_some(at)
-}
-
-/// The brim of each mouth, and which one governs: that of the dimension, else the lowest.
-fn brims(study: &ValidStudy, up: Vec2, governing: Option<Point>) -> Vec<Brim> {
-    let found: Vec<(f64, Point)> = study.mouths().iter().map(|m| m.brim(study.region(), up)).collect();
-    let rank = |(level, at): &(f64, Point)| governing.map_or(*level, |g| (at - g).norm());
-    let governs = (0..found.len()).min_by(|&a, &b| rank(&found[a]).total_cmp(&rank(&found[b])));
-    found.iter().enumerate().map(|(i, &(_, at))| Brim { at, governs: governs == Some(i) }).collect()
-}
-
-fn freeboard(case: &CaseResult, still_z_m: f64) -> Option<Freeboard> {
-    let verdict = case.verdicts.iter().find(|v| v.criterion == FREEBOARD)?;
-    let (demand, limit) = (verdict.demand?.si, verdict.limit?.si);
-    let (required_m, available_m) = match verdict.sense {
-        Sense::AtMost => (demand, limit),
-        Sense::AtLeast => (limit, demand),
-    };
-    Some(Freeboard { brim: verdict.at?, still_z_m, available_m, required_m, state: verdict.state })
-}
-
-/// Where the line of action through `through` along `force` meets the edge; the nearest point of the edge when
-/// it meets it nowhere.
-fn where_met(edge: &Edge, through: Point, force: Vec2) -> Point {
-    let points = flatten(edge, 1e-3 * edge.length());
-    let crossing = points.windows(2).find_map(|pair| {
-        let (a, b) = (cross(force, pair[0] - through), cross(force, pair[1] - through));
-        (a != b && (a <= 0.0) != (b <= 0.0)).then(|| pair[0] + (pair[1] - pair[0]) * (a / (a - b)))
-    });
-    crossing.unwrap_or_else(|| edge.point_at(edge.nearest(through).0))
+fn is_placed(mark: &PointMark) -> bool {
+    mark.at.coords.iter().all(|c| c.is_finite())
 }
 
 fn is_finite(edge: &Edge) -> bool {
@@ -366,7 +295,7 @@ mod tests {
             for (case_idx, case) in results.cases.iter().enumerate() {
                 let (Ok(settled), Some(up)) = (&case.settled, case.gravity.up) else { continue };
                 let model = BoardModel::judged(&study, &results, case_idx, None, detail);
-                let got: f64 = model.bands.iter().flat_map(|b| &b.strips).map(Strip::area).sum();
+                let got: f64 = model.bands().flat_map(|b| &b.strips).map(Strip::area).sum();
                 let want = Sublevel::new(study.region().geometry(), up).area_below(settled.level_m);
                 // A flattened arc of sagitta f lies about 2/3 f from the true one, all round.
                 let perimeter: f64 = study.region().geometry().iter().map(|e| e.length()).sum();
@@ -397,15 +326,5 @@ mod tests {
                 }
             }
         }
-    }
-
-    #[test]
-    fn a_load_starts_where_its_line_of_action_meets_the_edge() {
-        let quarter = Edge::with_radius(Point::new(1.0, 0.0), Point::new(0.0, 1.0), 1.0).unwrap();
-        // Through the centre, as every uniform pressure on an arc acts.
-        let force = Vec2::new(1.0, 1.0);
-        let at = where_met(&quarter, Point::origin(), force);
-        let want = Point::new(1.0, 1.0) * std::f64::consts::FRAC_1_SQRT_2;
-        assert!((at - want).norm() < 2e-3, "got {at}, expected {want}");
     }
 }

@@ -1,0 +1,319 @@
+//! Plates on what they stand on: the lines of a section, the ends that stand on them, and moves that keep them there.
+
+use crate::geom::{Edge, Point, Vec2};
+use crate::section::{Panel, Plate, Section};
+
+use super::shape::{shifted, with_point};
+
+/// How near a line an end must be to stand on it, as a share of the section's size.
+const ON_LINE: f64 = 1e-6;
+
+/// Thickness of the first plate of a section, m.
+const FIRST_THICKNESS_M: f64 = 0.005;
+
+/// A line that a plate may stand on.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Line {
+    /// Where it runs.
+    pub edge: Edge,
+    /// Its name: `floor`, `obstacle 1`, `plate 2`.
+    pub name: String,
+}
+
+/// Which ends of a plate stand on something.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub struct Stands {
+    /// Its first point.
+    pub first: bool,
+    /// Its last one.
+    pub last: bool,
+}
+
+impl Stands {
+    /// Of plate `plate_idx`, as it is drawn.
+    pub fn of(section: &Section, plate_idx: usize) -> Stands {
+        let lines = lines(section, Some(plate_idx));
+        let reach_m = ON_LINE * size_m(section);
+        let is_on = |p: Option<&Point>| p.is_some_and(|p| lines.iter().any(|l| l.edge.nearest(*p).1 <= reach_m));
+        let points = section.plates.get(plate_idx).map_or(&[][..], |plate| &plate.points);
+        Stands { first: is_on(points.first()), last: is_on(points.last()) }
+    }
+}
+
+/// All lines that a plate may stand on: outline, obstacles, and plates but for one.
+pub fn lines(section: &Section, but_plate: Option<usize>) -> Vec<Line> {
+    let outline = (0..section.outline.len()).map(|i| (section.edge(i), section.edge_label(i)));
+    let obstacles = section.obstacles.iter().enumerate();
+    let obstacles = obstacles.flat_map(|(i, o)| o.edges().into_iter().map(move |e| (e, o.label(i))));
+    let plates = section.plates.iter().enumerate().filter(|(i, _)| Some(*i) != but_plate);
+    let plates = plates.flat_map(|(i, plate)| plate.segments().map(move |e| (e, plate.label(i))));
+    let all = outline.chain(obstacles).chain(plates);
+    all.filter(|(edge, _)| is_finite(edge) && edge.start != edge.end)
+        .map(|(edge, name)| Line { edge, name })
+        .collect()
+}
+
+/// Plate `plate_idx` moved by a displacement. Two ends that stand on something stay on it, along the plate's own line;
+/// with one such end the plate moves along what it stands on; a free plate just moves.
+pub fn moved(section: &Section, plate_idx: usize, by: Vec2) -> Option<Plate> {
+    let plate = section.plates.get(plate_idx).filter(|plate| plate.points.len() > 1)?;
+    let edges: Vec<Edge> = lines(section, Some(plate_idx)).into_iter().map(|line| line.edge).collect();
+    let last = plate.points.len() - 1;
+    let next = shifted(plate, by);
+    let foot = |end: usize| meets(&edges, inner(&next, end), next.points[end]);
+    Some(match Stands::of(section, plate_idx) {
+        Stands { first: true, last: true } => {
+            let mut stood = next.clone();
+            for end in [0, last] {
+                if let Some(to) = foot(end) {
+                    stood = with_point(&stood, end, to);
+                }
+            }
+            stood
+        }
+        Stands { first: false, last: false } => next,
+        Stands { first, .. } => {
+            let end = if first { 0 } else { last };
+            foot(end).map_or(next.clone(), |to| shifted(plate, to - plate.points[end]))
+        }
+    })
+}
+
+/// All plates that have an end on plate `plate_idx`, as they must be once it has become `next`.
+pub fn joined(section: &Section, plate_idx: usize, next: &Plate) -> Vec<(usize, Plate)> {
+    let Some(now) = section.plates.get(plate_idx) else { return Vec::new() };
+    let reach_m = ON_LINE * size_m(section);
+    let edges: Vec<Edge> = next.segments().collect();
+    let mut out = Vec::new();
+    for (i, other) in section.plates.iter().enumerate().filter(|(i, o)| *i != plate_idx && o.points.len() > 1) {
+        let mut stood = None;
+        for end in [0, other.points.len() - 1] {
+            let at = other.points[end];
+            if now.segments().any(|e| e.nearest(at).1 <= reach_m) {
+                let to = meets(&edges, inner(other, end), at).unwrap_or(at);
+                stood = Some(with_point(stood.as_ref().unwrap_or(other), end, to));
+            }
+        }
+        out.extend(stood.map(|stood| (i, stood)));
+    }
+    out
+}
+
+/// A plate like the last one, upright in the middle of the widest cell, from wall to wall.
+pub fn new_plate(section: &Section) -> Option<Plate> {
+    upright_at(section, roomiest_place(section)?)
+}
+
+/// The middle of the widest cell between plates and ends of the tank.
+pub fn roomiest_place(section: &Section) -> Option<Point> {
+    let (low, high) = extent(section)?;
+    let mean_s = |plate: &Plate| plate.points.iter().map(|p| p.x).sum::<f64>() / plate.points.len() as f64;
+    let mut stops = vec![low.x, high.x];
+    stops.extend(section.plates.iter().map(mean_s).filter(|s| *s > low.x && *s < high.x));
+    stops.sort_by(f64::total_cmp);
+    let widest = stops.windows(2).rev().max_by(|a, b| (a[1] - a[0]).total_cmp(&(b[1] - b[0])))?;
+    let s = (500.0 * (widest[0] + widest[1])).round() * 1e-3;
+    // The longest way through the tank along this upright.
+    let outline: Vec<Edge> = (0..section.outline.len()).map(|i| section.edge(i)).collect();
+    let mut zs: Vec<f64> = places_on(&outline, Point::new(s, low.y), Vec2::y()).map(|p| p.y).collect();
+    zs.sort_by(f64::total_cmp);
+    let middles = zs.windows(2).map(|pair| (pair[1] - pair[0], Point::new(s, 0.5 * (pair[0] + pair[1]))));
+    let inside = middles.filter(|(_, p)| section.contains(*p));
+    inside.max_by(|a, b| a.0.total_cmp(&b.0)).map(|(_, p)| p)
+}
+
+/// A plate like the last one, upright through `p`, up and down to what is nearest.
+pub fn upright_at(section: &Section, p: Point) -> Option<Plate> {
+    let edges: Vec<Edge> = lines(section, None).into_iter().map(|line| line.edge).collect();
+    let way = |z: f64| first_met(&edges, p, Vec2::new(0.0, z), p);
+    section.contains(p).then(|| Some(like_last(section, vec![way(-1.0)?, way(1.0)?]))).flatten()
+}
+
+/// Both ends of a plate, the foot first; of a level one the left end. Places along it count from there.
+pub fn upward(a: Point, b: Point) -> Vec<Point> {
+    let is_level = (b.y - a.y).abs() < (b.x - a.x).abs();
+    if if is_level { a.x <= b.x } else { a.y <= b.y } { vec![a, b] } else { vec![b, a] }
+}
+
+/// A plate along `points`, as thick and made of the same as the last one.
+pub fn like_last(section: &Section, points: Vec<Point>) -> Plate {
+    let last = section.plates.last();
+    Plate {
+        name: String::new(),
+        points,
+        thickness_m: last.map_or(FIRST_THICKNESS_M, |plate| plate.thickness_m),
+        corrosion_m: last.map_or(0.0, |plate| plate.corrosion_m),
+        material: last.map_or_else(String::new, |plate| plate.material.clone()),
+        panel: last.map_or_else(Panel::default, |plate| plate.panel),
+        openings: Vec::new(),
+    }
+}
+
+/// A copy of plate `plate_idx` a little to the right of it, or to the left where there is no room.
+pub fn copied(section: &Section, plate_idx: usize) -> Option<Plate> {
+    let (low, high) = extent(section)?;
+    let step = (0.05 * (high.x - low.x) * 1e3).round() * 1e-3;
+    let beside = |by: f64| moved(section, plate_idx, Vec2::new(by, 0.0));
+    let is_inside = |plate: &Plate| plate.points.iter().all(|p| p.x > low.x && p.x < high.x);
+    let mut copy = beside(step).filter(is_inside).or_else(|| beside(-step))?;
+    copy.name = next_name(section, &copy.name);
+    Some(copy)
+}
+
+/// `name` counted on to the next number that no plate has: `Plate 1`, `Plate 2`.
+fn next_name(section: &Section, name: &str) -> String {
+    let stem = name.trim_end_matches(|c: char| c.is_ascii_digit()).trim_end();
+    let is_taken = |name: &String| section.plates.iter().any(|plate| plate.name == *name);
+    match name {
+        "" => String::new(),
+        _ => (2..).map(|i| format!("{stem} {i}")).find(|name| !is_taken(name)).unwrap_or_default(),
+    }
+}
+
+/// Where the line from `inner` through `end` meets an edge nearest to `end`.
+fn meets(edges: &[Edge], inner: Point, end: Point) -> Option<Point> {
+    let way = end - inner;
+    let length = way.norm();
+    (length > 0.0).then(|| first_met(edges, inner, way / length, end)).flatten()
+}
+
+/// The place nearest to `near` at which the ray from `from` along `way`, a unit vector, meets an edge.
+fn first_met(edges: &[Edge], from: Point, way: Vec2, near: Point) -> Option<Point> {
+    let ahead = places_on(edges, from, way).filter(|p| way.dot(&(p - from)) > 0.0);
+    let met = ahead.min_by(|a, b| (a - near).norm().total_cmp(&(b - near).norm()))?;
+    // Upright and level plates stay so to the last digit.
+    let (s, z) = (if way.x == 0.0 { from.x } else { met.x }, if way.y == 0.0 { from.y } else { met.y });
+    Some(Point::new(s, z))
+}
+
+/// All places at which the line through `from` along `way` meets an edge.
+fn places_on(edges: &[Edge], from: Point, way: Vec2) -> impl Iterator<Item = Point> {
+    let across = Vec2::new(-way.y, way.x);
+    let level = across.dot(&from.coords);
+    edges.iter().flat_map(move |e| {
+        let within = e.crossings(across, level).into_iter().map(|t| e.point_at(t));
+        // Rounding of the coordinates, so that the line does not slip between two edges.
+        let slack_m = 8.0 * f64::EPSILON * (e.start.coords.amax() + e.end.coords.amax() + from.coords.amax());
+        let ends = [e.start, e.end].into_iter().filter(move |p| (across.dot(&p.coords) - level).abs() <= slack_m);
+        within.chain(ends)
+    })
+}
+
+/// A point of the plate's line from which its end segment leads to corner `end`: the corner before it, or its middle.
+fn inner(plate: &Plate, end: usize) -> Point {
+    let next = if end == 0 { 1 } else { end - 1 };
+    match plate.points.len() {
+        2 => nalgebra::center(&plate.points[0], &plate.points[1]),
+        _ => plate.points[next],
+    }
+}
+
+fn extent(section: &Section) -> Option<(Point, Point)> {
+    let axes = [Vec2::x(), Vec2::y()];
+    let edges = (0..section.outline.len()).map(|i| section.edge(i));
+    let boxes = edges.filter(is_finite).map(|e| axes.map(|axis| e.extent(axis)).map(|(low, high)| (low.0, high.0)));
+    let joined = boxes.map(|[s, z]| (Point::new(s.0, z.0), Point::new(s.1, z.1)));
+    joined.reduce(|(low, high), (l, h)| (low.inf(&l), high.sup(&h)))
+}
+
+fn is_finite(e: &Edge) -> bool {
+    [e.start.x, e.start.y, e.end.x, e.end.y, e.sweep].iter().all(|c| c.is_finite())
+}
+
+fn size_m(section: &Section) -> f64 {
+    extent(section).map_or(0.0, |(low, high)| (high - low).norm())
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::section::{EdgeKind, Opening, OpeningShape, OutlineEdge, WidthLaw};
+
+    /// A trough of 4 m by 2 m with a floor that rises by 1 in 4 from the middle to the right, and these plates.
+    fn trough(plates: Vec<Plate>) -> Section {
+        let corners = [(-2.0, 0.0), (0.0, 0.0), (2.0, 0.5), (2.0, 2.0), (-2.0, 2.0)];
+        let edge = |(s, z)| OutlineEdge {
+            name: String::new(),
+            kind: EdgeKind::Wall,
+            start: Point::new(s, z),
+            sweep_rad: 0.0,
+        };
+        Section {
+            outline: corners.map(edge).to_vec(),
+            obstacles: vec![],
+            plates,
+            width: WidthLaw::Constant { width_m: 1.0 },
+        }
+    }
+
+    fn plate(points: &[(f64, f64)]) -> Plate {
+        like_last(&trough(vec![]), points.iter().map(|&(s, z)| Point::new(s, z)).collect())
+    }
+
+    fn check_points(got: &Plate, want: &[(f64, f64)]) {
+        assert_eq!(got.points.len(), want.len());
+        for (got, want) in got.points.iter().zip(want) {
+            let off = (got - Point::new(want.0, want.1)).norm();
+            assert!(off < 1e-12, "got {got}, expected {want:?}, within 1e-12 m");
+        }
+    }
+
+    #[test]
+    fn ends_that_stand_on_something_stay_on_it() {
+        for (points, by, want) in [
+            // From floor to roof, onto the slope: the foot rises with it.
+            ([(-1.0, 0.0), (-1.0, 2.0)], (2.0, 0.3), [(1.0, 0.25), (1.0, 2.0)]),
+            // Drawn from the roof down.
+            ([(-1.0, 2.0), (-1.0, 0.0)], (2.0, 0.3), [(1.0, 2.0), (1.0, 0.25)]),
+            // A free top: as high over the floor as before, however the pointer went up.
+            ([(-1.0, 0.0), (-1.0, 1.0)], (2.0, 0.4), [(1.0, 0.25), (1.0, 1.25)]),
+            // Hung from the roof.
+            ([(-1.0, 1.0), (-1.0, 2.0)], (0.5, -0.1), [(-0.5, 1.0), (-0.5, 2.0)]),
+            // Free at both ends.
+            ([(-1.0, 0.5), (-1.0, 1.0)], (0.5, 0.4), [(-0.5, 0.9), (-0.5, 1.4)]),
+            // A shelf between the walls.
+            ([(-2.0, 1.0), (2.0, 1.0)], (0.7, 0.4), [(-2.0, 1.4), (2.0, 1.4)]),
+        ] {
+            let section = trough(vec![plate(&points)]);
+            check_points(&moved(&section, 0, Vec2::new(by.0, by.1)).unwrap(), &want);
+        }
+    }
+
+    #[test]
+    fn a_plate_that_moves_takes_those_along_that_stand_on_it() {
+        let section = trough(vec![plate(&[(-1.0, 0.0), (-1.0, 2.0)]), plate(&[(-2.0, 1.0), (-1.0, 1.0)])]);
+        let next = moved(&section, 0, Vec2::new(0.5, 0.0)).unwrap();
+        let others = joined(&section, 0, &next);
+        assert_eq!(others.iter().map(|(i, _)| *i).collect::<Vec<_>>(), [1]);
+        check_points(&others[0].1, &[(-2.0, 1.0), (-0.5, 1.0)]);
+        assert_eq!(Stands::of(&section, 1), Stands { first: true, last: true });
+    }
+
+    #[test]
+    fn a_drain_gap_stays_at_the_foot_of_a_plate_that_moves() {
+        let mut drained = plate(&[(1.0, 2.0), (1.0, 0.25)]);
+        let shape = OpeningShape::Share(1.0);
+        drained.openings = vec![Opening { name: String::new(), from_m: 1.70, to_m: 1.75, shape }];
+        let next = moved(&trough(vec![drained]), 0, Vec2::new(-1.0, 0.0)).unwrap();
+        let got = (next.openings[0].from_m, next.openings[0].to_m);
+        assert!((got.0 - 1.95).abs() < 1e-12 && (got.1 - 2.0).abs() < 1e-12, "got {got:?}, expected (1.95, 2.0)");
+    }
+
+    #[test]
+    fn a_new_plate_stands_in_the_widest_cell_from_wall_to_wall() {
+        let first = new_plate(&trough(vec![])).unwrap();
+        check_points(&first, &[(0.0, 0.0), (0.0, 2.0)]);
+        let mut named = plate(&[(0.0, 0.0), (0.0, 2.0)]);
+        (named.name, named.thickness_m) = ("Plate 1".to_owned(), 0.008);
+        let mut section = trough(vec![named]);
+        let second = new_plate(&section).unwrap();
+        assert_eq!(second.thickness_m, 0.008, "as thick as the last one");
+        check_points(&second, &[(-1.0, 0.0), (-1.0, 2.0)]);
+        section.plates.push(second);
+        check_points(&new_plate(&section).unwrap(), &[(1.0, 0.25), (1.0, 2.0)]);
+        let copy = copied(&section, 0).unwrap();
+        assert_eq!(copy.name, "Plate 2");
+        check_points(&copy, &[(0.2, 0.05), (0.2, 2.0)]);
+        assert_eq!(new_plate(&Section { outline: vec![], ..section }), None);
+    }
+}
