@@ -1,10 +1,13 @@
 //! What a judgement gives: every number that is shown to anyone comes from here.
 
-use crate::geom::Vec2;
+use crate::geom::{Point, Vec2};
 use crate::problem::Problem;
 
 pub use crate::criteria::{Absent, CONTAINED, FREEBOARD, Reach, Sense, State, Trust, Verdict, WorkLine};
-pub use crate::statics::{Chord, EdgeLoad, EffectiveGravity, PointPressure, RoofContact, Settled};
+pub use crate::statics::{
+    Bound, Chord, EdgeLoad, EffectiveGravity, PlateLoad, PointPressure, Pool, Pour, RoofContact, Route, Settled,
+    Stretch,
+};
 
 /// The tank standing level and at rest, and the fill in every way of giving it.
 #[derive(Clone, Debug, PartialEq)]
@@ -27,6 +30,23 @@ pub struct Still {
     pub highest_share: Option<f64>,
 }
 
+/// A part of the section between walls and plates.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Cell {
+    /// As shown.
+    pub name: String,
+    /// A point inside it.
+    pub inside: Point,
+    /// The compartment that it is a part of: cells that openings join.
+    pub compartment: usize,
+    /// Its area in the section, m2.
+    pub area_m2: f64,
+    /// Its capacity, m3.
+    pub capacity_m3: f64,
+    /// What it holds standing level and at rest, m3.
+    pub still_m3: f64,
+}
+
 /// One load case, judged.
 #[derive(Clone, Debug, PartialEq)]
 pub struct CaseResult {
@@ -38,6 +58,14 @@ pub struct CaseResult {
     pub accel: Vec2,
     /// The settled state, or why there is none.
     pub settled: Result<Settled, String>,
+    /// The state with openings shut; none where no plate has an opening.
+    pub sealed: Option<Result<Settled, String>>,
+    /// After the release back to rest, where the case asks for it; under the settled bound.
+    pub released: Option<Result<Settled, String>>,
+    /// How the liquid comes to it, under each bound.
+    pub routes: Vec<(Bound, Route)>,
+    /// What went over sills on the way, under the settled bound.
+    pub pours: Vec<Pour>,
     /// Verdicts, worst first.
     pub verdicts: Vec<Verdict>,
     /// Checks that do not apply.
@@ -45,6 +73,20 @@ pub struct CaseResult {
 }
 
 impl CaseResult {
+    /// The state under a bound, or why there is none.
+    pub fn state(&self, bound: Bound) -> Option<&Result<Settled, String>> {
+        match bound {
+            Bound::Settled => Some(&self.settled),
+            Bound::Sealed => self.sealed.as_ref(),
+        }
+    }
+
+    /// The states that there are, with their bounds.
+    pub fn states(&self) -> impl Iterator<Item = (Bound, &Settled)> {
+        let state = |bound| Some((bound, self.state(bound)?.as_ref().ok()?));
+        [Bound::Settled, Bound::Sealed].into_iter().filter_map(state)
+    }
+
     /// The worst verdict.
     pub fn worst(&self) -> Option<&Verdict> {
         self.verdicts.first()
@@ -58,6 +100,8 @@ pub struct Results {
     pub capacity_m3: f64,
     /// The still tank.
     pub still: Still,
+    /// The cells between walls and plates.
+    pub cells: Vec<Cell>,
     /// One a load case, in the study's order.
     pub cases: Vec<CaseResult>,
     /// Full scale of the pressure tints, Pa: one nice number for all cases.

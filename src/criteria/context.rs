@@ -4,7 +4,7 @@ use crate::cases::LoadCase;
 use crate::geom::{Point, Vec2};
 use crate::problem::Place;
 use crate::sources::Source;
-use crate::statics::{EffectiveGravity, Rims, Settled, Spill};
+use crate::statics::{Bound, EffectiveGravity, PourOver, Rims, Route, Settled};
 use crate::study::{Limit, ValidStudy};
 use crate::units::{Measure, Phrase, Quantity};
 
@@ -22,14 +22,36 @@ pub struct Context<'a> {
     pub gravity: EffectiveGravity,
     /// z of the still level, m.
     pub still_z_m: f64,
+    /// The case under each bound, settled first.
+    pub views: Vec<View<'a>>,
+}
+
+/// Physics of one load case under one bound.
+pub struct View<'a> {
+    /// Which bound.
+    pub bound: Bound,
     /// The way to the case; none where it leads through free fall.
-    pub spill: Option<&'a Spill>,
+    pub way: Option<&'a PourOver>,
+    /// The largest common fill that leaves no mouth on the way, m3, where that can be told.
+    pub holds_m3: Option<f64>,
     /// The settled state, or why there is none.
     pub settled: Result<&'a Settled, &'a str>,
     /// The rims carried on; none where effective gravity does not point toward the floor.
     pub rims: Option<&'a Rims>,
+    /// How the liquid comes to the case where the walls are carried on.
+    pub route: Route,
     /// Why nothing of this case can be judged: free fall, capillarity.
     pub blocked: Option<String>,
+}
+
+impl View<'_> {
+    /// The settled state, or why nothing can be judged by it.
+    pub fn judged(&self) -> Result<&Settled, &str> {
+        match &self.blocked {
+            Some(reason) => Err(reason),
+            None => self.settled,
+        }
+    }
 }
 
 /// Utilisation beyond which a verdict is close.
@@ -80,12 +102,14 @@ impl Context<'_> {
             trust: self.trust(),
             remark: reason,
             unconfirmed_record: None,
+            bound: None,
         }
     }
 
     /// What to do: a fill, rounded down, so that the one shown holds.
     pub fn fill_that_holds(&self, volume_m3: f64) -> Phrase {
-        let share = (volume_m3 / self.study.capacity_m3() * 1000.0).floor() / 1000.0;
+        let capacity = self.study.common().map_or(self.study.capacity_m3(), |s| s.vessel.capacity_m3());
+        let share = (volume_m3 / capacity * 1000.0).floor() / 1000.0;
         Phrase::new("To hold, fill {}", [Measure::new(Quantity::Share, share)])
     }
 
@@ -137,12 +161,19 @@ impl Context<'_> {
         edges.iter().min_by(|a, b| distance(a).total_cmp(&distance(b))).map_or(Place::Whole, |&i| Place::Edge(i))
     }
 
-    /// The settled state, or why nothing can be judged by it.
-    pub fn judged(&self) -> Result<&Settled, &str> {
-        match &self.blocked {
-            Some(reason) => Err(reason),
-            None => self.settled,
-        }
+    /// The worse verdict of both bounds, which it names where there are two.
+    pub fn worse(&self, verdict: impl Fn(&View) -> Verdict) -> Verdict {
+        let all = self
+            .views
+            .iter()
+            .map(|view| Verdict { bound: (self.views.len() > 1).then_some(view.bound), ..verdict(view) });
+        let worse = |a: Verdict, b: Verdict| if b.order(&a).is_lt() { b } else { a };
+        all.reduce(worse).expect("a case has a bound")
+    }
+
+    /// The settled bound.
+    pub fn settled(&self) -> &View<'_> {
+        &self.views[0]
     }
 
     /// One verdict for each requirement record of a kind, from the record's value.

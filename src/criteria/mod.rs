@@ -11,7 +11,7 @@ mod vapour;
 mod verdict;
 
 pub use contained::NAME as CONTAINED;
-pub use context::Context;
+pub use context::{Context, View};
 pub use freeboard::{FreeboardFill, NAME as FREEBOARD};
 pub use verdict::*;
 

@@ -3,6 +3,7 @@
 use crate::geom::Point;
 use crate::problem::Place;
 use crate::sources::Source;
+use crate::statics::Bound;
 use crate::units::{Measure, Phrase};
 
 /// State of a verdict. Ordered as they are listed: the worst first.
@@ -118,6 +119,8 @@ pub struct Verdict {
     pub remark: String,
     /// Index of an unconfirmed requirement record that it rests on.
     pub unconfirmed_record: Option<usize>,
+    /// The bound under which it is the worse; none where there is but one.
+    pub bound: Option<Bound>,
 }
 
 /// A check that does not apply, and why; never silently left out.

@@ -96,10 +96,18 @@ pub(super) fn results() -> Results {
     let settled = Settled {
         volume_m3: 0.78,
         spilled_m3: 0.01,
-        n_pools: 1,
-        level_m: 0.79,
-        offset_m: Some(0.65),
-        surface: vec![chord],
+        mass_kg: 778.6,
+        pools: vec![Pool {
+            volume_m3: 0.78,
+            level_m: 0.79,
+            offset_m: Some(0.65),
+            surface: vec![chord],
+            deepest: Point::new(2.0, 0.0),
+            centroid: Point::new(1.04, 0.41),
+            compartment: 0,
+            weight_pa_per_m: 9900.0,
+            wetted: vec![],
+        }],
         centroid: Point::new(1.04, 0.41),
         highest_wetted: Point::new(2.0, 0.95),
         peak_pa: 9300.0,
@@ -137,6 +145,8 @@ pub(super) fn results() -> Results {
             PointPressure { name: "float".into(), at: Point::new(1.9, 0.98), gage_pa: 0.0, wet: false },
         ],
         roof: Some(RoofContact { wetted_length_m: 0.1, peak_pa: 120.0, at: Point::new(2.0, 1.0), edge_idx: 3 }),
+        plates: vec![],
+        cells_m3: vec![0.78],
     };
     Results {
         capacity_m3: 0.99,
@@ -150,6 +160,14 @@ pub(super) fn results() -> Results {
             surface: vec![Chord { left: Point::new(0.0, 0.8), right: Point::new(2.0, 0.8) }],
             highest_share: Some(0.786),
         },
+        cells: vec![Cell {
+            name: "cell 1".into(),
+            inside: Point::new(1.0, 0.5),
+            compartment: 0,
+            area_m2: 2.0,
+            capacity_m3: 0.99,
+            still_m3: 0.79,
+        }],
         cases: vec![
             CaseResult {
                 name: "Transfer stop".into(),
@@ -162,6 +180,10 @@ pub(super) fn results() -> Results {
                 },
                 accel: Vec2::new(-1.5, 0.0),
                 settled: Ok(settled),
+                sealed: None,
+                released: None,
+                routes: vec![],
+                pours: vec![],
                 verdicts: vec![
                     verdict("Contained", State::Fails, Some(f64::INFINITY), Quantity::Volume, 0.01, 0.0),
                     Verdict {
@@ -187,6 +209,10 @@ pub(super) fn results() -> Results {
                 },
                 accel: Vec2::new(0.0, -9.80665),
                 settled: Err("free fall: effective gravity is zero".into()),
+                sealed: None,
+                released: None,
+                routes: vec![],
+                pours: vec![],
                 verdicts: vec![Verdict {
                     demand: None,
                     limit: None,
@@ -236,5 +262,6 @@ fn verdict(
             .collect(),
         remark: String::new(),
         unconfirmed_record: None,
+        bound: None,
     }
 }

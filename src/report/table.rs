@@ -138,7 +138,10 @@ impl Table<'_> {
     fn settled(&mut self, case: &CaseResult, settled: &Settled) {
         let tilt = case.gravity.tilt_rad.map(|rad| format!("tilt {}", self.measure(Quantity::Angle, rad)));
         let slope = case.gravity.slope.map(|slope| format!("slope {}", number(slope, 3)));
-        let offset = settled.offset_m.map(|m| format!("z {} at s = 0", self.level(Quantity::Length, m)));
+        let offset = settled
+            .main_pool()
+            .and_then(|p| p.offset_m)
+            .map(|m| format!("z {} at s = 0", self.level(Quantity::Length, m)));
         self.fact("surface", [tilt, slope, offset].into_iter().flatten().collect::<Vec<_>>());
         self.fact(
             "liquid",
@@ -146,7 +149,7 @@ impl Table<'_> {
                 format!(
                     "{} stays in {}",
                     self.level(Quantity::Volume, settled.volume_m3),
-                    plural(settled.n_pools, "pool")
+                    plural(settled.pools.len(), "pool")
                 ),
                 format!("{} spilled", self.measure(Quantity::Volume, settled.spilled_m3)),
                 format!(

@@ -14,6 +14,8 @@ mod files;
 #[cfg(feature = "gui")]
 mod gui;
 mod json;
+mod pools_by_hand;
+mod pools_sampled;
 mod program;
 mod properties;
 mod properties_loads;

@@ -202,9 +202,9 @@ fn held_target(drag: &Drag) -> Option<Target> {
 
 /// Gage pressure under the pointer, where there is liquid.
 fn pressure_words(p: Point, scene: &Scene) -> String {
-    let pressure = scene
-        .judged
-        .and_then(|(study, results)| analysis::gage_pressure_at(study, results.cases.get(scene.case_idx)?, p));
+    let pressure = scene.judged.and_then(|(study, results)| {
+        analysis::gage_pressure_at(study, results.cases.get(scene.case_idx)?, analysis::Bound::Settled, p)
+    });
     pressure.map_or_else(String::new, |p| p.text(scene.units))
 }
 

@@ -2,7 +2,7 @@
 
 use serde::Serialize;
 
-use crate::analysis::{CaseResult, EdgeLoad, PointPressure, RoofContact, Settled};
+use crate::analysis::{CaseResult, EdgeLoad, PointPressure, Pool, RoofContact, Settled};
 use crate::cases::LoadCase;
 use crate::geom::Vec2;
 use crate::problem::Place;
@@ -73,12 +73,9 @@ struct SettledState {
     volume_m3: Num,
     spilled_m3: Num,
     n_pools: usize,
-    pools: Vec<Pool>,
-    level_m: Num,
-    offset_m: Num,
+    pools: Vec<PoolRow>,
     slope: Num,
     tilt_rad: Num,
-    surface: Vec<Piece>,
     centroid_s_m: Num,
     centroid_z_m: Num,
     highest_wetted_s_m: Num,
@@ -103,13 +100,10 @@ impl SettledState {
         SettledState {
             volume_m3: num(settled.volume_m3),
             spilled_m3: num(settled.spilled_m3),
-            n_pools: settled.n_pools,
-            pools: vec![Pool { volume_m3: num(settled.volume_m3), level_m: num(settled.level_m) }],
-            level_m: num(settled.level_m),
-            offset_m: settled.offset_m.and_then(num),
+            n_pools: settled.pools.len(),
+            pools: settled.pools.iter().map(PoolRow::new).collect(),
             slope: case.gravity.slope.and_then(num),
             tilt_rad: case.gravity.tilt_rad.and_then(num),
-            surface: settled.surface.iter().map(Piece::new).collect(),
             centroid_s_m,
             centroid_z_m,
             highest_wetted_s_m,
@@ -129,9 +123,32 @@ impl SettledState {
 }
 
 #[derive(Clone, Debug, Serialize)]
-struct Pool {
+struct PoolRow {
     volume_m3: Num,
     level_m: Num,
+    offset_m: Num,
+    centroid_s_m: Num,
+    centroid_z_m: Num,
+    deepest_s_m: Num,
+    deepest_z_m: Num,
+    surface: Vec<Piece>,
+}
+
+impl PoolRow {
+    fn new(pool: &Pool) -> PoolRow {
+        let (centroid_s_m, centroid_z_m) = coordinates(Some(pool.centroid));
+        let (deepest_s_m, deepest_z_m) = coordinates(Some(pool.deepest));
+        PoolRow {
+            volume_m3: num(pool.volume_m3),
+            level_m: num(pool.level_m),
+            offset_m: pool.offset_m.and_then(num),
+            centroid_s_m,
+            centroid_z_m,
+            deepest_s_m,
+            deepest_z_m,
+            surface: pool.surface.iter().map(Piece::new).collect(),
+        }
+    }
 }
 
 #[derive(Clone, Debug, Serialize)]

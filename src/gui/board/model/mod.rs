@@ -108,9 +108,9 @@ impl BoardModel {
         match case.map(|c| (c, &c.settled)) {
             Some((case, Ok(settled))) => {
                 body.up = case.gravity.up.unwrap_or(body.up);
-                body.level_m = settled.level_m;
+                body.level_m = settled.main_pool().map_or(f64::NEG_INFINITY, |p| p.level_m);
                 body.weight_pa_per_m = inputs.liquid.weight_pa_per_m(case.gravity.magnitude);
-                model.surface = settled.surface.clone();
+                model.surface = settled.pools.iter().flat_map(|p| p.surface.clone()).collect();
                 model.centroid = Some(settled.centroid);
                 for (mark, result) in model.points.iter_mut().zip(&settled.points) {
                     mark.gage_pa = Some(result.gage_pa);
@@ -296,7 +296,7 @@ mod tests {
                 let (Ok(settled), Some(up)) = (&case.settled, case.gravity.up) else { continue };
                 let model = BoardModel::judged(&study, &results, case_idx, None, detail);
                 let got: f64 = model.bands().flat_map(|b| &b.strips).map(Strip::area).sum();
-                let want = Sublevel::new(study.region().geometry(), up).area_below(settled.level_m);
+                let want = Sublevel::new(study.region().geometry(), up).area_below(settled.pools[0].level_m);
                 // A flattened arc of sagitta f lies about 2/3 f from the true one, all round.
                 let perimeter: f64 = study.region().geometry().iter().map(|e| e.length()).sum();
                 let tolerance = detail.sagitta_m * perimeter + 1e-12 * want;
