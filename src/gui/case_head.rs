@@ -1,13 +1,14 @@
 //! The thin row above the board where the chosen load case is named and typed.
 
-use egui::{Align, Popup, PopupCloseBehavior, Rect, Ui, pos2, vec2};
+use egui::{Align, Popup, PopupCloseBehavior, Rect, Role, Sense, Ui, WidgetInfo, pos2, vec2};
 
+use crate::analysis::Bound;
 use crate::app::Edit;
 use crate::cases::{Accel, AccelUnit, Attitude, LoadCase};
 use crate::units::{Quantity, Unit, number};
 
 use super::number::Number;
-use super::{Command, Desk, field, font, formula};
+use super::{Command, Desk, board, field, font, formula};
 
 const LEVEL: f64 = 0.0;
 
@@ -36,7 +37,8 @@ pub fn case_head_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk) {
     });
     accel_ui(ui, &mut row, desk, i, case.accel);
     attitude_ui(ui, &mut row, desk, i, case.attitude);
-    more_ui(ui, inset, desk, i, case);
+    let more = more_ui(ui, inset, desk, i, case);
+    bounds_ui(ui, inset.with_min_x(row.x).with_max_x(more.left() - 20.0), desk);
 }
 
 /// A place that moves along a row.
@@ -149,7 +151,7 @@ fn attitude_ui(ui: &mut Ui, row: &mut Row, desk: &mut Desk, i: usize, attitude: 
 }
 
 /// What is seldom typed: onset, source, note, and the way of giving the acceleration.
-fn more_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, i: usize, case: &LoadCase) {
+fn more_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, i: usize, case: &LoadCase) -> Rect {
     let words = if case.note.is_empty() { "More" } else { "More, note" };
     let response = field::link_ui(ui, rect, Align::Max, words, "More of this case", desk.look);
     let popup = Popup::menu(&response).close_behavior(PopupCloseBehavior::CloseOnClickOutside);
@@ -183,6 +185,47 @@ fn more_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, i: usize, case: &LoadCase) 
         field::text_row_ui(ui, desk, ("case source", i), "Source", &case.source, |t| with(&|c| c.source = t.clone()));
         field::text_row_ui(ui, desk, ("case note", i), "Note", &case.note, |t| with(&|c| c.note = t.clone()));
     });
+    response.rect
+}
+
+/// How the surfaces of both bounds are drawn, and which of them the board shows; a click chooses.
+fn bounds_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk) {
+    let Some(shown) = desk.bound() else { return };
+    let look = desk.look;
+    let mut right = rect.right();
+    for bound in [Bound::Sealed, Bound::Settled] {
+        let width = text_width(ui, bound.word(), font::body_heavy());
+        let place = rect.with_max_x(right).with_min_x(right - width - 34.0);
+        right = place.left() - 16.0;
+        if place.left() < rect.left() {
+            return;
+        }
+        let response = ui.interact(place, ui.next_auto_id().with(bound.word()), Sense::click());
+        let is_shown = shown == bound;
+        let words = format!("Bound, {}", bound.word());
+        response.widget_info(|| WidgetInfo::selected(Role::RadioButton, true, is_shown, &words));
+        let y = ui.painter().round_to_pixel_center(place.center().y);
+        let ends = [pos2(place.left(), y), pos2(place.left() + 26.0, y)];
+        if is_shown {
+            ui.painter().line_segment(ends, (1.9, look.ink));
+        } else {
+            board::paint_other_bound(ui.painter(), ends, look);
+        }
+        let (font, color) = if is_shown { (font::body_heavy(), look.ink) } else { (font::body(), look.accent) };
+        let text = place.with_min_x(place.left() + 34.0).expand2(vec2(0.5, 0.0));
+        field::paint_fitting(ui, text, Align::Min, bound.word(), font, color);
+        super::marks::paint_focus(ui.painter(), place, &response, look);
+        if response.on_hover_text(bound_words(bound)).clicked() {
+            desk.view.bound = Some(bound);
+        }
+    }
+}
+
+fn bound_words(bound: Bound) -> &'static str {
+    match bound {
+        Bound::Settled => "Levels have evened out through the openings",
+        Bound::Sealed => "Nothing passes the openings during the event",
+    }
 }
 
 fn accel_unit(desk: &Desk, unit: AccelUnit) -> Unit {

@@ -39,6 +39,8 @@ pub enum Command {
     DeleteSelected,
     /// Show the whole section.
     FitBoard,
+    /// The board shows the other bound.
+    OtherBound,
     /// Units shown.
     Units(UnitSystem),
     /// Light, dark, or as the system says.
@@ -173,6 +175,14 @@ pub const TABLE: &[Row] = &[
         on(Modifiers::NONE, Key::Home),
         "Show the whole section on the board",
         always,
+    ),
+    row(
+        Command::OtherBound,
+        Menu::View,
+        "Show the other bound",
+        on(Modifiers::NONE, Key::B),
+        "Settled: levels have evened out through the openings. Sealed: nothing passes them",
+        has_openings,
     ),
     row(
         Command::ResetSizes,
@@ -357,6 +367,10 @@ fn can_delete(doc: &Document, view: &View) -> bool {
 
 fn has_plate(_: &Document, view: &View) -> bool {
     view.selected.and_then(Selected::plate).is_some()
+}
+
+fn has_openings(doc: &Document, _: &View) -> bool {
+    doc.study().section.plates.iter().any(|plate| !plate.openings.is_empty())
 }
 
 fn has_spaced_plates(doc: &Document, _: &View) -> bool {

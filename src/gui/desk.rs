@@ -2,7 +2,7 @@
 
 use std::sync::Arc;
 
-use crate::analysis::Results;
+use crate::analysis::{Bound, Results};
 use crate::app::{Derived, Document, Edit};
 use crate::study::{Study, ValidStudy};
 use crate::units::{Measure, Quantity, Unit, UnitSystem};
@@ -34,6 +34,12 @@ impl<'a> Desk<'a> {
             Derived::Faulty { stale: Some((study, results)), .. } => Some(Judged { study, results, is_stale: true }),
             Derived::Faulty { stale: None, .. } => None,
         }
+    }
+
+    /// The bound that the board shows of the chosen case; none where openings do not make two of them.
+    pub fn bound(&self) -> Option<Bound> {
+        let case = self.judged()?.results.cases.get(self.view.case_idx)?;
+        self.view.bound_of(case)
     }
 
     /// Proposes a change of the document.

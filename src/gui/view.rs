@@ -1,5 +1,6 @@
 //! View state, and what panels propose. Nothing here is part of the document.
 
+use crate::analysis::{Bound, CaseResult};
 use crate::app::Edit;
 use crate::geom::Point;
 use crate::units::UnitSystem;
@@ -15,6 +16,8 @@ pub struct View {
     pub selected: Option<Selected>,
     /// The verdict whose working is open: (case, verdict).
     pub open_verdict: Option<(usize, usize)>,
+    /// The bound that the board shows; none: that of the open verdict, else the settled one.
+    pub bound: Option<Bound>,
     /// Units shown.
     pub units: UnitSystem,
     /// Board camera: points a metre, and the section point in the middle; none until first fitted.
@@ -23,6 +26,16 @@ pub struct View {
     pub pen: Option<Pen>,
     /// What the status line says at the left: position under the pointer, or why something snapped.
     pub status: String,
+}
+
+impl View {
+    /// The bound that the board shows of a case; none where openings do not make two of them.
+    pub fn bound_of(&self, case: &CaseResult) -> Option<Bound> {
+        case.sealed.as_ref()?;
+        let open = self.open_verdict.filter(|(case_idx, _)| *case_idx == self.case_idx);
+        let verdict = open.and_then(|(_, verdict_idx)| case.verdicts.get(verdict_idx));
+        Some(self.bound.or(verdict.and_then(|v| v.bound)).unwrap_or(Bound::Settled))
+    }
 }
 
 /// The pen that draws a plate.

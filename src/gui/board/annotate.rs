@@ -10,7 +10,7 @@ use crate::analysis::State;
 use crate::geom::Point;
 use crate::gui::{Look, font, marks};
 use crate::problem::Severity;
-use crate::units::{Measure, Quantity, fixed};
+use crate::units::{Measure, Quantity, fixed, number};
 
 use super::dims::paint_freeboard;
 use super::drag::Feedback;
@@ -23,7 +23,7 @@ use super::scene::Scene;
 pub fn annotate(painter: &Painter, scene: &Scene, look: &Look) {
     let mut labels = off_walls(scene);
     scene.dial.areas(&scene.hanging).into_iter().for_each(|area| labels.keep_off(area));
-    for piece in &scene.model.surface {
+    for piece in scene.model.surface() {
         labels.keep_off_line(&[scene.at(piece.left), scene.at(piece.right)]);
     }
     let named = scene.model.points.iter().chain(&scene.model.compartments).map(|p| p.at);
@@ -43,7 +43,9 @@ pub fn annotate(painter: &Painter, scene: &Scene, look: &Look) {
         writer.paint_still_label(&mut labels, still);
     }
     writer.paint_governs(&mut labels);
+    writer.paint_prisms(&mut labels);
     writer.paint_loads(&mut labels);
+    writer.paint_sills(&mut labels);
     writer.paint_isobar_labels(&mut labels);
     writer.paint_places(&mut labels);
     paint_legend(painter, scene, look);
@@ -194,6 +196,22 @@ impl Writer<'_> {
         }
     }
 
+    /// What liquid went over on the way, and how much.
+    fn paint_sills(&self, labels: &mut Labels) {
+        for sill in &self.scene.model.sills {
+            let at = self.scene.at(sill.at);
+            let corners = vec![at + vec2(0.0, -8.0), at + vec2(5.0, 0.0), at + vec2(-5.0, 0.0)];
+            self.painter.add(Shape::convex_polygon(corners, self.look.board, Stroke::new(1.25, self.look.ink)));
+            labels.keep_off(Rect::from_min_max(at + vec2(-5.0, -8.0), at + vec2(5.0, 0.0)));
+            let unit = Quantity::Volume.unit_near(self.scene.units, sill.volume_m3);
+            let text = format!("{} {} over", number(unit.from_si(sill.volume_m3), 3), unit.symbol);
+            let text = self.text(text, font::tick(), self.look.ink);
+            if let Some(rect) = labels.place(text.size(), around(at - vec2(0.0, 4.0), 9.0)) {
+                self.put(rect, text);
+            }
+        }
+    }
+
     /// The dashed line, and the words that go to it.
     fn paint_still_level(&self) -> Option<Still> {
         let z = self.scene.model.still_z_m?;
@@ -239,42 +257,6 @@ impl Writer<'_> {
         if let Some(measure) = measure {
             let text = self.text(measure.text(self.scene.units), font::body_heavy(), self.look.accent);
             if let Some(rect) = labels.place(text.size(), around(at, 11.0)) {
-                self.put(rect, text);
-            }
-        }
-    }
-
-    fn paint_loads(&self, labels: &mut Labels) {
-        let loads = &self.scene.model.loads;
-        let largest = loads.iter().map(|l| l.force_n.norm()).fold(0.0, f64::max);
-        let mut sorted: Vec<_> = loads.iter().filter(|l| l.force_n.norm() > 1e-3 * largest).collect();
-        sorted.sort_by(|a, b| b.force_n.norm().total_cmp(&a.force_n.norm()));
-        for load in sorted {
-            let along = self.scene.screen.screen_vec(load.force_n).normalized();
-            let on_edge = self.scene.at(load.on_edge);
-            let wanted = 14.0 + 40.0 * (load.force_n.norm() / largest).sqrt() as f32;
-            let room = self.scene.screen.rect.shrink(4.0);
-            // Outward from the wall; toward it from inside where the board ends before.
-            let lengths = (0..).map(|k| wanted - k as f32).take_while(|l| *l >= wanted.min(20.0));
-            let outward = lengths.into_iter().find(|l| room.contains(on_edge + along * *l));
-            let (tail, tip, out) = match outward {
-                Some(length) => (on_edge, on_edge + along * length, along),
-                None => (on_edge - along * wanted, on_edge, -along),
-            };
-            lines::arrow(self.painter, tail, tip, Stroke::new(1.4, self.look.ink), self.look.board);
-            labels.keep_off_line(&[tail, tip]);
-            let force = Measure::new(Quantity::Force, load.force_n.norm()).text(self.scene.units);
-            let text = self.text(force, font::small_figure(), self.look.ink);
-            let (end, middle) = (if out == along { tip } else { tail }, tail + (tip - tail) * 0.5);
-            let side = along.rot90();
-            let places = [
-                (end + out * 5.0, align_toward(out)),
-                (end + side * 8.0, align_toward(side)),
-                (end - side * 8.0, align_toward(-side)),
-                (middle + side * 8.0, align_toward(side)),
-                (middle - side * 8.0, align_toward(-side)),
-            ];
-            if let Some(rect) = labels.place(text.size(), places) {
                 self.put(rect, text);
             }
         }
@@ -328,7 +310,7 @@ pub(super) fn around(at: Pos2, off: f32) -> [(Pos2, Align2); 6] {
 }
 
 /// Aligns a label that lies in this direction from its thing.
-fn align_toward(out: Vec2) -> Align2 {
+pub(super) fn align_toward(out: Vec2) -> Align2 {
     let axis = |v: f32| {
         if v > 0.4 {
             egui::Align::Min

@@ -17,6 +17,7 @@ mod labels;
 mod legend;
 mod lines;
 mod liquid;
+mod loads;
 mod menu;
 mod model;
 mod paint;
@@ -42,7 +43,8 @@ use crate::units::UnitSystem;
 
 use super::{Look, Proposal, View, font};
 
-use model::Detail;
+use model::{Detail, Shown};
+use pointer::Pointing;
 use scene::Scene;
 use target::Target;
 
@@ -72,7 +74,7 @@ pub fn board_ui(ui: &mut Ui, doc: &Document, view: &mut View, look: &Look, out: 
     let painter = ui.painter().with_clip_rect(ui.clip_rect().intersect(board));
     painter.rect_filled(board, 0.0, look.board);
     let inside = painter.with_clip_rect(painter.clip_rect().intersect(area));
-    paint_scene(&inside, &scene, view, pointing.target, look);
+    paint_scene(&inside, &scene, view, &pointing, look);
     let focused = keys::handles_ui(ui, &canvas, &scene, view, out);
     if let Some((target, response)) = &focused {
         keys::paint_focus(ui, &scene, *target, response, look);
@@ -100,7 +102,7 @@ pub fn thumbnail_ui(
     let (low, high) = study.region().bounds();
     let screen = Screen::fitted(rect, rect.shrink(2.0), low, high);
     let detail = Detail { sagitta_m: 0.25 / screen.scale(), units: UnitSystem::Si };
-    let model = BoardModel::judged(study, results, case_idx, None, detail);
+    let model = BoardModel::judged(study, results, Shown { case_idx, ..Default::default() }, detail);
     let painter = painter.with_clip_rect(painter.clip_rect().intersect(rect));
     paint::paint_liquid(&painter, &screen, &model, paint::CARD_PENS, look);
     paint::paint_surface(&painter, &screen, &model, paint::CARD_PENS, look);
@@ -108,7 +110,14 @@ pub fn thumbnail_ui(
     paint::paint_walls(&painter, &screen, &model, paint::CARD_PENS, look);
 }
 
-fn paint_scene(painter: &Painter, scene: &Scene, view: &View, hovered: Option<Target>, look: &Look) {
+/// The line of the bound that is not shown, as in the drawing.
+pub fn paint_other_bound(painter: &Painter, ends: [egui::Pos2; 2], look: &Look) {
+    lines::dash_dot(painter, &ends, egui::Stroke::new(1.1, look.ink));
+}
+
+fn paint_scene(painter: &Painter, scene: &Scene, view: &View, pointing: &Pointing, look: &Look) {
+    let hovered = pointing.target;
+    let pointed_at = pointing.pos.filter(|_| hovered.is_none() && !pointing.is_dragging);
     let (screen, model) = (&scene.screen, &*scene.model);
     rulers::paint_grid(painter, screen, scene.units, look);
     if model.edges.is_empty() {
@@ -127,5 +136,11 @@ fn paint_scene(painter: &Painter, scene: &Scene, view: &View, hovered: Option<Ta
     }
     annotate::annotate(painter, scene, look);
     bob::paint_bob(painter, &scene.dial, &scene.hanging, scene.units, look);
+    // With one pool alone the whole liquid would be lined.
+    if let Some(p) = pointed_at.filter(|_| model.pools.len() > 1)
+        && let Some(pool) = model.pools.iter().find(|pool| pool.contains(screen.section_from_screen(p)))
+    {
+        paint::paint_pool(painter, scene, pool, look);
+    }
     handles::paint_handles(painter, scene, view.selected, hovered, look);
 }

@@ -2,18 +2,20 @@
 //!
 //! Draws what the model says and nothing else; labels and dimensions are in `annotate`.
 
-use egui::{Color32, Mesh, Painter, Pos2, Shape, Stroke, pos2};
+use egui::{Align2, Color32, Mesh, Painter, Pos2, Shape, Stroke, pos2};
 
+use crate::analysis::Chord;
 use crate::geom::{Point, Vec2};
-use crate::gui::{Look, Selected};
+use crate::gui::{Look, Selected, font};
 use crate::section::EdgeKind;
+use crate::units::{Quantity, number};
 
 use super::lines;
 use super::liquid::Tint;
-use super::model::BoardModel;
+use super::model::{BoardModel, Pool};
 use super::scene::Scene;
 use super::screen::Screen;
-use super::strips::{Strip, bands, chords, extent};
+use super::strips::{Strip, bands, chords, extent, sides};
 use super::target::{Target, target_of};
 
 /// Widths of the lines of a section.
@@ -50,7 +52,7 @@ pub fn paint_liquid(painter: &Painter, screen: &Screen, model: &BoardModel, pens
     painter.add(mesh);
     for band in model.bands().filter(|b| b.tint == Tint::AboveScale) {
         let stroke = Stroke::new(0.75, look.board.gamma_multiply(0.55));
-        band.strips.iter().for_each(|strip| hatch(painter, screen, strip.polygon(), stroke));
+        band.strips.iter().for_each(|strip| hatch(painter, screen, &strip.polygon(), stroke));
     }
     if pens.isobar > 0.0 {
         let stroke = Stroke::new(pens.isobar, look.ink.gamma_multiply(0.55));
@@ -60,14 +62,33 @@ pub fn paint_liquid(painter: &Painter, screen: &Screen, model: &BoardModel, pens
     }
 }
 
-/// The settled surface, over a halo.
+/// The surfaces under the other bound, dash-dotted, then those that are shown, over a halo.
 pub fn paint_surface(painter: &Painter, screen: &Screen, model: &BoardModel, pens: Pens, look: &Look) {
-    for width in [(4.0, look.board), (pens.surface, look.ink)] {
-        for piece in &model.surface {
-            let ends = [piece.left, piece.right].map(|p| screen.screen_from_section(p));
-            lines::segment(painter, ends, Stroke::from(width));
+    let ends = |piece: &Chord| [piece.left, piece.right].map(|p| screen.screen_from_section(p));
+    if pens.isobar > 0.0 {
+        for piece in &model.other_surface {
+            lines::segment(painter, ends(piece), Stroke::new(3.0, look.board));
+            lines::dash_dot(painter, &ends(piece), Stroke::new(1.1, look.ink));
         }
     }
+    for width in [(4.0, look.board), (pens.surface, look.ink)] {
+        model.surface().for_each(|piece| lines::segment(painter, ends(piece), Stroke::from(width)));
+    }
+}
+
+/// The line round a pool that is pointed at, and its volume.
+pub fn paint_pool(painter: &Painter, scene: &Scene, pool: &Pool, look: &Look) {
+    let accent = Stroke::new(1.25, look.accent);
+    let surface = pool.surface.iter().map(|piece| [piece.left, piece.right]);
+    for side in pool.sides.iter().copied().chain(surface) {
+        lines::segment(painter, side.map(|p| scene.at(p)), accent);
+    }
+    let unit = Quantity::Volume.unit_near(scene.units, pool.volume_m3);
+    let words = format!("{} {}", number(unit.from_si(pool.volume_m3), 4), unit.symbol);
+    let text = painter.layout_no_wrap(words, font::body_heavy(), look.accent);
+    let rect = Align2::CENTER_CENTER.anchor_size(scene.at(pool.centroid), text.size());
+    painter.rect_filled(rect.expand2(egui::vec2(4.0, 1.0)), 0.0, look.board);
+    painter.galley(rect.min, text, look.accent);
 }
 
 /// Walls, mouths and obstacles.
@@ -155,13 +176,13 @@ pub fn paint_glow(
 }
 
 fn paint_obstacle(painter: &Painter, screen: &Screen, points: &[Point], pens: Pens, look: &Look) {
-    let loops = [points.to_vec()];
-    if let Some((low, high)) = extent(&loops, Vec2::y()).filter(|(low, high)| low < high) {
+    let chain: Vec<_> = sides(points).collect();
+    if let Some((low, high)) = extent(&chain, Vec2::y()).filter(|(low, high)| low < high) {
         let mut mesh = Mesh::default();
-        let strips = bands(&loops, Vec2::y(), &[low, high]).remove(0);
+        let strips = bands(&chain, Vec2::y(), &[low, high]).remove(0);
         strips.iter().for_each(|strip| fill(&mut mesh, screen, strip, look.sunk));
         painter.add(mesh);
-        hatch(painter, screen, points.to_vec(), Stroke::new(0.75, look.ink2));
+        hatch(painter, screen, points, Stroke::new(0.75, look.ink2));
     }
     let path = screen.line(points);
     if path.len() > 2 {
@@ -190,11 +211,11 @@ fn fill(mesh: &mut Mesh, screen: &Screen, strip: &Strip, color: Color32) {
 }
 
 /// A 45 degree hatch inside a closed chain, a line every 5 points.
-fn hatch(painter: &Painter, screen: &Screen, points: Vec<Point>, stroke: Stroke) {
+fn hatch(painter: &Painter, screen: &Screen, points: &[Point], stroke: Stroke) {
     let across = Vec2::new(-1.0, 1.0) * std::f64::consts::FRAC_1_SQRT_2;
     let step = 5.0 / screen.scale();
-    let loops = [points];
-    let Some((low, high)) = extent(&loops, across) else { return };
+    let chain: Vec<_> = sides(points).collect();
+    let Some((low, high)) = extent(&chain, across) else { return };
     // Only the lines that cross the drawing area.
     let seen =
         [screen.rect.left_top(), screen.rect.right_top(), screen.rect.left_bottom(), screen.rect.right_bottom()];
@@ -203,7 +224,7 @@ fn hatch(painter: &Painter, screen: &Screen, points: Vec<Point>, stroke: Stroke)
     let high = levels.iter().copied().fold(f64::NEG_INFINITY, f64::max).min(high);
     let (first, last) = ((low / step).ceil() as i64, (high / step).floor() as i64);
     for k in first..=last {
-        for [a, b] in chords(&loops, across, k as f64 * step) {
+        for [a, b] in chords(&chain, across, k as f64 * step) {
             lines::segment(painter, [screen.screen_from_section(a), screen.screen_from_section(b)], stroke);
         }
     }

@@ -3,7 +3,7 @@
 
 use egui::{CursorIcon, Id, Key, Modifiers, PointerButton, Pos2, Response, Ui};
 
-use crate::analysis;
+use crate::analysis::{self, Bound};
 use crate::app::Edit;
 use crate::geom::Point;
 use crate::gui::{Proposal, View, plating};
@@ -154,8 +154,9 @@ fn hover(
         | None => target.map(|t| t.words(scene).split(", s ").next().unwrap_or_default().to_lowercase()),
         Some(t) => Some(t.words(scene)),
     };
+    let bound = scene.case().and_then(|case| view.bound_of(case)).unwrap_or(Bound::Settled);
     let on = what.map(|w| format!("on {w}")).unwrap_or_default();
-    view.status = status(&status(&place_words(p, scene), &pressure_words(p, scene)), &on);
+    view.status = status(&status(&place_words(p, scene), &pressure_words(p, scene, bound)), &on);
     if canvas.double_clicked() {
         match target {
             Some(Target::Edge(i) | Target::Middle(i)) => out.push(Proposal::Edit(split(scene, i, pos, keys))),
@@ -201,10 +202,10 @@ fn held_target(drag: &Drag) -> Option<Target> {
 }
 
 /// Gage pressure under the pointer, where there is liquid.
-fn pressure_words(p: Point, scene: &Scene) -> String {
-    let pressure = scene.judged.and_then(|(study, results)| {
-        analysis::gage_pressure_at(study, results.cases.get(scene.case_idx)?, analysis::Bound::Settled, p)
-    });
+fn pressure_words(p: Point, scene: &Scene, bound: Bound) -> String {
+    let pressure = scene
+        .judged
+        .and_then(|(study, results)| analysis::gage_pressure_at(study, results.cases.get(scene.case_idx)?, bound, p));
     pressure.map_or_else(String::new, |p| p.text(scene.units))
 }
 

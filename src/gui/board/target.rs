@@ -2,7 +2,7 @@
 
 use egui::Pos2;
 
-use crate::geom::{Edge, Point};
+use crate::geom::{Edge, Point, Vec2};
 use crate::gui::Selected;
 
 use super::model::PlateLine;
@@ -284,7 +284,8 @@ fn obstacle_under(scene: &Scene, pos: Pos2) -> Option<Target> {
     let reach_m = LINE_REACH / scene.screen.scale();
     scene.study.section.obstacles.iter().enumerate().find_map(|(i, obstacle)| {
         let is_near = obstacle.edges().iter().any(|e| e.nearest(p).1 <= reach_m);
-        let is_inside = scene.model.obstacles.get(i).is_some_and(|points| strips::contain(points, p));
+        let chain = scene.model.obstacles.get(i).map(|points| strips::sides(points).collect::<Vec<_>>());
+        let is_inside = chain.is_some_and(|chain| strips::contain(&chain, Vec2::y(), p));
         (is_near || is_inside).then_some(Target::Obstacle(i))
     })
 }

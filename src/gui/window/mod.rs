@@ -9,7 +9,7 @@ use std::time::Instant;
 
 use egui::{CursorIcon, Sense, Ui, UiBuilder, ViewportCommand};
 
-use crate::analysis::State;
+use crate::analysis::{Bound, State};
 use crate::app::{Derived, Document, Edit};
 use crate::cases::{Accel, Attitude, LoadCase};
 use crate::study::Study;
@@ -146,6 +146,7 @@ impl Window {
             }
             Command::DeleteSelected => self.delete_selected(),
             Command::FitBoard => self.view.camera = None,
+            Command::OtherBound => self.show_other_bound(),
             Command::ResetSizes => self.settings.sizes = Default::default(),
             Command::Units(units) => {
                 self.view.units = units;
@@ -326,6 +327,16 @@ impl Window {
             self.doc.edit(&edit);
             self.view.selected = None;
         }
+    }
+
+    fn show_other_bound(&mut self) {
+        let Derived::Judged { results, .. } = self.doc.derived() else { return };
+        let shown = results.cases.get(self.view.case_idx).and_then(|case| self.view.bound_of(case));
+        self.view.bound = match shown {
+            Some(Bound::Settled) => Some(Bound::Sealed),
+            Some(Bound::Sealed) => Some(Bound::Settled),
+            None => self.view.bound,
+        };
     }
 
     fn duplicate_plate(&mut self) {

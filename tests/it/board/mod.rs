@@ -102,6 +102,7 @@ fn view() -> View {
         case_idx: 0,
         selected: None,
         open_verdict: None,
+        bound: None,
         units: UnitSystem::Si,
         camera: None,
         pen: None,

@@ -1,6 +1,6 @@
 //! Marks at single places: brims, the freeboard dimension, named points, faults.
 
-use crate::analysis::{CaseResult, FREEBOARD, Sense, State};
+use crate::analysis::{CaseResult, FREEBOARD, Pour, Sense, State};
 use crate::geom::{Point, Vec2};
 use crate::problem::{Place, Severity};
 use crate::study::{Study, ValidStudy};
@@ -37,6 +37,22 @@ pub struct Governs {
     pub glow: Vec<Vec<Point>>,
     /// The point, with the number asked for there.
     pub at: Option<(Point, Option<Measure>)>,
+}
+
+/// A sill that liquid went over on the way to the case.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Sill {
+    /// Where.
+    pub at: Point,
+    /// How much, m3.
+    pub volume_m3: f64,
+}
+
+impl Sill {
+    /// Of what went over it.
+    pub fn new(pour: &Pour) -> Sill {
+        Sill { at: pour.at, volume_m3: pour.volume_m3 }
+    }
 }
 
 /// A named point.

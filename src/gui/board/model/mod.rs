@@ -6,22 +6,38 @@
 mod load;
 mod marks;
 mod plate;
+mod pool;
 
-use crate::analysis::{Chord, Results, Settled, Verdict};
+use crate::analysis::{Bound, CaseResult, Chord, Results, Settled, Verdict};
 use crate::geom::{Edge, Point, Vec2};
 use crate::problem::{Place, Problem};
-use crate::section::{EdgeKind, Section};
+use crate::section::EdgeKind;
 use crate::study::{Study, ValidStudy};
 use crate::units::{Quantity, UnitSystem};
 
-use super::liquid::{Band, Body, Isobar, Pool, TintScale};
+use super::liquid::{Band, Body, Isobar, TintScale};
+use super::strips::{Side, sides};
 
-use load::where_met;
+use load::edge_loads;
 use marks::{brims, freeboard, place_of};
 
-pub use load::Load;
-pub use marks::{Brim, FaultMark, Freeboard, Governs, PointMark};
+pub use load::{Load, Prism, PrismPart};
+pub use marks::{Brim, FaultMark, Freeboard, Governs, PointMark, Sill};
 pub use plate::PlateLine;
+pub use pool::Pool;
+
+/// What of a judged study is shown.
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
+pub struct Shown {
+    /// The load case.
+    pub case_idx: usize,
+    /// The verdict of that case whose working is open.
+    pub open_verdict: Option<usize>,
+    /// The bound, where openings make two of them.
+    pub bound: Option<Bound>,
+    /// The plate that is chosen.
+    pub plate_idx: Option<usize>,
+}
 
 /// How fine, and which numbers.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -54,10 +70,14 @@ pub struct BoardModel {
     pub last_good: Vec<Vec<Point>>,
     /// Steps of the tints.
     pub tints: Option<TintScale>,
-    /// The liquid, one body after the other.
+    /// The liquid, one pool after the other.
     pub pools: Vec<Pool>,
-    /// Pieces of the settled surface.
-    pub surface: Vec<Chord>,
+    /// Liquid whose pressure is not known.
+    pub not_judged_liquid: Vec<Band>,
+    /// Surfaces under the other bound.
+    pub other_surface: Vec<Chord>,
+    /// Sills that liquid went over on the way.
+    pub sills: Vec<Sill>,
     /// z of the still surface, m.
     pub still_z_m: Option<f64>,
     /// Why the case is not judged.
@@ -68,6 +88,8 @@ pub struct BoardModel {
     pub freeboard: Option<Freeboard>,
     /// Loads, for a pressure verdict that is open.
     pub loads: Vec<Load>,
+    /// Net pressures across plates, for the same verdict or the plate that is chosen.
+    pub prisms: Vec<Prism>,
     /// Where the open verdict governs.
     pub governs: Governs,
     /// Named points.
@@ -85,51 +107,32 @@ pub struct BoardModel {
 }
 
 impl BoardModel {
-    /// A judged study under one load case; the still tank where there is no such case.
-    pub fn judged(
-        study: &ValidStudy,
-        results: &Results,
-        case_idx: usize,
-        open_verdict: Option<usize>,
-        detail: Detail,
-    ) -> BoardModel {
+    /// A judged study under one load case.
+    pub fn judged(study: &ValidStudy, results: &Results, shown: Shown, detail: Detail) -> BoardModel {
         let inputs = study.study();
         let mut model = BoardModel::bare(inputs, &results.warnings, detail);
         model.tints = TintScale::new(results.pressure_scale_pa, inputs.ullage_gage_pa, detail.units);
         model.still_z_m = Some(results.still.level_z_m);
-        let case = results.cases.get(case_idx);
-        let mut body = Body {
-            loops: model.loops(),
-            up: Vec2::y(),
-            level_m: results.still.level_z_m,
-            gas_pa: inputs.ullage_gage_pa,
-            weight_pa_per_m: inputs.liquid.weight_pa_per_m(inputs.gravity_m_per_s2),
-        };
-        match case.map(|c| (c, &c.settled)) {
-            Some((case, Ok(settled))) => {
-                body.up = case.gravity.up.unwrap_or(body.up);
-                body.level_m = settled.main_pool().map_or(f64::NEG_INFINITY, |p| p.level_m);
-                body.weight_pa_per_m = inputs.liquid.weight_pa_per_m(case.gravity.magnitude);
-                model.surface = settled.pools.iter().flat_map(|p| p.surface.clone()).collect();
-                model.centroid = Some(settled.centroid);
-                for (mark, result) in model.points.iter_mut().zip(&settled.points) {
-                    mark.gage_pa = Some(result.gage_pa);
-                }
-            }
-            Some((_, Err(reason))) => {
+        let Some(case) = results.cases.get(shown.case_idx) else { return model };
+        let verdict = shown.open_verdict.and_then(|i| case.verdicts.get(i));
+        let bound = shown.bound.unwrap_or(Bound::Settled);
+        let up = case.gravity.up.unwrap_or(Vec2::y());
+        match case.state(bound) {
+            Some(Ok(state)) => model.show_state(inputs, case, bound, state, detail),
+            Some(Err(reason)) => {
                 model.not_judged = Some(reason.clone());
-                body.weight_pa_per_m = 0.0;
+                model.not_judged_liquid = model.still_liquid(results.still.level_z_m);
             }
-            None => model.surface = results.still.surface.clone(),
+            None => {}
         }
-        model.pools = vec![body.tinted(model.tints)];
-        if let Some(case) = case {
-            model.freeboard = freeboard(case, results.still.level_z_m);
-            if let Some(verdict) = open_verdict.and_then(|i| case.verdicts.get(i)) {
-                model.show_verdict(&inputs.section, verdict, case.settled.as_ref().ok());
-            }
+        model.freeboard = freeboard(case, results.still.level_z_m);
+        if let Some(verdict) = verdict {
+            model.governs = model.governing(verdict);
         }
-        model.brims = brims(study, body.up, model.freeboard.map(|f| f.brim));
+        if let Some(Ok(state)) = case.state(bound) {
+            model.show_loads(inputs, verdict, shown.plate_idx, state);
+        }
+        model.brims = brims(study, up, model.freeboard.map(|f| f.brim));
         model
     }
 
@@ -148,12 +151,17 @@ impl BoardModel {
 
     /// All tinted bands.
     pub fn bands(&self) -> impl Iterator<Item = &Band> {
-        self.pools.iter().flat_map(|pool| &pool.bands)
+        self.pools.iter().flat_map(|pool| &pool.tinted.bands).chain(&self.not_judged_liquid)
     }
 
-    /// All isobars, those of one body after the other, the deepest of each first.
+    /// All isobars, those of one pool after the other, the deepest of each first.
     pub fn isobars(&self) -> impl Iterator<Item = &Isobar> {
-        self.pools.iter().flat_map(|pool| pool.isobars.iter().rev())
+        self.pools.iter().flat_map(|pool| pool.tinted.isobars.iter().rev())
+    }
+
+    /// All pieces of the surface.
+    pub fn surface(&self) -> impl Iterator<Item = &Chord> {
+        self.pools.iter().flat_map(|pool| &pool.surface)
     }
 
     /// Smallest and largest (s, z) of all lines; none without lines.
@@ -188,12 +196,15 @@ impl BoardModel {
             last_good: Vec::new(),
             tints: None,
             pools: Vec::new(),
-            surface: Vec::new(),
+            not_judged_liquid: Vec::new(),
+            other_surface: Vec::new(),
+            sills: Vec::new(),
             still_z_m: None,
             not_judged: None,
             brims: Vec::new(),
             freeboard: None,
             loads: Vec::new(),
+            prisms: Vec::new(),
             governs: Governs::default(),
             points,
             compartments,
@@ -214,16 +225,34 @@ impl BoardModel {
         line.filter(|points| points.len() > 1).cloned().into_iter().collect()
     }
 
-    /// The region as closed chains: outline and obstacles.
-    fn loops(&self) -> Vec<Vec<Point>> {
-        let outline = self.edges.iter().flat_map(|e| &e.points[..e.points.len() - 1]).copied().collect();
-        std::iter::once(outline).chain(self.obstacles.iter().cloned()).collect()
+    fn show_state(&mut self, study: &Study, case: &CaseResult, bound: Bound, state: &Settled, detail: Detail) {
+        let up = case.gravity.up.unwrap_or(Vec2::y());
+        let pool = |pool| Pool::new(pool, up, study.ullage_gage_pa, self.tints, detail.sagitta_m);
+        self.pools = state.pools.iter().map(pool).collect();
+        let other = if bound == Bound::Settled { Bound::Sealed } else { Bound::Settled };
+        if let Some(Ok(other)) = case.state(other) {
+            self.other_surface = other.pools.iter().flat_map(|pool| pool.surface.clone()).collect();
+        }
+        if bound == Bound::Settled {
+            self.sills = case.pours.iter().map(Sill::new).collect();
+        }
+        self.centroid = Some(state.centroid);
+        for (mark, result) in self.points.iter_mut().zip(&state.points) {
+            mark.gage_pa = Some(result.gage_pa);
+        }
     }
 
-    fn show_verdict(&mut self, section: &Section, verdict: &Verdict, settled: Option<&Settled>) {
-        let outline_edge = |i: usize| self.edges.get(i).map(|e| e.points.clone());
-        self.governs.glow = match &verdict.place {
-            Place::Edge(i) => outline_edge(*i).into_iter().collect(),
+    /// The still liquid, where nothing better is known.
+    fn still_liquid(&self, level_z_m: f64) -> Vec<Band> {
+        let outline: Vec<Point> = self.edges.iter().flat_map(|e| &e.points[..e.points.len() - 1]).copied().collect();
+        let region = sides(&outline).chain(self.obstacles.iter().flat_map(|points| sides(points))).collect();
+        let body = Body { sides: region, up: Vec2::y(), level_m: level_z_m, gas_pa: 0.0, weight_pa_per_m: 0.0 };
+        body.tinted(None).bands
+    }
+
+    fn governing(&self, verdict: &Verdict) -> Governs {
+        let glow = match &verdict.place {
+            Place::Edge(i) => self.edges.get(*i).map(|e| e.points.clone()).into_iter().collect(),
             Place::Obstacle { obstacle_idx, .. } => match self.obstacles.get(*obstacle_idx) {
                 Some(points) => vec![points.iter().chain(points.first()).copied().collect()],
                 None => Vec::new(),
@@ -231,24 +260,29 @@ impl BoardModel {
             Place::Plate { plate_idx, opening_idx } => self.plate_line(*plate_idx, *opening_idx),
             _ => Vec::new(),
         };
-        self.governs.at = verdict.at.map(|at| (at, verdict.demand));
-        let is_pressure = verdict.demand.is_some_and(|d| d.quantity == Quantity::GagePressure);
-        if let Some(settled) = settled.filter(|_| is_pressure) {
-            self.loads = (settled.edges.iter())
-                .filter(|load| load.is_wall)
-                .filter_map(|load| {
-                    let edge = match load.place {
-                        Place::Edge(i) if i < section.outline.len() => section.edge(i),
-                        Place::Obstacle { obstacle_idx, edge_idx: Some(i) } if load.place == verdict.place => {
-                            *section.obstacles.get(obstacle_idx)?.edges().get(i)?
-                        }
-                        _ => return None,
-                    };
-                    Some(Load { on_edge: where_met(&edge, load.acts_at?, load.force_n), force_n: load.force_n })
-                })
-                .collect();
-        }
+        Governs { glow, at: verdict.at.map(|at| (at, verdict.demand)) }
     }
+
+    /// Loads on walls and plates for a pressure verdict; on a plate alone for a verdict on it, or because it is chosen.
+    fn show_loads(&mut self, study: &Study, verdict: Option<&Verdict>, plate_idx: Option<usize>, state: &Settled) {
+        let demand = verdict.and_then(|v| v.demand);
+        let is_pressure = demand.is_some_and(|d| d.quantity == Quantity::GagePressure);
+        if let Some(verdict) = verdict.filter(|_| is_pressure) {
+            self.loads = edge_loads(&study.section, &verdict.place, state);
+        }
+        let judged =
+            verdict.and_then(|v| if let Place::Plate { plate_idx, .. } = v.place { Some(plate_idx) } else { None });
+        let is_shown = |i: usize| is_pressure || judged == Some(i) || plate_idx == Some(i);
+        let plates = study.section.plates.iter().zip(&state.plates).enumerate();
+        self.prisms =
+            plates.filter(|(i, _)| is_shown(*i)).filter_map(|(_, (plate, load))| Prism::new(plate, load)).collect();
+    }
+}
+
+/// Edges as straight sides for drawing.
+fn sides_of<'a>(edges: impl Iterator<Item = &'a Edge>, sagitta_m: f64) -> Vec<Side> {
+    let sides = |edge| flatten(edge, sagitta_m).windows(2).map(|pair| [pair[0], pair[1]]).collect::<Vec<_>>();
+    edges.flat_map(sides).collect()
 }
 
 fn is_placed(mark: &PointMark) -> bool {
@@ -294,7 +328,7 @@ mod tests {
             let detail = Detail { sagitta_m: 1e-5 * (high - low).norm(), units: UnitSystem::Si };
             for (case_idx, case) in results.cases.iter().enumerate() {
                 let (Ok(settled), Some(up)) = (&case.settled, case.gravity.up) else { continue };
-                let model = BoardModel::judged(&study, &results, case_idx, None, detail);
+                let model = BoardModel::judged(&study, &results, Shown { case_idx, ..Default::default() }, detail);
                 let got: f64 = model.bands().flat_map(|b| &b.strips).map(Strip::area).sum();
                 let want = Sublevel::new(study.region().geometry(), up).area_below(settled.pools[0].level_m);
                 // A flattened arc of sagitta f lies about 2/3 f from the true one, all round.
@@ -316,7 +350,7 @@ mod tests {
             let results = analysis::run(&study);
             for case_idx in 0..results.cases.len() {
                 let detail = Detail { sagitta_m: 1e-3, units: UnitSystem::Si };
-                let model = BoardModel::judged(&study, &results, case_idx, None, detail);
+                let model = BoardModel::judged(&study, &results, Shown { case_idx, ..Default::default() }, detail);
                 assert_eq!(model.brims.len(), study.mouths().len());
                 let governing: Vec<Point> = model.brims.iter().filter(|b| b.governs).map(|b| b.at).collect();
                 assert_eq!(governing.len(), usize::from(!model.brims.is_empty()), "{}", example.file_name);
