@@ -3,6 +3,7 @@
 use egui::Modifiers;
 
 use crate::geom::Point;
+use crate::gui::Selected;
 use crate::gui::plating::{self, Line};
 
 use super::scene::Scene;
@@ -30,17 +31,17 @@ pub fn snapper<'a>(scene: &'a Scene, keys: Modifiers, moved: Option<Target>) -> 
             })
             .map(|(i, j, at)| Anchor { at, name: format!("obstacle {}, vertex {}", i + 1, j + 1) })
     });
+    let held = moved.and_then(Target::selects).and_then(Selected::plate);
     let plates = scene.model.plates.iter().enumerate().flat_map(|(i, plate)| {
         let named = plate.points.iter().enumerate().map(move |(k, at)| (i, k, *at));
         named
-            .filter(move |(i, k, _)| match moved {
-                Some(Target::PlatePoint(pi, pk)) => (pi, pk) != (*i, *k),
-                Some(Target::Plate(pi)) => pi != *i,
-                _ => true,
+            .filter(move |(i, k, at)| match moved {
+                Some(Target::PlatePoint(pi, pk)) if pi == *i => pk != *k,
+                _ => held.is_none_or(|held| held != *i && !goes_along(scene, held, *at)),
             })
-            .map(|(i, k, at)| Anchor {
-                at,
-                name: format!("plate {}, {}", i + 1, corner_words(scene, i, k).to_lowercase()),
+            .map(|(i, k, at)| {
+                let name = format!("plate {}, {}", i + 1, corner_words(scene, i, k).to_lowercase());
+                Anchor { at, name }
             })
     });
     Snapper {
@@ -49,6 +50,11 @@ pub fn snapper<'a>(scene: &'a Scene, keys: Modifiers, moved: Option<Target>) -> 
         anchors: outline.chain(obstacles).chain(plates).collect(),
         is_on: !keys.ctrl,
     }
+}
+
+/// Whether the end of another plate stands on the one that is held, and moves with it.
+fn goes_along(scene: &Scene, held: usize, end: Point) -> bool {
+    plating::stands_on(&scene.study.section, held, end)
 }
 
 /// What snaps to the grid and to round numbers alone.

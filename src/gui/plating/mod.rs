@@ -9,7 +9,7 @@ mod stand;
 pub use opening::{room, roomiest_m, with_opening};
 pub use shape::{along, corner_word, longest_middle, with_corner, with_point, without_corner};
 pub use stand::{
-    Line, Stands, copied, joined, like_last, lines, moved, new_plate, roomiest_place, upright_at, upward,
+    Line, Stands, copied, joined, like_last, lines, moved, new_plate, roomiest_place, stands_on, upright_at, upward,
 };
 
 use crate::section::{Plate, Section};

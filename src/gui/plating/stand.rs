@@ -1,12 +1,9 @@
 //! Plates on what they stand on: the lines of a section, the ends that stand on them, and moves that keep them there.
 
 use crate::geom::{Edge, Point, Vec2};
-use crate::section::{Panel, Plate, Section};
+use crate::section::{Panel, Plate, STANDS_WITHIN, Section};
 
 use super::shape::{shifted, with_point};
-
-/// How near a line an end must be to stand on it, as a share of the section's size.
-const ON_LINE: f64 = 1e-6;
 
 /// Thickness of the first plate of a section, m.
 const FIRST_THICKNESS_M: f64 = 0.005;
@@ -33,11 +30,17 @@ impl Stands {
     /// Of plate `plate_idx`, as it is drawn.
     pub fn of(section: &Section, plate_idx: usize) -> Stands {
         let lines = lines(section, Some(plate_idx));
-        let reach_m = ON_LINE * size_m(section);
+        let reach_m = STANDS_WITHIN * size_m(section);
         let is_on = |p: Option<&Point>| p.is_some_and(|p| lines.iter().any(|l| l.edge.nearest(*p).1 <= reach_m));
         let points = section.plates.get(plate_idx).map_or(&[][..], |plate| &plate.points);
         Stands { first: is_on(points.first()), last: is_on(points.last()) }
     }
+}
+
+/// Whether a place lies on plate `plate_idx`.
+pub fn stands_on(section: &Section, plate_idx: usize, p: Point) -> bool {
+    let reach_m = STANDS_WITHIN * size_m(section);
+    section.plates.get(plate_idx).is_some_and(|plate| plate.segments().any(|e| e.nearest(p).1 <= reach_m))
 }
 
 /// All lines that a plate may stand on: outline, obstacles, and plates but for one.
@@ -81,15 +84,13 @@ pub fn moved(section: &Section, plate_idx: usize, by: Vec2) -> Option<Plate> {
 
 /// All plates that have an end on plate `plate_idx`, as they must be once it has become `next`.
 pub fn joined(section: &Section, plate_idx: usize, next: &Plate) -> Vec<(usize, Plate)> {
-    let Some(now) = section.plates.get(plate_idx) else { return Vec::new() };
-    let reach_m = ON_LINE * size_m(section);
     let edges: Vec<Edge> = next.segments().collect();
     let mut out = Vec::new();
     for (i, other) in section.plates.iter().enumerate().filter(|(i, o)| *i != plate_idx && o.points.len() > 1) {
         let mut stood = None;
         for end in [0, other.points.len() - 1] {
             let at = other.points[end];
-            if now.segments().any(|e| e.nearest(at).1 <= reach_m) {
+            if stands_on(section, plate_idx, at) {
                 let to = meets(&edges, inner(other, end), at).unwrap_or(at);
                 stood = Some(with_point(stood.as_ref().unwrap_or(other), end, to));
             }

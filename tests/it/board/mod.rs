@@ -2,6 +2,7 @@
 
 mod drags;
 mod handles;
+mod plates;
 mod robust;
 
 use brimwright::app::{Derived, Document, Edit};
