@@ -10,12 +10,12 @@ use crate::analysis::State;
 use crate::geom::Point;
 use crate::gui::{Look, font, marks};
 use crate::problem::Severity;
-use crate::units::{Measure, Quantity, fixed, number};
+use crate::units::{Measure, Quantity, number};
 
 use super::dims::paint_freeboard;
 use super::drag::Feedback;
 use super::labels::Labels;
-use super::legend::{decimals_of, paint_legend};
+use super::legend::paint_legend;
 use super::lines;
 use super::scene::Scene;
 
@@ -258,40 +258,6 @@ impl Writer<'_> {
             let text = self.text(measure.text(self.scene.units), font::body_heavy(), self.look.accent);
             if let Some(rect) = labels.place(text.size(), around(at, 11.0)) {
                 self.put(rect, text);
-            }
-        }
-    }
-
-    /// Numbers on paper at the lower ends of the isobars; the deepest one bears the unit.
-    fn paint_isobar_labels(&self, labels: &mut Labels) {
-        let model = &self.scene.model;
-        let Some(tints) = model.tints else { return };
-        let unit = Quantity::GagePressure.unit(self.scene.units);
-        let decimals = decimals_of(unit.from_si(tints.step_pa));
-        let mut needs_unit = true;
-        for isobar in model.isobars() {
-            let (Some(first), Some(last)) = (isobar.chords.first(), isobar.chords.last()) else { continue };
-            let (left, right) = (self.scene.at(first[0]), self.scene.at(last[1]));
-            let along = (right - left).normalized();
-            let value = fixed(unit.from_si(isobar.gage_pa), decimals);
-            let words = if needs_unit { format!("{value} {}", unit.symbol) } else { value };
-            let text = self.text(words, font::tick(), self.look.ink2);
-            let mut ends = [(left, -along), (right, along)];
-            if right.y > left.y + 1.0 {
-                ends.swap(0, 1);
-            }
-            let down = vec2(0.0, 1.0);
-            let ways =
-                ends.into_iter().flat_map(|(end, out)| [out, (out + down).normalized(), down].map(|way| (end, way)));
-            let free = ways.into_iter().find_map(|(end, out)| {
-                let place = (end + out * 10.0, align_toward(out));
-                labels.place(text.size(), [place]).map(|rect| (end, out, rect))
-            });
-            if let Some((end, out, rect)) = free {
-                let tick = [end + out * 2.0, end + out * 8.0];
-                lines::segment(self.painter, tick, Stroke::new(0.75, self.look.ink.gamma_multiply(0.55)));
-                self.put(rect, text);
-                needs_unit = false;
             }
         }
     }

@@ -12,6 +12,7 @@ mod bob;
 mod dims;
 mod drag;
 mod handles;
+mod isobars;
 mod keys;
 mod labels;
 mod legend;

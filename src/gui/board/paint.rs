@@ -198,16 +198,21 @@ fn post(mouth: &[Pos2], end: usize, pens: Pens) -> Pos2 {
 }
 
 fn fill(mesh: &mut Mesh, screen: &Screen, strip: &Strip, color: Color32) {
+    let rows: Vec<[Pos2; 2]> =
+        strip.left.iter().zip(&strip.right).map(|(l, r)| [*l, *r].map(|p| screen.screen_from_section(p))).collect();
+    rows.windows(2).for_each(|pair| quad(mesh, pair[0], pair[1], color));
+    // Where strips part, the end of one lies within the side of another: rounding would leave gaps.
+    for [left, right] in rows.first().into_iter().chain(rows.last()) {
+        let across = (*right - *left).normalized().rot90() * 0.5;
+        quad(mesh, [*left - across, *right - across], [*left + across, *right + across], color);
+    }
+}
+
+fn quad(mesh: &mut Mesh, below: [Pos2; 2], above: [Pos2; 2], color: Color32) {
     let first = mesh.vertices.len() as u32;
-    for (left, right) in strip.left.iter().zip(&strip.right) {
-        mesh.colored_vertex(screen.screen_from_section(*left), color);
-        mesh.colored_vertex(screen.screen_from_section(*right), color);
-    }
-    for i in 0..strip.left.len().saturating_sub(1) as u32 {
-        let corner = first + 2 * i;
-        mesh.add_triangle(corner, corner + 1, corner + 2);
-        mesh.add_triangle(corner + 1, corner + 3, corner + 2);
-    }
+    below.into_iter().chain(above).for_each(|p| mesh.colored_vertex(p, color));
+    mesh.add_triangle(first, first + 1, first + 2);
+    mesh.add_triangle(first + 1, first + 3, first + 2);
 }
 
 /// A 45 degree hatch inside a closed chain, a line every 5 points.

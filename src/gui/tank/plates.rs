@@ -18,7 +18,11 @@ const EDGES: [(PanelEdges, &str); 2] =
 
 pub(super) fn plates_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
     let plates = &desk.study().section.plates;
-    let note = if plates.is_empty() { "none" } else { "s, thickness" };
+    let note = match plates.is_empty() {
+        true => "none",
+        false if is_narrow(ui) => "s",
+        false => "s, thickness",
+    };
     field::heading_ui(ui, desk.look, "Plates", note);
     let open = desk.view.selected.and_then(Selected::plate);
     let mut chosen = None;
@@ -47,18 +51,18 @@ pub(super) fn plates_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
     }
 }
 
-/// One row: mark, name, s of the foot, thickness. Gives whether it was clicked.
+/// One row: mark, name, s of the foot, and the thickness where there is room. Gives whether it was clicked.
 fn row_ui(ui: &mut Ui, desk: &mut Desk, i: usize, plate: &Plate, is_open: bool) -> bool {
     let label = plate.label(i);
+    let taken = if is_narrow(ui) { 16.0 } else { 66.0 };
     let rect = field::row_rect(ui);
-    let response = list_row_ui(ui, rect, desk, is_open, &label, &format!("Plate {}, {label}", i + 1), 74.0);
+    let response = list_row_ui(ui, rect, desk, is_open, &label, &format!("Plate {}, {label}", i + 1), taken);
     let x = ui.painter().round_to_pixel_center(rect.left() + 5.0);
     let ink = Stroke::new(1.75, desk.look.ink);
     for (from, to) in [(-7.0, -2.5), (2.5, 7.0)] {
         ui.painter().line_segment([pos2(x, rect.center().y + from), pos2(x, rect.center().y + to)], ink);
     }
-    let foot = plate.points.iter().min_by(|a, b| a.y.total_cmp(&b.y)).map_or(0.0, |p| p.x);
-    for (m, significant, right) in [(foot, 4, rect.right() - 62.0), (plate.thickness_m, 2, rect.right())] {
+    let length = |m: f64, significant: usize, right: f32| {
         let number = Measure::new(Quantity::Length, m).number(desk.units(), significant);
         let unit = format!(" {}", desk.unit(Quantity::Length).symbol);
         let job = font::runs([
@@ -66,8 +70,20 @@ fn row_ui(ui: &mut Ui, desk: &mut Desk, i: usize, plate: &Plate, is_open: bool) 
             (unit.as_str(), font::small(), desk.look.ink3),
         ]);
         field::paint_job(ui, rect.with_max_x(right), Align::Max, job);
+    };
+    let foot = plate.points.iter().min_by(|a, b| a.y.total_cmp(&b.y)).map_or(0.0, |p| p.x);
+    if is_narrow(ui) {
+        length(foot, 4, rect.right());
+    } else {
+        length(foot, 4, rect.right() - 54.0);
+        length(plate.thickness_m, 2, rect.right());
     }
-    response.clicked()
+    response.on_hover_text(label).clicked()
+}
+
+/// Whether only one number has room beside a name.
+fn is_narrow(ui: &Ui) -> bool {
+    ui.available_width() < 220.0
 }
 
 fn plate_fields_ui(ui: &mut Ui, desk: &mut Desk, i: usize, plate: &Plate) {

@@ -1,12 +1,19 @@
 //! The one table of commands: text, shortcut, tooltip, when each can be used. Menus and keys read it; the window
 //! carries it out.
 
+mod when;
+
 use egui::{Key, KeyboardShortcut, Modifiers, ThemePreference};
 
 use crate::app::Document;
 use crate::units::UnitSystem;
 
-use super::{Selected, View, plating};
+use super::View;
+
+use when::{
+    always, can_delete, can_redo, can_save, can_undo, has_case, has_case_after, has_case_before, has_cases,
+    has_openings, has_plate, has_spaced_plates,
+};
 
 /// Something that the user can ask for from a menu or with a key.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -343,54 +350,6 @@ const fn group(
 
 const fn on(modifiers: Modifiers, key: Key) -> Option<KeyboardShortcut> {
     Some(KeyboardShortcut::new(modifiers, key))
-}
-
-fn always(_: &Document, _: &View) -> bool {
-    true
-}
-
-fn can_save(doc: &Document, _: &View) -> bool {
-    doc.is_unsaved() || doc.path.is_none()
-}
-
-fn can_undo(doc: &Document, _: &View) -> bool {
-    doc.undo_label().is_some()
-}
-
-fn can_redo(doc: &Document, _: &View) -> bool {
-    doc.redo_label().is_some()
-}
-
-fn can_delete(doc: &Document, view: &View) -> bool {
-    view.selected.is_some_and(|selected| selected.removal(doc.study()).is_some())
-}
-
-fn has_plate(_: &Document, view: &View) -> bool {
-    view.selected.and_then(Selected::plate).is_some()
-}
-
-fn has_openings(doc: &Document, _: &View) -> bool {
-    doc.study().section.plates.iter().any(|plate| !plate.openings.is_empty())
-}
-
-fn has_spaced_plates(doc: &Document, _: &View) -> bool {
-    plating::equally_spaced(&doc.study().section).is_some()
-}
-
-fn has_case(doc: &Document, view: &View) -> bool {
-    view.case_idx < doc.study().cases.len()
-}
-
-fn has_cases(doc: &Document, _: &View) -> bool {
-    doc.study().cases.len() > 1
-}
-
-fn has_case_before(doc: &Document, view: &View) -> bool {
-    view.case_idx > 0 && has_case(doc, view)
-}
-
-fn has_case_after(doc: &Document, view: &View) -> bool {
-    view.case_idx + 1 < doc.study().cases.len()
 }
 
 pub(super) fn lower_first(text: &str) -> String {
