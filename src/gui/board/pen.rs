@@ -78,7 +78,7 @@ pub fn draw(
 pub fn paint_hint(painter: &Painter, scene: &Scene, pen: Pen, look: &Look) {
     let words = match pen.from {
         None => "Draw a plate from wall to wall. Esc stops",
-        Some(_) => "Click where the plate ends. Esc stops",
+        Some(_) => "Let go, or click, where the plate ends. Esc stops",
     };
     let text = painter.layout_no_wrap(words.to_owned(), font::small(), look.accent);
     let at = scene.screen.rect.left_top() + vec2(12.0, 8.0);

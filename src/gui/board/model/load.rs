@@ -7,6 +7,9 @@ use crate::section::{Plate, Section};
 
 use super::flatten;
 
+/// Share of the highest pressure below which a difference of two pressures is rounding.
+const ROUNDING: f64 = 1e-9;
+
 /// The load of the liquid on one edge.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Load {
@@ -52,10 +55,11 @@ impl PrismPart {
 }
 
 impl Prism {
-    /// None where nothing presses.
-    pub fn new(plate: &Plate, load: &PlateLoad) -> Option<Prism> {
+    /// None where nothing presses but what rounding leaves of `peak_pa`, the highest pressure in the tank.
+    pub fn new(plate: &Plate, load: &PlateLoad, peak_pa: f64) -> Option<Prism> {
+        let is_felt = |pa: f64| pa.abs() > ROUNDING * peak_pa.abs();
         let parts: Vec<PrismPart> = (load.stretches.iter())
-            .filter(|s| s.from_pa != 0.0 || s.to_pa != 0.0)
+            .filter(|s| is_felt(s.from_pa) || is_felt(s.to_pa))
             .filter_map(|s| {
                 let line = [plate.point_at(s.from_m), plate.point_at(s.to_m)];
                 let along = (line[1] - line[0]).try_normalize(0.0)?;

@@ -274,8 +274,10 @@ impl BoardModel {
             verdict.and_then(|v| if let Place::Plate { plate_idx, .. } = v.place { Some(plate_idx) } else { None });
         let is_shown = |i: usize| is_pressure || judged == Some(i) || plate_idx == Some(i);
         let plates = study.section.plates.iter().zip(&state.plates).enumerate();
-        self.prisms =
-            plates.filter(|(i, _)| is_shown(*i)).filter_map(|(_, (plate, load))| Prism::new(plate, load)).collect();
+        self.prisms = plates
+            .filter(|(i, _)| is_shown(*i))
+            .filter_map(|(_, (plate, load))| Prism::new(plate, load, state.peak_pa))
+            .collect();
     }
 }
 
@@ -309,56 +311,4 @@ fn flatten_loop(edges: &[Edge], sagitta_m: f64) -> Vec<Point> {
 }
 
 #[cfg(test)]
-mod tests {
-    use super::*;
-    use crate::analysis;
-    use crate::app::EXAMPLES;
-    use crate::geom::Sublevel;
-    use crate::gui::board::strips::Strip;
-
-    /// The bands add up to the exact area below the settled level, as the kernel's own area function gives it.
-    #[test]
-    fn bands_add_up_to_the_liquid_of_every_demo() {
-        let mut n_cases = 0;
-        for example in EXAMPLES {
-            let study = crate::scenario::parse(example.text.as_bytes()).expect(example.file_name);
-            let study = study.validate().expect(example.file_name);
-            let results = analysis::run(&study);
-            let (low, high) = study.region().bounds();
-            let detail = Detail { sagitta_m: 1e-5 * (high - low).norm(), units: UnitSystem::Si };
-            for (case_idx, case) in results.cases.iter().enumerate() {
-                let (Ok(settled), Some(up)) = (&case.settled, case.gravity.up) else { continue };
-                let model = BoardModel::judged(&study, &results, Shown { case_idx, ..Default::default() }, detail);
-                let got: f64 = model.bands().flat_map(|b| &b.strips).map(Strip::area).sum();
-                let want = Sublevel::new(study.region().geometry(), up).area_below(settled.pools[0].level_m);
-                // A flattened arc of sagitta f lies about 2/3 f from the true one, all round.
-                let perimeter: f64 = study.region().geometry().iter().map(|e| e.length()).sum();
-                let tolerance = detail.sagitta_m * perimeter + 1e-12 * want;
-                let place = (example.file_name, &case.name);
-                assert!((got - want).abs() <= tolerance, "{place:?}: got {got} m2, expected {want} +- {tolerance}");
-                n_cases += 1;
-            }
-        }
-        assert!(n_cases > 10, "only {n_cases} cases were compared");
-    }
-
-    #[test]
-    fn the_brim_that_governs_is_the_dimensions_own() {
-        for example in EXAMPLES {
-            let study = crate::scenario::parse(example.text.as_bytes()).expect(example.file_name);
-            let study = study.validate().expect(example.file_name);
-            let results = analysis::run(&study);
-            for case_idx in 0..results.cases.len() {
-                let detail = Detail { sagitta_m: 1e-3, units: UnitSystem::Si };
-                let model = BoardModel::judged(&study, &results, Shown { case_idx, ..Default::default() }, detail);
-                assert_eq!(model.brims.len(), study.mouths().len());
-                let governing: Vec<Point> = model.brims.iter().filter(|b| b.governs).map(|b| b.at).collect();
-                assert_eq!(governing.len(), usize::from(!model.brims.is_empty()), "{}", example.file_name);
-                if let Some(freeboard) = model.freeboard {
-                    let off = (governing[0] - freeboard.brim).norm();
-                    assert!(off < 1e-9, "{} case {case_idx}: {off} m apart", example.file_name);
-                }
-            }
-        }
-    }
-}
+mod tests;
