@@ -168,7 +168,9 @@ fn is_left(part: &WetPart) -> bool {
 fn stretches(parts: &[&WetPart], press: &[Press], up: Vec2) -> Vec<Stretch> {
     let mut stops: Vec<f64> = parts.iter().flat_map(|p| p.along_m).collect();
     stops.sort_unstable_by(f64::total_cmp);
-    stops.dedup();
+    // The same place reckoned along both sides differs by rounding: it must not become a stretch of its own.
+    let slack = 1e-12 * stops.last().copied().unwrap_or(0.0);
+    stops.dedup_by(|later, earlier| *later - *earlier <= slack);
     let mut out: Vec<Stretch> = Vec::new();
     for w in stops.windows(2) {
         let middle = 0.5 * (w[0] + w[1]);

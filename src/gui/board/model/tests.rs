@@ -104,7 +104,8 @@ fn the_prism_of_a_plate_is_as_high_as_the_levels_differ() {
     let shown = |bound, plate_idx| Shown { bound: Some(bound), plate_idx, ..Default::default() };
     let model = |bound, plate_idx| BoardModel::judged(&study, &results, shown(bound, plate_idx), detail(&study));
     assert!(model(Bound::Sealed, None).prisms.is_empty(), "no plate is chosen");
-    assert!(model(Bound::Settled, Some(0)).prisms.is_empty(), "nothing presses");
+    let settled = model(Bound::Settled, Some(0)).prisms;
+    assert!(settled.is_empty(), "nothing presses: {settled:?}");
     let prisms = model(Bound::Sealed, Some(0)).prisms;
     let (low, high) = study.region().bounds();
     let want = study.study().liquid.density_kg_per_m3 * a * 0.5 * (high.x - low.x);
