@@ -1,6 +1,7 @@
 //! Builders, reference tables and an independent clipper for the checks against the outside.
 
 pub mod clip;
+pub mod followed;
 pub mod grid;
 pub mod grid_pools;
 pub mod hand_cases;
