@@ -55,7 +55,7 @@ pub fn draw(
                 view.pen = None;
                 view.selected = Some(Selected::Plate(scene.study.section.plates.len()));
                 ui.memory_mut(|m| m.request_focus(canvas.id));
-                let plate = plating::like_last(&scene.study.section, plating::upward(from, to));
+                let plate = plating::drawn(&scene.study.section, from, to);
                 out.push(Proposal::Edit(Edit::AddPlate(Box::new(plate))));
             }
             None => view.pen = Some(Pen { from: from.or(Some(to)) }),

@@ -4,7 +4,7 @@
 
 use egui::Modifiers;
 
-use crate::app::Edit;
+use crate::app::{Edit, shifted_along_walls};
 use crate::geom::{Point, Vec2};
 use crate::gui::plating::{self, Stands};
 use crate::section::{Plate, Section};
@@ -76,9 +76,26 @@ impl PlateHold {
                 self.opening_by(o, end, by_m)
             }
             _ => {
-                plating::moved(&self.section, self.plate_idx, moved).map_or_else(Vec::new, |next| self.becomes(next))
+                let next = shifted_along_walls(&self.section, self.plate_idx, self.across(moved));
+                next.map_or_else(Vec::new, |next| self.becomes(next))
             }
         }
+    }
+
+    /// A whole plate that stands on something moves across itself only.
+    fn across(&self, mut by: Vec2) -> Vec2 {
+        if let Some(axis) = self.axis() {
+            by[1 - axis] = 0.0;
+        }
+        by
+    }
+
+    /// The axis along which such a plate moves; none for a free one.
+    fn axis(&self) -> Option<usize> {
+        let stands = Stands::of(&self.section, self.plate_idx);
+        let points = &self.plate().points;
+        let reach = points[points.len() - 1] - points[0];
+        (stands.first || stands.last).then_some(if reach.x.abs() <= reach.y.abs() { 0 } else { 1 })
     }
 
     fn plate(&self) -> &Plate {
@@ -101,10 +118,7 @@ impl PlateHold {
         let snapper = snapper(scene, keys, Some(self.target));
         let end = if stands.last && !stands.first { last } else { 0 };
         let lead = plate.points[end];
-        let (by, mut snapped) = if stands.first || stands.last {
-            // What stands on something moves across itself only.
-            let reach = plate.points[last] - plate.points[0];
-            let axis = if reach.x.abs() <= reach.y.abs() { 0 } else { 1 };
+        let (by, mut snapped) = if let Some(axis) = self.axis() {
             let (value, aligned, reason) = snapper.coordinate(axis, lead[axis] + moved[axis]);
             let mut by = Vec2::zeros();
             by[axis] = value - lead[axis];
@@ -113,7 +127,7 @@ impl PlateHold {
             let snapped = snapper.point(lead + moved);
             (snapped.at - lead, snapped)
         };
-        let Some(next) = plating::moved(&self.section, self.plate_idx, by) else { return Default::default() };
+        let Some(next) = shifted_along_walls(&self.section, self.plate_idx, by) else { return Default::default() };
         snapped.at = next.points[end];
         (self.becomes(next), placed(scene, snapped))
     }

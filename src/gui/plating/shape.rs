@@ -1,27 +1,15 @@
-//! The shape of one plate. Openings keep their place in the tank as far as they can: when a corner moves, those before
-//! it keep their distance from the first end, those behind it theirs from the last; one that reaches an end of the plate
-//! stays at that end.
+//! The shape of one plate: corners moved, added and taken out, and places along it.
 
-use crate::geom::{Edge, Point, Vec2};
-use crate::section::{Opening, Plate};
+use crate::app::with_length_kept_openings;
+use crate::geom::{Edge, Point};
+use crate::section::Plate;
 
-/// How near an end an opening must lie to belong to it, as a share of the plate's length: rounding, not judgement.
-const AT_END: f64 = 1e-9;
-
-/// The plate with its corner `k` at `to`.
+/// The plate with its corner `k` at `to`; openings keep their distance from the nearer end.
 pub fn with_point(plate: &Plate, k: usize, to: Point) -> Plate {
     let mut next = plate.clone();
     let Some(point) = next.points.get_mut(k) else { return next };
     *point = to;
-    keep_openings(plate, k, &mut next);
-    next
-}
-
-/// The plate moved by a displacement, openings and all.
-pub fn shifted(plate: &Plate, by: Vec2) -> Plate {
-    let mut next = plate.clone();
-    next.points.iter_mut().for_each(|point| *point += by);
-    next
+    with_length_kept_openings(plate, next)
 }
 
 /// The plate with a new corner on its line at the point nearest to `at`, and the corner's index; none at its ends.
@@ -49,8 +37,7 @@ pub fn without_corner(plate: &Plate, k: usize) -> Option<Plate> {
     }
     let mut next = plate.clone();
     next.points.remove(k);
-    keep_openings(plate, k, &mut next);
-    Some(next)
+    Some(with_length_kept_openings(plate, next))
 }
 
 /// What corner `k` of a plate is: `Foot`, `Top`, `Left end`, `Right end`, `Corner 2`.
@@ -78,37 +65,10 @@ fn nearest(plate: &Plate, p: Point) -> Option<(usize, Edge, f64)> {
     Some((i, segment, t))
 }
 
-/// Puts the openings of `plate` on `next`, whose corner `k` has moved or gone.
-fn keep_openings(plate: &Plate, k: usize, next: &mut Plate) {
-    let (old_m, new_m) = (plate.length_m(), next.length_m());
-    let corner_m: f64 = plate.segments().take(k).map(|e| e.length()).sum();
-    let place = |at_m: f64| if at_m <= corner_m { at_m } else { new_m - (old_m - at_m) };
-    let slack_m = AT_END * old_m;
-    for opening in &mut next.openings {
-        let length_m = opening.length_m();
-        let (at_first, at_last) = (opening.from_m <= slack_m, opening.to_m >= old_m - slack_m);
-        (opening.from_m, opening.to_m) = match (at_first, at_last) {
-            (true, true) => (0.0, new_m),
-            (true, false) => (opening.from_m, opening.to_m),
-            (false, true) => (new_m - length_m, new_m),
-            (false, false) => (place(opening.from_m), place(opening.to_m)),
-        };
-        slide_inside(opening, new_m);
-    }
-}
-
-/// An opening that a shorter plate has no room for moves inward.
-fn slide_inside(opening: &mut Opening, length_m: f64) {
-    let over_m = (opening.to_m - length_m).max(0.0);
-    let under_m = (-opening.from_m).max(0.0);
-    opening.from_m = (opening.from_m - over_m + under_m).max(0.0);
-    opening.to_m = (opening.to_m - over_m + under_m).min(length_m);
-}
-
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::section::{OpeningShape, Panel};
+    use crate::section::{Opening, OpeningShape, Panel};
 
     /// Upright, 1 m, with a drain at its foot, a manhole in the middle and a vent at its top.
     fn plate() -> Plate {
@@ -133,13 +93,10 @@ mod tests {
     }
 
     #[test]
-    fn openings_keep_their_place_while_ends_move() {
-        let raised_top = with_point(&plate(), 1, Point::new(0.0, 1.5));
-        check(&raised_top, [(0.0, 0.05), (0.4, 0.6), (1.4, 1.5)]);
-        let raised_foot = with_point(&plate(), 0, Point::new(0.0, 0.2));
-        check(&raised_foot, [(0.0, 0.05), (0.2, 0.4), (0.7, 0.8)]);
-        let short = with_point(&plate(), 1, Point::new(0.0, 0.5));
-        check(&short, [(0.0, 0.05), (0.3, 0.5), (0.4, 0.5)]);
+    fn openings_keep_to_their_end_while_corners_move() {
+        check(&with_point(&plate(), 1, Point::new(0.0, 1.5)), [(0.0, 0.05), (0.4, 0.6), (1.4, 1.5)]);
+        check(&with_point(&plate(), 0, Point::new(0.0, 0.2)), [(0.0, 0.05), (0.4, 0.6), (0.7, 0.8)]);
+        assert_eq!(with_point(&plate(), 7, Point::origin()), plate(), "there is no such corner");
     }
 
     #[test]
@@ -152,9 +109,8 @@ mod tests {
         assert_eq!(without_corner(&plate(), 0), None, "two points make a plate");
         // The knee goes out by 0.4 m: 0.5 m from the foot to it, and the part above it is longer.
         let bent = with_point(&split, 1, Point::new(0.4, 0.3));
-        let above_m = 0.4_f64.hypot(0.7);
-        let off = 0.5 + above_m - 1.0;
-        check(&bent, [(0.0, 0.05), (0.4 + off, 0.6 + off), (0.9 + off, 1.0 + off)]);
+        let off = 0.5 + 0.4_f64.hypot(0.7) - 1.0;
+        check(&bent, [(0.0, 0.05), (0.4, 0.6), (0.9 + off, 1.0 + off)]);
     }
 
     #[test]

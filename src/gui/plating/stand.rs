@@ -1,12 +1,10 @@
-//! Plates on what they stand on: the lines of a section, the ends that stand on them, and moves that keep them there.
+//! Plates on what they stand on: the lines of a section, the ends that stand on them, new plates between them.
 
+use crate::app::{self, plate_across, shifted_along_walls};
 use crate::geom::{Edge, Point, Vec2};
-use crate::section::{Panel, Plate, STANDS_WITHIN, Section};
+use crate::section::{Plate, STANDS_WITHIN, Section};
 
-use super::shape::{shifted, with_point};
-
-/// Thickness of the first plate of a section, m.
-const FIRST_THICKNESS_M: f64 = 0.005;
+use super::shape::with_point;
 
 /// A line that a plate may stand on.
 #[derive(Clone, Debug, PartialEq)]
@@ -56,32 +54,6 @@ pub fn lines(section: &Section, but_plate: Option<usize>) -> Vec<Line> {
         .collect()
 }
 
-/// Plate `plate_idx` moved by a displacement. Two ends that stand on something stay on it, along the plate's own line;
-/// with one such end the plate moves along what it stands on; a free plate just moves.
-pub fn moved(section: &Section, plate_idx: usize, by: Vec2) -> Option<Plate> {
-    let plate = section.plates.get(plate_idx).filter(|plate| plate.points.len() > 1)?;
-    let edges: Vec<Edge> = lines(section, Some(plate_idx)).into_iter().map(|line| line.edge).collect();
-    let last = plate.points.len() - 1;
-    let next = shifted(plate, by);
-    let foot = |end: usize| meets(&edges, inner(&next, end), next.points[end]);
-    Some(match Stands::of(section, plate_idx) {
-        Stands { first: true, last: true } => {
-            let mut stood = next.clone();
-            for end in [0, last] {
-                if let Some(to) = foot(end) {
-                    stood = with_point(&stood, end, to);
-                }
-            }
-            stood
-        }
-        Stands { first: false, last: false } => next,
-        Stands { first, .. } => {
-            let end = if first { 0 } else { last };
-            foot(end).map_or(next.clone(), |to| shifted(plate, to - plate.points[end]))
-        }
-    })
-}
-
 /// All plates that have an end on plate `plate_idx`, as they must be once it has become `next`.
 pub fn joined(section: &Section, plate_idx: usize, next: &Plate) -> Vec<(usize, Plate)> {
     let edges: Vec<Edge> = next.segments().collect();
@@ -123,38 +95,39 @@ pub fn roomiest_place(section: &Section) -> Option<Point> {
     inside.max_by(|a, b| a.0.total_cmp(&b.0)).map(|(_, p)| p)
 }
 
-/// A plate like the last one, upright through `p`, up and down to what is nearest.
+/// A plate like the last one, upright through `p`, up and down to what is nearest; none outside the tank.
 pub fn upright_at(section: &Section, p: Point) -> Option<Plate> {
-    let edges: Vec<Edge> = lines(section, None).into_iter().map(|line| line.edge).collect();
-    let way = |z: f64| first_met(&edges, p, Vec2::new(0.0, z), p);
-    section.contains(p).then(|| Some(like_last(section, vec![way(-1.0)?, way(1.0)?]))).flatten()
+    let plate = section.contains(p).then(|| plate_across(section, p, p))?;
+    Some(Plate { points: upward(plate.points[0], plate.points[1]), ..plate }).filter(|plate| plate.length_m() > 0.0)
 }
 
-/// Both ends of a plate, the foot first; of a level one the left end. Places along it count from there.
-pub fn upward(a: Point, b: Point) -> Vec<Point> {
+/// A plate like the last one, from place to place as it was drawn. The foot comes first, of a level one the left end:
+/// places along it count from there.
+pub fn drawn(section: &Section, from: Point, to: Point) -> Plate {
+    Plate { points: upward(from, to), ..plate_across(section, from, to) }
+}
+
+/// The plates with the upright ones at equal distances; none where that changes nothing.
+pub fn equally_spaced(section: &Section) -> Option<Vec<Plate>> {
+    let is_upright = |plate: &Plate| match plate.points[..] {
+        [first, .., last] => (last.y - first.y).abs() > (last.x - first.x).abs(),
+        _ => false,
+    };
+    let upright: Vec<usize> = (0..section.plates.len()).filter(|&i| is_upright(&section.plates[i])).collect();
+    let spaced = app::equally_spaced(section, &upright);
+    (spaced != section.plates).then_some(spaced)
+}
+
+fn upward(a: Point, b: Point) -> Vec<Point> {
     let is_level = (b.y - a.y).abs() < (b.x - a.x).abs();
     if if is_level { a.x <= b.x } else { a.y <= b.y } { vec![a, b] } else { vec![b, a] }
-}
-
-/// A plate along `points`, as thick and made of the same as the last one.
-pub fn like_last(section: &Section, points: Vec<Point>) -> Plate {
-    let last = section.plates.last();
-    Plate {
-        name: String::new(),
-        points,
-        thickness_m: last.map_or(FIRST_THICKNESS_M, |plate| plate.thickness_m),
-        corrosion_m: last.map_or(0.0, |plate| plate.corrosion_m),
-        material: last.map_or_else(String::new, |plate| plate.material.clone()),
-        panel: last.map_or_else(Panel::default, |plate| plate.panel),
-        openings: Vec::new(),
-    }
 }
 
 /// A copy of plate `plate_idx` a little to the right of it, or to the left where there is no room.
 pub fn copied(section: &Section, plate_idx: usize) -> Option<Plate> {
     let (low, high) = extent(section)?;
     let step = (0.05 * (high.x - low.x) * 1e3).round() * 1e-3;
-    let beside = |by: f64| moved(section, plate_idx, Vec2::new(by, 0.0));
+    let beside = |by: f64| shifted_along_walls(section, plate_idx, Vec2::new(by, 0.0));
     let is_inside = |plate: &Plate| plate.points.iter().all(|p| p.x > low.x && p.x < high.x);
     let mut copy = beside(step).filter(is_inside).or_else(|| beside(-step))?;
     copy.name = next_name(section, &copy.name);
@@ -228,7 +201,7 @@ fn size_m(section: &Section) -> f64 {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::section::{EdgeKind, Opening, OpeningShape, OutlineEdge, WidthLaw};
+    use crate::section::{EdgeKind, OutlineEdge, WidthLaw};
 
     /// A trough of 4 m by 2 m with a floor that rises by 1 in 4 from the middle to the right, and these plates.
     fn trough(plates: Vec<Plate>) -> Section {
@@ -248,7 +221,8 @@ mod tests {
     }
 
     fn plate(points: &[(f64, f64)]) -> Plate {
-        like_last(&trough(vec![]), points.iter().map(|&(s, z)| Point::new(s, z)).collect())
+        let points = points.iter().map(|&(s, z)| Point::new(s, z)).collect();
+        Plate { points, ..drawn(&trough(vec![]), Point::new(0.0, 0.0), Point::new(0.0, 1.0)) }
     }
 
     fn check_points(got: &Plate, want: &[(f64, f64)]) {
@@ -260,30 +234,9 @@ mod tests {
     }
 
     #[test]
-    fn ends_that_stand_on_something_stay_on_it() {
-        for (points, by, want) in [
-            // From floor to roof, onto the slope: the foot rises with it.
-            ([(-1.0, 0.0), (-1.0, 2.0)], (2.0, 0.3), [(1.0, 0.25), (1.0, 2.0)]),
-            // Drawn from the roof down.
-            ([(-1.0, 2.0), (-1.0, 0.0)], (2.0, 0.3), [(1.0, 2.0), (1.0, 0.25)]),
-            // A free top: as high over the floor as before, however the pointer went up.
-            ([(-1.0, 0.0), (-1.0, 1.0)], (2.0, 0.4), [(1.0, 0.25), (1.0, 1.25)]),
-            // Hung from the roof.
-            ([(-1.0, 1.0), (-1.0, 2.0)], (0.5, -0.1), [(-0.5, 1.0), (-0.5, 2.0)]),
-            // Free at both ends.
-            ([(-1.0, 0.5), (-1.0, 1.0)], (0.5, 0.4), [(-0.5, 0.9), (-0.5, 1.4)]),
-            // A shelf between the walls.
-            ([(-2.0, 1.0), (2.0, 1.0)], (0.7, 0.4), [(-2.0, 1.4), (2.0, 1.4)]),
-        ] {
-            let section = trough(vec![plate(&points)]);
-            check_points(&moved(&section, 0, Vec2::new(by.0, by.1)).unwrap(), &want);
-        }
-    }
-
-    #[test]
     fn a_plate_that_moves_takes_those_along_that_stand_on_it() {
         let section = trough(vec![plate(&[(-1.0, 0.0), (-1.0, 2.0)]), plate(&[(-2.0, 1.0), (-1.0, 1.0)])]);
-        let next = moved(&section, 0, Vec2::new(0.5, 0.0)).unwrap();
+        let next = shifted_along_walls(&section, 0, Vec2::new(0.5, 0.0)).unwrap();
         let others = joined(&section, 0, &next);
         assert_eq!(others.iter().map(|(i, _)| *i).collect::<Vec<_>>(), [1]);
         check_points(&others[0].1, &[(-2.0, 1.0), (-0.5, 1.0)]);
@@ -291,13 +244,27 @@ mod tests {
     }
 
     #[test]
-    fn a_drain_gap_stays_at_the_foot_of_a_plate_that_moves() {
-        let mut drained = plate(&[(1.0, 2.0), (1.0, 0.25)]);
-        let shape = OpeningShape::Share(1.0);
-        drained.openings = vec![Opening { name: String::new(), from_m: 1.70, to_m: 1.75, shape }];
-        let next = moved(&trough(vec![drained]), 0, Vec2::new(-1.0, 0.0)).unwrap();
-        let got = (next.openings[0].from_m, next.openings[0].to_m);
-        assert!((got.0 - 1.95).abs() < 1e-12 && (got.1 - 2.0).abs() < 1e-12, "got {got:?}, expected (1.95, 2.0)");
+    fn upright_plates_are_spaced_and_shelves_stay() {
+        let shelf = plate(&[(-2.0, 1.0), (-1.5, 1.0)]);
+        let section =
+            trough(vec![plate(&[(-0.5, 0.0), (-0.5, 2.0)]), shelf.clone(), plate(&[(0.0, 0.0), (0.0, 2.0)])]);
+        let spaced = equally_spaced(&section).expect("they move");
+        let third = 4.0 / 3.0;
+        check_points(&spaced[0], &[(-2.0 + third, 0.0), (-2.0 + third, 2.0)]);
+        check_points(&spaced[2], &[(2.0 - third, 0.25 * (2.0 - third)), (2.0 - third, 2.0)]);
+        assert_eq!(spaced[1], shelf);
+        assert_eq!(equally_spaced(&trough(spaced)), None, "they stand so already");
+        assert_eq!(equally_spaced(&trough(vec![shelf])), None, "there is none to space");
+    }
+
+    #[test]
+    fn a_drawn_plate_begins_at_its_foot() {
+        let section = trough(vec![]);
+        let points = |from: (f64, f64), to: (f64, f64)| {
+            drawn(&section, Point::new(from.0, from.1), Point::new(to.0, to.1)).points
+        };
+        assert_eq!(points((0.3, 1.7), (0.2, 0.1)), [Point::new(0.2, 0.1), Point::new(0.3, 1.7)]);
+        assert_eq!(points((0.9, 1.0), (-0.5, 1.1)), [Point::new(-0.5, 1.1), Point::new(0.9, 1.0)]);
     }
 
     #[test]

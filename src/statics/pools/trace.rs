@@ -368,7 +368,8 @@ impl<'a> Way<'_, 'a> {
                 }
                 let has_mouth = |b: &&Body| look.basins.all()[b.basin].mouth.is_some() == by_mouth;
                 let room = placed.bodies.iter().filter(|b| !b.lows.is_empty()).filter(has_mouth);
-                let room = room.map(|b| look.capacity_of(b.basin) - b.volume_m3).fold(self.holder.capacity_m3, f64::min);
+                let room =
+                    room.map(|b| look.capacity_of(b.basin) - b.volume_m3).fold(self.holder.capacity_m3, f64::min);
                 // A body that brims but pours elsewhere has no room, and yet nothing leaves.
                 -room.max(1e-15 * self.holder.capacity_m3)
             }
