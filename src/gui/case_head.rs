@@ -2,13 +2,12 @@
 
 use egui::{Align, Popup, PopupCloseBehavior, Rect, Role, Sense, Ui, WidgetInfo, pos2, vec2};
 
-use crate::analysis::Bound;
 use crate::app::Edit;
 use crate::cases::{Accel, AccelUnit, Attitude, LoadCase};
 use crate::units::{Quantity, Unit, number};
 
 use super::number::Number;
-use super::{Command, Desk, board, field, font, formula};
+use super::{Command, Desk, Stage, board, field, font, formula};
 
 const LEVEL: f64 = 0.0;
 
@@ -38,7 +37,7 @@ pub fn case_head_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk) {
     accel_ui(ui, &mut row, desk, i, case.accel);
     attitude_ui(ui, &mut row, desk, i, case.attitude);
     let more = more_ui(ui, inset, desk, i, case);
-    bounds_ui(ui, inset.with_min_x(row.x).with_max_x(more.left() - 20.0), desk);
+    stages_ui(ui, inset.with_min_x(row.x).with_max_x(more.left() - 20.0), desk);
 }
 
 /// A place that moves along a row.
@@ -188,43 +187,45 @@ fn more_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, i: usize, case: &LoadCase) 
     response.rect
 }
 
-/// How the surfaces of both bounds are drawn, and which of them the board shows; a click chooses.
-fn bounds_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk) {
-    let Some(shown) = desk.bound() else { return };
-    let look = desk.look;
+/// The states of the case, where there is more than one, and which of them the board shows; a click chooses.
+fn stages_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk) {
+    let Some(case) = desk.case() else { return };
+    let stages: Vec<Stage> = Stage::of(case).collect();
+    if stages.len() < 2 {
+        return;
+    }
+    let shown = desk.view.stage_of(case);
     let mut right = rect.right();
-    for bound in [Bound::Sealed, Bound::Settled] {
-        let width = text_width(ui, bound.word(), font::body_heavy());
-        let place = rect.with_max_x(right).with_min_x(right - width - 34.0);
+    for stage in stages.into_iter().rev() {
+        // As its surface is drawn.
+        let sample = if stage == Stage::Released { 0.0 } else { 34.0 };
+        let width = text_width(ui, stage.word(), font::body_heavy());
+        let place = rect.with_max_x(right).with_min_x(right - width - sample);
         right = place.left() - 16.0;
         if place.left() < rect.left() {
             return;
         }
-        let response = ui.interact(place, ui.next_auto_id().with(bound.word()), Sense::click());
-        let is_shown = shown == bound;
-        let words = format!("Bound, {}", bound.word());
-        response.widget_info(|| WidgetInfo::selected(Role::RadioButton, true, is_shown, &words));
+        let response = ui.interact(place, ui.next_auto_id().with(stage.word()), Sense::click());
+        let is_shown = shown == stage;
+        let spoken = format!("State shown, {}", stage.word());
+        response.widget_info(|| WidgetInfo::selected(Role::RadioButton, true, is_shown, &spoken));
         let y = ui.painter().round_to_pixel_center(place.center().y);
         let ends = [pos2(place.left(), y), pos2(place.left() + 26.0, y)];
-        if is_shown {
-            ui.painter().line_segment(ends, (1.9, look.ink));
-        } else {
-            board::paint_other_bound(ui.painter(), ends, look);
+        match (sample > 0.0, is_shown) {
+            (true, true) => {
+                ui.painter().line_segment(ends, (1.9, desk.look.ink));
+            }
+            (true, false) => board::paint_other_bound(ui.painter(), ends, desk.look),
+            _ => {}
         }
-        let (font, color) = if is_shown { (font::body_heavy(), look.ink) } else { (font::body(), look.accent) };
-        let text = place.with_min_x(place.left() + 34.0).expand2(vec2(0.5, 0.0));
-        field::paint_fitting(ui, text, Align::Min, bound.word(), font, color);
-        super::marks::paint_focus(ui.painter(), place, &response, look);
-        if response.on_hover_text(bound_words(bound)).clicked() {
-            desk.view.bound = Some(bound);
+        let (font, color) =
+            if is_shown { (font::body_heavy(), desk.look.ink) } else { (font::body(), desk.look.accent) };
+        let text = place.with_min_x(place.left() + sample).expand2(vec2(0.5, 0.0));
+        field::paint_fitting(ui, text, Align::Min, stage.word(), font, color);
+        super::marks::paint_focus(ui.painter(), place, &response, desk.look);
+        if response.on_hover_text(stage.words()).clicked() {
+            desk.view.stage = Some(stage);
         }
-    }
-}
-
-fn bound_words(bound: Bound) -> &'static str {
-    match bound {
-        Bound::Settled => "Levels have evened out through the openings",
-        Bound::Sealed => "Nothing passes the openings during the event",
     }
 }
 

@@ -2,7 +2,7 @@
 
 use std::sync::Arc;
 
-use crate::analysis::{Bound, Results};
+use crate::analysis::{CaseResult, Results};
 use crate::app::{Derived, Document, Edit};
 use crate::study::{Study, ValidStudy};
 use crate::units::{Measure, Quantity, Unit, UnitSystem};
@@ -36,10 +36,9 @@ impl<'a> Desk<'a> {
         }
     }
 
-    /// The bound that the board shows of the chosen case; none where openings do not make two of them.
-    pub fn bound(&self) -> Option<Bound> {
-        let case = self.judged()?.results.cases.get(self.view.case_idx)?;
-        self.view.bound_of(case)
+    /// The chosen case, judged.
+    pub fn case(&self) -> Option<&'a CaseResult> {
+        self.judged()?.results.cases.get(self.view.case_idx)
     }
 
     /// Proposes a change of the document.

@@ -1,11 +1,11 @@
 //! View state, and what panels propose. Nothing here is part of the document.
 
-use crate::analysis::{Bound, CaseResult};
+use crate::analysis::CaseResult;
 use crate::app::Edit;
 use crate::geom::Point;
 use crate::units::UnitSystem;
 
-use super::{Command, Selected};
+use super::{Command, Selected, Stage};
 
 /// What is chosen, how it is shown. Panels may change it in place.
 #[derive(Clone, Debug, Default, PartialEq)]
@@ -16,8 +16,8 @@ pub struct View {
     pub selected: Option<Selected>,
     /// The verdict whose working is open: (case, verdict).
     pub open_verdict: Option<(usize, usize)>,
-    /// The bound that the board shows; none: that of the open verdict, else the settled one.
-    pub bound: Option<Bound>,
+    /// The state of the case that the board shows; none: that of the open verdict's bound, else the settled one.
+    pub stage: Option<Stage>,
     /// Units shown.
     pub units: UnitSystem,
     /// Board camera: points a metre, and the section point in the middle; none until first fitted.
@@ -29,12 +29,12 @@ pub struct View {
 }
 
 impl View {
-    /// The bound that the board shows of a case; none where openings do not make two of them.
-    pub fn bound_of(&self, case: &CaseResult) -> Option<Bound> {
-        case.sealed.as_ref()?;
+    /// The state that the board shows of a case.
+    pub fn stage_of(&self, case: &CaseResult) -> Stage {
         let open = self.open_verdict.filter(|(case_idx, _)| *case_idx == self.case_idx);
         let verdict = open.and_then(|(_, verdict_idx)| case.verdicts.get(verdict_idx));
-        Some(self.bound.or(verdict.and_then(|v| v.bound)).unwrap_or(Bound::Settled))
+        let wishes = [self.stage, verdict.and_then(|v| v.bound).map(Stage::Under)];
+        wishes.into_iter().flatten().find(|stage| stage.state(case).is_some()).unwrap_or_default()
     }
 }
 

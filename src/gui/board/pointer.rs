@@ -3,10 +3,10 @@
 
 use egui::{CursorIcon, Id, Key, Modifiers, PointerButton, Pos2, Response, Ui};
 
-use crate::analysis::{self, Bound};
+use crate::analysis;
 use crate::app::Edit;
 use crate::geom::Point;
-use crate::gui::{Proposal, View, plating};
+use crate::gui::{Proposal, Stage, View, plating};
 
 use super::anchors::grid_snapper;
 use super::bob::Dial;
@@ -154,9 +154,9 @@ fn hover(
         | None => target.map(|t| t.words(scene).split(", s ").next().unwrap_or_default().to_lowercase()),
         Some(t) => Some(t.words(scene)),
     };
-    let bound = scene.case().and_then(|case| view.bound_of(case)).unwrap_or(Bound::Settled);
+    let stage = scene.case().map(|case| view.stage_of(case)).unwrap_or_default();
     let on = what.map(|w| format!("on {w}")).unwrap_or_default();
-    view.status = status(&status(&place_words(p, scene), &pressure_words(p, scene, bound)), &on);
+    view.status = status(&status(&place_words(p, scene), &pressure_words(p, scene, stage)), &on);
     if canvas.double_clicked() {
         match target {
             Some(Target::Edge(i) | Target::Middle(i)) => out.push(Proposal::Edit(split(scene, i, pos, keys))),
@@ -202,7 +202,8 @@ fn held_target(drag: &Drag) -> Option<Target> {
 }
 
 /// Gage pressure under the pointer, where there is liquid.
-fn pressure_words(p: Point, scene: &Scene, bound: Bound) -> String {
+fn pressure_words(p: Point, scene: &Scene, stage: Stage) -> String {
+    let Stage::Under(bound) = stage else { return String::new() };
     let pressure = scene
         .judged
         .and_then(|(study, results)| analysis::gage_pressure_at(study, results.cases.get(scene.case_idx)?, bound, p));

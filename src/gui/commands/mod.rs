@@ -12,7 +12,7 @@ use super::View;
 
 use when::{
     always, can_delete, can_redo, can_save, can_undo, has_case, has_case_after, has_case_before, has_cases,
-    has_openings, has_plate, has_spaced_plates,
+    has_plate, has_spaced_plates, has_stages,
 };
 
 /// Something that the user can ask for from a menu or with a key.
@@ -46,8 +46,8 @@ pub enum Command {
     DeleteSelected,
     /// Show the whole section.
     FitBoard,
-    /// The board shows the other bound.
-    OtherBound,
+    /// The board shows the next state of the case: under the other bound, or released.
+    NextStage,
     /// Units shown.
     Units(UnitSystem),
     /// Light, dark, or as the system says.
@@ -184,12 +184,12 @@ pub const TABLE: &[Row] = &[
         always,
     ),
     row(
-        Command::OtherBound,
+        Command::NextStage,
         Menu::View,
-        "Show the other bound",
+        "Show the next state",
         on(Modifiers::NONE, Key::B),
-        "Settled: levels have evened out through the openings. Sealed: nothing passes them",
-        has_openings,
+        "Settled: levels have evened out through the openings. Sealed: nothing passes them. Released: back at rest",
+        has_stages,
     ),
     row(
         Command::ResetSizes,

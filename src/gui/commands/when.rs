@@ -1,7 +1,7 @@
 //! When a command can be used.
 
-use crate::app::Document;
-use crate::gui::{Selected, View, plating};
+use crate::app::{Derived, Document};
+use crate::gui::{Selected, Stage, View, plating};
 
 pub(super) fn always(_: &Document, _: &View) -> bool {
     true
@@ -27,8 +27,9 @@ pub(super) fn has_plate(_: &Document, view: &View) -> bool {
     view.selected.and_then(Selected::plate).is_some()
 }
 
-pub(super) fn has_openings(doc: &Document, _: &View) -> bool {
-    doc.study().section.plates.iter().any(|plate| !plate.openings.is_empty())
+pub(super) fn has_stages(doc: &Document, view: &View) -> bool {
+    let Derived::Judged { results, .. } = doc.derived() else { return false };
+    results.cases.get(view.case_idx).is_some_and(|case| Stage::of(case).count() > 1)
 }
 
 pub(super) fn has_spaced_plates(doc: &Document, _: &View) -> bool {

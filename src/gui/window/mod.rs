@@ -9,7 +9,7 @@ use std::time::Instant;
 
 use egui::{CursorIcon, Sense, Ui, UiBuilder, ViewportCommand};
 
-use crate::analysis::{Bound, State};
+use crate::analysis::State;
 use crate::app::{Derived, Document, Edit};
 use crate::cases::{Accel, Attitude, LoadCase};
 use crate::study::Study;
@@ -22,7 +22,7 @@ use super::problems::{self, FileTrouble};
 use super::settings::Settings;
 use super::tank::TankColumn;
 use super::verdicts::VerdictColumn;
-use super::{Command, Desk, Look, Pen, Proposal, Selected, View};
+use super::{Command, Desk, Look, Pen, Proposal, Selected, Stage, View};
 use super::{
     board, case_head, commands, header, loads, look, plating, plots, starter, status, strip, tank, verdicts,
 };
@@ -146,7 +146,7 @@ impl Window {
             }
             Command::DeleteSelected => self.delete_selected(),
             Command::FitBoard => self.view.camera = None,
-            Command::OtherBound => self.show_other_bound(),
+            Command::NextStage => self.show_next_stage(),
             Command::ResetSizes => self.settings.sizes = Default::default(),
             Command::Units(units) => {
                 self.view.units = units;
@@ -329,14 +329,12 @@ impl Window {
         }
     }
 
-    fn show_other_bound(&mut self) {
+    fn show_next_stage(&mut self) {
         let Derived::Judged { results, .. } = self.doc.derived() else { return };
-        let shown = results.cases.get(self.view.case_idx).and_then(|case| self.view.bound_of(case));
-        self.view.bound = match shown {
-            Some(Bound::Settled) => Some(Bound::Sealed),
-            Some(Bound::Sealed) => Some(Bound::Settled),
-            None => self.view.bound,
-        };
+        let Some(case) = results.cases.get(self.view.case_idx) else { return };
+        let shown = self.view.stage_of(case);
+        let following = Stage::of(case).skip_while(|stage| *stage != shown).nth(1);
+        self.view.stage = following.or_else(|| Stage::of(case).next());
     }
 
     fn duplicate_plate(&mut self) {

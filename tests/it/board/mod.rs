@@ -103,7 +103,7 @@ fn view() -> View {
         case_idx: 0,
         selected: None,
         open_verdict: None,
-        bound: None,
+        stage: None,
         units: UnitSystem::Si,
         camera: None,
         pen: None,

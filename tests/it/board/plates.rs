@@ -277,3 +277,19 @@ fn the_sump_and_compartments_are_put_where_the_menu_was_called_and_dragged() {
     drag(&mut board, from, to);
     assert_eq!(board.state().doc.study().compartments[0].at, Point::new(0.3, 0.7));
 }
+
+#[test]
+fn plates_are_spaced_equally_in_one_step() {
+    let mut board = open(plated(&[&[(0.4, 0.0), (0.4, 0.6)], &[(0.7, 0.0), (0.7, 0.9)]]));
+    let before = board.state().doc.study().clone();
+    let pos = at(&board, 0.4, 0.3);
+    menu(&mut board, pos, "Space the plates equally");
+    // Bays of 2/3 m in a tank of 2 m.
+    for (plate_idx, s, top) in [(0, -1.0 / 3.0, 0.6), (1, 1.0 / 3.0, 0.9)] {
+        for (got, want) in points(&board, plate_idx).into_iter().zip([(s, 0.0), (s, top)]) {
+            check_near(got, want, "a corner");
+        }
+    }
+    board.state_mut().doc.undo();
+    assert_eq!(*board.state().doc.study(), before);
+}

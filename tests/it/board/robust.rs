@@ -1,7 +1,6 @@
 //! Any study in any window, and a wild hand.
 
-use brimwright::analysis::Bound;
-use brimwright::gui::Pen;
+use brimwright::gui::{Pen, Stage};
 use brimwright::section::{Opening, OpeningShape, Panel, Plate};
 use egui::{Event, Key, Modifiers, PointerButton, RawInput, Rect};
 use proptest::prelude::*;
@@ -72,7 +71,7 @@ proptest! {
         (width, height) in (0.0..2000.0_f32, 0.0..1200.0_f32),
         camera in prop::option::of((-2.0..6.0_f32, -20.0..20.0_f64, -20.0..20.0_f64)),
         (case_idx, selected, pointer) in (0..5_usize, 0..13_usize, (0.0..1.0_f32, 0.0..1.0_f32)),
-        (bound, has_pen) in (prop::option::of(prop_oneof![Just(Bound::Settled), Just(Bound::Sealed)]), any::<bool>()),
+        (stage, has_pen) in (prop::option::of(prop::sample::select(Stage::ALL.to_vec())), any::<bool>()),
     ) {
         let mut desk = Desk { doc: Document::new(study.clone(), None), view: view() };
         desk.view.case_idx = case_idx;
@@ -82,7 +81,7 @@ proptest! {
             Selected::ObstacleVertex(0, 1), Selected::Point(0), Selected::Bob, Selected::Plate(case_idx),
             Selected::PlatePoint(0, case_idx), Selected::Opening(0, case_idx), Selected::Compartment(0), Selected::Sump,
         ].get(selected).copied();
-        desk.view.bound = bound;
+        desk.view.stage = stage;
         desk.view.pen = has_pen.then(Pen::default);
         desk.view.camera = camera.map(|(exponent, s, z)| Camera { points_per_m: 10f32.powf(exponent), center_m: [s, z] });
         let ctx = egui::Context::default();

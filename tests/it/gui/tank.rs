@@ -194,3 +194,47 @@ fn extent(harness: &Driven) -> (f64, f64) {
     let zs = || doc(harness).study().section.outline.iter().map(|e| e.start.y);
     (zs().fold(f64::INFINITY, f64::min), zs().fold(f64::NEG_INFINITY, f64::max))
 }
+
+#[test]
+fn plates_are_spaced_equally_from_the_column_and_by_command() {
+    for is_by_command in [true, false] {
+        let mut harness = plain_box();
+        press(&mut harness, "Add a plate");
+        type_into(&mut harness, "Foot, s", "300");
+        type_into(&mut harness, "Top, s", "300");
+        let before = doc(&harness).study().clone();
+        match is_by_command {
+            true => run(&mut harness, Command::SpacePlates),
+            false => press(&mut harness, "Space them equally"),
+        }
+        let s: Vec<f64> = plate(&harness).points.iter().map(|p| p.x).collect();
+        assert_eq!(s, [0.0, 0.0], "in the middle of the box");
+        assert!(harness.query_by_label("Space them equally").is_none(), "there is nothing left to space");
+        run(&mut harness, Command::Undo);
+        assert_eq!(*doc(&harness).study(), before);
+    }
+}
+
+#[test]
+fn the_board_shows_each_state_that_a_case_has() {
+    use brimwright::gui::Stage;
+    let mut harness = plain_box();
+    let stage = |harness: &Driven| {
+        let Derived::Judged { results, .. } = doc(harness).derived() else { panic!("the box is sound") };
+        let view = harness.state().as_ref().unwrap().view();
+        view.stage_of(&results.cases[view.case_idx])
+    };
+    assert!(harness.query_by_label("State shown, sealed").is_none(), "without plates there is one state");
+    press(&mut harness, "Add a plate");
+    press(&mut harness, "Add an opening");
+    press(&mut harness, "State shown, sealed");
+    assert_eq!(stage(&harness), Stage::ALL[1]);
+    press(&mut harness, "More of this case");
+    press(&mut harness, "Then released");
+    harness.key_press(Key::Escape);
+    harness.run();
+    press(&mut harness, "State shown, released");
+    assert_eq!(stage(&harness), Stage::Released);
+    run(&mut harness, Command::NextStage);
+    assert_eq!(stage(&harness), Stage::ALL[0], "round again");
+}

@@ -10,6 +10,7 @@ mod pool;
 
 use crate::analysis::{Bound, CaseResult, Chord, Results, Settled, Verdict};
 use crate::geom::{Edge, Point, Vec2};
+use crate::gui::Stage;
 use crate::problem::{Place, Problem};
 use crate::section::EdgeKind;
 use crate::study::{Study, ValidStudy};
@@ -33,8 +34,8 @@ pub struct Shown {
     pub case_idx: usize,
     /// The verdict of that case whose working is open.
     pub open_verdict: Option<usize>,
-    /// The bound, where openings make two of them.
-    pub bound: Option<Bound>,
+    /// The state of it.
+    pub stage: Stage,
     /// The plate that is chosen.
     pub plate_idx: Option<usize>,
 }
@@ -115,10 +116,9 @@ impl BoardModel {
         model.still_z_m = Some(results.still.level_z_m);
         let Some(case) = results.cases.get(shown.case_idx) else { return model };
         let verdict = shown.open_verdict.and_then(|i| case.verdicts.get(i));
-        let bound = shown.bound.unwrap_or(Bound::Settled);
-        let up = case.gravity.up.unwrap_or(Vec2::y());
-        match case.state(bound) {
-            Some(Ok(state)) => model.show_state(inputs, case, bound, state, detail),
+        let up = shown.stage.up(case).unwrap_or(Vec2::y());
+        match shown.stage.state(case) {
+            Some(Ok(state)) => model.show_state(inputs, case, shown.stage, state, detail),
             Some(Err(reason)) => {
                 model.not_judged = Some(reason.clone());
                 model.not_judged_liquid = model.still_liquid(results.still.level_z_m);
@@ -129,7 +129,7 @@ impl BoardModel {
         if let Some(verdict) = verdict {
             model.governs = model.governing(verdict);
         }
-        if let Some(Ok(state)) = case.state(bound) {
+        if let Some(Ok(state)) = shown.stage.state(case) {
             model.show_loads(inputs, verdict, shown.plate_idx, state);
         }
         model.brims = brims(study, up, model.freeboard.map(|f| f.brim));
@@ -225,15 +225,19 @@ impl BoardModel {
         line.filter(|points| points.len() > 1).cloned().into_iter().collect()
     }
 
-    fn show_state(&mut self, study: &Study, case: &CaseResult, bound: Bound, state: &Settled, detail: Detail) {
-        let up = case.gravity.up.unwrap_or(Vec2::y());
+    fn show_state(&mut self, study: &Study, case: &CaseResult, stage: Stage, state: &Settled, detail: Detail) {
+        let up = stage.up(case).unwrap_or(Vec2::y());
         let pool = |pool| Pool::new(pool, up, study.ullage_gage_pa, self.tints, detail.sagitta_m);
         self.pools = state.pools.iter().map(pool).collect();
-        let other = if bound == Bound::Settled { Bound::Sealed } else { Bound::Settled };
-        if let Some(Ok(other)) = case.state(other) {
+        let other = match stage {
+            Stage::Under(Bound::Settled) => case.state(Bound::Sealed),
+            Stage::Under(Bound::Sealed) => case.state(Bound::Settled),
+            Stage::Released => None,
+        };
+        if let Some(Ok(other)) = other {
             self.other_surface = other.pools.iter().flat_map(|pool| pool.surface.clone()).collect();
         }
-        if bound == Bound::Settled {
+        if stage == Stage::Under(Bound::Settled) {
             self.sills = case.pours.iter().map(Sill::new).collect();
         }
         self.centroid = Some(state.centroid);

@@ -48,7 +48,7 @@ fn bands_add_up_to_the_liquid_of_every_demo() {
         let tolerance = detail(&study).sagitta_m * perimeter;
         for (case_idx, case) in results.cases.iter().enumerate() {
             for (bound, state) in case.states() {
-                let shown = Shown { case_idx, bound: Some(bound), ..Default::default() };
+                let shown = Shown { case_idx, stage: Stage::Under(bound), ..Default::default() };
                 let model = BoardModel::judged(&study, &results, shown, detail(&study));
                 assert_eq!(model.pools.len(), state.pools.len());
                 for (drawn, pool) in model.pools.iter().zip(&state.pools) {
@@ -78,7 +78,7 @@ fn bands_add_up_to_the_liquid_of_every_demo() {
 fn each_pool_is_drawn_in_its_own_cell_and_the_other_bound_as_lines() {
     let study = divided_box(2.0).validate().expect("the box is sound");
     let results = analysis::run(&study);
-    let shown = |bound| Shown { bound: Some(bound), ..Default::default() };
+    let shown = |bound| Shown { stage: Stage::Under(bound), ..Default::default() };
     let sealed = BoardModel::judged(&study, &results, shown(Bound::Sealed), detail(&study));
     assert_eq!((sealed.pools.len(), sealed.other_surface.len()), (2, 2), "one surface, cut by the plate");
     let s = study.study().section.plates[0].points[0].x;
@@ -101,7 +101,7 @@ fn the_prism_of_a_plate_is_as_high_as_the_levels_differ() {
     let a = 2.0;
     let study = divided_box(a).validate().expect("the box is sound");
     let results = analysis::run(&study);
-    let shown = |bound, plate_idx| Shown { bound: Some(bound), plate_idx, ..Default::default() };
+    let shown = |bound, plate_idx| Shown { stage: Stage::Under(bound), plate_idx, ..Default::default() };
     let model = |bound, plate_idx| BoardModel::judged(&study, &results, shown(bound, plate_idx), detail(&study));
     assert!(model(Bound::Sealed, None).prisms.is_empty(), "no plate is chosen");
     let settled = model(Bound::Settled, Some(0)).prisms;
