@@ -47,7 +47,13 @@ pub fn paint_liquid(painter: &Painter, screen: &Screen, model: &BoardModel, pens
             Tint::AboveScale => look.band(n - 1, n),
             Tint::NotJudged => look.line2,
         };
-        band.strips.iter().for_each(|strip| fill(&mut mesh, screen, strip, color));
+        for strip in &band.strips {
+            fill(&mut mesh, screen, strip, color);
+            // A small drawing may be faded, and then seams show; gaps do not.
+            if pens.isobar > 0.0 {
+                fill_seams(&mut mesh, screen, strip, color);
+            }
+        }
     }
     painter.add(mesh);
     for band in model.bands().filter(|b| b.tint == Tint::AboveScale) {
@@ -86,7 +92,11 @@ pub fn paint_pool(painter: &Painter, scene: &Scene, pool: &Pool, look: &Look) {
     let unit = Quantity::Volume.unit_near(scene.units, pool.volume_m3);
     let words = format!("{} {}", number(unit.from_si(pool.volume_m3), 4), unit.symbol);
     let text = painter.layout_no_wrap(words, font::body_heavy(), look.accent);
-    let rect = Align2::CENTER_CENTER.anchor_size(scene.at(pool.centroid), text.size());
+    let mut at = scene.at(pool.centroid);
+    if scene.model.centroid.is_some_and(|p| (scene.at(p) - at).length() < 24.0) {
+        at.y += 24.0;
+    }
+    let rect = Align2::CENTER_CENTER.anchor_size(at, text.size());
     painter.rect_filled(rect.expand2(egui::vec2(4.0, 1.0)), 0.0, look.board);
     painter.galley(rect.min, text, look.accent);
 }
@@ -198,13 +208,18 @@ fn post(mouth: &[Pos2], end: usize, pens: Pens) -> Pos2 {
 }
 
 fn fill(mesh: &mut Mesh, screen: &Screen, strip: &Strip, color: Color32) {
-    let rows: Vec<[Pos2; 2]> =
-        strip.left.iter().zip(&strip.right).map(|(l, r)| [*l, *r].map(|p| screen.screen_from_section(p))).collect();
+    let rows = strip.left.iter().zip(&strip.right).map(|(l, r)| [*l, *r].map(|p| screen.screen_from_section(p)));
+    let rows: Vec<[Pos2; 2]> = rows.collect();
     rows.windows(2).for_each(|pair| quad(mesh, pair[0], pair[1], color));
-    // Where strips part, the end of one lies within the side of another: rounding would leave gaps.
-    for [left, right] in rows.first().into_iter().chain(rows.last()) {
-        let across = (*right - *left).normalized().rot90() * 0.5;
-        quad(mesh, [*left - across, *right - across], [*left + across, *right + across], color);
+}
+
+/// Where strips part, the end of one lies within the side of another, and rounding leaves gaps: a pixel over each.
+fn fill_seams(mesh: &mut Mesh, screen: &Screen, strip: &Strip, color: Color32) {
+    let last = strip.left.len().saturating_sub(1);
+    for (left, right) in [0, last].into_iter().filter_map(|i| strip.left.get(i).zip(strip.right.get(i))) {
+        let [left, right] = [*left, *right].map(|p| screen.screen_from_section(p));
+        let across = (right - left).normalized().rot90() * 0.5;
+        quad(mesh, [left - across, right - across], [left + across, right + across], color);
     }
 }
 

@@ -75,7 +75,7 @@ pub struct BoardModel {
     pub pools: Vec<Pool>,
     /// Liquid whose pressure is not known.
     pub not_judged_liquid: Vec<Band>,
-    /// Surfaces under the other bound.
+    /// Surfaces under the other bound; after a release, those before it.
     pub other_surface: Vec<Chord>,
     /// Sills that liquid went over on the way.
     pub sills: Vec<Sill>,
@@ -125,7 +125,9 @@ impl BoardModel {
             }
             None => {}
         }
-        model.freeboard = freeboard(case, results.still.level_z_m);
+        if shown.stage != Stage::Released {
+            model.freeboard = freeboard(case, results.still.level_z_m);
+        }
         if let Some(verdict) = verdict {
             model.governs = model.governing(verdict);
         }
@@ -231,8 +233,7 @@ impl BoardModel {
         self.pools = state.pools.iter().map(pool).collect();
         let other = match stage {
             Stage::Under(Bound::Settled) => case.state(Bound::Sealed),
-            Stage::Under(Bound::Sealed) => case.state(Bound::Settled),
-            Stage::Released => None,
+            Stage::Under(Bound::Sealed) | Stage::Released => case.state(Bound::Settled),
         };
         if let Some(Ok(other)) = other {
             self.other_surface = other.pools.iter().flat_map(|pool| pool.surface.clone()).collect();
