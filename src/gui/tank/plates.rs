@@ -6,6 +6,7 @@ use crate::app::Edit;
 use crate::geom::Point;
 use crate::gui::number::Number;
 use crate::gui::{Command, Desk, Selected, field, font, plating};
+use crate::material;
 use crate::section::{Panel, PanelEdges, Plate};
 use crate::units::{Measure, Quantity};
 
@@ -110,6 +111,11 @@ fn plate_fields_ui(ui: &mut Ui, desk: &mut Desk, i: usize, plate: &Plate) {
     field::text_row_ui(ui, desk, ("plate material", i), "Material", &plate.material, |name| {
         with(&|p| p.material = name.clone())
     });
+    let mut rows: Vec<(Option<&str>, &str)> = vec![(None, "choose")];
+    rows.extend(material::table().iter().map(|m| (Some(m.name.as_str()), m.name.as_str())));
+    if let Some(Some(name)) = field::choice_row_ui(ui, desk.look, "From the table", None, &rows) {
+        desk.edit(with(&|p| p.material = name.to_owned()));
+    }
     let panel = plate.panel;
     Number::new(("plate stiffeners", i), "Stiffener spacing", 0.0, length)
         .or_none(panel.stiffener_spacing_m)

@@ -63,14 +63,15 @@ fn a_plate_is_added_from_wall_to_wall_and_typed_exactly() {
     }
     type_text(&mut harness, "Plate 1, Bulkhead", "Material", "steel");
     choose(&mut harness, "Edges, simply supported", "clamped");
+    choose(&mut harness, "From the table, choose", "structural steel S235");
     let typed = plate(&harness);
     let got: Vec<(f64, f64)> = typed.points.iter().map(|p| (p.x, p.y)).collect();
     assert_eq!(got, [(-0.2, low), (-0.25, 0.6)]);
     assert_eq!((typed.thickness_m, typed.corrosion_m), (0.008, 0.001));
-    assert_eq!((typed.name.as_str(), typed.material.as_str()), ("Bulkhead", "steel"));
+    assert_eq!((typed.name.as_str(), typed.material.as_str()), ("Bulkhead", "structural steel S235"));
     assert_eq!((typed.panel.stiffener_spacing_m, typed.panel.edges), (Some(0.4), PanelEdges::Clamped));
-    // One step each: the plate, two texts, six numbers, the choice.
-    for _ in 0..10 {
+    // One step each: the plate, two texts, six numbers, two choices.
+    for _ in 0..11 {
         assert_ne!(*doc(&harness).study(), before);
         run(&mut harness, Command::Undo);
     }
