@@ -27,7 +27,13 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("scenario", &["units", "problem", "geom", "section", "liquid", "cases", "study"]),
     ("report", &["units", "sources", "problem", "geom", "section", "liquid", "cases", "study", "analysis"]),
     ("app", &["problem", "geom", "section", "liquid", "cases", "study", "analysis", "scenario"]),
-    ("gui", &["units", "problem", "geom", "section", "liquid", "cases", "study", "analysis", "scenario", "app"]),
+    (
+        "gui",
+        &[
+            "units", "problem", "geom", "section", "liquid", "material", "cases", "study", "analysis", "scenario",
+            "app",
+        ],
+    ),
     ("cli", &["units", "problem", "study", "analysis", "report", "app", "gui"]),
 ];
 
