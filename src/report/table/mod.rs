@@ -17,6 +17,7 @@ use super::{CAUTION, Counts, Report};
 pub fn text(report: &Report, units: UnitSystem) -> String {
     let mut table = Table { report, units, lines: Lines::default() };
     table.head();
+    table.layout();
     for (n, input, case) in report.cases() {
         table.case(n, input, case);
     }
