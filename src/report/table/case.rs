@@ -150,7 +150,7 @@ impl Table<'_> {
             .flat_map(|(name, state)| state.gas.iter().map(move |pocket| (name, pocket)))
             .map(|(name, pocket)| {
                 let volume = self.measure(Quantity::Volume, pocket.volume_m3);
-                format!("{name}, {volume} in {} reach no mouth", self.report.cell_name(pocket.cell_idx))
+                format!("{name}: {volume} in {} touches no mouth", self.report.cell_name(pocket.cell_idx))
             })
             .collect()
     }
