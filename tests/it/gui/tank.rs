@@ -127,8 +127,8 @@ fn a_compartment_has_its_own_fill_and_liquid() {
     let mut harness = plain_box();
     press(&mut harness, "Add a plate");
     press(&mut harness, "Add a compartment");
-    type_into(&mut harness, "A point inside, s", "300");
     type_into(&mut harness, "A point inside, z", "150");
+    type_into(&mut harness, "A point inside, s", "300");
     choose(&mut harness, "Filled by, share", "still level");
     type_into(&mut harness, "Own still level, z", "400");
     press(&mut harness, "A liquid of its own");
