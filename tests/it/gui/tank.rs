@@ -239,3 +239,17 @@ fn the_board_shows_each_state_that_a_case_has() {
     run(&mut harness, Command::NextStage);
     assert_eq!(stage(&harness), Stage::ALL[0], "round again");
 }
+
+/// A plate in the middle of a box of 2 m by 1 m by 1 m, half full: two cells of 1 m3 that hold half of it.
+#[test]
+fn cells_are_listed_with_what_they_hold() {
+    let mut harness = plain_box();
+    press(&mut harness, "Add a plate");
+    for number in [1, 2] {
+        let label = format!("Cell {number}, ");
+        let node = harness.get_all_by_label_contains(&label).next().expect("a row");
+        let spoken = node.accesskit_node().label().unwrap_or_default();
+        let want = "still 0.500 m³, capacity 1.00 m³, area 1.00 m²";
+        assert!(spoken.ends_with(want), "{spoken:?}, expected {want:?}");
+    }
+}
