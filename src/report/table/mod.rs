@@ -103,7 +103,7 @@ mod tests {
     #[test]
     fn a_verdict_reads_state_criterion_used_demand_and_limit() {
         let want = "   fails       Wall pressure     1.03  9.30 kPa, at most 9.00 kPa
-               rim, right end · own derivation, brim path
+               rim, right end · own derivation, pour-over
                trust 4 of 5 inside, near: depth to length
                To hold, fill 78.6 %
                rests on an unconfirmed record: Tray wall
@@ -160,7 +160,7 @@ mod tests {
 ",
             "   poured    0.0300 m³ to the right over sill at s 500.0 mm, z 700.0 mm\n",
             "   trapped   after the release 0.0200 m³ more in cell 2 than before\n",
-            "               rim, right end · sealed bound · own derivation, brim path\n",
+            "               rim, right end · sealed bound · own derivation, pour-over\n",
         ] {
             assert!(text.contains(want), "want\n{want}in\n{text}");
         }
