@@ -1,6 +1,7 @@
 //! The one facade: a valid study in, results out. Pure: no files, no clock, no screen.
 
 mod cells;
+mod compartments;
 mod curves;
 mod results;
 mod ways;
@@ -11,7 +12,7 @@ use crate::cases::LoadCase;
 use crate::criteria::{self, Context, Standing, View};
 use crate::geom::{Point, Vec2};
 use crate::plates::dividers;
-use crate::statics::{Body, Rims, Setting, Stop, pressure_at, settle};
+use crate::statics::{Body, Rims, Setting, Stop, pressure_at, settle, spills};
 use crate::study::ValidStudy;
 use crate::units::{Measure, Quantity, number};
 
@@ -67,6 +68,7 @@ pub fn run(study: &ValidStudy) -> Results {
             highest_share: holds.map(|v| v.min(common_capacity) / common_capacity),
         },
         cells,
+        compartments: compartments::compartments(study),
         layout,
         cases,
         pressure_scale_pa: nice_scale(highest_pa),
@@ -140,6 +142,10 @@ fn judge_case(
     let context = Context { study, case, accel: course.accel, gravity, still_z_m, views };
     let Outcome { verdicts, absent } = criteria::judge(&context);
     let released = case.release.then(|| settle_released(study, course));
+    let trapped = match (&released, course.ramp) {
+        (Some(Ok(released)), Some(ramp)) => compartments::trapped(study, &ramp, released),
+        _ => Vec::new(),
+    };
     let pours = course.ways.first().and_then(|w| w.as_ref()).and_then(|w| w.stop.as_ref());
     let pours = pours.map_or(Vec::new(), |stop| stop.pours.clone());
     let mut states = states.into_iter();
@@ -151,6 +157,7 @@ fn judge_case(
         settled,
         sealed: states.next(),
         released,
+        trapped,
         routes: bounds.iter().enumerate().map(|(b, &bound)| (bound, route(course, b))).collect(),
         pours,
         verdicts,
@@ -198,9 +205,10 @@ fn settle_released(study: &ValidStudy, course: &Course) -> Result<Settled, Strin
 
 fn settle_at(study: &ValidStudy, bound_idx: usize, stop: &Stop, gravity_m_per_s2: f64) -> Settled {
     let inputs = study.study();
+    let holder = ways::holder(study, ways::bounds(study)[bound_idx]);
     let points: Vec<(&str, Point)> = inputs.points.iter().map(|p| (p.name.as_str(), p.at)).collect();
     let setting = Setting {
-        spilled_m3: stop.spilled.iter().map(|s| s.volume_m3).fold(0.0, |a, b| a + b),
+        spills: &spills(&holder, study.mouths(), &stop.spilled),
         gravity_m_per_s2,
         density_kg_per_m3: &|compartment| study.liquid_of(compartment).density_kg_per_m3,
         gas_pa: inputs.ullage_gage_pa,
@@ -208,7 +216,7 @@ fn settle_at(study: &ValidStudy, bound_idx: usize, stop: &Stop, gravity_m_per_s2
         moment_about: inputs.moment_about,
         points: &points,
     };
-    let look = ways::holder(study, ways::bounds(study)[bound_idx]).look(stop.up);
+    let look = holder.look(stop.up);
     settle(&inputs.section, study.region(), &look, &stop.bodies, &setting)
 }
 

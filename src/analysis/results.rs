@@ -8,8 +8,8 @@ pub use crate::criteria::{
 };
 pub use crate::plates::Cell;
 pub use crate::statics::{
-    Bound, Chord, EdgeLoad, EffectiveGravity, GasPocket, PlateLoad, PointPressure, Pool, Pour, RoofContact, Route,
-    Settled, Stretch,
+    Bound, Chord, EdgeLoad, EffectiveGravity, GasPocket, MouthSpill, PlateLoad, PointPressure, Pool, Pour,
+    RoofContact, Route, Settled, Stretch,
 };
 
 /// The tank standing level and at rest, and the fill in every way of giving it.
@@ -48,6 +48,8 @@ pub struct CaseResult {
     pub sealed: Option<Result<Settled, String>>,
     /// After the release back to rest, where the case asks for it; under the settled bound.
     pub released: Option<Result<Settled, String>>,
+    /// What stays trapped behind sills after the release; empty where nothing does.
+    pub trapped: Vec<Trapped>,
     /// How the liquid comes to it, under each bound.
     pub routes: Vec<(Bound, Route)>,
     /// What went over sills on the way, under the settled bound.
@@ -79,6 +81,24 @@ impl CaseResult {
     }
 }
 
+/// A tight part of the section.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Compartment {
+    /// As shown.
+    pub name: String,
+    /// Its entry in the study, where it has a fill of its own.
+    pub own_idx: Option<usize>,
+}
+
+/// Liquid that a cell holds after a release beyond what it held at rest before.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Trapped {
+    /// Which cell.
+    pub cell_idx: usize,
+    /// How much more, m3.
+    pub volume_m3: f64,
+}
+
 /// Results of a study.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Results {
@@ -88,6 +108,8 @@ pub struct Results {
     pub still: Still,
     /// The cells between walls and plates.
     pub cells: Vec<Cell>,
+    /// The compartments: cells that openings join.
+    pub compartments: Vec<Compartment>,
     /// The layout of plates, judged once for the tank standing level and at rest; worst first.
     pub layout: Outcome,
     /// One a load case, in the study's order.

@@ -22,7 +22,7 @@ pub use gas::{GasPocket, gas_pockets};
 pub use gravity::{EffectiveGravity, effective_gravity};
 pub use loads::{EdgeLoad, PlateLoad, Stretch, pressure_at};
 pub use pools::{Body, Brim, Holder, LONGEST_STEP, Look, Pour, Spilled, Start, Stop, Trace, Turn, trace};
-pub use pour_over::{Lip, PourOver, highest_fill, pour_over};
+pub use pour_over::{Lip, MouthSpill, PourOver, highest_fill, pour_over, spills};
 pub use ramp::Ramp;
 pub use rim::Carried;
 pub use rise::{Rims, Route};

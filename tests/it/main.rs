@@ -27,6 +27,7 @@ mod published_panels;
 mod published_rigid;
 mod published_sections;
 mod reference;
+mod report;
 mod scenario;
 mod support;
 mod tidy;

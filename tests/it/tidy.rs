@@ -23,11 +23,17 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("statics", &["problem", "num", "geom", "section"]),
     ("study", &["units", "problem", "geom", "section", "liquid", "cases", "statics"]),
     ("criteria", &["units", "sources", "problem", "num", "geom", "cases", "statics", "study"]),
-    ("analysis", &["units", "problem", "geom", "cases", "statics", "study", "criteria"]),
+    ("analysis", &["units", "problem", "geom", "section", "cases", "statics", "study", "criteria"]),
     ("scenario", &["units", "problem", "geom", "section", "liquid", "cases", "study"]),
     ("report", &["units", "sources", "problem", "geom", "section", "liquid", "cases", "study", "analysis"]),
     ("app", &["problem", "geom", "section", "liquid", "cases", "study", "analysis", "scenario"]),
-    ("gui", &["units", "problem", "geom", "section", "liquid", "cases", "study", "analysis", "scenario", "app"]),
+    (
+        "gui",
+        &[
+            "units", "problem", "geom", "section", "liquid", "material", "cases", "study", "analysis", "scenario",
+            "app",
+        ],
+    ),
     ("cli", &["units", "problem", "study", "analysis", "report", "app", "gui"]),
 ];
 

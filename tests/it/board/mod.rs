@@ -2,6 +2,7 @@
 
 mod drags;
 mod handles;
+mod plates;
 mod robust;
 
 use brimwright::app::{Derived, Document, Edit};
@@ -103,8 +104,10 @@ fn view() -> View {
         case_idx: 0,
         selected: None,
         open_verdict: None,
+        stage: None,
         units: UnitSystem::Si,
         camera: None,
+        pen: None,
         status: String::new(),
     }
 }
