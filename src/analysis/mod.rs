@@ -11,7 +11,7 @@ use rayon::prelude::*;
 use crate::cases::LoadCase;
 use crate::criteria::{self, Context, Standing, View};
 use crate::geom::{Point, Vec2};
-use crate::plates::dividers;
+use crate::plates::{Bearer, Solved, dividers};
 use crate::statics::{Body, Rims, Setting, Stop, pressure_at, settle, spills};
 use crate::study::ValidStudy;
 use crate::units::{Measure, Quantity, number};
@@ -35,11 +35,12 @@ pub fn run(study: &ValidStudy) -> Results {
     let surface = still_surface(study);
     let still_length_m = length_m(surface.iter());
     let courses = ways::courses(study);
+    let bearers = bearers(study);
     let judged: Vec<(CaseResult, Option<f64>)> = inputs
         .cases
         .par_iter()
         .zip(&courses)
-        .map(|(case, course)| judge_case(study, case, course, level, still_length_m))
+        .map(|(case, course)| judge_case(study, case, course, &bearers, level, still_length_m))
         .collect();
     let holds = judged.iter().filter_map(|(_, holds)| *holds).reduce(f64::min);
     let cases: Vec<CaseResult> = judged.into_iter().map(|(case, _)| case).collect();
@@ -109,6 +110,7 @@ fn judge_case(
     study: &ValidStudy,
     case: &LoadCase,
     course: &Course,
+    bearers: &[Bearer],
     still_z_m: f64,
     still_length_m: f64,
 ) -> (CaseResult, Option<f64>) {
@@ -123,6 +125,7 @@ fn judge_case(
             Rims::new(study.region(), bound, &inputs.section.width, study.mouths(), up)
         })
         .collect();
+    let borne: Vec<Vec<PlateResult>> = bounds.iter().zip(&states).map(|(&b, s)| borne(bearers, b, s)).collect();
     let views: Vec<View> = (0..bounds.len())
         .map(|b| {
             let way = course.ways[b].as_ref();
@@ -132,6 +135,7 @@ fn judge_case(
                 way,
                 holds_m3: holds(study, course, b, &blocked),
                 settled: states[b].as_ref().map_err(String::as_str),
+                plates: &borne[b],
                 rims: rims[b].as_ref(),
                 route: route(course, b),
                 blocked,
@@ -160,10 +164,27 @@ fn judge_case(
         trapped,
         routes: bounds.iter().enumerate().map(|(b, &bound)| (bound, route(course, b))).collect(),
         pours,
+        plates: borne.into_iter().flatten().collect(),
         verdicts,
         absent,
     };
     (result, holds)
+}
+
+/// Every plate, ready to be loaded.
+fn bearers(study: &ValidStudy) -> Vec<Bearer<'_>> {
+    let (inputs, mut solved) = (study.study(), Solved::default());
+    let width = &inputs.section.width;
+    let plates = inputs.section.plates.iter().zip(study.region().plates());
+    plates
+        .map(|(plate, placed)| Bearer::new(plate, placed, width, inputs.material(&plate.material), &mut solved))
+        .collect()
+}
+
+/// What the plates bear in a state, in the order of the plates; nothing without one.
+fn borne(bearers: &[Bearer], bound: Bound, state: &Result<Settled, String>) -> Vec<PlateResult> {
+    let loads = state.iter().flat_map(|settled| &settled.plates);
+    bearers.iter().zip(loads).enumerate().map(|(i, (bearer, load))| bearer.under(i, bound, load)).collect()
 }
 
 /// The largest common fill that leaves no mouth on the way, where that can be told.

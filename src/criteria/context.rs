@@ -2,6 +2,7 @@
 
 use crate::cases::LoadCase;
 use crate::geom::{Point, Vec2};
+use crate::plates::PlateResult;
 use crate::problem::Place;
 use crate::statics::{Bound, EffectiveGravity, GasPocket, PourOver, Rims, Route, Settled};
 use crate::study::{Limit, ValidStudy};
@@ -35,6 +36,8 @@ pub struct View<'a> {
     pub holds_m3: Option<f64>,
     /// The settled state, or why there is none.
     pub settled: Result<&'a Settled, &'a str>,
+    /// What each plate bears; empty where there is no settled state.
+    pub plates: &'a [PlateResult],
     /// The rims carried on; none where effective gravity does not point toward the floor.
     pub rims: Option<&'a Rims>,
     /// How the liquid comes to the case where the walls are carried on.

@@ -241,6 +241,7 @@ pub(super) fn results() -> Results {
                 released: Some(Ok(Settled { cells_m3: vec![0.17, 0.61], ..settled() })),
                 trapped: vec![Trapped { cell_idx: 1, volume_m3: 0.02 }],
                 routes: vec![],
+                plates: vec![],
                 pours: vec![Pour {
                     wall: Wall::Plate { plate_idx: 0, span_m: [0.05, 0.7], is_left: true },
                     at: Point::new(0.5, 0.7),
@@ -280,6 +281,7 @@ pub(super) fn results() -> Results {
                 trapped: vec![],
                 routes: vec![],
                 pours: vec![],
+                plates: vec![],
                 verdicts: vec![Verdict {
                     demand: None,
                     limit: None,

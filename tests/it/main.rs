@@ -17,6 +17,7 @@ mod gui;
 mod json;
 mod layout_rules;
 mod panels;
+mod plate_strength;
 mod pools_by_hand;
 mod pools_sampled;
 mod program;

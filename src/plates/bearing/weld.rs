@@ -128,3 +128,50 @@ fn alone(plate: &Plate, stretches: &[Stretch], part: &Part, end: usize) -> Resul
     let moment_n = if end == 0 { moment } else { -moment };
     Ok(EndReaction { force_n_per_m: sign * force.norm(), moment_n })
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::section::{Attached, Panel};
+
+    /// A plate 0.4 m long under 100 Pa all along, held at its first point; from its welds the reaction as it stands alone.
+    fn check(points: &[(f64, f64)], force: f64, moment: f64) {
+        let points: Vec<Point> = points.iter().map(|&(s, z)| Point::new(s, z)).collect();
+        let wall = Attached::Outline { edge_idx: 0, is_mouth: false };
+        let stretches = [Stretch { from_m: 0.0, to_m: 0.4, from_pa: 100.0, to_pa: 100.0 }];
+        let width = WidthLaw::Constant { width_m: 1.0 };
+        for end in [0, 1] {
+            let mut points = points.clone();
+            let mut ends = [wall, Attached::Free];
+            if end == 1 {
+                // Drawn the other way, its right-hand normal is the other one: pressure presses it back.
+                points.reverse();
+                ends.reverse();
+            }
+            let plate = Plate {
+                name: String::new(),
+                points: points.clone(),
+                thickness_m: 0.005,
+                corrosion_m: 0.0,
+                material: String::new(),
+                panel: Panel::default(),
+                openings: vec![],
+            };
+            let found = welds(&plate, &Placed { points, ends }, &width, &stretches).unwrap();
+            assert_eq!(found.len(), 1);
+            assert_eq!((found[0].end, found[0].hinged, found[0].at), (end, None, Point::origin()));
+            let alone = found[0].alone.unwrap();
+            let near = (alone.force_n_per_m - force).abs() < 1e-12 && (alone.moment_n - moment).abs() < 1e-12;
+            assert!(near, "end {end}: {alone:?}, expected {force} N/m, {moment} N");
+        }
+    }
+
+    #[test]
+    fn a_plate_that_stands_alone_is_a_cantilever_bends_included() {
+        // p L, and p L^2 / 2 that stretches the face which the pressure presses.
+        check(&[(0.0, 0.0), (0.0, 0.4)], 40.0, -8.0);
+        // 0.2 up and 0.2 to the right: 20 N to the right at 0.1 high, and 20 N down at 0.1 to the right: sqrt 2 x 20 N,
+        // and 2 + 2 N m.
+        check(&[(0.0, 0.0), (0.0, 0.2), (0.2, 0.2)], 20.0 * 2.0_f64.sqrt(), -4.0);
+    }
+}
