@@ -1,6 +1,7 @@
 //! The integration tests: one binary, one module a subject.
 
 mod arbitrary;
+mod bad_plates;
 mod bad_sections;
 #[cfg(feature = "gui")]
 mod board;
@@ -17,6 +18,7 @@ mod gui;
 mod json;
 mod layout_rules;
 mod panels;
+mod partitions;
 mod pools_by_hand;
 mod pools_sampled;
 mod program;
