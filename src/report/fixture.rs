@@ -180,7 +180,7 @@ fn settled() -> Settled {
         ],
         roof: Some(RoofContact { wetted_length_m: 0.1, peak_pa: 120.0, at: Point::new(2.0, 1.0), edge_idx: 3 }),
         cells_m3: vec![0.16, 0.62],
-        gas: vec![],
+        gas: vec![GasPocket { cell_idx: 0, volume_m3: 0.012, at: Point::new(0.1, 0.95), compartment: 0 }],
     }
 }
 
@@ -217,7 +217,14 @@ pub(super) fn results() -> Results {
         },
         cells: vec![cell("cell 1", 0.25, 0.5, 0.2), cell("cell 2", 1.4, 1.48, 0.59)],
         compartments: vec![Compartment { name: "compartment 1".into(), own_idx: None }],
-        layout: Outcome::default(),
+        layout: Outcome {
+            verdicts: vec![verdict("Plate coverage", State::Holds, Some(0.9), Quantity::Share, 0.7, 0.63)],
+            absent: vec![Absent {
+                criterion: "Vent path",
+                place_words: "tank".into(),
+                reason: "none is asked".into(),
+            }],
+        },
         cases: vec![
             CaseResult {
                 name: "Transfer stop".into(),

@@ -127,9 +127,11 @@ fn whatever_is_sound_is_judged_without_nan_and_no_surface_stands_above_a_brim() 
 /// was called no demand, and freeboard held.
 #[test]
 fn a_still_level_above_the_mouth_has_no_freeboard_until_the_tilt_takes_it_below() {
-    // A closed tank with an open well at the right, joined along the floor; the well's rim lies at z = 0.5 m.
-    let corners = [(0.0, 0.0), (2.0, 0.0), (2.0, 0.5), (1.5, 0.5), (1.5, 0.2), (1.0, 0.2), (1.0, 1.0), (0.0, 1.0)];
-    let study = study(section(&polygon(&corners), &[2], 1.0), Fill::Level(0.6));
+    // A roofed tank, vented high in its left wall, with an open well at the right, joined along the floor; the well's
+    // rim lies at z = 0.5 m.
+    let well = [(0.0, 0.0), (2.0, 0.0), (2.0, 0.5), (1.5, 0.5), (1.5, 0.2)];
+    let corners = [&well[..], &[(1.0, 0.2), (1.0, 1.0), (0.0, 1.0), (0.0, 0.95)]].concat();
+    let study = study(section(&polygon(&corners), &[2, 7], 1.0), Fill::Level(0.6));
     for (a_s, want) in [(0.3, State::Fails), (6.0, State::Holds)] {
         let case = judge_case(&study, held(a_s, 0.0));
         let freeboard = verdict(&case, "Freeboard").expect("the well has upright walls");
