@@ -1,6 +1,7 @@
 //! The integration tests: one binary, one module a subject.
 
 mod arbitrary;
+mod bad_plates;
 mod bad_sections;
 #[cfg(feature = "gui")]
 mod board;
@@ -18,6 +19,7 @@ mod json;
 mod layout_rules;
 mod panels;
 mod plate_strength;
+mod partitions;
 mod pools_by_hand;
 mod pools_sampled;
 mod program;

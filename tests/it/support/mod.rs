@@ -8,6 +8,7 @@ pub mod hand_cases;
 pub mod plated;
 pub mod random;
 pub mod shapes;
+pub mod states;
 pub mod table;
 
 use brimwright::analysis::{self, CaseResult, Chord, EdgeLoad, Results, Settled, Verdict};
