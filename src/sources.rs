@@ -18,6 +18,10 @@ pub enum Source {
     VapourMargin,
     /// Effective gravity and standard gravity.
     StandardGravity,
+    /// Flow through orifices, drowned and free, and the time it takes.
+    OrificeFlow,
+    /// Discharge coefficients of holes.
+    DischargeCoefficient,
 }
 
 /// One entry of the bibliography.
