@@ -88,6 +88,10 @@ pub struct LoadCase {
     pub attitude: Attitude,
     /// Time over which the acceleration builds up, s. Kept and shown; the settled verdicts do not use it.
     pub onset_s: Option<f64>,
+    /// Time for which it is then held, s; none: for long.
+    pub duration_s: Option<f64>,
+    /// Whether it is followed by a slow release back to rest, which shows what stays trapped behind sills.
+    pub release: bool,
     /// Where the numbers come from.
     pub source: String,
     /// Free text.

@@ -41,6 +41,17 @@ pub enum Place {
         /// Which of its edges, where one is meant.
         edge_idx: Option<usize>,
     },
+    /// A plate, or one of its openings.
+    Plate {
+        /// Which plate.
+        plate_idx: usize,
+        /// Which of its openings, where one is meant.
+        opening_idx: Option<usize>,
+    },
+    /// A compartment with a fill of its own.
+    Compartment(usize),
+    /// A material of the scenario.
+    Material(usize),
     /// A row of the width table.
     WidthRow(usize),
     /// A load case.
@@ -72,6 +83,12 @@ impl fmt::Display for Place {
             Place::Obstacle { obstacle_idx, edge_idx: Some(e) } => {
                 write!(f, "obstacle {}, edge {}", obstacle_idx + 1, e + 1)
             }
+            Place::Plate { plate_idx, opening_idx: None } => write!(f, "plate {}", plate_idx + 1),
+            Place::Plate { plate_idx, opening_idx: Some(o) } => {
+                write!(f, "plate {}, opening {}", plate_idx + 1, o + 1)
+            }
+            Place::Compartment(i) => write!(f, "compartment {}", i + 1),
+            Place::Material(i) => write!(f, "material {}", i + 1),
             Place::WidthRow(i) => write!(f, "width table, row {}", i + 1),
             Place::Case(i) => write!(f, "load case {}", i + 1),
             Place::Point(i) => write!(f, "point {}", i + 1),

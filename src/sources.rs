@@ -16,12 +16,20 @@ pub enum Source {
     BondNumber,
     /// Vapour pressure margin.
     VapourMargin,
+    /// The project's own derivation of layout facts.
+    LayoutGeometry,
     /// Effective gravity and standard gravity.
     StandardGravity,
     /// Flow through orifices, drowned and free, and the time it takes.
     OrificeFlow,
     /// Discharge coefficients of holes.
     DischargeCoefficient,
+    /// Thin plates in bending.
+    PlateBending,
+    /// The project's own solution for rectangular panels.
+    PanelRitz,
+    /// Beams of one span.
+    BeamFormulas,
 }
 
 /// One entry of the bibliography.

@@ -43,6 +43,16 @@ pub enum Quantity {
     Share,
     /// A plain number.
     Ratio,
+    /// How many.
+    Count,
+    /// Force per length of an edge or a weld: kN/m, lbf/ft.
+    ForcePerLength,
+    /// Moment per length: kN m/m, lbf ft/ft.
+    MomentPerLength,
+    /// Stress in a plate: MPa, ksi.
+    Stress,
+    /// Volume flow: L/s, gal/min.
+    Flow,
 }
 
 /// Which units are shown. The file keeps its own.
@@ -104,7 +114,11 @@ impl Quantity {
             SurfaceTension => (("mN/m", 1e-3), ("mN/m", 1e-3)),
             Time => (("s", 1.0), ("s", 1.0)),
             Share => (("%", 0.01), ("%", 0.01)),
-            Ratio => (("", 1.0), ("", 1.0)),
+            Ratio | Count => (("", 1.0), ("", 1.0)),
+            ForcePerLength => (("kN/m", 1e3), ("lbf/ft", POUND_FORCE / FOOT)),
+            MomentPerLength => (("kN m/m", 1e3), ("lbf ft/ft", POUND_FORCE)),
+            Stress => (("MPa", 1e6), ("ksi", 1e3 * POUND_FORCE / (INCH * INCH))),
+            Flow => (("L/s", 1e-3), ("gal/min", 231.0 * INCH * INCH * INCH / 60.0)),
         };
         let (symbol, in_si) = if system == UnitSystem::Si { si } else { us };
         Unit { symbol, in_si }
@@ -120,6 +134,8 @@ impl Quantity {
             (_, Force) => &[("N", 1.0), ("mN", 1e-3)],
             (_, Moment) => &[("N m", 1.0), ("mN m", 1e-3)],
             (_, GagePressure) => &[("Pa", 1.0)],
+            (_, ForcePerLength) => &[("N/m", 1.0)],
+            (_, MomentPerLength) => &[("N m/m", 1.0)],
             _ => &[],
         };
         let usual = self.unit(system);
@@ -147,7 +163,11 @@ impl Quantity {
             Mass => "kg",
             SurfaceTension => "N/m",
             Time => "s",
-            Share | Ratio => "1",
+            ForcePerLength => "N/m",
+            MomentPerLength => "N m/m",
+            Stress => "Pa",
+            Flow => "m3/s",
+            Share | Ratio | Count => "1",
         }
     }
 }
@@ -183,6 +203,7 @@ impl Measure {
         // What even the smallest unit shows as a row of zeros is the rounding of a sum.
         let si = if self.si.abs() < 1e-4 * near.in_si { 0.0 } else { self.si };
         let unit = self.quantity.unit_near(system, si);
+        let significant = if self.quantity == Quantity::Count { 1 } else { significant };
         let number = number(unit.from_si(si), significant);
         match unit.symbol {
             "" => number,
@@ -312,6 +333,7 @@ mod tests {
         assert_eq!(text(Quantity::Moment, 0.0), "0.00 kN m");
         assert_eq!(text(Quantity::Moment, -3e-12), "0.00 kN m");
         assert_eq!(text(Quantity::GagePressure, 2.5), "2.50 Pa");
+        assert_eq!((text(Quantity::Count, 0.0), text(Quantity::Count, 12.0)), ("0".into(), "12".into()));
     }
 
     #[test]

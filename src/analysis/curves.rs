@@ -2,6 +2,7 @@
 
 use crate::criteria::FreeboardFill;
 use crate::geom::Vec2;
+use crate::section::{Face, Wall};
 use crate::statics::{Carried, Rims, effective_gravity, pressure_at};
 use crate::study::ValidStudy;
 
@@ -69,31 +70,49 @@ fn wall_curve(study: &ValidStudy, results: &Results, result: &CaseResult) -> Wal
     let gas = inputs.ullage_gage_pa;
     let section = &inputs.section;
     let mut curve = WallCurve::default();
-    let rest = (Vec2::y(), results.still.level_z_m, inputs.liquid.weight_pa_per_m(inputs.gravity_m_per_s2));
-    let now = match (&result.settled, result.gravity.up) {
-        (Ok(settled), Some(up)) => {
-            Some((up, settled.level_m, inputs.liquid.weight_pa_per_m(result.gravity.magnitude)))
-        }
-        _ => None,
-    };
+    let rest_weight = inputs.liquid.weight_pa_per_m(inputs.gravity_m_per_s2);
+    let now = result.gravity.up.zip(result.settled.as_ref().ok());
     let mut length = 0.0;
     for (i, edge) in section.edges().iter().enumerate() {
         curve.edges.push((length, section.edge_label(i)));
-        for (state, points) in [(now, &mut curve.points), (Some(rest), &mut curve.at_rest)] {
-            let Some((up, level, weight)) = state else { continue };
-            let n = if edge.is_arc() { 24 } else { 1 };
-            let mut stops: Vec<f64> = (0..=n).map(|k| f64::from(k) / f64::from(n)).collect();
-            stops.extend(edge.crossings(up, level));
-            stops.sort_unstable_by(f64::total_cmp);
-            for t in stops {
-                let liquid = pressure_at(edge.point_at(t), level, up, weight).max(0.0);
-                points.push([length + t * edge.length(), gas + liquid]);
-            }
+        let n = if edge.is_arc() { 24 } else { 1 };
+        let along = |t: f64| length + t * edge.length();
+        let mut stops: Vec<f64> = (0..=n).map(|k| f64::from(k) / f64::from(n)).collect();
+        stops.extend(edge.crossings(Vec2::y(), results.still.level_z_m));
+        for &t in sorted(&mut stops) {
+            let liquid = pressure_at(edge.point_at(t), results.still.level_z_m, Vec2::y(), rest_weight).max(0.0);
+            curve.at_rest.push([along(t), gas + liquid]);
+        }
+        let Some((up, settled)) = now else { continue };
+        let own = |face: &&Face| matches!(face.wall, Wall::Outline { edge_idx, .. } if edge_idx == i);
+        let wet: Vec<(f64, f64, &Pool)> = settled
+            .pools
+            .iter()
+            .flat_map(|pool| pool.wetted.iter().filter(own).map(move |face| (face, pool)))
+            .map(|(face, pool)| {
+                let (a, b) = (edge.nearest(face.edge.start).0, edge.nearest(face.edge.end).0);
+                (a.min(b), a.max(b), pool)
+            })
+            .collect();
+        stops.extend(wet.iter().flat_map(|w| [w.0, w.1]));
+        for &t in sorted(&mut stops) {
+            let p = edge.point_at(t);
+            let liquid = wet
+                .iter()
+                .filter(|w| w.0 <= t && t <= w.1)
+                .map(|w| pressure_at(p, w.2.level_m, up, w.2.weight_pa_per_m))
+                .fold(0.0, f64::max);
+            curve.points.push([along(t), gas + liquid]);
         }
         length += edge.length();
     }
     curve.peak = curve.points.iter().copied().max_by(|a, b| a[1].total_cmp(&b[1]));
     curve
+}
+
+fn sorted(stops: &mut [f64]) -> &[f64] {
+    stops.sort_unstable_by(f64::total_cmp);
+    stops
 }
 
 fn freeboard_curve(study: &ValidStudy, result: &CaseResult) -> FreeboardCurve {
@@ -104,15 +123,19 @@ fn freeboard_curve(study: &ValidStudy, result: &CaseResult) -> FreeboardCurve {
     if let (Some(first), true) = (verdicts.first(), verdicts.iter().all(|v| v.state == State::NotJudged)) {
         return absent(format!("not judged: {}", first.remark));
     }
-    let Some(rims) =
-        result.gravity.up.and_then(|up| Rims::new(study.region(), &study.study().section.width, study.mouths(), up))
-    else {
+    // Under the bound that governs.
+    let governing = verdicts.first().and_then(|v| v.bound).unwrap_or(Bound::Settled);
+    let (bound, route) =
+        result.routes.iter().find(|r| r.0 == governing).copied().unwrap_or((Bound::Settled, Route::One));
+    let width = &study.study().section.width;
+    let rims = result.gravity.up.and_then(|up| Rims::new(study.region(), bound, width, study.mouths(), up));
+    let (Some(rims), Some(common)) = (rims, study.common()) else {
         return absent("freeboard needs effective gravity toward the floor".to_owned());
     };
     let allowance = study.study().freeboard_allowance_m().0;
-    let volume = study.fill_volume_m3();
+    let (volume, capacity) = (common.volume_m3, common.vessel.capacity_m3());
     let used = |i: &usize| {
-        let at = FreeboardFill::new(study, &rims, *i, allowance).at(volume);
+        let at = FreeboardFill::new(study, &rims, route, *i, allowance).at(volume);
         at.map_or(0.0, |(required, available)| if available > 0.0 { required / available } else { f64::MAX })
     };
     let on: Vec<usize> = (0..study.mouths().len()).filter(|&i| rims.carried()[i] == Carried::On).collect();
@@ -122,8 +145,7 @@ fn freeboard_curve(study: &ValidStudy, result: &CaseResult) -> FreeboardCurve {
             _ => "no mouth stands between vertical walls; Contained is judged instead".to_owned(),
         });
     };
-    let fill = FreeboardFill::new(study, &rims, mouth_idx, allowance);
-    let capacity = study.capacity_m3();
+    let fill = FreeboardFill::new(study, &rims, route, mouth_idx, allowance);
     let mut curve = FreeboardCurve { mouth: study.mouths()[mouth_idx].name.clone(), ..FreeboardCurve::default() };
     for i in 1..=N_POINTS {
         let share = f64::from(i) / f64::from(N_POINTS);

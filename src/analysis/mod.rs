@@ -1,16 +1,22 @@
 //! The one facade: a valid study in, results out. Pure: no files, no clock, no screen.
 
+mod cells;
+mod compartments;
 mod curves;
 mod results;
+mod ways;
 
 use rayon::prelude::*;
 
 use crate::cases::LoadCase;
-use crate::criteria::{self, Context, Outcome};
+use crate::criteria::{self, Context, Standing, View};
 use crate::geom::{Point, Vec2};
-use crate::statics::{Ramp, Rims, Setting, Spill, effective_gravity, pressure_at, settle};
+use crate::plates::{Bearer, Solved, dividers};
+use crate::statics::{Body, Rims, Setting, Stop, pressure_at, settle, spills};
 use crate::study::ValidStudy;
 use crate::units::{Measure, Quantity, number};
+
+use ways::Course;
 
 pub use curves::curves;
 pub use results::*;
@@ -20,21 +26,32 @@ pub fn run(study: &ValidStudy) -> Results {
     let inputs = study.study();
     let still_tilted = study.tilted(Vec2::y());
     let volume = study.fill_volume_m3();
-    let level = still_tilted.level_for_volume(volume);
+    let common = study.common();
+    let level = match common {
+        Some(start) => start.vessel.tilted(Vec2::y()).level_for_volume(start.volume_m3),
+        None => still_tilted.level_for_volume(volume),
+    };
     let (bottom, top) = still_tilted.span();
-    let surface = still_tilted.chords(level);
-    let still_length_m = length_m(&surface);
-    let judged: Vec<(CaseResult, Option<f64>)> =
-        inputs.cases.par_iter().map(|case| judge_case(study, case, level, still_length_m)).collect();
+    let surface = still_surface(study);
+    let still_length_m = length_m(surface.iter());
+    let courses = ways::courses(study);
+    let bearers = bearers(study);
+    let judged: Vec<(CaseResult, Option<f64>)> = inputs
+        .cases
+        .par_iter()
+        .zip(&courses)
+        .map(|(case, course)| judge_case(study, case, course, &bearers, level, still_length_m))
+        .collect();
     let holds = judged.iter().filter_map(|(_, holds)| *holds).reduce(f64::min);
     let cases: Vec<CaseResult> = judged.into_iter().map(|(case, _)| case).collect();
     let rest_pa = inputs.liquid.weight_pa_per_m(inputs.gravity_m_per_s2) * (level - bottom);
-    let highest_pa = cases
-        .iter()
-        .filter_map(|c| c.settled.as_ref().ok())
-        .map(|s| s.peak_pa - inputs.ullage_gage_pa)
-        .fold(rest_pa, f64::max);
+    let highest_pa =
+        cases.iter().flat_map(|c| c.states()).map(|(_, s)| s.peak_pa - inputs.ullage_gage_pa).fold(rest_pa, f64::max);
     let capacity_m3 = study.capacity_m3();
+    let cells = cells::still(study);
+    let dividers = dividers(&inputs.section, study.region());
+    let layout = criteria::judge_layout(&Standing { study, cells: &cells, dividers });
+    let common_capacity = common.map_or(capacity_m3, |start| start.vessel.capacity_m3());
     Results {
         capacity_m3,
         still: Still {
@@ -43,81 +60,185 @@ pub fn run(study: &ValidStudy) -> Results {
             level_z_m: level,
             ullage_m: top - level,
             depth_m: level - bottom,
-            mass_kg: volume * inputs.liquid.density_kg_per_m3,
+            mass_kg: study
+                .starts()
+                .iter()
+                .map(|s| s.volume_m3 * study.liquid_of(s.compartments[0]).density_kg_per_m3)
+                .sum(),
             surface,
-            highest_share: holds.map(|v| v.min(capacity_m3) / capacity_m3),
+            highest_share: holds.map(|v| v.min(common_capacity) / common_capacity),
         },
+        cells,
+        compartments: compartments::compartments(study),
+        layout,
         cases,
         pressure_scale_pa: nice_scale(highest_pa),
         warnings: study.warnings().to_vec(),
     }
 }
 
-/// Gage pressure at a place in the settled liquid of a load case, gas included; none outside the liquid.
-pub fn gage_pressure_at(study: &ValidStudy, case: &CaseResult, p: Point) -> Option<Measure> {
-    let (settled, up) = (case.settled.as_ref().ok()?, case.gravity.up?);
-    let inputs = study.study();
-    let weight = inputs.liquid.weight_pa_per_m(case.gravity.magnitude);
-    let liquid_pa = pressure_at(p, settled.level_m, up, weight);
-    let is_liquid = liquid_pa >= 0.0 && inputs.section.contains(p);
-    is_liquid.then(|| Measure::new(Quantity::GagePressure, inputs.ullage_gage_pa + liquid_pa))
+/// Surface of the still liquid, level and at rest, plates cutting it.
+fn still_surface(study: &ValidStudy) -> Vec<Chord> {
+    let holder = ways::holder(study, Bound::Sealed);
+    let look = holder.look(Vec2::y());
+    let bodies = holder.still(&look);
+    let surface = |b: &Body| look.basins.surface(b.basin, look.level_of(b));
+    bodies.iter().flat_map(surface).map(|(left, right)| Chord { left, right }).collect()
+}
+
+/// Gage pressure at a place in the liquid of a load case under a bound, gas included; none outside the liquid.
+pub fn gage_pressure_at(study: &ValidStudy, case: &CaseResult, bound: Bound, p: Point) -> Option<Measure> {
+    let state = case.state(bound)?.as_ref().ok()?;
+    let up = case.gravity.up?;
+    // The pool whose part of the section holds the place: the one that it is connected with.
+    let look = ways::holder(study, bound).look(up);
+    let basin = look.basins.basin_at(p)?;
+    let holds = |pool: &&Pool| {
+        let own = look.basins.basin_at(pool.deepest + up * (1e-6 * study.region().diagonal_m()));
+        own.is_some_and(|own| {
+            let join = look.basins.join(&[own, basin]);
+            join.is_some_and(|j| look.basins.all()[j].bottom < pool.level_m)
+        })
+    };
+    let pool = state.pools.iter().find(holds)?;
+    let liquid_pa = pressure_at(p, pool.level_m, up, pool.weight_pa_per_m);
+    (liquid_pa >= 0.0).then(|| Measure::new(Quantity::GagePressure, study.study().ullage_gage_pa + liquid_pa))
 }
 
 /// The load case, judged, and the volume that its way holds, where that could be judged.
-fn judge_case(study: &ValidStudy, case: &LoadCase, still_z_m: f64, still_length_m: f64) -> (CaseResult, Option<f64>) {
+fn judge_case(
+    study: &ValidStudy,
+    case: &LoadCase,
+    course: &Course,
+    bearers: &[Bearer],
+    still_z_m: f64,
+    still_length_m: f64,
+) -> (CaseResult, Option<f64>) {
     let inputs = study.study();
-    let accel = case.accel.to_m_per_s2(inputs.gravity_m_per_s2);
-    let phi = case.attitude.angle_rad();
-    let gravity = effective_gravity(inputs.gravity_m_per_s2, phi, accel);
-    let is_turn = accel.norm() == 0.0 && phi != 0.0;
-    let at_rest = effective_gravity(inputs.gravity_m_per_s2, phi, Vec2::zeros()).vec;
-    let ramp = if is_turn { Some(Ramp::turn(phi)) } else { Ramp::accelerate(at_rest, accel) };
-    let volume = study.fill_volume_m3();
-    let spill = ramp.map(|ramp| Spill::trace(&ramp, study.region(), study.vessel(), study.mouths(), volume));
-    let settled = settle_case(study, &gravity, spill.as_ref());
-    let rims = gravity.up.and_then(|up| Rims::new(study.region(), &inputs.section.width, study.mouths(), up));
-    let context = Context {
-        study,
-        case,
-        accel,
-        gravity,
-        still_z_m,
-        spill: spill.as_ref(),
-        settled: settled.as_ref().map_err(String::as_str),
-        rims: rims.as_ref(),
-        blocked: blocked(study, &gravity, settled.as_ref().ok(), still_length_m),
-    };
+    let gravity = course.gravity;
+    let bounds = ways::bounds(study);
+    let states: Vec<Result<Settled, String>> = (0..bounds.len()).map(|b| settle_case(study, course, b)).collect();
+    let rims: Vec<Option<Rims>> = bounds
+        .iter()
+        .map(|&bound| {
+            let up = gravity.up?;
+            Rims::new(study.region(), bound, &inputs.section.width, study.mouths(), up)
+        })
+        .collect();
+    let borne: Vec<Vec<PlateResult>> = bounds.iter().zip(&states).map(|(&b, s)| borne(bearers, b, s)).collect();
+    let views: Vec<View> = (0..bounds.len())
+        .map(|b| {
+            let way = course.ways[b].as_ref();
+            let blocked = blocked(study, &gravity, states[b].as_ref().ok(), still_length_m);
+            View {
+                bound: bounds[b],
+                way,
+                holds_m3: holds(study, course, b, &blocked),
+                settled: states[b].as_ref().map_err(String::as_str),
+                plates: &borne[b],
+                rims: rims[b].as_ref(),
+                route: route(course, b),
+                blocked,
+            }
+        })
+        .collect();
+    let holds = views.iter().filter_map(|v| v.holds_m3).reduce(f64::min);
+    let context = Context { study, case, accel: course.accel, gravity, still_z_m, views };
     let Outcome { verdicts, absent } = criteria::judge(&context);
-    let can_tell = |s: &&Spill| !s.has_several_pools && context.blocked.is_none();
-    let holds = spill.as_ref().filter(can_tell).map(|s| s.holds_m3);
-    (CaseResult { name: case.name.clone(), gravity, accel, settled, verdicts, absent }, holds)
+    let released = case.release.then(|| settle_released(study, course));
+    let trapped = match (&released, course.ramp) {
+        (Some(Ok(released)), Some(ramp)) => compartments::trapped(study, &ramp, released),
+        _ => Vec::new(),
+    };
+    let pours = course.ways.first().and_then(|w| w.as_ref()).and_then(|w| w.stop.as_ref());
+    let pours = pours.map_or(Vec::new(), |stop| stop.pours.clone());
+    let mut states = states.into_iter();
+    let settled = states.next().expect("there is a settled bound");
+    let result = CaseResult {
+        name: case.name.clone(),
+        gravity,
+        accel: course.accel,
+        settled,
+        sealed: states.next(),
+        released,
+        trapped,
+        routes: bounds.iter().enumerate().map(|(b, &bound)| (bound, route(course, b))).collect(),
+        pours,
+        plates: borne.into_iter().flatten().collect(),
+        verdicts,
+        absent,
+    };
+    (result, holds)
 }
 
-fn settle_case(study: &ValidStudy, gravity: &EffectiveGravity, spill: Option<&Spill>) -> Result<Settled, String> {
-    let Some(up) = gravity.up else {
+/// Every plate, ready to be loaded.
+fn bearers(study: &ValidStudy) -> Vec<Bearer<'_>> {
+    let (inputs, mut solved) = (study.study(), Solved::default());
+    let width = &inputs.section.width;
+    let plates = inputs.section.plates.iter().zip(study.region().plates());
+    plates
+        .map(|(plate, placed)| Bearer::new(plate, placed, width, inputs.material(&plate.material), &mut solved))
+        .collect()
+}
+
+/// What the plates bear in a state, in the order of the plates; nothing without one.
+fn borne(bearers: &[Bearer], bound: Bound, state: &Result<Settled, String>) -> Vec<PlateResult> {
+    let loads = state.iter().flat_map(|settled| &settled.plates);
+    bearers.iter().zip(loads).enumerate().map(|(i, (bearer, load))| bearer.under(i, bound, load)).collect()
+}
+
+/// The largest common fill that leaves no mouth on the way, where that can be told.
+fn holds(study: &ValidStudy, course: &Course, bound_idx: usize, blocked: &Option<String>) -> Option<f64> {
+    let (ramp, way) = (course.ramp?, course.ways[bound_idx].as_ref()?);
+    way.stop.as_ref()?;
+    if blocked.is_some() {
+        return None;
+    }
+    Some(way.holds_m3.unwrap_or_else(|| ways::highest(study, &ramp, ways::bounds(study)[bound_idx])))
+}
+
+/// How the liquid comes to the case where the walls are carried on.
+fn route(course: &Course, bound_idx: usize) -> Route {
+    let stop = course.ways[bound_idx].as_ref().and_then(|w| w.stop.as_ref());
+    match (course.ramp, stop) {
+        (Some(ramp), Some(stop)) if stop.had_several => Route::Turned(ramp.direction(), ramp.to_case_rad()),
+        _ => Route::One,
+    }
+}
+
+fn settle_case(study: &ValidStudy, course: &Course, bound_idx: usize) -> Result<Settled, String> {
+    if course.gravity.up.is_none() {
         return Err("free fall: effective gravity is zero and there is no settled surface".to_owned());
-    };
-    let Some(spill) = spill else {
+    }
+    let Some(way) = &course.ways[bound_idx] else {
         return Err("the way from rest to this case leads through free fall".to_owned());
     };
+    let stop = way.stop.as_ref().ok_or("the liquid could not be followed to this case")?;
+    Ok(settle_at(study, bound_idx, stop, course.gravity.magnitude))
+}
+
+/// After the release: back at rest, under the settled bound.
+fn settle_released(study: &ValidStudy, course: &Course) -> Result<Settled, String> {
+    let trace = ways::release(study, course, 0).ok_or("there is no way to this case, and so none back")?;
+    let stop = trace.stops.first().ok_or("the liquid could not be followed back to rest")?;
+    Ok(settle_at(study, 0, stop, study.study().gravity_m_per_s2))
+}
+
+fn settle_at(study: &ValidStudy, bound_idx: usize, stop: &Stop, gravity_m_per_s2: f64) -> Settled {
     let inputs = study.study();
-    let filled = study.fill_volume_m3();
-    let volume_m3 = if spill.has_several_pools { filled } else { filled.min(spill.holds_m3) };
-    let tilted = study.tilted(up);
-    if spill.has_several_pools || tilted.n_pools(tilted.level_for_volume(volume_m3)) > 1 {
-        return Err("several pools: the liquid parts into pools with levels of their own".to_owned());
-    }
+    let holder = ways::holder(study, ways::bounds(study)[bound_idx]);
     let points: Vec<(&str, Point)> = inputs.points.iter().map(|p| (p.name.as_str(), p.at)).collect();
     let setting = Setting {
-        volume_m3,
-        spilled_m3: filled - volume_m3,
-        weight_pa_per_m: inputs.liquid.weight_pa_per_m(gravity.magnitude),
+        spills: &spills(&holder, study.mouths(), &stop.spilled),
+        gravity_m_per_s2,
+        density_kg_per_m3: &|compartment| study.liquid_of(compartment).density_kg_per_m3,
         gas_pa: inputs.ullage_gage_pa,
         air_pa: inputs.air_pressure_abs_pa,
         moment_about: inputs.moment_about,
         points: &points,
     };
-    Ok(settle(&inputs.section, study.region(), &tilted, &setting))
+    let look = holder.look(stop.up);
+    settle(&inputs.section, study.region(), &look, &stop.bodies, &setting)
 }
 
 /// Bond number rho |G| L^2 / sigma below which capillarity rules the surface. Source: [BondNumber].
@@ -135,7 +256,7 @@ fn blocked(
         return Some("free fall: there is no settled surface".to_owned());
     }
     let liquid = &study.study().liquid;
-    let length = length_m(&settled?.surface).max(still_length_m);
+    let length = length_m(settled?.pools.iter().flat_map(|p| &p.surface)).max(still_length_m);
     let bond = liquid.weight_pa_per_m(gravity.magnitude) * length * length / liquid.surface_tension();
     (length > 0.0 && bond < LEAST_BOND_NUMBER).then(|| {
         format!(
@@ -146,8 +267,8 @@ fn blocked(
 }
 
 /// Length of a surface over all its pieces, m.
-fn length_m(surface: &[Chord]) -> f64 {
-    surface.iter().map(Chord::length).sum()
+fn length_m<'a>(surface: impl Iterator<Item = &'a Chord>) -> f64 {
+    surface.map(Chord::length).sum()
 }
 
 /// Eight equal tints: the least nice step that reaches `highest`, times eight.

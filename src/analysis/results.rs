@@ -3,8 +3,14 @@
 use crate::geom::Vec2;
 use crate::problem::Problem;
 
-pub use crate::criteria::{Absent, CONTAINED, FREEBOARD, Reach, Sense, State, Trust, Verdict, WorkLine};
-pub use crate::statics::{Chord, EdgeLoad, EffectiveGravity, PointPressure, RoofContact, Settled};
+pub use crate::criteria::{
+    Absent, CONTAINED, FREEBOARD, LAYOUT, Outcome, Reach, Sense, State, Trust, Verdict, WorkLine,
+};
+pub use crate::plates::{Cell, EndReaction, OutOfRange, PanelStrength, PlateResult, Span, Strength, Support, Weld};
+pub use crate::statics::{
+    Bound, Chord, EdgeLoad, EffectiveGravity, GasPocket, MouthSpill, PlateLoad, PointPressure, Pool, Pour,
+    RoofContact, Route, Settled, Stretch,
+};
 
 /// The tank standing level and at rest, and the fill in every way of giving it.
 #[derive(Clone, Debug, PartialEq)]
@@ -38,6 +44,18 @@ pub struct CaseResult {
     pub accel: Vec2,
     /// The settled state, or why there is none.
     pub settled: Result<Settled, String>,
+    /// The state with openings shut; none where no plate has an opening.
+    pub sealed: Option<Result<Settled, String>>,
+    /// After the release back to rest, where the case asks for it; under the settled bound.
+    pub released: Option<Result<Settled, String>>,
+    /// What stays trapped behind sills after the release; empty where nothing does.
+    pub trapped: Vec<Trapped>,
+    /// How the liquid comes to it, under each bound.
+    pub routes: Vec<(Bound, Route)>,
+    /// What went over sills on the way, under the settled bound.
+    pub pours: Vec<Pour>,
+    /// What the plates bear, one a plate and bound, the settled bound first.
+    pub plates: Vec<PlateResult>,
     /// Verdicts, worst first.
     pub verdicts: Vec<Verdict>,
     /// Checks that do not apply.
@@ -45,10 +63,42 @@ pub struct CaseResult {
 }
 
 impl CaseResult {
+    /// The state under a bound, or why there is none.
+    pub fn state(&self, bound: Bound) -> Option<&Result<Settled, String>> {
+        match bound {
+            Bound::Settled => Some(&self.settled),
+            Bound::Sealed => self.sealed.as_ref(),
+        }
+    }
+
+    /// The states that there are, with their bounds.
+    pub fn states(&self) -> impl Iterator<Item = (Bound, &Settled)> {
+        let state = |bound| Some((bound, self.state(bound)?.as_ref().ok()?));
+        [Bound::Settled, Bound::Sealed].into_iter().filter_map(state)
+    }
+
     /// The worst verdict.
     pub fn worst(&self) -> Option<&Verdict> {
         self.verdicts.first()
     }
+}
+
+/// A tight part of the section.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Compartment {
+    /// As shown.
+    pub name: String,
+    /// Its entry in the study, where it has a fill of its own.
+    pub own_idx: Option<usize>,
+}
+
+/// Liquid that a cell holds after a release beyond what it held at rest before.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Trapped {
+    /// Which cell.
+    pub cell_idx: usize,
+    /// How much more, m3.
+    pub volume_m3: f64,
 }
 
 /// Results of a study.
@@ -58,6 +108,12 @@ pub struct Results {
     pub capacity_m3: f64,
     /// The still tank.
     pub still: Still,
+    /// The cells between walls and plates.
+    pub cells: Vec<Cell>,
+    /// The compartments: cells that openings join.
+    pub compartments: Vec<Compartment>,
+    /// The layout of plates, judged once for the tank standing level and at rest; worst first.
+    pub layout: Outcome,
     /// One a load case, in the study's order.
     pub cases: Vec<CaseResult>,
     /// Full scale of the pressure tints, Pa: one nice number for all cases.
@@ -67,9 +123,10 @@ pub struct Results {
 }
 
 impl Results {
-    /// Count of verdicts in a state, over all cases.
+    /// Count of verdicts in a state, of the layout and over all cases.
     pub fn count(&self, state: State) -> usize {
-        self.cases.iter().flat_map(|c| &c.verdicts).filter(|v| v.state == state).count()
+        let of_cases = self.cases.iter().flat_map(|c| &c.verdicts);
+        self.layout.verdicts.iter().chain(of_cases).filter(|v| v.state == state).count()
     }
 
     /// Indices (case, verdict) of all verdicts, worst first.

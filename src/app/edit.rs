@@ -3,8 +3,8 @@
 use crate::cases::{Accel, Attitude, LoadCase};
 use crate::geom::{Point, Vec2};
 use crate::liquid::Liquid;
-use crate::section::{EdgeKind, Obstacle, OutlineEdge, Section, WidthLaw};
-use crate::study::{Fill, NamedPoint, Record, Study, VerdictNote};
+use crate::section::{EdgeKind, Obstacle, OutlineEdge, Plate, Section, WidthLaw};
+use crate::study::{Compartment, Fill, NamedPoint, Record, Study, VerdictNote};
 
 /// One change of a study. Indices that are out of range change nothing.
 #[derive(Clone, Debug, PartialEq)]
@@ -55,6 +55,24 @@ pub enum Edit {
     AddObstacle(Obstacle),
     /// Take an obstacle out.
     RemoveObstacle(usize),
+    /// Add a plate at the end.
+    AddPlate(Box<Plate>),
+    /// Replace a plate: its corners, openings, thickness, material, panel, name.
+    Plate(usize, Box<Plate>),
+    /// Move a whole plate by (s, z) metres.
+    ShiftPlate(usize, f64, f64),
+    /// Move a corner of a plate.
+    MovePlatePoint(usize, usize, Point),
+    /// Take a plate out.
+    RemovePlate(usize),
+    /// Replace all plates at once: equal spacing, a pasted layout.
+    Plates(Vec<Plate>),
+    /// Replace the compartments with a fill of their own.
+    Compartments(Vec<Compartment>),
+    /// Where the tank is emptied from.
+    Sump(Option<Point>),
+    /// Discharge coefficient of openings.
+    DischargeCoefficient(f64),
     /// Acceleration of a case.
     CaseAccel(usize, Accel),
     /// Grade or heel of a case.
@@ -94,6 +112,11 @@ impl Edit {
             Edit::Width(_) => "Set width law",
             Edit::Outline(_) => "Set outline",
             Edit::AddObstacle(_) => "Add obstacle",
+            Edit::AddPlate(_) => "Add plate",
+            Edit::Plates(_) => "Set plates",
+            Edit::Compartments(_) => "Set compartments",
+            Edit::Sump(_) => "Set sump",
+            Edit::DischargeCoefficient(_) => "Set discharge coefficient",
             Edit::AddCase(_) => "Add load case",
             Edit::Records(_) => "Set requirement records",
             Edit::Points(_) => "Set points",
@@ -110,6 +133,10 @@ impl Edit {
             Edit::MoveObstacleVertex(i, v, _) => return format!("Move vertex {} of obstacle {}", v + 1, i + 1),
             Edit::ShiftObstacle(i, ..) => return format!("Move obstacle {}", i + 1),
             Edit::RemoveObstacle(i) => return format!("Remove obstacle {}", i + 1),
+            Edit::Plate(i, _) => return format!("Change plate {}", i + 1),
+            Edit::ShiftPlate(i, ..) => return format!("Move plate {}", i + 1),
+            Edit::MovePlatePoint(i, p, _) => return format!("Move corner {} of plate {}", p + 1, i + 1),
+            Edit::RemovePlate(i) => return format!("Remove plate {}", i + 1),
             Edit::CaseAccel(i, _) => return format!("Set acceleration of load case {}", i + 1),
             Edit::CaseAttitude(i, _) => return format!("Set attitude of load case {}", i + 1),
             Edit::Case(i, _) => return format!("Change load case {}", i + 1),
@@ -150,6 +177,19 @@ pub fn apply(study: &mut Study, edit: &Edit) {
         }),
         Edit::AddObstacle(obstacle) => section.obstacles.push(obstacle.clone()),
         Edit::RemoveObstacle(i) => remove(&mut section.obstacles, *i),
+        Edit::AddPlate(plate) => section.plates.push((**plate).clone()),
+        Edit::Plate(i, plate) => set(section.plates.get_mut(*i), |old| old.clone_from(plate)),
+        Edit::ShiftPlate(i, s_m, z_m) => set(section.plates.get_mut(*i), |plate| {
+            plate.points.iter_mut().for_each(|point| *point += Vec2::new(*s_m, *z_m));
+        }),
+        Edit::MovePlatePoint(i, p, to) => {
+            set(section.plates.get_mut(*i).and_then(|plate| plate.points.get_mut(*p)), |point| *point = *to);
+        }
+        Edit::RemovePlate(i) => remove(&mut section.plates, *i),
+        Edit::Plates(plates) => section.plates.clone_from(plates),
+        Edit::Compartments(compartments) => study.compartments.clone_from(compartments),
+        Edit::Sump(sump) => study.sump = *sump,
+        Edit::DischargeCoefficient(c_d) => study.discharge_coefficient = *c_d,
         Edit::CaseAccel(i, accel) => set(study.cases.get_mut(*i), |case| case.accel = *accel),
         Edit::CaseAttitude(i, attitude) => set(study.cases.get_mut(*i), |case| case.attitude = *attitude),
         Edit::Case(i, case) => change_case(study, *i, case),

@@ -4,10 +4,10 @@
 //! spilled and the highest fill. Source: [BrimPath].
 
 use crate::sources::Source;
-use crate::statics::{Lip, Spill};
+use crate::statics::{Lip, PourOver};
 use crate::units::{Measure, Phrase, Quantity, fixed, number};
 
-use super::{Context, Criterion, Outcome, Sense, State, Verdict, WorkLine};
+use super::{Context, Criterion, Outcome, Sense, State, Verdict, View, WorkLine};
 
 pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
 
@@ -15,24 +15,25 @@ pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
 pub const NAME: &str = "Contained";
 
 fn judge(context: &Context) -> Outcome {
-    Outcome { verdicts: vec![verdict(context)], absent: Vec::new() }
+    Outcome { verdicts: vec![context.worse(|view| verdict(context, view))], absent: Vec::new() }
 }
 
-fn verdict(context: &Context) -> Verdict {
+fn verdict(context: &Context, view: &View) -> Verdict {
     let not_judged = |reason: &str| Verdict {
         source: Source::BrimPath,
         ..context.not_judged(NAME, Sense::AtMost, reason.to_owned())
     };
-    if let Some(reason) = &context.blocked {
+    if let Some(reason) = &view.blocked {
         return not_judged(reason);
     }
-    let Some(spill) = context.spill else {
+    let Some(way) = view.way else {
         return not_judged("the way from rest to this case leads through free fall");
     };
-    if spill.has_several_pools {
-        return not_judged("several pools: the liquid parts into pools with levels of their own on the way");
-    }
-    let volume = context.study.fill_volume_m3();
+    let (Some(stop), Some(holds_m3)) = (&way.stop, view.holds_m3) else {
+        return not_judged("the liquid could not be followed to this case");
+    };
+    let spill = Spill { way, holds_m3, spilled_m3: stop.spilled.iter().map(|s| s.volume_m3).sum() };
+    let (spill, volume) = (&spill, context.study.common().map_or(0.0, |s| s.volume_m3));
     let (demand, limit) = demand_and_limit(context, spill, volume);
     let mut verdict = match limit {
         Some(limit) => context.verdict(NAME, demand, limit, Sense::AtMost),
@@ -44,7 +45,7 @@ fn verdict(context: &Context) -> Verdict {
         },
     };
     verdict.source = Source::BrimPath;
-    let governing = spill.first.map(|(_, lip)| lip).or(spill.governs);
+    let governing = way.first.map(|(_, lip)| lip).or(way.governs);
     if let Some(Lip { mouth_idx, brim }) = governing {
         verdict.place = context.mouth_place(mouth_idx, brim);
         verdict.place_words = context.mouth_words(mouth_idx, brim);
@@ -55,6 +56,13 @@ fn verdict(context: &Context) -> Verdict {
         verdict.mend = mend(context, spill, limit);
     }
     verdict
+}
+
+/// What the mouths do on the way.
+struct Spill<'a> {
+    way: &'a PourOver,
+    holds_m3: f64,
+    spilled_m3: f64,
 }
 
 /// Acceleration against acceleration at first spill; heel against heel; at rest on the level, volume against what
@@ -71,12 +79,12 @@ fn demand_and_limit(context: &Context, spill: &Spill, volume: f64) -> (Measure, 
         }
     };
     let demand = Measure::new(quantity, size);
-    if spill.has_several_pools_beyond {
+    if spill.way.is_lost_beyond {
         // Beyond the case nothing is known: compare volumes instead.
         let holds = Measure::new(Quantity::Volume, spill.holds_m3);
         return (Measure::new(Quantity::Volume, volume), Some(holds));
     }
-    let limit = spill.first.map(|(share, _)| share * size).filter(|x| x.is_finite());
+    let limit = spill.way.first.map(|(share, _)| share * size).filter(|x| x.is_finite());
     (demand, limit.map(|x| Measure::new(quantity, x)))
 }
 
@@ -84,7 +92,7 @@ fn demand_and_limit(context: &Context, spill: &Spill, volume: f64) -> (Measure, 
 fn unlimited(context: &Context, spill: &Spill) -> String {
     if context.study.mouths().is_empty() {
         "the tank has no mouth: nothing can leave".to_owned()
-    } else if !spill.turns {
+    } else if !spill.way.turns {
         "this acceleration does not turn effective gravity; at free fall and beyond nothing is judged".to_owned()
     } else {
         "no acceleration along this line makes it spill".to_owned()
@@ -112,7 +120,7 @@ fn working(context: &Context, spill: &Spill, governing: Option<Lip>, volume: f64
         lines.push(WorkLine {
             symbols: "V_{spilled} = max(0, V − V_{holds})".to_owned(),
             numbers: format!("max(0, {} − {}) m³", number(volume, 4), number(spill.holds_m3, 4)),
-            result: Measure::new(Quantity::Volume, (volume - spill.holds_m3).max(0.0)),
+            result: Measure::new(Quantity::Volume, spill.spilled_m3),
         });
     }
     lines

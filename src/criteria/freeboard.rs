@@ -6,11 +6,11 @@
 use crate::geom::Vec2;
 use crate::num::bisect;
 use crate::sources::Source;
-use crate::statics::{Carried, Rims, Tilted};
+use crate::statics::{Carried, Rims, Route, Tilted};
 use crate::study::ValidStudy;
 use crate::units::{Measure, Phrase, Quantity, fixed};
 
-use super::{Absent, Context, Criterion, Outcome, Sense, State, Verdict, WorkLine};
+use super::{Absent, Context, Criterion, Outcome, Sense, State, Verdict, View, WorkLine};
 
 pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
 
@@ -25,12 +25,12 @@ fn judge(context: &Context) -> Outcome {
             place_words: mouth.name.clone(),
             reason: Phrase::new(format!("{reason}; judged by Contained"), []),
         };
-        let Some(rims) = context.rims else {
+        let Some(rims) = context.settled().rims else {
             outcome.absent.push(absent("effective gravity does not point toward the floor"));
             continue;
         };
         match rims.carried()[mouth_idx] {
-            Carried::On => outcome.verdicts.push(verdict(context, mouth_idx)),
+            Carried::On => outcome.verdicts.push(context.worse(|view| verdict(context, view, mouth_idx))),
             Carried::Slanted => outcome.absent.push(absent("a wall beside it is not vertical")),
             Carried::Covered => outcome.absent.push(absent("part of the section lies above it")),
             Carried::Sideways => outcome.absent.push(absent("it does not face up")),
@@ -39,10 +39,10 @@ fn judge(context: &Context) -> Outcome {
     outcome
 }
 
-fn verdict(context: &Context, mouth_idx: usize) -> Verdict {
+fn verdict(context: &Context, view: &View, mouth_idx: usize) -> Verdict {
     let (allowance, record_idx) = context.study.study().freeboard_allowance_m();
     let place = |verdict: Verdict| {
-        let brim = context.rims.map(|r| r.brims()[mouth_idx]);
+        let brim = view.rims.map(|r| r.brims()[mouth_idx]);
         Verdict {
             place: brim.map_or(verdict.place.clone(), |b| context.mouth_place(mouth_idx, b)),
             place_words: brim.map_or_else(String::new, |b| context.mouth_words(mouth_idx, b)),
@@ -53,13 +53,14 @@ fn verdict(context: &Context, mouth_idx: usize) -> Verdict {
         }
     };
     let not_judged = |reason: &str| place(context.not_judged(NAME, Sense::AtMost, reason.to_owned()));
-    if let Some(reason) = &context.blocked {
+    if let Some(reason) = &view.blocked {
         return not_judged(reason);
     }
-    let Some(rims) = context.rims else { return not_judged("effective gravity does not point toward the floor") };
-    let fill = FreeboardFill::new(context.study, rims, mouth_idx, allowance);
-    let Some((required, available)) = fill.at(context.study.fill_volume_m3()) else {
-        return not_judged("several pools");
+    let Some(rims) = view.rims else { return not_judged("effective gravity does not point toward the floor") };
+    let fill = FreeboardFill::new(context.study, rims, view.route, mouth_idx, allowance);
+    let volume = context.study.common().map_or(0.0, |s| s.volume_m3);
+    let Some((required, available)) = fill.at(volume) else {
+        return not_judged("the liquid could not be followed to this case");
     };
     let length = |m: f64| Measure::new(Quantity::Length, m);
     let mut verdict = place(context.verdict(NAME, length(required), length(available), Sense::AtMost));
@@ -95,23 +96,34 @@ fn verdict(context: &Context, mouth_idx: usize) -> Verdict {
 pub struct FreeboardFill<'a> {
     study: &'a ValidStudy,
     rims: &'a Rims,
+    route: Route,
     tilted: Tilted<'a>,
-    still: Tilted<'a>,
+    still: Option<Tilted<'a>>,
     mouth_idx: usize,
     allowance_m: f64,
 }
 
 impl<'a> FreeboardFill<'a> {
     /// For the mouth `mouth_idx`, whose walls are carried on in `rims`.
-    pub fn new(study: &'a ValidStudy, rims: &'a Rims, mouth_idx: usize, allowance_m: f64) -> FreeboardFill<'a> {
+    pub fn new(
+        study: &'a ValidStudy,
+        rims: &'a Rims,
+        route: Route,
+        mouth_idx: usize,
+        allowance_m: f64,
+    ) -> FreeboardFill<'a> {
         let tilted = rims.tilted();
-        FreeboardFill { study, rims, tilted, still: study.tilted(Vec2::y()), mouth_idx, allowance_m }
+        let still = study.common().map(|s| s.vessel.tilted(Vec2::y()));
+        FreeboardFill { study, rims, route, tilted, still, mouth_idx, allowance_m }
     }
 
-    /// (required, available) freeboard, m, at a volume; none where the liquid stands in several pools.
+    /// (required, available) freeboard, m, at a volume of the common fill; none where there is none, or where it cannot
+    /// be followed.
     pub fn at(&self, volume_m3: f64) -> Option<(f64, f64)> {
-        let still_z = self.still.level_for_volume(volume_m3);
-        let surface_z = self.rims.surface_z_m(&self.tilted, volume_m3, self.mouth_idx)?;
+        let still_z = self.still.as_ref()?.level_for_volume(volume_m3);
+        let (region, width) = (self.study.region(), &self.study.study().section.width);
+        let starts = self.study.starts_with(volume_m3);
+        let surface_z = self.rims.surface_z_m(&self.tilted, region, width, &starts, self.route, self.mouth_idx)?;
         Some((surface_z - still_z + self.allowance_m, self.mouth_z_m() - still_z))
     }
 
@@ -124,7 +136,7 @@ impl<'a> FreeboardFill<'a> {
     /// Fills are sampled in steps of 1/64 of capacity, then the turn is refined.
     pub fn highest_volume_m3(&self) -> Option<f64> {
         const N_STEPS: u32 = 64;
-        let capacity = self.study.capacity_m3();
+        let capacity = self.study.common()?.vessel.capacity_m3();
         let fails = |volume: f64| self.at(volume).is_none_or(|(required, available)| required > available);
         let volume = |i: u32| capacity * f64::from(i) / f64::from(N_STEPS);
         let holds = (1..=N_STEPS).rev().find(|&i| !fails(volume(i)))?;

@@ -7,7 +7,7 @@ use crate::problem::Place;
 use crate::study::Limit;
 use crate::units::{Measure, Phrase, Quantity, fixed, number};
 
-use super::{Absent, Context, Criterion, Outcome, Sense, Verdict, WorkLine};
+use super::{Absent, Context, Criterion, Outcome, Sense, Verdict, View, WorkLine};
 
 pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
 
@@ -15,11 +15,11 @@ const NAME: &str = "Roof contact";
 
 fn judge(context: &Context) -> Outcome {
     let limit = |l: &Limit| if let Limit::RoofPressure(pa) = l { Some(*pa) } else { None };
-    let verdicts = context.by_records(limit, |limit_pa| verdict(context, limit_pa));
+    let verdicts = context.by_records(limit, |limit_pa| context.worse(|view| verdict(context, view, limit_pa)));
     if !verdicts.is_empty() {
         return Outcome { verdicts, absent: Vec::new() };
     }
-    let contact = context.settled.map(|settled| settled.roof.as_ref());
+    let contact = context.settled().settled.map(|settled| settled.roof.as_ref());
     let reason = match contact {
         Err(_) => "no roof limit is given".into(),
         Ok(None) => "the settled liquid does not reach the roof".into(),
@@ -39,8 +39,8 @@ fn judge(context: &Context) -> Outcome {
     Outcome { verdicts, absent: vec![Absent { criterion: NAME, place_words, reason }] }
 }
 
-fn verdict(context: &Context, limit_pa: f64) -> Verdict {
-    let settled = match context.judged() {
+fn verdict(context: &Context, view: &View, limit_pa: f64) -> Verdict {
+    let settled = match view.judged() {
         Ok(settled) => settled,
         Err(reason) => return context.not_judged(NAME, Sense::AtMost, reason.to_owned()),
     };

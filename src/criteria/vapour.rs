@@ -24,7 +24,7 @@ fn verdict(context: &Context, vapour_pa: f64) -> Verdict {
         source: Source::VapourMargin,
         ..context.not_judged(NAME, Sense::AtLeast, reason.to_owned())
     };
-    let settled = match context.judged() {
+    let settled = match context.settled().judged() {
         Ok(settled) => settled,
         Err(reason) => return not_judged(reason),
     };
@@ -35,7 +35,7 @@ fn verdict(context: &Context, vapour_pa: f64) -> Verdict {
     let kpa = |pa: f64| number(pa / 1e3, 4);
     Verdict {
         place_words: "free surface".to_owned(),
-        at: settled.surface.first().map(|c| c.left + (c.right - c.left) * 0.5),
+        at: settled.main_pool().and_then(|p| p.surface.first()).map(|c| c.left + (c.right - c.left) * 0.5),
         source: Source::VapourMargin,
         unconfirmed_record: context.unconfirmed(record_idx),
         working: vec![

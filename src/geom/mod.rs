@@ -3,11 +3,13 @@
 //! Knows no gravity, no liquid and no tank: a direction "up" is just a unit vector. A [`Point`] is a place, a
 //! [`Vec2`] a displacement; x is the section's s, y its z.
 
+mod basins;
 mod edge;
 mod path;
 mod piece;
 mod sublevel;
 
+pub use basins::{Basin, Basins, Depth, Outlet, Side, StripView};
 pub use edge::{Edge, rotate};
 pub use path::Path;
 pub use sublevel::{Sublevel, Until};

@@ -17,6 +17,20 @@ pub(super) struct Piece {
     gain: f64,
     /// Arcs: (low end - centre), signed radius as travelled.
     pub arc: Option<([f64; 2], f64)>,
+    /// The edge that it is a stretch of, and the edge's parameters at the low and the high end.
+    pub edge_idx: u32,
+    pub t: [f64; 2],
+}
+
+/// A level edge: it bounds no strip, but it may part what lies below it from what lies above.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Flat {
+    pub v: f64,
+    /// From left to right.
+    pub u: [f64; 2],
+    pub edge_idx: u32,
+    /// Whether the region lies above it.
+    pub is_floor: bool,
 }
 
 impl Piece {
@@ -47,6 +61,49 @@ impl Piece {
         }
     }
 
+    /// Level at the edge's parameter `t`, held to the piece.
+    pub fn v_at(&self, t: f64) -> f64 {
+        let share = (t - self.t[0]) / (self.t[1] - self.t[0]);
+        if share <= 0.0 {
+            return self.low[1];
+        }
+        if share >= 1.0 {
+            return self.high[1];
+        }
+        match self.arc {
+            None => self.low[1] + share * (self.high[1] - self.low[1]),
+            Some(([x, y], radius)) => {
+                // Turn the low end's radius by its share of the angle to the high end.
+                let (du, dv) = (self.high[0] - self.low[0], self.high[1] - self.low[1]);
+                let angle = 2.0 * ((du * du + dv * dv).sqrt() / (2.0 * radius.abs())).min(1.0).asin() * share;
+                // Travelled up, a left turn goes round counter-clockwise; down, the other way.
+                let (sin, cos) = angle.copysign(if self.is_right { radius } else { -radius }).sin_cos();
+                (self.low[1] + x * sin + y * (cos - 1.0)).clamp(self.low[1], self.high[1])
+            }
+        }
+    }
+
+    /// The edge's parameter at level `v`, held to the piece.
+    pub fn t_at(&self, v: f64) -> f64 {
+        if v <= self.low[1] {
+            return self.t[0];
+        }
+        if v >= self.high[1] {
+            return self.t[1];
+        }
+        let share = match self.arc {
+            None => (v - self.low[1]) / (self.high[1] - self.low[1]),
+            Some((_, radius)) => {
+                let angle_to = |to: [f64; 2]| {
+                    let (du, dv) = (to[0] - self.low[0], to[1] - self.low[1]);
+                    ((du * du + dv * dv).sqrt() / (2.0 * radius.abs())).min(1.0).asin()
+                };
+                angle_to([self.u_at(v), v]) / angle_to(self.high)
+            }
+        };
+        self.t[0] + share * (self.t[1] - self.t[0])
+    }
+
     /// Area that the arc adds to the strips beyond its chord, between two of its points: with x = chord / 2r,
     /// r2 (asin x - x sqrt(1 - x2)), by its series for short stretches.
     pub fn segment_area(&self, from: [f64; 2], to: [f64; 2]) -> f64 {
@@ -65,41 +122,55 @@ impl Piece {
     }
 }
 
-/// Cuts edges into pieces, in (u, v) about `origin`. Level stretches bound nothing and are left out.
-pub(super) fn cut(edges: &[Edge], origin: Point, up: Vec2, right: Vec2) -> Vec<Piece> {
+/// Cuts edges into pieces, in (u, v) about `origin`, and the level edges, which bound no strip.
+pub(super) fn cut(edges: &[Edge], origin: Point, up: Vec2, right: Vec2) -> (Vec<Piece>, Vec<Flat>) {
     let local = |p: Point| {
         let d = p - origin;
         [right.dot(&d), up.dot(&d)]
     };
     let mut pieces = Vec::with_capacity(edges.len() + 8);
+    let mut flats = Vec::new();
     let mut last = (origin, [0.0; 2]);
-    for edge in edges {
+    for (edge_idx, edge) in edges.iter().enumerate() {
+        let edge_idx = edge_idx as u32;
         let from = if edge.start == last.0 { last.1 } else { local(edge.start) };
         let to = local(edge.end);
         if edge.is_arc() {
-            push_arc(edge, (from, to), up, right, local, &mut pieces);
+            push_arc(edge, edge_idx, (from, to), up, right, local, &mut pieces);
+        } else if from[1] == to[1] {
+            // Travelled to the right, the region is above.
+            let is_floor = to[0] > from[0];
+            let u = if is_floor { [from[0], to[0]] } else { [to[0], from[0]] };
+            flats.push(Flat { v: from[1], u, edge_idx, is_floor });
         } else {
-            push_piece(from, to, None, &mut pieces);
+            push_piece((from, 0.0), (to, 1.0), None, edge_idx, &mut pieces);
         }
         last = (edge.end, to);
     }
-    pieces
+    (pieces, flats)
 }
 
-fn push_piece(from: [f64; 2], to: [f64; 2], arc: Option<([f64; 2], f64)>, pieces: &mut Vec<Piece>) {
+fn push_piece(
+    (from, from_t): ([f64; 2], f64),
+    (to, to_t): ([f64; 2], f64),
+    arc: Option<([f64; 2], f64)>,
+    edge_idx: u32,
+    pieces: &mut Vec<Piece>,
+) {
     if from[1] == to[1] {
         return;
     }
     let is_right = to[1] > from[1];
-    let (low, high) = if is_right { (from, to) } else { (to, from) };
+    let (low, high, t) = if is_right { (from, to, [from_t, to_t]) } else { (to, from, [to_t, from_t]) };
     let gain = (high[0] - low[0]) / (high[1] - low[1]);
-    pieces.push(Piece { low, high, is_right, gain, arc });
+    pieces.push(Piece { low, high, is_right, gain, arc, edge_idx, t });
 }
 
 /// Cuts an arc where it turns along `up`, and at the quarter points between, where its angle is ill-conditioned
 /// as a function of the chord no more.
 fn push_arc(
     edge: &Edge,
+    edge_idx: u32,
     (from, end): ([f64; 2], [f64; 2]),
     up: Vec2,
     right: Vec2,
@@ -113,12 +184,12 @@ fn push_arc(
         let out = Vec2::new(tangent.y, -tangent.x) * radius;
         [right.dot(&out), up.dot(&out)]
     };
-    let (mut from, mut from_out) = (from, out(0.0));
+    let (mut from, mut from_out, mut from_t) = (from, out(0.0), 0.0);
     let turned = from_angle(radius, from_out);
-    let mut push = |to: [f64; 2], to_out: [f64; 2]| {
+    let mut push = |to: [f64; 2], to_out: [f64; 2], to_t: f64| {
         let low_out = if to[1] > from[1] { from_out } else { to_out };
-        push_piece(from, to, Some((low_out, radius)), pieces);
-        (from, from_out) = (to, to_out);
+        push_piece((from, from_t), (to, to_t), Some((low_out, radius)), edge_idx, pieces);
+        (from, from_out, from_t) = (to, to_out, to_t);
     };
     let end_out = out(1.0);
     // The angle of the radius, signed by the way round, turns through the sweep; quarter turns lie on the axes.
@@ -131,11 +202,11 @@ fn push_arc(
             let mut at = out(t);
             let flat = usize::from(at[0].abs() > at[1].abs());
             (at[flat], at[1 - flat]) = (0.0, radius.abs().copysign(at[1 - flat]));
-            push(local(edge.point_at(t)), at);
+            push(local(edge.point_at(t)), at, t);
         }
         k += 1.0;
     }
-    push(end, end_out);
+    push(end, end_out, 1.0);
 }
 
 /// Angle of a point about the centre, growing along the arc whichever way it turns.

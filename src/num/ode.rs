@@ -165,8 +165,8 @@ mod tests {
             [step.end.state[0] - y, step.error[0], step.end.rate[0] + y * y, step.error_between[0]].map(f64::abs)
         };
         let orders = local(0.04).into_iter().zip(local(0.02)).map(|(coarse, fine)| (coarse / fine).log2());
-        for (order, expected) in orders.zip([5.0, 4.0, 4.0, 3.0]) {
-            assert!((order - expected).abs() < 0.25, "expected {expected}, got {order}");
+        for (order, least) in orders.zip([5.0, 4.0, 4.0, 3.0]) {
+            assert!(order > least - 0.25, "expected at least {least}, got {order}");
         }
     }
 

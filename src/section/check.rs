@@ -2,68 +2,13 @@
 
 use std::f64::consts::TAU;
 
-use crate::geom::{Edge, Path, Point, Vec2, cross};
+use crate::geom::{Edge, Path, Point, Vec2};
 use crate::problem::{Place, Problem};
 
-use super::{EdgeKind, Section, WidthLaw};
-
-/// An edge of a region, with where it came from.
-#[derive(Clone, Copy, Debug)]
-pub struct RegionEdge {
-    /// Geometry, with the region on its left.
-    pub edge: Edge,
-    /// None: the outline; some: this obstacle.
-    pub obstacle_idx: Option<usize>,
-    /// Index in the outline or obstacle.
-    pub edge_idx: usize,
-}
-
-impl RegionEdge {
-    /// Its place on the study.
-    pub fn place(&self) -> Place {
-        match self.obstacle_idx {
-            None => Place::Edge(self.edge_idx),
-            Some(obstacle_idx) => Place::Obstacle { obstacle_idx, edge_idx: Some(self.edge_idx) },
-        }
-    }
-}
-
-/// A section without faults: every edge has the region on its left.
-#[derive(Clone, Debug)]
-pub struct Region {
-    edges: Vec<RegionEdge>,
-    geometry: Vec<Edge>,
-    area_m2: f64,
-    low: Point,
-    high: Point,
-}
-
-impl Region {
-    /// All edges, the outline's first, in the order of the section.
-    pub fn edges(&self) -> &[RegionEdge] {
-        &self.edges
-    }
-
-    /// The same edges as geometry alone.
-    pub fn geometry(&self) -> &[Edge] {
-        &self.geometry
-    }
-
-    /// Area, m2.
-    pub fn area_m2(&self) -> f64 {
-        self.area_m2
-    }
-
-    /// Corners of the box round the outline.
-    pub fn bounds(&self) -> (Point, Point) {
-        (self.low, self.high)
-    }
-
-    /// Diagonal of the box, m: the scale of lengths.
-    pub fn diagonal_m(&self) -> f64 {
-        (self.high - self.low).norm()
-    }
-}
+use super::cut::{Face, Wall};
+use super::meet::meetings;
+use super::place::Layout;
+use super::{EdgeKind, Region, Section, WidthLaw};
 
 /// Lengths below this share of the section's diagonal are taken as zero: far above rounding in f64, far below
 /// what can be built.
@@ -73,7 +18,8 @@ const SLACK: f64 = 1e-9;
 ///
 /// Refused: fewer than two edges, non-finite numbers, doubled vertices, arcs of a full turn or more, chains that
 /// cross or touch themselves or each other, no area, obstacles outside, a mouth on no outline, a width law that is
-/// not positive or does not reach from floor to roof.
+/// not positive or does not reach from floor to roof; plates that leave the tank, cross, touch or lie along a wall or
+/// each other, or have no length; openings that run off their plate, overlap, or are not open.
 pub fn check(section: &Section) -> Result<Region, Vec<Problem>> {
     let mut faults = Vec::new();
     check_width(&section.width, &mut faults);
@@ -106,31 +52,34 @@ pub fn check(section: &Section) -> Result<Region, Vec<Problem>> {
     if !faults.is_empty() {
         return Err(faults);
     }
-    let mut edges = Vec::new();
-    push_chain(&section.edges(), None, &mut edges);
+    let mut faces = Vec::new();
+    let outline_wall = |edge_idx: usize| {
+        let is_mouth = section.outline[edge_idx].kind == EdgeKind::Mouth;
+        Wall::Outline { edge_idx, is_mouth }
+    };
+    push_chain(&section.edges(), true, &outline_wall, &mut faces);
     for (obstacle_idx, obstacle) in section.obstacles.iter().enumerate() {
-        push_chain(&obstacle.edges(), Some(obstacle_idx), &mut edges);
+        let wall = |edge_idx| Wall::Obstacle { obstacle_idx, edge_idx };
+        push_chain(&obstacle.edges(), false, &wall, &mut faces);
     }
-    let geometry: Vec<Edge> = edges.iter().map(|e| e.edge).collect();
+    let geometry: Vec<Edge> = faces.iter().map(|f| f.edge).collect();
     let outline = Path::new(section.edges());
     let (s, z) = (outline.extent(Vec2::x()), outline.extent(Vec2::y()));
+    let (low, high) = (Point::new(s.0, z.0), Point::new(s.1, z.1));
     let holes: f64 = section.obstacles.iter().map(|o| Path::new(o.edges()).signed_area().abs()).sum();
-    Ok(Region {
-        edges,
-        geometry,
-        area_m2: outline.signed_area().abs() - holes,
-        low: Point::new(s.0, z.0),
-        high: Point::new(s.1, z.1),
-    })
+    let layout = Layout::new(section, &faces, (high - low).norm());
+    let plates = layout.place()?;
+    let [open, shut, cells] = layout.cut(&plates);
+    let area_m2 = outline.signed_area().abs() - holes;
+    Ok(Region { faces, geometry, plates, open, shut, cells, area_m2, low, high })
 }
 
 /// Adds a chain with the region on the left of each edge; the order of the section's edges is kept.
-fn push_chain(edges: &[Edge], obstacle_idx: Option<usize>, out: &mut Vec<RegionEdge>) {
+fn push_chain(edges: &[Edge], is_outline: bool, wall: &dyn Fn(usize) -> Wall, out: &mut Vec<Face>) {
     let is_ccw = Path::new(edges.to_vec()).signed_area() > 0.0;
-    let keep = is_ccw == obstacle_idx.is_none();
     for (edge_idx, edge) in edges.iter().enumerate() {
-        let edge = if keep { *edge } else { edge.reversed() };
-        out.push(RegionEdge { edge, obstacle_idx, edge_idx });
+        let edge = if is_ccw == is_outline { *edge } else { edge.reversed() };
+        out.push(Face { edge, wall: wall(edge_idx) });
     }
 }
 
@@ -315,76 +264,5 @@ fn check_reach(width: &WidthLaw, outline: &Path, faults: &mut Vec<Problem>) {
             format!("it is given from z {low:.4} m to {high:.4} m, the outline spans {bottom:.4} m to {top:.4} m"),
             "make the law reach from the lowest to the highest point of the outline",
         ));
-    }
-}
-
-/// Points at which two edges meet, shared ends included.
-fn meetings(a: &Edge, b: &Edge, slack: f64) -> Vec<Point> {
-    let mut out: Vec<Point> = Vec::new();
-    if (a.start - b.start).norm() > reach(a) + reach(b) + slack {
-        return out;
-    }
-    // Ends of one on the other: touching, and overlap of edges on one line or circle.
-    for (edge, other) in [(a, b), (b, a)] {
-        for p in [edge.start, edge.end] {
-            if other.nearest(p).1 <= slack {
-                out.push(p);
-            }
-        }
-    }
-    match (a.center(), b.center()) {
-        (None, None) => {
-            let (d, e) = (a.chord(), b.chord());
-            let det = cross(d, e);
-            if det != 0.0 {
-                let w = b.start - a.start;
-                let (t, u) = (cross(w, e) / det, cross(w, d) / det);
-                if (0.0..=1.0).contains(&t) && (0.0..=1.0).contains(&u) {
-                    out.push(a.point_at(t));
-                }
-            }
-        }
-        (Some(center), None) => line_on_circle(b, center, a, slack, &mut out),
-        (None, Some(center)) => line_on_circle(a, center, b, slack, &mut out),
-        (Some(p), Some(q)) => {
-            let (r, s) = (a.radius().abs(), b.radius().abs());
-            let d = q - p;
-            let dist = d.norm();
-            if dist > 0.0 && dist <= r + s + slack && dist >= (r - s).abs() - slack {
-                let along = (dist * dist + r * r - s * s) / (2.0 * dist);
-                let off = (r * r - along * along).max(0.0).sqrt();
-                let (d, n) = (d / dist, Vec2::new(-d.y, d.x) / dist);
-                for sign in [1.0, -1.0] {
-                    let x = p + d * along + n * (sign * off);
-                    if a.nearest(x).1 <= slack && b.nearest(x).1 <= slack {
-                        out.push(x);
-                    }
-                }
-            }
-        }
-    }
-    out
-}
-
-/// No point of the edge is further from its start.
-fn reach(e: &Edge) -> f64 {
-    if e.sweep.abs() <= std::f64::consts::PI { e.chord().norm() } else { 2.0 * e.radius().abs() }
-}
-
-fn line_on_circle(line: &Edge, center: Point, arc: &Edge, slack: f64, out: &mut Vec<Point>) {
-    let d = line.chord();
-    let n2 = d.norm_squared();
-    let foot = (center - line.start).dot(&d) / n2;
-    let off2 = (line.start + d * foot - center).norm_squared();
-    let r2 = arc.radius() * arc.radius();
-    if off2 > r2 {
-        return;
-    }
-    let half = ((r2 - off2) / n2).sqrt();
-    for t in [foot - half, foot + half] {
-        let p = line.start + d * t;
-        if line.nearest(p).1 <= slack && arc.nearest(p).1 <= slack {
-            out.push(p);
-        }
     }
 }

@@ -3,13 +3,23 @@
 //! Knows no gravity, no liquid and no load case.
 
 mod check;
+mod cut;
+mod depth;
+mod meet;
 mod mouth;
+mod place;
+mod plate;
+mod region;
 mod width;
 
 use crate::geom::{Edge, Path, Point};
 
-pub use check::{Region, RegionEdge, check};
+pub use check::check;
+pub use cut::{Cut, Face, Wall};
 pub use mouth::Mouth;
+pub use place::{Attached, Placed, STANDS_WITHIN};
+pub use plate::{Opening, OpeningShape, Panel, PanelEdges, Plate};
+pub use region::Region;
 pub use width::WidthLaw;
 
 /// Whether an edge holds liquid back.
@@ -61,6 +71,8 @@ pub struct Section {
     pub outline: Vec<OutlineEdge>,
     /// Obstacles.
     pub obstacles: Vec<Obstacle>,
+    /// Plates.
+    pub plates: Vec<Plate>,
     /// Out-of-plane width.
     pub width: WidthLaw,
 }

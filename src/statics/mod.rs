@@ -1,19 +1,30 @@
-//! Statics: effective gravity, the settled surface, pressures and loads, and the quasi-static way to a load case.
+//! Statics: effective gravity, pools and the way they pour over sills, pressures and loads.
 //!
 //! Knows no verdicts, no files and no screens.
 
+mod bound;
+mod cells;
+mod gas;
 mod gravity;
 mod loads;
-mod path;
+mod pools;
+mod pour_over;
+mod ramp;
 mod rim;
 mod rise;
 mod settled;
 mod tilted;
+mod wetted;
 
+pub use bound::Bound;
+pub use cells::cell_volumes;
+pub use gas::{GasPocket, gas_pockets};
 pub use gravity::{EffectiveGravity, effective_gravity};
-pub use loads::{EdgeLoad, pressure_at};
-pub use path::{Lip, Ramp, Spill};
+pub use loads::{EdgeLoad, PlateLoad, Stretch, pressure_at};
+pub use pools::{Body, Brim, Holder, LONGEST_STEP, Look, Pour, Spilled, Start, Stop, Trace, Turn, trace};
+pub use pour_over::{Lip, MouthSpill, PourOver, highest_fill, pour_over, spills};
+pub use ramp::Ramp;
 pub use rim::Carried;
-pub use rise::Rims;
-pub use settled::{PointPressure, RoofContact, Setting, Settled, settle};
+pub use rise::{Rims, Route};
+pub use settled::{PointPressure, Pool, RoofContact, Setting, Settled, settle};
 pub use tilted::{Chord, Tilted, Vessel};

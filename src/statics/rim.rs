@@ -1,7 +1,9 @@
 //! Walls carried on vertically above a rim: where the liquid would stand if the rim were high enough.
 
 use crate::geom::{Edge, Point, Vec2};
-use crate::section::{Mouth, Region};
+use crate::section::{Face, Mouth, Region, Wall};
+
+use super::bound::Bound;
 
 /// How a mouth was treated.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -19,27 +21,34 @@ pub enum Carried {
 /// A wall counts as vertical within this angle, radians: a tenth of a degree.
 const VERTICAL_RAD: f64 = 0.1 * std::f64::consts::PI / 180.0;
 
-/// The region with the walls beside each mouth carried on by `height_m` along the tank's z, and what became of each
-/// mouth. Mouths that cannot be carried on stay where they are, shut.
-pub fn carry_walls_on(region: &Region, mouths: &[Mouth], height_m: f64) -> (Vec<Edge>, Vec<Carried>) {
-    let outline: Vec<Edge> = region.edges().iter().filter(|e| e.obstacle_idx.is_none()).map(|e| e.edge).collect();
-    let mut edges = region.geometry().to_vec();
+/// The cut section with the walls beside each mouth carried on by `height_m` along the tank's z, nothing open, and what
+/// became of each mouth. Mouths that cannot be carried on stay where they are, shut. Walls that were added come last,
+/// two a mouth that is carried on, the low end of each where the mouth was.
+pub fn carry_walls_on(region: &Region, bound: Bound, mouths: &[Mouth], height_m: f64) -> (Vec<Face>, Vec<Carried>) {
+    let is_outline = |f: &&Face| matches!(f.wall, Wall::Outline { .. });
+    let outline: Vec<Edge> = region.faces().iter().filter(is_outline).map(|f| f.edge).collect();
+    let carried: Vec<Carried> = mouths.iter().map(|mouth| judge(&outline, mouth)).collect();
     let rise = Vec2::new(0.0, height_m);
-    let mut carried = Vec::with_capacity(mouths.len());
-    for mouth in mouths {
-        let how = judge(&outline, mouth);
-        carried.push(how);
-        if how != Carried::On {
-            continue;
+    let is_raised = |edge_idx: usize| {
+        let mouth_idx = mouths.iter().position(|m| m.edge_idxs.contains(&edge_idx));
+        mouth_idx.is_some_and(|i| carried[i] == Carried::On)
+    };
+    let mut faces: Vec<Face> = bound.cut(region).faces().to_vec();
+    for face in &mut faces {
+        if let Wall::Outline { edge_idx, is_mouth } = &mut face.wall {
+            *is_mouth = false;
+            if is_raised(*edge_idx) {
+                face.edge = Edge { start: face.edge.start + rise, end: face.edge.end + rise, ..face.edge };
+            }
         }
-        let Some((first, last)) = ends(&outline, mouth) else { continue };
-        for &i in &mouth.edge_idxs {
-            edges[i] = Edge { start: edges[i].start + rise, end: edges[i].end + rise, ..edges[i] };
-        }
-        edges.push(Edge::line(first, first + rise));
-        edges.push(Edge::line(last + rise, last));
     }
-    (edges, carried)
+    for (mouth, _) in mouths.iter().zip(&carried).filter(|(_, how)| **how == Carried::On) {
+        let Some((first, last)) = ends(&outline, mouth) else { continue };
+        let wall = Wall::Outline { edge_idx: mouth.edge_idxs[0], is_mouth: false };
+        faces.push(Face { edge: Edge::line(first, first + rise), wall });
+        faces.push(Face { edge: Edge::line(last + rise, last), wall });
+    }
+    (faces, carried)
 }
 
 /// Start and end of the mouth in the sense of travel that has the region on its left.

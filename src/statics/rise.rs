@@ -1,8 +1,10 @@
 //! The settled rise at the mouths, with the walls carried on above the rim: what freeboard must cover.
 
-use crate::geom::{Point, Vec2};
-use crate::section::{Mouth, Region, WidthLaw};
+use crate::geom::{Edge, Point, Vec2};
+use crate::section::{Cut, Mouth, Region, WidthLaw};
 
+use super::bound::Bound;
+use super::pools::{Holder, LONGEST_STEP, Start, Turn, trace};
 use super::rim::{Carried, carry_walls_on};
 use super::tilted::{Tilted, Vessel};
 
@@ -10,14 +12,26 @@ use super::tilted::{Tilted, Vessel};
 #[derive(Clone, Debug)]
 pub struct Rims {
     vessel: Vessel,
+    cut: Cut,
     carried: Vec<Carried>,
     up: Vec2,
     brims: Vec<Point>,
+    /// For each mouth that is carried on, the face that begins at its brim, and the parameter there.
+    beside: Vec<Option<(u32, f64)>>,
+}
+
+/// How the liquid comes to where it is judged.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Route {
+    /// As one body all the way.
+    One,
+    /// Over sills: followed along this turn, so far, radians.
+    Turned(Turn, f64),
 }
 
 impl Rims {
     /// None where effective gravity does not point toward the floor: no wall is high enough then.
-    pub fn new(region: &Region, width: &WidthLaw, mouths: &[Mouth], up: Vec2) -> Option<Rims> {
+    pub fn new(region: &Region, bound: Bound, width: &WidthLaw, mouths: &[Mouth], up: Vec2) -> Option<Rims> {
         if up.y <= 0.0 {
             return None;
         }
@@ -25,9 +39,20 @@ impl Rims {
         // Higher than any liquid of this section can stand against one wall: a wedge of all its area, and more.
         let size = region.diagonal_m();
         let height = 3.0 * size + size * tan + 2.0 * (2.0 * region.area_m2() * tan).sqrt();
-        let (edges, carried) = carry_walls_on(region, mouths, height);
-        let brims = mouths.iter().map(|m| m.brim(region, up).1).collect();
-        Some(Rims { vessel: Vessel::new(edges, width.clone()), carried, up, brims })
+        let (faces, carried) = carry_walls_on(region, bound, mouths, height);
+        let brims: Vec<Point> = mouths.iter().map(|m| m.brim(region, up).1).collect();
+        let cut = Cut::new(faces);
+        let beside = brims
+            .iter()
+            .zip(&carried)
+            .map(|(brim, how)| {
+                let at_brim = |e: &Edge| (e.start == *brim).then_some(0.0).or((e.end == *brim).then_some(1.0));
+                let rising = cut.edges().iter().enumerate().rev().filter(|(_, e)| e.chord().x == 0.0);
+                let mut found = rising.filter_map(|(i, e)| at_brim(e).map(|t| (i as u32, t)));
+                if *how == Carried::On { found.next() } else { None }
+            })
+            .collect();
+        Some(Rims { vessel: Vessel::new(cut.edges().to_vec(), width.clone()), cut, carried, up, brims, beside })
     }
 
     /// What became of each mouth.
@@ -45,11 +70,33 @@ impl Rims {
         self.vessel.tilted(self.up)
     }
 
-    /// z of the settled surface above the brim of a mouth, m, for a volume in the carried-on section; none where
-    /// it stands in several pools.
-    pub fn surface_z_m(&self, tilted: &Tilted, volume_m3: f64, mouth_idx: usize) -> Option<f64> {
-        let level = tilted.level_for_volume(volume_m3);
+    /// z of the settled surface above the brim of a mouth, m, in the carried-on section; none where that cannot be
+    /// followed. `starts` say what liquid there is.
+    pub fn surface_z_m(
+        &self,
+        tilted: &Tilted,
+        region: &Region,
+        width: &WidthLaw,
+        starts: &[Start],
+        route: Route,
+        mouth_idx: usize,
+    ) -> Option<f64> {
+        let level = match route {
+            Route::One => tilted.level_for_volume(starts.iter().map(|s| s.volume_m3).sum()),
+            Route::Turned(turn, turned_rad) => {
+                let holder = Holder::new(region, &self.cut, width, starts);
+                let trace = trace(&holder, turn, None, &[turned_rad], turned_rad, LONGEST_STEP);
+                let stop = trace.stops.first()?;
+                let look = holder.look(stop.up);
+                let (face_idx, t) = self.beside[mouth_idx]?;
+                let low = look.basins.descend_from(face_idx, t)?;
+                match look.owners(&stop.bodies)[low] {
+                    Some(i) => look.level_of(&stop.bodies[i]),
+                    None => look.basins.all()[low].bottom,
+                }
+            }
+        };
         let s = self.brims[mouth_idx].x;
-        (tilted.n_pools(level) <= 1).then(|| (level - self.up.x * s) / self.up.y)
+        Some((level - self.up.x * s) / self.up.y)
     }
 }

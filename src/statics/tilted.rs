@@ -1,7 +1,6 @@
 //! A section seen along one effective gravity: volume below a level and back, with the width law.
 
-use crate::geom::{Edge, Point, Sublevel, Until, Vec2};
-use crate::num::{gauss, tanh_sinh};
+use crate::geom::{Depth, Edge, Point, Sublevel, Until, Vec2};
 use crate::section::WidthLaw;
 
 /// One piece of a liquid surface inside the tank; seen along effective gravity, `left` is on the left.
@@ -36,7 +35,7 @@ impl Vessel {
         let (under, capacity_m3) = match width.constant() {
             Some(w) => (Vec::new(), w * Sublevel::new(&edges, Vec2::y()).total_area()),
             None => {
-                let under: Vec<f64> = edges.iter().map(|e| under_edge(e, &width)).collect();
+                let under: Vec<f64> = edges.iter().map(|e| width.under(e)).collect();
                 let sum = under.iter().sum();
                 (under, sum)
             }
@@ -99,11 +98,11 @@ impl Tilted<'_> {
         for (e, under) in self.vessel.edges.iter().zip(&self.vessel.under) {
             for (from, to) in e.parts_below(up, level) {
                 let is_whole = from == 0.0 && to == 1.0;
-                walls += if is_whole { *under } else { under_edge(&e.part(from, to), width) };
+                walls += if is_whole { *under } else { width.under(&e.part(from, to)) };
             }
         }
         // The surface closes the contour from right to left.
-        let surface: f64 = self.chords(level).iter().map(|c| under_edge(&Edge::line(c.right, c.left), width)).sum();
+        let surface: f64 = self.chords(level).iter().map(|c| width.under(&Edge::line(c.right, c.left))).sum();
         (walls + surface).clamp(0.0, self.vessel.capacity_m3)
     }
 
@@ -144,70 +143,11 @@ impl Tilted<'_> {
         if let Some(w) = self.vessel.width.constant() {
             return w * self.sublevel.width_at(level);
         }
-        self.chords(level)
-            .iter()
-            .map(|c| {
-                let dz = c.right.y - c.left.y;
-                let mean = if dz.abs() > 1e-6 * self.vessel.capacity_m3.cbrt() {
-                    (self.vessel.width.omega(c.right.y) - self.vessel.width.omega(c.left.y)) / dz
-                } else {
-                    self.vessel.width.width(0.5 * (c.left.y + c.right.y))
-                };
-                mean * c.length()
-            })
-            .sum()
+        self.chords(level).iter().map(|c| self.vessel.width.across(c.left, c.right)).sum()
     }
 
     /// The surface at `level`, from left to right.
     pub fn chords(&self, level: f64) -> Vec<Chord> {
         self.sublevel.chords(level).into_iter().map(|(left, right)| Chord { left, right }).collect()
     }
-
-    /// Whether the region below `level` stays one body at every lower level too.
-    pub fn is_one_basin(&self, level: f64) -> bool {
-        self.sublevel.n_basins(level) <= 1
-    }
-
-    /// Count of connected bodies of liquid below `level`.
-    pub fn n_pools(&self, level: f64) -> usize {
-        self.sublevel.n_pools(level)
-    }
-}
-
-/// - integral of Omega ds along an edge: the volume between the edge and the law's lowest height, m3.
-fn under_edge(e: &Edge, width: &WidthLaw) -> f64 {
-    if !e.is_arc() {
-        let (ds, dz) = (e.end.x - e.start.x, e.end.y - e.start.y);
-        if ds == 0.0 {
-            return 0.0;
-        }
-        let (low, high) = width.range().unwrap_or((0.0, 0.0));
-        // The difference quotient loses figures over short rises; there Omega is smooth enough for quadrature.
-        let mean = if dz.abs() > 1e-5 * (high - low) {
-            (width.omega2(e.end.y) - width.omega2(e.start.y)) / dz
-        } else {
-            gauss(1, |t| [width.omega(e.start.y + t * dz)])[0]
-        };
-        return -mean * ds;
-    }
-    pieces_between_kinks(e, width)
-        .map(|part| {
-            let length = part.length();
-            -tanh_sinh(|t| [width.omega(part.point_at(t).y) * part.tangent_at(t).x * length])[0]
-        })
-        .sum()
-}
-
-/// The edge cut where the width law is not smooth, and where an arc turns round in z: there it may touch the lowest
-/// or highest line of the law without crossing it.
-pub(super) fn pieces_between_kinks<'e>(e: &'e Edge, width: &WidthLaw) -> impl Iterator<Item = Edge> + 'e {
-    let mut stops = vec![0.0];
-    stops.extend(e.turning_points(Vec2::y()));
-    for kink in width.kinks() {
-        stops.extend(e.crossings(Vec2::y(), kink));
-    }
-    stops.push(1.0);
-    stops.sort_unstable_by(f64::total_cmp);
-    stops.dedup();
-    (1..stops.len()).map(move |i| e.part(stops[i - 1], stops[i]))
 }

@@ -6,6 +6,7 @@ use geo::Area;
 use proptest::prelude::*;
 
 use crate::support::clip::{geo_below, geo_measure, geo_region, quadrature};
+use crate::support::n_pools;
 use crate::support::random::{any, config, convex, direction, share, star};
 use crate::support::{held, judge_case, settled, study};
 
@@ -35,7 +36,7 @@ fn areas_and_pools_agree_with_a_polygon_library() {
         let (got, want) = (sublevel.area_below(level), geo_measure(&pieces).0);
         let allowed = 1e-7 * sublevel.total_area();
         prop_assert!((got - want).abs() <= allowed, "share {share}: got {got:e}, clipped {want:e}");
-        prop_assert_eq!(sublevel.n_pools(level), pieces.0.len(), "pools at share {}", share);
+        prop_assert_eq!(n_pools(&sublevel, level), pieces.0.len(), "pools at share {}", share);
     });
 }
 
@@ -64,12 +65,12 @@ fn centroids_agree_with_quadrature_and_a_polygon_library() {
         let case = judge_case(&study(sample.section(&[], 1.0), Fill::Share(share)), held(a_s, a_z));
         let (settled, up) = (settled(&case), case.gravity.up.unwrap());
         let (low, high) = sample.extent(up);
-        let want = quadrature(&sample.edges(), up, settled.level_m).centroid;
+        let want = quadrature(&sample.edges(), up, settled.pools[0].level_m).centroid;
         let off = (settled.centroid - want).norm();
         // The level itself moves the centroid; both carry rounding of the section's place and size.
         prop_assert!(off <= 1e-9 * (high - low), "share {share}: got {}, quadrature {want}", settled.centroid);
         let region = geo_region(&sample.outline, &sample.obstacles);
-        let clipped = geo_measure(&geo_below(&region, up, settled.level_m)).1;
+        let clipped = geo_measure(&geo_below(&region, up, settled.pools[0].level_m)).1;
         let off = (settled.centroid - clipped).norm();
         // Chords for arcs: an area off by up to 1e-6 of the section's, seen from a body of its share.
         prop_assert!(off <= 1e-5 * (high - low) / share, "share {share}: got {}, clipped {clipped}", settled.centroid);

@@ -13,6 +13,9 @@ use crate::support::table::{Findings, Row, table};
 /// Gravity of the tables.
 const G: f64 = 9.81;
 
+/// Plan areas and first levels of prisms.
+type Prisms = &'static [(f64, f64)];
+
 type Level<'a> = &'a (dyn Fn(f64) -> f64 + Sync);
 
 /// An opening of a row.
@@ -167,7 +170,7 @@ fn a_baffled_tank_comes_to_one_straight_surface() {
 fn rows_of_cells_agree_with_a_general_purpose_solver() {
     // Plan areas and first levels, passages: as the table's head describes them.
     let slot = |low_m, high_m, area_m2, c_d| Opening { low_m, high_m, area_m2, c_d };
-    let networks: [(&str, &[(f64, f64)], Vec<Passage>); 4] = [
+    let networks: [(&str, Prisms, Vec<Passage>); 4] = [
         (
             "row",
             &[(2.0, 2.0), (1.0, 1.0), (3.0, 1.0)],
@@ -192,7 +195,7 @@ fn rows_of_cells_agree_with_a_general_purpose_solver() {
         let cells: Vec<Cell> =
             cells.iter().zip(&levels).map(|((plan, level), of_volume)| prism(*plan, *level, of_volume)).collect();
         let way = rest(&cells, &passages, G);
-        for row in rows.iter().filter(|row| row.id() == id) {
+        for row in rows.iter().filter(|row| row.text("network") == id) {
             let volumes = way.volumes_at(row.number("time_s"));
             for ((column, volume), level) in ["level_a_m", "level_b_m", "level_c_m"].iter().zip(volumes).zip(&levels)
             {

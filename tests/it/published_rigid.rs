@@ -168,7 +168,7 @@ fn liquid_in_a_circle_only_turns() {
         let tilt_rad = row.number("tilt_deg").to_radians();
         row.compare(&mut findings, "tilt_deg", -case.gravity.tilt_rad.unwrap().to_degrees());
         row.compare(&mut findings, "centroid_offset_m", -offset.dot(&up));
-        row.compare(&mut findings, "surface_below_centre_m", up.dot(&center) - settled.level_m);
+        row.compare(&mut findings, "surface_below_centre_m", up.dot(&center) - settled.pools[0].level_m);
         let toward_rear = row.number("centroid_offset_m") * tilt_rad.sin();
         assert!((-offset.x - toward_rear).abs() < 1e-7, "expected {toward_rear} toward the rear, got {}", -offset.x);
     }

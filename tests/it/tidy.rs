@@ -18,15 +18,26 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("geom", &["num"]),
     ("section", &["problem", "num", "geom"]),
     ("liquid", &[]),
+    ("material", &[]),
     ("cases", &["geom"]),
     ("statics", &["problem", "num", "geom", "section"]),
-    ("study", &["units", "problem", "geom", "section", "liquid", "cases", "statics"]),
-    ("criteria", &["units", "sources", "problem", "num", "geom", "cases", "statics", "study"]),
-    ("analysis", &["units", "problem", "geom", "cases", "statics", "study", "criteria"]),
+    ("plates", &["num", "geom", "section", "material", "statics"]),
+    ("study", &["units", "problem", "geom", "section", "liquid", "material", "cases", "statics"]),
+    (
+        "criteria",
+        &["units", "sources", "problem", "num", "geom", "section", "material", "cases", "statics", "plates", "study"],
+    ),
+    ("analysis", &["units", "problem", "geom", "section", "cases", "statics", "plates", "study", "criteria"]),
     ("scenario", &["units", "problem", "geom", "section", "liquid", "cases", "study"]),
     ("report", &["units", "sources", "problem", "geom", "section", "liquid", "cases", "study", "analysis"]),
     ("app", &["problem", "geom", "section", "liquid", "cases", "study", "analysis", "scenario"]),
-    ("gui", &["units", "problem", "geom", "section", "liquid", "cases", "study", "analysis", "scenario", "app"]),
+    (
+        "gui",
+        &[
+            "units", "problem", "geom", "section", "liquid", "material", "cases", "study", "analysis", "scenario",
+            "app",
+        ],
+    ),
     ("cli", &["units", "problem", "study", "analysis", "report", "app", "gui"]),
 ];
 

@@ -2,6 +2,7 @@
 
 mod drags;
 mod handles;
+mod plates;
 mod robust;
 
 use brimwright::app::{Derived, Document, Edit};
@@ -59,6 +60,7 @@ fn study() -> Study {
                 edge("rim", EdgeKind::Mouth, 1.0, 1.0),
                 edge("left wall", EdgeKind::Wall, -1.0, 1.0),
             ],
+            plates: vec![],
             obstacles: vec![Obstacle {
                 name: "duct".to_owned(),
                 vertices: vec![corner(-0.4, 0.1), corner(-0.2, 0.1), corner(-0.2, 0.3), corner(-0.4, 0.3)],
@@ -72,6 +74,10 @@ fn study() -> Study {
             surface_tension_n_per_m: None,
         },
         fill: Fill::Share(0.5),
+        compartments: vec![],
+        sump: None,
+        discharge_coefficient: 0.6,
+        materials: Vec::new(),
         cases: vec![case("Rest", 0.0, AccelUnit::MPerS2), case("Stop", 0.1, AccelUnit::G)],
         points: vec![NamedPoint { name: "sensor".to_owned(), at: Point::new(0.6, 0.2) }],
         moment_about: Point::new(0.0, 0.0),
@@ -86,6 +92,8 @@ fn case(name: &str, a_s: f64, unit: AccelUnit) -> LoadCase {
         accel: Accel::Components { a_s, a_z: 0.0, unit },
         attitude: Attitude::Level,
         onset_s: None,
+        duration_s: None,
+        release: false,
         source: String::new(),
         note: String::new(),
     }
@@ -96,8 +104,10 @@ fn view() -> View {
         case_idx: 0,
         selected: None,
         open_verdict: None,
+        stage: None,
         units: UnitSystem::Si,
         camera: None,
+        pen: None,
         status: String::new(),
     }
 }

@@ -1,8 +1,14 @@
 //! Builders, reference tables and an independent clipper for the checks against the outside.
 
 pub mod clip;
+pub mod followed;
+pub mod grid;
+pub mod grid_pools;
+pub mod hand_cases;
+pub mod plated;
 pub mod random;
 pub mod shapes;
+pub mod states;
 pub mod table;
 
 use brimwright::analysis::{self, CaseResult, Chord, EdgeLoad, Results, Settled, Verdict};
@@ -37,6 +43,10 @@ pub fn study(section: Section, fill: Fill) -> Study {
             surface_tension_n_per_m: None,
         },
         fill,
+        compartments: vec![],
+        sump: None,
+        discharge_coefficient: 0.6,
+        materials: vec![],
         cases: vec![held(0.0, 0.0)],
         points: vec![],
         moment_about: Point::origin(),
@@ -52,6 +62,8 @@ pub fn held(a_s: f64, a_z: f64) -> LoadCase {
         accel: Accel::Components { a_s, a_z, unit: AccelUnit::MPerS2 },
         attitude: Attitude::Level,
         onset_s: None,
+        duration_s: None,
+        release: false,
         source: String::new(),
         note: String::new(),
     }
@@ -102,14 +114,14 @@ pub fn pressure_at(settled: &Settled, name: &str) -> f64 {
 
 /// The only surface piece.
 pub fn chord(settled: &Settled) -> Chord {
-    assert_eq!(settled.surface.len(), 1, "surface pieces: {:?}", settled.surface);
-    settled.surface[0]
+    assert_eq!(settled.pools[0].surface.len(), 1, "surface pieces: {:?}", settled.pools[0].surface);
+    settled.pools[0].surface[0]
 }
 
 /// z of the surface's line at `s`.
 pub fn line_z(case: &CaseResult, s: f64) -> f64 {
     let slope = case.gravity.slope.expect("a surface that is not vertical");
-    settled(case).offset_m.expect("a surface that is not vertical") + slope * s
+    settled(case).pools[0].offset_m.expect("a surface that is not vertical") + slope * s
 }
 
 /// Distance from `origin` along the unit vector `along` at which a load's line of action is crossed, worked out
@@ -134,4 +146,10 @@ pub fn turned(edges: &[Edge], angle_rad: f64) -> Vec<Edge> {
     let (sin, cos) = angle_rad.sin_cos();
     let turn = |p: Point| Point::new(p.x * cos - p.y * sin, p.x * sin + p.y * cos);
     edges.iter().map(|e| Edge { start: turn(e.start), end: turn(e.end), sweep: e.sweep }).collect()
+}
+
+/// Count of connected parts of a region below a level.
+pub fn n_pools(sublevel: &brimwright::geom::Sublevel, level: f64) -> usize {
+    let depth = brimwright::section::WidthLaw::Constant { width_m: 1.0 };
+    brimwright::geom::Basins::over(sublevel.clone(), &depth, &|_| false).n_parts(level)
 }

@@ -77,6 +77,7 @@ pub fn section(outline: &[Edge], mouths: &[usize], width_m: f64) -> Section {
             })
             .collect(),
         obstacles: vec![],
+        plates: vec![],
         width: WidthLaw::Constant { width_m },
     }
 }
