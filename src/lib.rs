@@ -8,6 +8,7 @@ pub mod app;
 pub mod cases;
 pub mod cli;
 pub mod criteria;
+pub mod flow;
 pub mod geom;
 #[cfg(feature = "gui")]
 pub mod gui;

@@ -20,6 +20,10 @@ pub enum Source {
     LayoutGeometry,
     /// Effective gravity and standard gravity.
     StandardGravity,
+    /// Flow through orifices, drowned and free, and the time it takes.
+    OrificeFlow,
+    /// Discharge coefficients of holes.
+    DischargeCoefficient,
     /// Thin plates in bending.
     PlateBending,
     /// The project's own solution for rectangular panels.

@@ -14,6 +14,7 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("sources", &[]),
     ("problem", &[]),
     ("num", &[]),
+    ("flow", &["num"]),
     ("geom", &["num"]),
     ("section", &["problem", "num", "geom"]),
     ("liquid", &[]),
