@@ -14,6 +14,7 @@ pub mod gui;
 pub mod liquid;
 pub mod num;
 pub mod problem;
+pub mod progress;
 pub mod report;
 pub mod scenario;
 pub mod section;

@@ -51,7 +51,11 @@ pub fn pour_over(holder: &Holder, mouths: &[Mouth], ramps: &[Ramp]) -> Vec<PourO
 impl PourOver {
     fn new(holder: &Holder, mouths: &[Mouth], ramp: &Ramp, at: &[f64], trace: &Trace) -> PourOver {
         let goal = at.iter().position(|&t| t == ramp.to_case_rad());
-        let stop = goal.and_then(|i| trace.stops.get(i)).cloned();
+        PourOver::to_stop(holder, mouths, ramp, goal.and_then(|i| trace.stops.get(i)).cloned(), trace)
+    }
+
+    /// Along `ramp`, whose end is `stop`; `trace` knows what happens first, also beyond it.
+    pub fn to_stop(holder: &Holder, mouths: &[Mouth], ramp: &Ramp, stop: Option<Stop>, trace: &Trace) -> PourOver {
         let lip = |brim: Brim| {
             let edge_idx = match holder.wall(brim.face_idx) {
                 Wall::Outline { edge_idx, .. } => edge_idx,

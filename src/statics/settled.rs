@@ -98,7 +98,7 @@ pub struct Settled {
     pub points: Vec<PointPressure>,
     /// Contact with the roof, if any.
     pub roof: Option<RoofContact>,
-    /// Volume of liquid in each cell of the region, m3.
+    /// Volume of liquid in each cell of the region, m3; empty where it was not asked for.
     pub cells_m3: Vec<f64>,
 }
 
@@ -126,6 +126,8 @@ pub struct Setting<'a> {
     pub moment_about: Point,
     /// Named points.
     pub points: &'a [(&'a str, Point)],
+    /// Whether the volume in each cell is asked for.
+    pub with_cells: bool,
 }
 
 /// Bodies below this share of the largest one are drops that rounding leaves: they press nowhere to speak of, and are no
@@ -216,7 +218,7 @@ pub fn settle(section: &Section, region: &Region, look: &Look, bodies: &[Body], 
         total_force_n: total,
         total_moment_n_m: total_moment,
         pools,
-        cells_m3: cell_volumes(region, width, look, bodies),
+        cells_m3: if setting.with_cells { cell_volumes(region, width, look, bodies) } else { Vec::new() },
     }
 }
 

@@ -9,6 +9,7 @@ mod cli;
 mod clipper;
 mod degenerate;
 mod edits;
+mod envelope;
 mod examples;
 mod files;
 #[cfg(feature = "gui")]
