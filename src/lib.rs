@@ -12,7 +12,9 @@ pub mod geom;
 #[cfg(feature = "gui")]
 pub mod gui;
 pub mod liquid;
+pub mod material;
 pub mod num;
+pub mod plates;
 pub mod problem;
 pub mod progress;
 pub mod report;

@@ -18,6 +18,12 @@ pub enum Source {
     VapourMargin,
     /// Effective gravity and standard gravity.
     StandardGravity,
+    /// Thin plates in bending.
+    PlateBending,
+    /// The project's own solution for rectangular panels.
+    PanelRitz,
+    /// Beams of one span.
+    BeamFormulas,
 }
 
 /// One entry of the bibliography.

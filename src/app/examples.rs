@@ -23,4 +23,8 @@ pub const EXAMPLES: &[Example] = &[
     example!("ship-header-tank.ron"),
     example!("hoist-dip-vat.ron"),
     example!("small-sample-tray.ron"),
+    example!("fire-tank-lengthwise.ron"),
+    example!("fire-tank-crosswise.ron"),
+    example!("tanker-barrel-surge-plates.ron"),
+    example!("weir-box-release.ron"),
 ];

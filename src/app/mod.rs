@@ -7,8 +7,10 @@ mod document;
 mod edit;
 mod examples;
 mod files;
+mod plates;
 
 pub use document::{Derived, Document, Step};
 pub use edit::{Edit, apply};
 pub use examples::{EXAMPLES, Example};
 pub use files::{FileError, load, save_atomic};
+pub use plates::{equally_spaced, plate_across, shifted_along_walls, with_length_kept_openings};

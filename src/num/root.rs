@@ -1,4 +1,4 @@
-//! Bracketed roots and minima of functions of one variable.
+//! Bracketed roots of functions of one variable.
 
 /// The point in `low..high` at which `is_beyond` turns from false to true, to `tolerance`; assumes that it does
 /// so once. Gives `high` where it never does.
@@ -54,30 +54,39 @@ pub fn root(low: f64, high: f64, tolerance: f64, mut f: impl FnMut(f64) -> f64) 
     0.5 * (a + b)
 }
 
-/// The point and value of the least of `f` in `low..high`, by golden section, to `tolerance`; a local one where
-/// there are several.
-///
-/// Source: Kiefer (1953) (from memory).
-pub fn golden_min(low: f64, high: f64, tolerance: f64, mut f: impl FnMut(f64) -> f64) -> (f64, f64) {
-    const SHARE: f64 = 0.618_033_988_749_894_8;
+/// A root or a jump of `f` between `low` and `high`, where f(low) <= 0 < f(high), as a bracket no wider than `tolerance`:
+/// `f` is not above zero at its first end, and is at its second. By Newton steps that bisection guards; `f` gives its
+/// value and, where it has one, its slope. Both ends are `low` where it is above zero there already.
+pub fn bracket(low: f64, high: f64, tolerance: f64, mut f: impl FnMut(f64) -> (f64, Option<f64>)) -> [f64; 2] {
     let (mut a, mut b) = (low, high);
-    let (mut x1, mut x2) = (b - SHARE * (b - a), a + SHARE * (b - a));
-    let (mut f1, mut f2) = (f(x1), f(x2));
-    while b - a > tolerance {
-        if f1 <= f2 {
-            (b, x2, f2) = (x2, x1, f1);
-            x1 = b - SHARE * (b - a);
-            f1 = f(x1);
-        } else {
-            (a, x1, f1) = (x1, x2, f2);
-            x2 = a + SHARE * (b - a);
-            f2 = f(x2);
-        }
-        if x1 >= x2 {
+    let (mut x, (mut fx, mut slope)) = (low, f(low));
+    if fx > 0.0 {
+        return [low; 2];
+    }
+    let mut width = b - a;
+    for i in 1..200 {
+        if b - a <= tolerance {
             break;
         }
+        let newton = slope.filter(|s| *s > 0.0).map(|s| x - fx / s);
+        // A step that small is Newton at its end: the other side of the root tells.
+        let is_small = newton.is_some_and(|next| (next - x).abs() <= 0.25 * tolerance);
+        let newton = if is_small { Some(x + if fx > 0.0 { -tolerance } else { tolerance }) } else { newton };
+        // Every fourth time, bisect if Newton has not quartered the bracket since: its slope may mislead.
+        let is_slow = i % 4 == 0 && b - a > 0.25 * width;
+        if i % 4 == 0 {
+            width = b - a;
+        }
+        let is_inside = |next: &f64| *next > a && *next < b && !is_slow;
+        let next = newton.filter(is_inside).unwrap_or(0.5 * (a + b));
+        if next <= a || next >= b {
+            break;
+        }
+        x = next;
+        (fx, slope) = f(x);
+        if fx > 0.0 { b = x } else { a = x }
     }
-    if f1 <= f2 { (x1, f1) } else { (x2, f2) }
+    [a, b]
 }
 
 #[cfg(test)]
@@ -85,7 +94,7 @@ mod tests {
     use super::*;
 
     #[test]
-    fn bisection_and_golden_section_find_what_is_there() {
+    fn bracketed_roots_find_what_is_there() {
         let sqrt2 = std::f64::consts::SQRT_2;
         let found = bisect(0.0, 2.0, 1e-14, |x| x * x > 2.0);
         assert!((found - sqrt2).abs() < 1e-13, "{found}");
@@ -97,9 +106,23 @@ mod tests {
             });
             assert!((found - sqrt2).abs() < 1e-14 && n_calls < 60, "{found} in {n_calls} calls from {low}..{high}");
         }
+        for (low, high) in [(0.0, 2.0), (1.0, 1e6), (sqrt2 - 1e-9, 1.5)] {
+            let mut n_calls = 0;
+            let [_, found] = bracket(low, high, 1e-14, |x| {
+                n_calls += 1;
+                (x * x - 2.0, (x > 0.0).then_some(2.0 * x))
+            });
+            assert!((found - sqrt2).abs() < 1e-13 && n_calls < 40, "{found} in {n_calls} calls from {low}..{high}");
+        }
+        assert_eq!(bracket(3.0, 4.0, 1e-15, |x| (x - 2.0, Some(1.0))), [3.0; 2]);
+        let [before, jump] = bracket(0.0, 1.0, 1e-14, |x| (if x > 0.3 { 7.0 } else { -1.0 }, None));
+        assert!(before <= 0.3 && jump > 0.3 && jump - before <= 1e-14, "round the jump: {before}..{jump}");
+        // Without a slope, and with one that misleads.
+        for slope in [None, Some(1e-3), Some(1e3), Some(-1.0)] {
+            let [found, _] = bracket(0.0, 2.0, 1e-13, |x| (x * x * x - 2.0, slope));
+            assert!((found - 2f64.cbrt()).abs() < 1e-9, "{found} with the slope {slope:?}");
+        }
         assert_eq!(root(3.0, 4.0, 1e-15, |x| x - 2.0), 3.0);
         assert_eq!(bisect(3.0, 4.0, 1e-14, |x| x > 2.0), 3.0);
-        let (x, value) = golden_min(0.0, 3.0, 1e-9, |x| (x - 1.25) * (x - 1.25) + 2.0);
-        assert!((x - 1.25).abs() < 1e-7 && (value - 2.0).abs() < 1e-12, "{x} {value}");
     }
 }

@@ -12,6 +12,18 @@ pub const MAX_OBSTACLES: usize = 100;
 /// Edges of one obstacle.
 pub const MAX_OBSTACLE_EDGES: usize = 500;
 
+/// Plates.
+pub const MAX_PLATES: usize = 200;
+
+/// Corners of one plate, its ends included.
+pub const MAX_PLATE_POINTS: usize = 50;
+
+/// Openings of one plate.
+pub const MAX_OPENINGS: usize = 100;
+
+/// Compartments with a fill of their own.
+pub const MAX_COMPARTMENTS: usize = 100;
+
 /// Rows of the width table.
 pub const MAX_WIDTH_ROWS: usize = 2000;
 

@@ -8,6 +8,7 @@
 mod fault;
 mod head;
 mod limits;
+mod list;
 mod number;
 mod v1;
 mod writer;

@@ -44,6 +44,21 @@ impl<'de> Deserialize<'de> for Num {
     }
 }
 
+/// A count of a file. Read as a number, so that 2.5 is called no whole number rather than a missing comma.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Count(pub u32);
+
+impl<'de> Deserialize<'de> for Count {
+    fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Count, D::Error> {
+        let value = f64::deserialize(deserializer)?;
+        if value.fract() == 0.0 && (0.0..=f64::from(u32::MAX)).contains(&value) {
+            Ok(Count(value as u32))
+        } else {
+            Err(D::Error::custom("this is no count\nwrite a whole number of zero or more"))
+        }
+    }
+}
+
 /// One factor for both ways, so that a degree comes back as it went.
 const RAD_PER_DEG: f64 = std::f64::consts::PI / 180.0;
 

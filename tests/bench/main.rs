@@ -5,6 +5,7 @@
 #[cfg(feature = "gui")]
 mod frame;
 mod kernel;
+mod pools;
 #[path = "../it/support/mod.rs"]
 #[allow(dead_code)] // The checks use the rest of it.
 mod support;
@@ -15,6 +16,7 @@ const SECTIONS: &[(&str, fn())] = &[
     ("kernel", kernel::run),
     ("precision", kernel::precision),
     ("demos", kernel::demos),
+    ("pools", pools::pools),
     #[cfg(feature = "gui")]
     ("frame", frame::frame),
 ];

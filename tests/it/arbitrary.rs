@@ -1,11 +1,15 @@
 //! Studies and edits at random, for properties. Any finite input may come, sensible or not.
+//!
+//! What is large is boxed: a strategy as one value would outgrow the stack of a test.
 
 use brimwright::app::Edit;
 use brimwright::cases::{Accel, AccelUnit, Attitude, LoadCase};
 use brimwright::geom::Point;
 use brimwright::liquid::Liquid;
-use brimwright::section::{EdgeKind, Obstacle, OutlineEdge, Section, Vertex, WidthLaw};
-use brimwright::study::{Fill, Limit, NamedPoint, Record, Study, VerdictNote};
+use brimwright::section::{
+    EdgeKind, Obstacle, Opening, OpeningShape, OutlineEdge, Panel, PanelEdges, Plate, Section, Vertex, WidthLaw,
+};
+use brimwright::study::{Compartment, Fill, Limit, NamedPoint, Record, Study, VerdictNote};
 use proptest::collection::vec;
 use proptest::option;
 use proptest::prelude::*;
@@ -50,6 +54,36 @@ fn obstacle() -> impl Strategy<Value = Obstacle> {
     })
 }
 
+fn opening() -> impl Strategy<Value = Opening> {
+    let shape = prop_oneof![
+        number().prop_map(OpeningShape::Share),
+        any::<u32>().prop_map(|n| OpeningShape::Holes { n }),
+        (number(), number(), any::<bool>()).prop_map(|(diameter_m, pitch_m, is_staggered)| {
+            OpeningShape::Perforated { diameter_m, pitch_m, is_staggered }
+        }),
+    ];
+    (text(), number(), number(), shape).prop_map(|(name, from_m, to_m, shape)| Opening { name, from_m, to_m, shape })
+}
+
+/// Any plate.
+pub fn plate() -> BoxedStrategy<Plate> {
+    let panel = (option::of(number()), any::<bool>()).prop_map(|(stiffener_spacing_m, clamped)| Panel {
+        stiffener_spacing_m,
+        edges: if clamped { PanelEdges::Clamped } else { PanelEdges::SimplySupported },
+    });
+    (text(), vec(point(), 0..4), number(), number(), text(), panel, vec(opening(), 0..3))
+        .prop_map(|(name, points, thickness_m, corrosion_m, material, panel, openings)| Plate {
+            name,
+            points,
+            thickness_m,
+            corrosion_m,
+            material,
+            panel,
+            openings,
+        })
+        .boxed()
+}
+
 fn width() -> impl Strategy<Value = WidthLaw> {
     prop_oneof![
         number().prop_map(|width_m| WidthLaw::Constant { width_m }),
@@ -68,12 +102,23 @@ fn fill() -> impl Strategy<Value = Fill> {
         .prop_map(|(way, v)| [Fill::Volume(v), Fill::Share(v), Fill::Level(v), Fill::Ullage(v)][way])
 }
 
-fn liquid() -> impl Strategy<Value = Liquid> {
-    (text(), number(), option::of(number()), option::of(number())).prop_map(|(name, rho, vapour, sigma)| Liquid {
+fn liquid() -> BoxedStrategy<Liquid> {
+    (text(), number(), option::of(number()), option::of(number()))
+        .prop_map(|(name, rho, vapour, sigma)| Liquid {
+            name,
+            density_kg_per_m3: rho,
+            vapour_pressure_abs_pa: vapour,
+            surface_tension_n_per_m: sigma,
+        })
+        .boxed()
+}
+
+fn compartment() -> impl Strategy<Value = Compartment> {
+    (text(), point(), option::of(liquid()), fill()).prop_map(|(name, at, liquid, fill)| Compartment {
         name,
-        density_kg_per_m3: rho,
-        vapour_pressure_abs_pa: vapour,
-        surface_tension_n_per_m: sigma,
+        at,
+        liquid,
+        fill,
     })
 }
 
@@ -99,30 +144,53 @@ fn case_name() -> impl Strategy<Value = String> {
 }
 
 fn case() -> impl Strategy<Value = LoadCase> {
-    (case_name(), accel(), attitude(), option::of(number()), text(), text()).prop_map(
-        |(name, accel, attitude, onset_s, source, note)| LoadCase {
+    let times = (option::of(number()), option::of(number()), any::<bool>());
+    (case_name(), accel(), attitude(), times, text(), text()).prop_map(
+        |(name, accel, attitude, (onset_s, duration_s, release), source, note)| LoadCase {
             name,
             accel,
             attitude,
             onset_s,
-            duration_s: None,
-            release: false,
+            duration_s,
+            release,
             source,
             note,
         },
     )
 }
 
+fn limit() -> BoxedStrategy<Limit> {
+    prop_oneof![
+        number().prop_map(Limit::WallPressure),
+        number().prop_map(Limit::RoofPressure),
+        number().prop_map(Limit::FreeboardAllowance),
+        number().prop_map(Limit::VapourMargin),
+        (number(), number(), number()).prop_map(|(m3, empty_to, full_from)| Limit::CellVolume {
+            m3,
+            empty_to,
+            full_from
+        }),
+        number().prop_map(Limit::PlateCoverage),
+        number().prop_map(Limit::PlateSpacing),
+        number().prop_map(Limit::OpenShareAtLeast),
+        number().prop_map(Limit::OpenShareAtMost),
+        Just(Limit::DrainPath),
+        Just(Limit::VentPath),
+        (number(), number())
+            .prop_map(|(flow_m3_per_s, difference_m)| Limit::RatedFlow { flow_m3_per_s, difference_m }),
+    ]
+    .boxed()
+}
+
 fn record() -> impl Strategy<Value = Record> {
-    (text(), 0..4_usize, number(), text(), text(), text(), any::<bool>()).prop_map(
-        |(title, way, v, clause, edition, origin, confirmed)| {
-            let limit = [
-                Limit::WallPressure(v),
-                Limit::RoofPressure(v),
-                Limit::FreeboardAllowance(v),
-                Limit::VapourMargin(v),
-            ];
-            Record { title, limit: limit[way], clause, edition, origin, confirmed }
+    (text(), limit(), text(), text(), text(), any::<bool>()).prop_map(
+        |(title, limit, clause, edition, origin, confirmed)| Record {
+            title,
+            limit,
+            clause,
+            edition,
+            origin,
+            confirmed,
         },
     )
 }
@@ -141,42 +209,48 @@ pub fn config() -> ProptestConfig {
 }
 
 /// Any study.
-pub fn study() -> impl Strategy<Value = Study> {
+pub fn study() -> BoxedStrategy<Study> {
     let words = [text(), text(), text(), text()];
     let physics = (number(), number(), number(), liquid(), fill());
-    let section = (vec(outline_edge(), 0..8), vec(obstacle(), 0..3), width());
+    let section = (vec(outline_edge(), 0..8), vec(obstacle(), 0..3), vec(plate(), 0..3), width())
+        .prop_map(|(outline, obstacles, plates, width)| Section { outline, obstacles, plates, width });
+    // Few studies name another coefficient than the usual one.
+    let flow = (vec(compartment(), 0..3), option::of(point()), prop_oneof![Just(0.6), number()]);
     let rest = (vec(case(), 0..4), vec(named_point(), 0..3), point(), vec(record(), 0..3), vec(note(), 0..3));
-    (words, physics, section, rest).prop_map(
-        |(
-            [title, author, revision, notes],
-            (gravity_m_per_s2, air_pressure_abs_pa, ullage_gage_pa, liquid, fill),
-            (outline, obstacles, width),
-            (cases, points, moment_about, records, verdict_notes),
-        )| Study {
-            title,
-            author,
-            revision,
-            notes,
-            gravity_m_per_s2,
-            air_pressure_abs_pa,
-            ullage_gage_pa,
-            section: Section { outline, obstacles, plates: vec![], width },
-            liquid,
-            fill,
-            compartments: vec![],
-            sump: None,
-            discharge_coefficient: 0.6,
-            cases,
-            points,
-            moment_about,
-            records,
-            verdict_notes,
-        },
-    )
+    (words, physics, section, flow, rest)
+        .prop_map(
+            |(
+                [title, author, revision, notes],
+                (gravity_m_per_s2, air_pressure_abs_pa, ullage_gage_pa, liquid, fill),
+                section,
+                (compartments, sump, discharge_coefficient),
+                (cases, points, moment_about, records, verdict_notes),
+            )| Study {
+                title,
+                author,
+                revision,
+                notes,
+                gravity_m_per_s2,
+                air_pressure_abs_pa,
+                ullage_gage_pa,
+                section,
+                liquid,
+                fill,
+                compartments,
+                sump,
+                discharge_coefficient,
+                cases,
+                points,
+                moment_about,
+                records,
+                verdict_notes,
+            },
+        )
+        .boxed()
 }
 
 /// Any edit; indices are in range or a little beyond.
-pub fn edit() -> impl Strategy<Value = Edit> {
+pub fn edit() -> BoxedStrategy<Edit> {
     let i = || 0..9_usize;
     prop_oneof![
         study().prop_map(|s| Edit::Replace(Box::new(s))),
@@ -199,6 +273,15 @@ pub fn edit() -> impl Strategy<Value = Edit> {
         (0..4_usize, number(), number()).prop_map(|(i, s, z)| Edit::ShiftObstacle(i, s, z)),
         obstacle().prop_map(Edit::AddObstacle),
         (0..4_usize).prop_map(Edit::RemoveObstacle),
+        plate().prop_map(|p| Edit::AddPlate(Box::new(p))),
+        (0..4_usize, plate()).prop_map(|(i, p)| Edit::Plate(i, Box::new(p))),
+        (0..4_usize, number(), number()).prop_map(|(i, s, z)| Edit::ShiftPlate(i, s, z)),
+        (0..4_usize, 0..5_usize, point()).prop_map(|(i, c, p)| Edit::MovePlatePoint(i, c, p)),
+        (0..4_usize).prop_map(Edit::RemovePlate),
+        vec(plate(), 0..3).prop_map(Edit::Plates),
+        vec(compartment(), 0..3).prop_map(Edit::Compartments),
+        option::of(point()).prop_map(Edit::Sump),
+        number().prop_map(Edit::DischargeCoefficient),
         (0..5_usize, accel()).prop_map(|(i, a)| Edit::CaseAccel(i, a)),
         (0..5_usize, attitude()).prop_map(|(i, a)| Edit::CaseAttitude(i, a)),
         (0..5_usize, case()).prop_map(|(i, c)| Edit::Case(i, Box::new(c))),
@@ -210,4 +293,5 @@ pub fn edit() -> impl Strategy<Value = Edit> {
         point().prop_map(Edit::MomentAbout),
         (case_name(), "[pq]", text()).prop_map(|(c, k, t)| Edit::VerdictNote(c, k, t)),
     ]
+    .boxed()
 }

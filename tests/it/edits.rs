@@ -1,8 +1,10 @@
 //! Edits: what each changes, what none may do, and what undo gives back.
 
-use brimwright::app::{Derived, Document, Edit, apply};
+use brimwright::app::{
+    Derived, Document, Edit, apply, equally_spaced, plate_across, shifted_along_walls, with_length_kept_openings,
+};
 use brimwright::geom::{Edge, Point};
-use brimwright::section::EdgeKind;
+use brimwright::section::{EdgeKind, OutlineEdge};
 use brimwright::study::{Fill, Study};
 use proptest::prelude::*;
 
@@ -124,6 +126,8 @@ fn labels_count_from_one() {
         (Edit::EdgeKind(0, EdgeKind::Mouth), "Make edge 1 a mouth"),
         (Edit::MoveObstacleVertex(0, 3, Point::origin()), "Move vertex 4 of obstacle 1"),
         (Edit::VerdictNote("a".into(), "x".into(), String::new()), "Remove note"),
+        (Edit::MovePlatePoint(0, 1, Point::origin()), "Move corner 2 of plate 1"),
+        (Edit::RemovePlate(3), "Remove plate 4"),
     ] {
         assert_eq!(edit.label(), want);
     }
@@ -305,11 +309,14 @@ proptest! {
         prop_assert!(!edit.label().is_empty());
         let n = before.section.outline.len();
         let (m, k) = (before.section.obstacles.len(), before.cases.len());
+        let plates = &before.section.plates;
         let is_beyond = match edit {
             Edit::MoveVertex(i, _) | Edit::BendEdge(i, _) | Edit::EdgeKind(i, _) | Edit::EdgeName(i, _)
             | Edit::SplitEdge(i, _) | Edit::RemoveVertex(i) => i >= n,
             Edit::MoveObstacleVertex(i, v, _) => i >= m || v >= before.section.obstacles[i].vertices.len(),
             Edit::ShiftObstacle(i, ..) | Edit::RemoveObstacle(i) => i >= m,
+            Edit::Plate(i, _) | Edit::ShiftPlate(i, ..) | Edit::RemovePlate(i) => i >= plates.len(),
+            Edit::MovePlatePoint(i, c, _) => i >= plates.len() || c >= plates[i].points.len(),
             Edit::CaseAccel(i, _) | Edit::CaseAttitude(i, _) | Edit::Case(i, _) | Edit::RemoveCase(i) => i >= k,
             Edit::ReorderCase(i, j) => i >= k || j >= k,
             _ => false,
@@ -317,6 +324,66 @@ proptest! {
         if is_beyond {
             prop_assert_eq!(study, before);
         }
+    }
+}
+
+proptest! {
+    #![proptest_config(arbitrary::config())]
+
+    #[test]
+    fn plates_are_proposed_for_any_section(
+        mut study in arbitrary::study(), other in arbitrary::plate(), ds_m in -2.0..2.0_f64,
+        ends in [-5.0..5.0, -5.0..5.0, -5.0..5.0, -5.0..5.0], shares in [0.0..=1.0_f64, 0.0..=1.0],
+    ) {
+        let [low, high] = [shares[0].min(shares[1]), shares[0].max(shares[1])];
+        for plate in &mut study.section.plates {
+            let length_m = plate.length_m();
+            plate.openings.iter_mut().for_each(|o| (o.from_m, o.to_m) = (low * length_m, high * length_m));
+        }
+        let section = &study.section;
+        let n = section.plates.len();
+        let idxs: Vec<usize> = (0..n + 1).collect();
+        let spaced = equally_spaced(section, &idxs);
+        prop_assert_eq!(spaced.len(), n);
+        let [from_s, from_z, to_s, to_z] = ends;
+        let across = plate_across(section, Point::new(from_s, from_z), Point::new(to_s, to_z));
+        prop_assert_eq!((across.points.len(), across.openings.len()), (2, 0));
+        for (i, plate) in section.plates.iter().enumerate() {
+            let shifted = shifted_along_walls(section, i, ds_m).expect("the plate is there");
+            for after in [&shifted, &spaced[i], &with_length_kept_openings(plate, other.clone())] {
+                prop_assert_eq!(after.openings.len(), plate.openings.len());
+                let length_m = after.length_m();
+                for opening in &after.openings {
+                    let is_on = opening.from_m >= 0.0 && opening.from_m <= opening.to_m && opening.to_m <= length_m;
+                    prop_assert!(is_on, "{opening:?} of {plate:?} runs off {length_m} m of {after:?}");
+                }
+            }
+        }
+        prop_assert_eq!(shifted_along_walls(section, n, ds_m), None);
+    }
+
+    #[test]
+    fn a_full_plate_stays_full_wherever_it_is_moved(
+        sag in -0.3..0.3_f64, bulge in -1.2..1.2, from_s in 0.1..3.9_f64, to_s in 0.1..3.9_f64,
+    ) {
+        // A box 4 m long with a bent floor (sagging by `sag` in the middle) and an arc for a roof.
+        let mut study = study();
+        let corners = [(0.0, 0.0), (2.0, -sag), (4.0, 0.0), (4.0, 2.0), (0.0, 2.0)];
+        let outline = corners.map(|(s, z)| OutlineEdge { start: Point::new(s, z), ..study.section.outline[0].clone() });
+        study.section.outline = outline.to_vec();
+        study.section.outline[3].sweep_rad = bulge;
+        let drawn = plate_across(&study.section, Point::new(from_s, 0.9), Point::new(from_s, 1.1));
+        study.section.plates = vec![drawn];
+        let moved = shifted_along_walls(&study.section, 0, to_s - from_s).expect("the plate is there");
+        let want = plate_across(&study.section, Point::new(to_s, 0.9), Point::new(to_s, 1.1));
+        for (got, want) in moved.points.iter().zip(&want.points) {
+            prop_assert!((got - want).norm() < 1e-12, "moved to {moved:?}, drawn there it is {want:?}");
+        }
+        // The floor by hand; the roof by the outline's own edge.
+        let floor = -sag * (1.0 - (to_s - 2.0).abs() / 2.0);
+        prop_assert!((moved.points[0].y - floor).abs() < 1e-12, "foot {}, floor {floor}", moved.points[0]);
+        let off = study.section.edge(3).nearest(moved.points[1]).1;
+        prop_assert!(off < 1e-12, "the head is {off} m from the roof: {moved:?}");
     }
 }
 

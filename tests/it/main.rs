@@ -15,12 +15,14 @@ mod files;
 #[cfg(feature = "gui")]
 mod gui;
 mod json;
+mod panels;
 mod pools_by_hand;
 mod pools_sampled;
 mod program;
 mod properties;
 mod properties_loads;
 mod published_forces;
+mod published_panels;
 mod published_rigid;
 mod published_sections;
 mod reference;

@@ -76,7 +76,10 @@ fn the_kernel_finds_what_was_worked_out_by_hand() {
         let mut expect = |what: String, want: f64, got: f64, allowed: f64| {
             let is_near = (got - want).abs() <= allowed;
             if !is_near {
-                faults.push(format!("{}, {what}: worked out {want:.12}, got {got:.12}, allowed {allowed:e}", case.name));
+                faults.push(format!(
+                    "{}, {what}: worked out {want:.12}, got {got:.12}, allowed {allowed:e}",
+                    case.name
+                ));
             }
         };
         for pool in &case.pools {

@@ -45,6 +45,7 @@ fn every_table_is_read_by_a_test() {
         include_str!("published_rigid.rs"),
         include_str!("published_sections.rs"),
         include_str!("published_forces.rs"),
+        include_str!("published_panels.rs"),
     ];
     for table in tables() {
         let quoted = format!("\"{}\"", table.file_name);

@@ -17,6 +17,8 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("geom", &["num"]),
     ("section", &["problem", "num", "geom"]),
     ("liquid", &[]),
+    ("material", &[]),
+    ("plates", &["num", "material"]),
     ("cases", &["geom"]),
     ("statics", &["problem", "num", "geom", "section"]),
     ("study", &["units", "problem", "geom", "section", "liquid", "cases", "statics"]),

@@ -40,28 +40,26 @@ impl<'a> Basins<'a> {
         let mut volume: Vec<f64> = Vec::new();
         let mut below: Vec<Below> = Vec::new();
         let mut here: Vec<Below> = Vec::new();
+        let mut links: Vec<(usize, usize)> = Vec::new();
         let mut next_flat = 0;
         for k in 0..self.sublevel.slabs().len() {
             let slab = self.sublevel.slabs()[k];
             let flats = self.flats_at(slab.bottom, &mut next_flat);
             here.clear();
-            here.extend(
-                self.sublevel
-                    .strips(&slab)
-                    .map(|(l, r)| Below { u: [l.u_at(slab.bottom), r.u_at(slab.bottom)], basin: NONE }),
-            );
+            let crossing = self.sublevel.crossing_of(&slab).chunks_exact(2);
+            here.extend(crossing.map(|pair| Below { u: [pair[0].u_bottom, pair[1].u_bottom], basin: NONE }));
             let level = slab.bottom + origin_level;
-            self.connect(&mut here, &below, flats.clone(), slack, (level, k as u32), &mut volume);
+            self.link(&here, &below, flats.clone(), slack, &mut links);
+            self.connect(&mut here, &below, &links, (level, k as u32), &mut volume);
             self.mark_mouths(&slab, &mut here, &below, flats, level, is_mouth);
+            for strip in &here {
+                self.strips.push(Strip { basin: strip.basin, before: volume[strip.basin as usize] });
+            }
             for (i, strip) in here.iter_mut().enumerate() {
                 let (l, r) = self.sublevel.strip(&slab, i);
-                let before = volume[strip.basin as usize];
-                self.strips.push(Strip { basin: strip.basin, before });
-                strip.u = [l.u_at(slab.top), r.u_at(slab.top)];
-            }
-            for (i, strip) in here.iter().enumerate() {
-                let (l, r) = self.sublevel.strip(&slab, i);
-                volume[strip.basin as usize] += self.strip_volume(l, r, slab.bottom, slab.top);
+                let top = [l.u_at(slab.top), r.u_at(slab.top)];
+                volume[strip.basin as usize] += self.volume_between(l, r, (slab.bottom, strip.u), (slab.top, top));
+                strip.u = top;
             }
             std::mem::swap(&mut below, &mut here);
         }
@@ -94,12 +92,10 @@ impl<'a> Basins<'a> {
         &mut self,
         here: &mut [Below],
         below: &[Below],
-        flats: std::ops::Range<usize>,
-        slack: f64,
+        links: &[(usize, usize)],
         (level, slab_idx): (f64, u32),
         volume: &mut Vec<f64>,
     ) {
-        let links = self.links(here, below, flats, slack);
         if links.len() == here.len() && here.len() == below.len() && links.iter().all(|&(i, j)| i == j) {
             here.iter_mut().zip(below).for_each(|(h, b)| h.basin = b.basin);
             return;
@@ -111,7 +107,7 @@ impl<'a> Basins<'a> {
             let first = below.iter().position(|b| b.basin == below[j].basin).unwrap_or(j);
             group[n + j] = n + first;
         }
-        for &(i, j) in &links {
+        for &(i, j) in links {
             let (a, b) = (root_of(&mut group, i), root_of(&mut group, n + j));
             group[a] = b;
         }
@@ -172,15 +168,16 @@ impl<'a> Basins<'a> {
     }
 
     /// Pairs (here, below) of strips that touch over more than `slack`, level slits between them taken off.
-    fn links(
+    fn link(
         &self,
         here: &[Below],
         below: &[Below],
         flats: std::ops::Range<usize>,
         slack: f64,
-    ) -> Vec<(usize, usize)> {
+        links: &mut Vec<(usize, usize)>,
+    ) {
         let flats = &self.sublevel.flats()[flats];
-        let mut links = Vec::with_capacity(here.len() + below.len());
+        links.clear();
         let (mut i, mut j) = (0, 0);
         while i < here.len() && j < below.len() {
             let (a, b) = (here[i].u, below[j].u);
@@ -197,7 +194,6 @@ impl<'a> Basins<'a> {
             }
             if a[1] < b[1] { i += 1 } else { j += 1 }
         }
-        links
     }
 
     /// Notes where basins first touch a mouth: along a rising edge, or a level one above or below.
@@ -250,12 +246,22 @@ impl<'a> Basins<'a> {
 
     /// Volume of a strip between two levels of its slab, m3.
     pub(super) fn strip_volume(&self, left: &Piece, right: &Piece, from: f64, to: f64) -> f64 {
-        let [l0, r0] = [left.u_at(from), right.u_at(from)];
-        let [l1, r1] = [left.u_at(to), right.u_at(to)];
+        let [low, high] = [from, to].map(|v| (v, [left.u_at(v), right.u_at(v)]));
+        self.volume_between(left, right, low, high)
+    }
+
+    /// The same, where its span of u at both levels is known.
+    fn volume_between(
+        &self,
+        left: &Piece,
+        right: &Piece,
+        (from, [l0, r0]): (f64, [f64; 2]),
+        (to, [l1, r1]): (f64, [f64; 2]),
+    ) -> f64 {
         if let Some(depth) = self.depth.constant() {
             let area = 0.5 * ((r0 - l0).max(0.0) + (r1 - l1).max(0.0)) * (to - from);
-            return depth
-                * (area + left.segment_area([l0, from], [l1, to]) + right.segment_area([r0, from], [r1, to]));
+            let arcs = left.segment_area([l0, from], [l1, to]) + right.segment_area([r0, from], [r1, to]);
+            return depth * (area + arcs);
         }
         let point = |u: f64, v: f64| self.sublevel.point(u, v);
         let (a, b, c, d) = (point(l0, from), point(r0, from), point(r1, to), point(l1, to));

@@ -64,6 +64,16 @@ pub(super) struct Placed {
     pub least: Option<Brim>,
 }
 
+/// The claim that is nearest to parting.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Parting {
+    pub claim_idx: usize,
+    /// The basin that holds all its low points.
+    pub basin: usize,
+    /// How far it stands above the highest sill within, as a volume.
+    pub room_m3: f64,
+}
+
 /// What keeps liquid from being put in place.
 #[derive(Clone, Debug)]
 pub(super) enum Unplaced {
@@ -101,14 +111,15 @@ impl Holder<'_> {
     }
 
     /// The claim that is nearest to parting, and how far it stands above the highest sill within it, as a volume.
-    pub(super) fn least_room_over_sills(&self, look: &Look, claims: &[Claim]) -> (Option<usize>, f64) {
-        let mut least = (None, self.capacity_m3);
-        for (i, claim) in claims.iter().enumerate() {
-            let room = look.basins.join(&claim.lows).and_then(|basin| self.room_over_sills(look, basin, claim));
-            if let Some(room) = room
-                && (least.0.is_none() || room < least.1)
+    pub(super) fn least_room_over_sills(&self, look: &Look, claims: &[Claim]) -> Option<Parting> {
+        let mut least: Option<Parting> = None;
+        for (claim_idx, claim) in claims.iter().enumerate() {
+            let basin = look.basins.join(&claim.lows);
+            let room = basin.and_then(|basin| Some((basin, self.room_over_sills(look, basin, claim)?)));
+            if let Some((basin, room_m3)) = room
+                && least.is_none_or(|l| room_m3 < l.room_m3)
             {
-                least = (Some(i), room);
+                least = Some(Parting { claim_idx, basin, room_m3 });
             }
         }
         least
@@ -134,10 +145,13 @@ impl Holder<'_> {
         let most = 64 + 16 * look.basins.all().len();
         for _ in 0..most {
             let bodies = &placed.bodies;
-            let over = (0..bodies.len()).find(|&i| {
+            let is_over = |&i: &usize| {
                 !bodies[i].lows.is_empty() && bodies[i].volume_m3 - look.capacity_of(bodies[i].basin) > slack
-            });
-            let Some(i) = over else {
+            };
+            let has_mouth = |i: &usize| look.basins.all()[bodies[*i].basin].mouth.is_some();
+            // What leaves by a mouth goes first: it is not there to fill anything up to a sill.
+            let spills = (0..bodies.len()).filter(has_mouth).find(is_over);
+            let Some(i) = spills.or_else(|| (0..bodies.len()).find(is_over)) else {
                 self.note_room(look, placed);
                 return Ok(());
             };
@@ -167,7 +181,10 @@ impl Holder<'_> {
             let Some(outlet) = look.basins.outlet(basin) else { return Err(Unplaced::Lost) };
             let is_full = |child: usize| {
                 let body = placed.bodies.iter().position(|b| b.basin == child && !b.lows.is_empty());
-                body.filter(|&b| placed.bodies[b].volume_m3 >= look.basins.all()[child].volume_at_top - slack)
+                let has_mouth = look.basins.all()[child].mouth.is_some();
+                body.filter(|&b| {
+                    !has_mouth && placed.bodies[b].volume_m3 >= look.basins.all()[child].volume_at_top - slack
+                })
             };
             let others: Vec<usize> =
                 look.basins.all()[parent].children.iter().copied().filter(|&c| c != basin).collect();
@@ -275,8 +292,9 @@ impl Holder<'_> {
     }
 }
 
-/// Claims on one low point are one.
-pub(super) fn merge_shared(claims: &mut Vec<Claim>, n_basins: usize) {
+/// Claims on one low point are one. Gives pairs of bodies that became one so.
+pub(super) fn merge_shared(claims: &mut Vec<Claim>, n_basins: usize) -> Vec<(usize, usize)> {
+    let mut pairs = Vec::new();
     loop {
         let mut owner = vec![None; n_basins];
         let mut shared = None;
@@ -291,9 +309,10 @@ pub(super) fn merge_shared(claims: &mut Vec<Claim>, n_basins: usize) {
                 }
             }
         }
-        let Some((j, i)) = shared else { return };
+        let Some((j, i)) = shared else { return pairs };
         let other = claims.remove(i);
         let claim = &mut claims[j];
+        pairs.push((claim.from[0], other.from[0]));
         claim.volume_m3 += other.volume_m3;
         claim.from.extend(other.from);
         claim.lows.extend(other.lows);

@@ -4,10 +4,10 @@
 //! that falls to a sill within it parts there, each side keeping what then stands on it.
 
 use crate::geom::Vec2;
-use crate::num::root;
+use crate::num::{bracket, root};
 
 use super::look::{Body, Look};
-use super::place::{Brim, Claim, Placed, Pour, Spilled, Unplaced, merge_shared};
+use super::place::{Brim, Claim, Parting, Placed, Pour, Spilled, Unplaced, merge_shared};
 use super::still::Holder;
 
 /// A turn of the direction: from a tilt, one way round.
@@ -194,13 +194,14 @@ impl<'a> Way<'_, 'a> {
         let now = self.now.take().ok_or(Lost)?;
         let from = now.stop.turned_rad;
         let look = self.holder.look(self.turn.up(to));
-        let claims = self.claims(&now, &look);
+        let (claims, met) = self.claims(&now, &look);
         match self.holder.place(&look, claims) {
-            Ok(placed) => {
+            Ok(mut placed) => {
                 if let Some(dip) = self.dip(&now, &look, &placed, to) {
                     self.now = Some(now);
                     return self.advance(dip);
                 }
+                placed.pours.extend(met.into_iter().filter_map(|pair| over_a_sill_that_went(&now, pair)));
                 self.note_firsts(&now, &placed, to);
                 let mut stop = Stop { turned_rad: to, up: look.up, ..now.stop };
                 take(&mut stop, placed);
@@ -208,31 +209,36 @@ impl<'a> Way<'_, 'a> {
                 Ok(())
             }
             Err(Unplaced::Parted) => {
-                // The last direction at which nothing has parted yet.
-                let room = |turned: f64| -self.room_at(&now, turned).1;
-                let parts_at = root(from, to, 1e-14, room);
-                self.part(now, parts_at)
+                // Up to the last direction at which nothing has parted yet, and then a hair beyond it.
+                let [before, after] = bracket(from, to, 1e-13, |turned| self.parting(&now, turned));
+                self.now = Some(now);
+                if before > from {
+                    self.advance(before)?;
+                }
+                self.part(after)
             }
             Err(Unplaced::Lost) => Err(Lost),
         }
     }
 
     /// Parts the body that has fallen to a sill within it at `turned`; each side keeps what stands on it.
-    fn part(&mut self, now: Now<'a>, turned: f64) -> Result<(), Lost> {
+    fn part(&mut self, turned: f64) -> Result<(), Lost> {
+        let now = self.now.take().ok_or(Lost)?;
         let look = self.holder.look(self.turn.up(turned));
-        let mut claims = self.claims(&now, &look);
-        // Rounding puts the root a hair before or behind the event: what is nearest to a sill parts.
-        let culprit = self.room_at(&now, turned).0.ok_or(Lost)?;
+        let (mut claims, _) = self.claims(&now, &look);
+        let Parting { claim_idx: culprit, basin, .. } =
+            self.holder.least_room_over_sills(&look, &claims).ok_or(Lost)?;
         let basins = &look.basins;
-        let claim = claims.get(culprit).cloned().ok_or(Lost)?;
-        let basin = basins.join(&claim.lows).ok_or(Lost)?;
+        let claim = claims[culprit].clone();
         let children = basins.all()[basin].children.clone();
         let mut parts: Vec<Claim> = Vec::new();
         let mut left = claim.volume_m3;
         for child in children {
             let lows: Vec<usize> = claim.lows.iter().copied().filter(|&l| basins.is_within(l, child)).collect();
-            let volume_m3 = basins.all()[child].volume_at_top.min(left);
-            if !lows.is_empty() && volume_m3 > 0.0 {
+            // Over its own low points alone: others of the child may be dry, or another body's.
+            let own = basins.join(&lows);
+            let volume_m3 = own.map_or(0.0, |own| basins.all()[own].volume_at_top.min(left));
+            if volume_m3 > 0.0 {
                 left -= volume_m3;
                 parts.push(Claim { volume_m3, lows, ..claim.clone() });
             }
@@ -255,15 +261,30 @@ impl<'a> Way<'_, 'a> {
         Ok(())
     }
 
-    /// The claim nearest to parting at `turned`, and how far above its sill it stands, as a volume.
-    fn room_at(&self, now: &Now, turned: f64) -> (Option<usize>, f64) {
+    /// By how much the body nearest to parting has fallen below its sill at `turned`, as a volume, and how fast that grows.
+    fn parting(&self, now: &Now, turned: f64) -> (f64, Option<f64>) {
         let look = self.holder.look(self.turn.up(turned));
-        self.holder.least_room_over_sills(&look, &self.claims(now, &look))
+        let (claims, _) = self.claims(now, &look);
+        match self.holder.least_room_over_sills(&look, &claims) {
+            None => (-self.holder.capacity_m3, None),
+            Some(Parting { basin, room_m3, .. }) => {
+                // What stands below the sill, all its sides together, turns about it.
+                let children = look.basins.all()[basin].children.iter();
+                let rate: Option<f64> = children.map(|&child| look.capacity_rate(child)).sum();
+                (-room_m3, rate.map(|r| self.sign() * r))
+            }
+        }
+    }
+
+    /// +1 where the tilt grows.
+    fn sign(&self) -> f64 {
+        if self.turn.grows { 1.0 } else { -1.0 }
     }
 
     /// What the present bodies claim along another look: the low points that their own ones lead down to, and those
     /// that lie under them.
-    fn claims(&self, now: &Now, look: &Look) -> Vec<Claim> {
+    /// With them, pairs of bodies that became one because the sill between them is there no more.
+    fn claims(&self, now: &Now, look: &Look) -> (Vec<Claim>, Vec<(usize, usize)>) {
         let bodies = &now.stop.bodies;
         let levels: Vec<f64> = bodies.iter().map(|b| now.look.level_of(b)).collect();
         let mut claims: Vec<Claim> = bodies
@@ -297,14 +318,14 @@ impl<'a> Way<'_, 'a> {
             claim.lows.sort_unstable();
             claim.lows.dedup();
         }
-        merge_shared(&mut claims, look.basins.all().len());
-        claims
+        let met = merge_shared(&mut claims, look.basins.all().len());
+        (claims, met)
     }
 
     /// Where, before `to`, the capacity of some body is least, if that is within the stretch and may matter.
     fn dip(&self, now: &Now, look: &Look, placed: &Placed, to: f64) -> Option<f64> {
         let from = now.stop.turned_rad;
-        let sign = if self.turn.grows { 1.0 } else { -1.0 };
+        let sign = self.sign();
         let width = to - from;
         if width < 1e-7 {
             return None;
@@ -328,7 +349,7 @@ impl<'a> Way<'_, 'a> {
             }
             let rate_at = |turned: f64| {
                 let middle = self.holder.look(self.turn.up(turned));
-                let claims = self.claims(now, &middle);
+                let (claims, _) = self.claims(now, &middle);
                 let claim = claims.iter().find(|c| c.from.contains(&i));
                 let basin = claim.and_then(|c| middle.basins.join(&c.lows));
                 basin.and_then(|b| middle.capacity_rate(b)).map_or(rate, |r| sign * r)
@@ -353,7 +374,7 @@ impl<'a> Way<'_, 'a> {
         }
         let poured: f64 = placed.pours.iter().map(|p| p.volume_m3).sum();
         if self.trace.first_pour.is_none() && poured > slack {
-            let turned = root(from, to, 1e-12, |turned| self.over_at(now, turned, false));
+            let turned = root(from, to, 1e-9, |turned| self.over_at(now, turned, false));
             self.trace.first_pour = Some((turned, placed.pours[0]));
         }
     }
@@ -361,7 +382,7 @@ impl<'a> Way<'_, 'a> {
     /// By how much some body stands over its mouth, or its sill, at `turned`, m3; below zero by its room.
     fn over_at(&self, now: &Now, turned: f64, by_mouth: bool) -> f64 {
         let look = self.holder.look(self.turn.up(turned));
-        match self.holder.place(&look, self.claims(now, &look)) {
+        match self.holder.place(&look, self.claims(now, &look).0) {
             Ok(placed) => {
                 let over: f64 = if by_mouth {
                     placed.spilled.iter().map(|s| s.volume_m3).sum()
@@ -373,13 +394,27 @@ impl<'a> Way<'_, 'a> {
                 }
                 let has_mouth = |b: &&Body| look.basins.all()[b.basin].mouth.is_some() == by_mouth;
                 let room = placed.bodies.iter().filter(|b| !b.lows.is_empty()).filter(has_mouth);
-                let room = room.map(|b| look.capacity_of(b.basin) - b.volume_m3).fold(self.holder.capacity_m3, f64::min);
+                let room =
+                    room.map(|b| look.capacity_of(b.basin) - b.volume_m3).fold(self.holder.capacity_m3, f64::min);
                 // A body that brims but pours elsewhere has no room, and yet nothing leaves.
                 -room.max(1e-15 * self.holder.capacity_m3)
             }
             Err(_) => -self.holder.capacity_m3,
         }
     }
+}
+
+/// What went from the higher to the lower of two bodies over a sill that is there no more: all of the higher one.
+fn over_a_sill_that_went(now: &Now, (i, j): (usize, usize)) -> Option<Pour> {
+    let (a, b) = (&now.stop.bodies[i], &now.stop.bodies[j]);
+    let from = if now.look.level_of(a) > now.look.level_of(b) { a } else { b };
+    let outlet = now.look.basins.outlet(from.basin)?;
+    Some(Pour {
+        wall: now.look.cut.faces()[outlet.edge_idx as usize].wall,
+        at: outlet.at,
+        to_right: outlet.is_to_right,
+        volume_m3: from.volume_m3,
+    })
 }
 
 /// Moves what was placed into the present.
