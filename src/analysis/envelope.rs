@@ -67,8 +67,7 @@ pub fn envelope(
             found[i] = Some(limit);
         }
         let mut limits: Vec<HoldLimit> = found.iter().flatten().cloned().collect();
-        let angle = |d: Vec2| d.y.atan2(d.x).rem_euclid(TAU);
-        let place = limits.partition_point(|limit| angle(limit.direction) < angle(free_fall));
+        let place = limits.partition_point(|limit| limit.direction_rad() < to_free_fall.direction_rad());
         let is_there = |i: usize| limits.get(i).is_some_and(|l| (l.direction - free_fall).norm() < 1e-9);
         if !(is_there(place) || place > 0 && is_there(place - 1)) {
             limits.insert(place, to_free_fall.clone());
@@ -81,6 +80,9 @@ pub fn envelope(
     }
     None
 }
+
+/// How many directions draw a smooth curve.
+pub const N_DIRECTIONS: usize = 360;
 
 /// Every how many directions come first.
 const COARSE: usize = 10;

@@ -16,6 +16,9 @@ use super::rims::{SharedRims, risen_z_m, risen_z_m_on};
 use super::sight::{Sight, Sighted, StillSurface};
 use super::ways;
 
+/// How many fills, and how many accelerations, make a fill map that shows every percent.
+pub const N_LINES: usize = 101;
+
 /// What a fill map shows beyond the case, as a multiple of its acceleration.
 const REACH: f64 = 1.5;
 
@@ -28,8 +31,6 @@ pub struct FillMap {
     pub direction: Vec2,
     /// Size of its acceleration, m/s2.
     pub case_m_per_s2: f64,
-    /// Its fill: the common fill as a share of the common capacity.
-    pub case_share: f64,
     /// Fills, as shares of the common capacity, from empty to full.
     pub shares: Vec<f64>,
     /// Sizes of the acceleration, m/s2, from rest to beyond the case.
@@ -55,6 +56,11 @@ impl FillMap {
     /// The point at a fill and an acceleration, by their places in the lists.
     pub fn point(&self, fill_idx: usize, accel_idx: usize) -> Option<&MapPoint> {
         self.points[fill_idx * self.accels_m_per_s2.len() + accel_idx].as_ref()
+    }
+
+    /// An acceleration with its direction, m/s2.
+    pub fn accel(&self, accel_idx: usize) -> Vec2 {
+        self.direction * self.accels_m_per_s2[accel_idx]
     }
 }
 
@@ -87,7 +93,7 @@ pub fn fill_map(
 ) -> Result<FillMap, NoFillMap> {
     let case = study.study().cases.get(case_idx).ok_or(NoFillMap::NoCase)?;
     let accel = case.accel.to_m_per_s2(study.study().gravity_m_per_s2);
-    let common = study.common().ok_or(NoFillMap::NoCommonFill)?;
+    study.common().ok_or(NoFillMap::NoCommonFill)?;
     let size = accel.norm();
     if size == 0.0 {
         return Err(NoFillMap::AtRest);
@@ -98,7 +104,6 @@ pub fn fill_map(
         case_idx,
         direction: accel / size,
         case_m_per_s2: size,
-        case_share: common.volume_m3 / common.vessel.capacity_m3(),
         shares: even(n_fills, 1.0),
         accels_m_per_s2: even(n_accels, REACH * size),
         points: vec![None; n_fills * n_accels],

@@ -5,7 +5,7 @@
 //! rests on the direction alone then ends at one turn of it, for all of them; what rests on the size of G too ends, in
 //! every direction, at a size. DEVELOPERS.md derives it under "Hold envelope".
 
-use std::f64::consts::PI;
+use std::f64::consts::{PI, TAU};
 
 use crate::cases::{Accel, Attitude, LoadCase};
 use crate::criteria::RestsOn;
@@ -39,6 +39,18 @@ pub struct HoldLimit {
     pub end: End,
     /// The acceleration at which liquid first leaves, m/s2; none where it never does.
     pub spill_m_per_s2: Option<f64>,
+}
+
+impl HoldLimit {
+    /// The largest acceleration, m/s2.
+    pub fn accel(&self) -> Vec2 {
+        self.direction * self.accel_m_per_s2
+    }
+
+    /// The direction, counter-clockwise from +s, radians, 0 to a full turn.
+    pub fn direction_rad(&self) -> f64 {
+        self.direction.y.atan2(self.direction.x).rem_euclid(TAU)
+    }
 }
 
 /// What ends the accelerations that hold.

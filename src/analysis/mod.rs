@@ -23,9 +23,9 @@ use crate::units::{Measure, Quantity, number};
 use sight::{Sight, Sighted, StillSurface};
 use ways::Course;
 
-pub use curves::curves;
-pub use envelope::{Envelope, envelope};
-pub use fill_map::{FillMap, MapPoint, NoFillMap, fill_map};
+pub use curves::{curves, freeboard_curve};
+pub use envelope::{Envelope, N_DIRECTIONS, envelope};
+pub use fill_map::{FillMap, MapPoint, N_LINES, NoFillMap, fill_map};
 pub use holding::{End, HoldLimit, Holding};
 pub use results::*;
 
@@ -191,13 +191,7 @@ fn settle_released(study: &ValidStudy, course: &Course) -> Result<Settled, Strin
     Ok(settle_at(study, &holder, stop, study.study().gravity_m_per_s2, true))
 }
 
-fn settle_at(
-    study: &ValidStudy,
-    holder: &Holder,
-    stop: &Stop,
-    gravity_m_per_s2: f64,
-    with_cells: bool,
-) -> Settled {
+fn settle_at(study: &ValidStudy, holder: &Holder, stop: &Stop, gravity_m_per_s2: f64, with_cells: bool) -> Settled {
     let inputs = study.study();
     let points: Vec<(&str, Point)> = inputs.points.iter().map(|p| (p.name.as_str(), p.at)).collect();
     let setting = Setting {
@@ -242,7 +236,11 @@ fn blocked(
 fn bond_per_gravity(study: &ValidStudy, settled: &Settled, still_length_m: f64) -> f64 {
     let liquid = &study.study().liquid;
     let length = length_m(settled.pools.iter().flat_map(|p| &p.surface)).max(still_length_m);
-    if length > 0.0 { liquid.weight_pa_per_m(1.0) * length * length / liquid.surface_tension() } else { f64::INFINITY }
+    if length > 0.0 {
+        liquid.weight_pa_per_m(1.0) * length * length / liquid.surface_tension()
+    } else {
+        f64::INFINITY
+    }
 }
 
 /// Length of a surface over all its pieces, m.

@@ -47,9 +47,7 @@ impl SharedRims {
 /// z of the settled surface above the brim of each mouth whose walls are carried on, m, each followed by itself.
 pub(super) fn risen_z_m(study: &ValidStudy, rims: &Rims, route: Route) -> Vec<Option<f64>> {
     let (tilted, width) = (rims.tilted(), &study.study().section.width);
-    over_mouths(rims, |mouth_idx| {
-        rims.surface_z_m(&tilted, study.region(), width, study.starts(), route, mouth_idx)
-    })
+    over_mouths(rims, |mouth_idx| rims.surface_z_m(&tilted, study.region(), width, study.starts(), route, mouth_idx))
 }
 
 /// The same from a way that was followed in the same walls for all.

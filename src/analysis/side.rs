@@ -48,7 +48,8 @@ impl Mark {
 impl<'a> Side<'a> {
     pub fn new(base: &Base<'a>, grows: bool) -> Side<'a> {
         let study = base.study;
-        let sideways = if grows { Vec2::new(base.rest.y, -base.rest.x) } else { Vec2::new(-base.rest.y, base.rest.x) };
+        let sideways =
+            if grows { Vec2::new(base.rest.y, -base.rest.x) } else { Vec2::new(-base.rest.y, base.rest.x) };
         let start_rad = Ramp::accelerate(base.rest, sideways).map_or(0.0, |ramp| ramp.direction().start_rad);
         let turn = Turn { start_rad, grows };
         let bounds = ways::bounds(study);
@@ -64,9 +65,7 @@ impl<'a> Side<'a> {
             let bound = (bounds.len() > 1).then_some(bound);
             let own = match (first.first_spill, first.lost_at) {
                 (Some((turned, _)), _) => (turned, End::Fails { criterion: CONTAINED, bound }),
-                (None, Some(turned)) => {
-                    (turned, End::NotJudged { reason: LOST.to_owned() })
-                }
+                (None, Some(turned)) => (turned, End::NotJudged { reason: LOST.to_owned() }),
                 (None, None) => continue,
             };
             if own.0 < end.0 {
@@ -93,8 +92,11 @@ impl<'a> Side<'a> {
             .iter()
             .map(|&bound| SharedRims::new(study, bound, at.iter().map(|t| turn.up(*t))))
             .collect();
-        let on: Vec<Option<Followed>> =
-            rims.par_iter().enumerate().map(|(b, rims)| has_several(b).then(|| rims.followed(study, turn, at))?).collect();
+        let on: Vec<Option<Followed>> = rims
+            .par_iter()
+            .enumerate()
+            .map(|(b, rims)| has_several(b).then(|| rims.followed(study, turn, at))?)
+            .collect();
         // Along any size of G: one that no capillarity hides.
         let gravity = base.rest.norm() + base.most_m_per_s2;
         let verdicts = |turned: f64| {

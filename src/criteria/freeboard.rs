@@ -5,6 +5,7 @@
 
 use crate::geom::Vec2;
 use crate::num::bisect;
+use crate::progress::Progress;
 use crate::sources::Source;
 use crate::statics::{Carried, Rims, Route, Tilted};
 use crate::study::ValidStudy;
@@ -83,7 +84,7 @@ fn verdict(context: &Context, view: &View, mouth_idx: usize) -> Verdict {
     ];
     if verdict.state == State::Fails {
         let fill = FreeboardFill::new(context.study, rims, view.route, mouth_idx, allowance);
-        if let Some(volume) = fill.highest_volume_m3() {
+        if let Some(volume) = fill.highest_volume_m3(&Progress::default()) {
             verdict.mend.push(context.fill_that_holds(volume));
         }
         // Rounded up to the millimetre, so that the rim shown holds.
@@ -132,11 +133,13 @@ impl<'a> FreeboardFill<'a> {
     }
 
     /// The highest volume at which the available freeboard covers the required one, m3; none where none does.
-    /// Fills are sampled in steps of 1/64 of capacity, then the turn is refined.
-    pub fn highest_volume_m3(&self) -> Option<f64> {
+    /// Fills are sampled in steps of 1/64 of capacity, then the turn is refined; once stopped, what it gives means nothing.
+    pub fn highest_volume_m3(&self, progress: &Progress) -> Option<f64> {
         const N_STEPS: u32 = 64;
         let capacity = self.study.common()?.vessel.capacity_m3();
-        let fails = |volume: f64| self.at(volume).is_none_or(|(required, available)| required > available);
+        let fails = |volume: f64| {
+            progress.is_stopped() || self.at(volume).is_none_or(|(required, available)| required > available)
+        };
         let volume = |i: u32| capacity * f64::from(i) / f64::from(N_STEPS);
         let holds = (1..=N_STEPS).rev().find(|&i| !fails(volume(i)))?;
         if holds == N_STEPS {

@@ -6,4 +6,4 @@ mod root;
 
 pub use legendre::{LegendreSeries, legendre_polynomials};
 pub use quad::{gauss, tanh_sinh};
-pub use root::{bisect, bracket, root};
+pub use root::{bisect, bracket, golden_min, root};

@@ -5,6 +5,7 @@
 
 pub mod json;
 mod lines;
+pub mod sweep;
 pub mod table;
 
 #[cfg(test)]

@@ -28,29 +28,31 @@ fn record(limit: Limit) -> Record {
 fn limited() -> impl Strategy<Value = Study> {
     let limits = (0.5..4.0, 0.05..1.0, 0.0..0.1);
     let opening = proptest::option::weighted(0.3, 0.1..0.4);
-    (plated(), 0.05..0.95, -0.3..0.3, limits, opening).prop_map(|(plated, share, heel, (wall, roof, allowance), open)| {
-        let mut study = study(plated.section(), Fill::Share(share));
-        let size = plated.area().sqrt();
-        let weight = WATER * GRAVITY * size;
-        let heel = if heel < 0.0 { Attitude::Level } else { Attitude::HeelDeg(30.0 * heel - 5.0) };
-        study.cases[0].attitude = heel;
-        study.records = vec![
-            record(Limit::WallPressure(wall * weight)),
-            record(Limit::RoofPressure(roof * weight)),
-            record(Limit::FreeboardAllowance(allowance * size)),
-        ];
-        study.liquid.vapour_pressure_abs_pa = Some(2339.0);
-        if let (Some(share), Some(plate)) = (open, study.section.plates.first_mut()) {
-            let length = plate.length_m();
-            plate.openings = vec![Opening {
-                name: String::new(),
-                from_m: 0.3 * length,
-                to_m: (0.3 + share) * length,
-                shape: OpeningShape::Share(1.0),
-            }];
-        }
-        study
-    })
+    (plated(), 0.05..0.95, -0.3..0.3, limits, opening).prop_map(
+        |(plated, share, heel, (wall, roof, allowance), open)| {
+            let mut study = study(plated.section(), Fill::Share(share));
+            let size = plated.area().sqrt();
+            let weight = WATER * GRAVITY * size;
+            let heel = if heel < 0.0 { Attitude::Level } else { Attitude::HeelDeg(30.0 * heel - 5.0) };
+            study.cases[0].attitude = heel;
+            study.records = vec![
+                record(Limit::WallPressure(wall * weight)),
+                record(Limit::RoofPressure(roof * weight)),
+                record(Limit::FreeboardAllowance(allowance * size)),
+            ];
+            study.liquid.vapour_pressure_abs_pa = Some(2339.0);
+            if let (Some(share), Some(plate)) = (open, study.section.plates.first_mut()) {
+                let length = plate.length_m();
+                plate.openings = vec![Opening {
+                    name: String::new(),
+                    from_m: 0.3 * length,
+                    to_m: (0.3 + share) * length,
+                    shape: OpeningShape::Share(1.0),
+                }];
+            }
+            study
+        },
+    )
 }
 
 /// The worst state of a case.

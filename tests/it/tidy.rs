@@ -13,6 +13,7 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("units", &[]),
     ("sources", &[]),
     ("problem", &[]),
+    ("progress", &[]),
     ("num", &[]),
     ("geom", &["num"]),
     ("section", &["problem", "num", "geom"]),
@@ -22,13 +23,16 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("cases", &["geom"]),
     ("statics", &["problem", "num", "geom", "section"]),
     ("study", &["units", "problem", "geom", "section", "liquid", "cases", "statics"]),
-    ("criteria", &["units", "sources", "problem", "num", "geom", "cases", "statics", "study"]),
-    ("analysis", &["units", "problem", "geom", "cases", "statics", "study", "criteria"]),
+    ("criteria", &["units", "sources", "problem", "progress", "num", "geom", "cases", "statics", "study"]),
+    ("analysis", &["units", "problem", "progress", "num", "geom", "cases", "statics", "study", "criteria"]),
     ("scenario", &["units", "problem", "geom", "section", "liquid", "cases", "study"]),
     ("report", &["units", "sources", "problem", "geom", "section", "liquid", "cases", "study", "analysis"]),
-    ("app", &["problem", "geom", "section", "liquid", "cases", "study", "analysis", "scenario"]),
-    ("gui", &["units", "problem", "geom", "section", "liquid", "cases", "study", "analysis", "scenario", "app"]),
-    ("cli", &["units", "problem", "study", "analysis", "report", "app", "gui"]),
+    ("app", &["problem", "progress", "geom", "section", "liquid", "cases", "study", "analysis", "scenario"]),
+    (
+        "gui",
+        &["units", "problem", "geom", "section", "liquid", "cases", "study", "analysis", "scenario", "report", "app"],
+    ),
+    ("cli", &["units", "problem", "progress", "study", "analysis", "report", "app", "gui"]),
 ];
 
 /// Lines that a file may have.
