@@ -16,6 +16,8 @@ pub enum Source {
     BondNumber,
     /// Vapour pressure margin.
     VapourMargin,
+    /// The project's own derivation of layout facts.
+    LayoutGeometry,
     /// Effective gravity and standard gravity.
     StandardGravity,
     /// Thin plates in bending.

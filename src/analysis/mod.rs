@@ -1,6 +1,7 @@
 //! The one facade: a valid study in, results out. Pure: no files, no clock, no screen.
 
 mod cells;
+mod compartments;
 mod curves;
 mod envelope;
 mod fill_map;
@@ -14,9 +15,10 @@ mod ways;
 use rayon::prelude::*;
 
 use crate::cases::LoadCase;
-use crate::criteria::Outcome;
+use crate::criteria::{self, Standing};
 use crate::geom::{Point, Vec2};
-use crate::statics::{Body, Holder, Setting, Stop, pressure_at, settle};
+use crate::plates::dividers;
+use crate::statics::{Body, Holder, Setting, Stop, pressure_at, settle, spills};
 use crate::study::ValidStudy;
 use crate::units::{Measure, Quantity, number};
 
@@ -52,6 +54,9 @@ pub fn run(study: &ValidStudy) -> Results {
     let highest_pa =
         cases.iter().flat_map(|c| c.states()).map(|(_, s)| s.peak_pa - inputs.ullage_gage_pa).fold(rest_pa, f64::max);
     let capacity_m3 = study.capacity_m3();
+    let cells = cells::still(study);
+    let dividers = dividers(&inputs.section, study.region());
+    let layout = criteria::judge_layout(&Standing { study, cells: &cells, dividers });
     let common_capacity = common.map_or(capacity_m3, |start| start.vessel.capacity_m3());
     Results {
         capacity_m3,
@@ -69,7 +74,9 @@ pub fn run(study: &ValidStudy) -> Results {
             surface,
             highest_share: holds.map(|v| v.min(common_capacity) / common_capacity),
         },
-        cells: cells::still(study),
+        cells,
+        compartments: compartments::compartments(study),
+        layout,
         cases,
         pressure_scale_pa: nice_scale(highest_pa),
         warnings: study.warnings().to_vec(),
@@ -128,6 +135,10 @@ fn judge_case(
     let Outcome { verdicts, absent } = sighted.judge(&|b| holds[b]);
     let holds = holds.into_iter().flatten().reduce(f64::min);
     let released = case.release.then(|| settle_released(study, course));
+    let trapped = match (&released, course.ramp) {
+        (Some(Ok(released)), Some(ramp)) => compartments::trapped(study, &ramp, released),
+        _ => Vec::new(),
+    };
     let pours = course.ways.first().and_then(|w| w.as_ref()).and_then(|w| w.stop.as_ref());
     let pours = pours.map_or(Vec::new(), |stop| stop.pours.clone());
     let mut states = sights.into_iter().map(|sight| sight.settled);
@@ -139,6 +150,7 @@ fn judge_case(
         settled,
         sealed: states.next(),
         released,
+        trapped,
         routes: bounds.iter().enumerate().map(|(b, &bound)| (bound, route(course, b))).collect(),
         pours,
         verdicts,
@@ -195,7 +207,7 @@ fn settle_at(study: &ValidStudy, holder: &Holder, stop: &Stop, gravity_m_per_s2:
     let inputs = study.study();
     let points: Vec<(&str, Point)> = inputs.points.iter().map(|p| (p.name.as_str(), p.at)).collect();
     let setting = Setting {
-        spilled_m3: stop.spilled.iter().map(|s| s.volume_m3).fold(0.0, |a, b| a + b),
+        spills: &spills(holder, study.mouths(), &stop.spilled),
         gravity_m_per_s2,
         density_kg_per_m3: &|compartment| study.liquid_of(compartment).density_kg_per_m3,
         gas_pa: inputs.ullage_gage_pa,

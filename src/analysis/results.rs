@@ -1,12 +1,15 @@
 //! What a judgement gives: every number that is shown to anyone comes from here.
 
-use crate::geom::{Point, Vec2};
+use crate::geom::Vec2;
 use crate::problem::Problem;
 
-pub use crate::criteria::{Absent, CONTAINED, FREEBOARD, Reach, Sense, State, Trust, Verdict, WorkLine};
+pub use crate::criteria::{
+    Absent, CONTAINED, FREEBOARD, LAYOUT, Outcome, Reach, Sense, State, Trust, Verdict, WorkLine,
+};
+pub use crate::plates::Cell;
 pub use crate::statics::{
-    Bound, Chord, EdgeLoad, EffectiveGravity, PlateLoad, PointPressure, Pool, Pour, RoofContact, Route, Settled,
-    Stretch,
+    Bound, Chord, EdgeLoad, EffectiveGravity, GasPocket, MouthSpill, PlateLoad, PointPressure, Pool, Pour,
+    RoofContact, Route, Settled, Stretch,
 };
 
 /// The tank standing level and at rest, and the fill in every way of giving it.
@@ -30,23 +33,6 @@ pub struct Still {
     pub highest_share: Option<f64>,
 }
 
-/// A part of the section between walls and plates.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Cell {
-    /// As shown.
-    pub name: String,
-    /// A point inside it.
-    pub inside: Point,
-    /// The compartment that it is a part of: cells that openings join.
-    pub compartment: usize,
-    /// Its area in the section, m2.
-    pub area_m2: f64,
-    /// Its capacity, m3.
-    pub capacity_m3: f64,
-    /// What it holds standing level and at rest, m3.
-    pub still_m3: f64,
-}
-
 /// One load case, judged.
 #[derive(Clone, Debug, PartialEq)]
 pub struct CaseResult {
@@ -62,6 +48,8 @@ pub struct CaseResult {
     pub sealed: Option<Result<Settled, String>>,
     /// After the release back to rest, where the case asks for it; under the settled bound.
     pub released: Option<Result<Settled, String>>,
+    /// What stays trapped behind sills after the release; empty where nothing does.
+    pub trapped: Vec<Trapped>,
     /// How the liquid comes to it, under each bound.
     pub routes: Vec<(Bound, Route)>,
     /// What went over sills on the way, under the settled bound.
@@ -93,6 +81,24 @@ impl CaseResult {
     }
 }
 
+/// A tight part of the section.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Compartment {
+    /// As shown.
+    pub name: String,
+    /// Its entry in the study, where it has a fill of its own.
+    pub own_idx: Option<usize>,
+}
+
+/// Liquid that a cell holds after a release beyond what it held at rest before.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Trapped {
+    /// Which cell.
+    pub cell_idx: usize,
+    /// How much more, m3.
+    pub volume_m3: f64,
+}
+
 /// Results of a study.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Results {
@@ -102,6 +108,10 @@ pub struct Results {
     pub still: Still,
     /// The cells between walls and plates.
     pub cells: Vec<Cell>,
+    /// The compartments: cells that openings join.
+    pub compartments: Vec<Compartment>,
+    /// The layout of plates, judged once for the tank standing level and at rest; worst first.
+    pub layout: Outcome,
     /// One a load case, in the study's order.
     pub cases: Vec<CaseResult>,
     /// Full scale of the pressure tints, Pa: one nice number for all cases.
@@ -111,9 +121,10 @@ pub struct Results {
 }
 
 impl Results {
-    /// Count of verdicts in a state, over all cases.
+    /// Count of verdicts in a state, of the layout and over all cases.
     pub fn count(&self, state: State) -> usize {
-        self.cases.iter().flat_map(|c| &c.verdicts).filter(|v| v.state == state).count()
+        let of_cases = self.cases.iter().flat_map(|c| &c.verdicts);
+        self.layout.verdicts.iter().chain(of_cases).filter(|v| v.state == state).count()
     }
 
     /// Indices (case, verdict) of all verdicts, worst first.

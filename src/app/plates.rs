@@ -41,13 +41,13 @@ pub fn plate_across(section: &Section, from: Point, to: Point) -> Plate {
     }
 }
 
-/// A plate of the section moved by `ds_m` along s; none where there is no such plate. An end that stood on a wall is
+/// A plate of the section moved by `by`, metres; none where there is no such plate. An end that stood on a wall is
 /// carried along the plate's own line until it stands there again: an upright plate follows floor and roof, and one that
 /// lies between upright walls stays. Openings keep their distance from the nearer end. What stood on the plate
 /// does not follow it.
-pub fn shifted_along_walls(section: &Section, plate_idx: usize, ds_m: f64) -> Option<Plate> {
+pub fn shifted_along_walls(section: &Section, plate_idx: usize, by: Vec2) -> Option<Plate> {
     let old = section.plates.get(plate_idx)?;
-    let moved: Vec<Point> = old.points.iter().map(|p| p + Vec2::new(ds_m, 0.0)).collect();
+    let moved: Vec<Point> = old.points.iter().map(|p| p + by).collect();
     let mut points = moved.clone();
     if let ([first, second, ..], [.., before_last, last]) = (&moved[..], &moved[..]) {
         for (end_idx, inner, end) in [(0, second, first), (moved.len() - 1, before_last, last)] {
@@ -74,7 +74,7 @@ pub fn equally_spaced(section: &Section, plate_idxs: &[usize]) -> Vec<Plate> {
     let bay_m = (high - low) / (chosen.len() + 1) as f64;
     for (n_before, &(s, i)) in chosen.iter().enumerate() {
         let to = low + bay_m * (n_before + 1) as f64;
-        if let Some(plate) = shifted_along_walls(section, i, to - s) {
+        if let Some(plate) = shifted_along_walls(section, i, Vec2::new(to - s, 0.0)) {
             plates[i] = plate;
         }
     }
@@ -248,9 +248,13 @@ mod tests {
 
     // Expected places are worked out by hand from the equations of the walls.
 
+    fn shifted(section: &Section, plate_idx: usize, ds_m: f64) -> Option<Plate> {
+        shifted_along_walls(section, plate_idx, Vec2::new(ds_m, 0.0))
+    }
+
     #[test]
     fn an_upright_plate_follows_floor_and_roof() {
-        let moved = |plate, ds_m| shifted_along_walls(&wedge(vec![plate]), 0, ds_m).expect("the plate is there");
+        let moved = |plate, ds_m| shifted(&wedge(vec![plate]), 0, ds_m).expect("the plate is there");
         let full = [(1.0, 0.1), (1.0, 1.8)];
         check_points(&moved(plate(&full, &[]), 2.0), &[(3.0, 0.3), (3.0, 1.4)]);
         check_points(&moved(plate(&full, &[]), -0.5), &[(0.5, 0.05), (0.5, 1.9)]);
@@ -266,7 +270,7 @@ mod tests {
         let ridge =
             [(0.0, 0.0, 0.0), (2.0, 0.3, 0.0), (4.0, 0.0, 0.0), (4.0, 1.0, 0.0), (2.0, 1.4, 0.0), (0.0, 1.0, 0.0)];
         let tank = section(&ridge, vec![plate(&[(1.0, 0.15), (1.0, 1.2)], &[])]);
-        check_points(&shifted_along_walls(&tank, 0, 1.0).unwrap(), &[(2.0, 0.3), (2.0, 1.4)]);
+        check_points(&shifted(&tank, 0, 1.0).unwrap(), &[(2.0, 0.3), (2.0, 1.4)]);
         check_points(&moved(plate(&full, &[]), 4.0), &[(5.0, 0.1), (5.0, 1.8)]);
     }
 
@@ -274,16 +278,16 @@ mod tests {
     fn in_a_ring_a_plate_follows_the_arcs() {
         // 0.6 and 0.8 make the 3-4-5 triangle.
         let upright = plate(&[(0.0, -1.0), (0.0, 1.0)], &[]);
-        let moved = shifted_along_walls(&ring(vec![upright]), 0, 0.6).unwrap();
+        let moved = shifted(&ring(vec![upright]), 0, 0.6).unwrap();
         check_points(&moved, &[(0.6, -0.8), (0.6, 0.8)]);
     }
 
     #[test]
     fn a_plate_between_upright_walls_stays_and_one_with_a_free_end_grows() {
         let shelf = plate(&[(0.0, 1.0), (4.0, 1.0)], &[]);
-        check_points(&shifted_along_walls(&wedge(vec![shelf]), 0, 0.3).unwrap(), &[(0.0, 1.0), (4.0, 1.0)]);
+        check_points(&shifted(&wedge(vec![shelf]), 0, 0.3).unwrap(), &[(0.0, 1.0), (4.0, 1.0)]);
         let ledge = plate(&[(0.0, 1.0), (1.0, 1.0)], &[]);
-        check_points(&shifted_along_walls(&wedge(vec![ledge]), 0, 0.3).unwrap(), &[(0.0, 1.0), (1.3, 1.0)]);
+        check_points(&shifted(&wedge(vec![ledge]), 0, 0.3).unwrap(), &[(0.0, 1.0), (1.3, 1.0)]);
     }
 
     #[test]
@@ -292,11 +296,11 @@ mod tests {
         let half = std::f64::consts::PI;
         let vertex = |s| Vertex { start: Point::new(s, 0.5), sweep_rad: half };
         tank.obstacles.push(Obstacle { name: "pipe".into(), vertices: vec![vertex(1.5), vertex(2.5)] });
-        check_points(&shifted_along_walls(&tank, 0, 0.3).unwrap(), &[(2.3, 0.9), (2.3, 1.54)]);
+        check_points(&shifted(&tank, 0, 0.3).unwrap(), &[(2.3, 0.9), (2.3, 1.54)]);
 
         let shelf = plate(&[(0.0, 0.8), (4.0, 1.2)], &[]);
         let tank = wedge(vec![shelf, plate(&[(1.0, 0.9), (1.0, 1.8)], &[])]);
-        check_points(&shifted_along_walls(&tank, 1, 1.0).unwrap(), &[(2.0, 1.0), (2.0, 1.6)]);
+        check_points(&shifted(&tank, 1, 1.0).unwrap(), &[(2.0, 1.0), (2.0, 1.6)]);
     }
 
     #[test]
@@ -362,15 +366,15 @@ mod tests {
             &[(0.0, 0.0, nan), (4.0, 0.4, 0.0), (4.0, 1.2, 0.0), (0.0, 2.0, 0.0)],
         ] {
             let tank = section(outline, vec![full()]);
-            check_points(&shifted_along_walls(&tank, 0, 0.5).unwrap(), &[(1.5, 0.1), (1.5, 1.8)]);
+            check_points(&shifted(&tank, 0, 0.5).unwrap(), &[(1.5, 0.1), (1.5, 1.8)]);
             assert_eq!(equally_spaced(&tank, &[0]), tank.plates, "{outline:?}");
             let drawn = plate_across(&tank, Point::new(0.0, 0.0), Point::new(1.0, 1.0));
             check_points(&drawn, &[(0.0, 0.0), (1.0, 1.0)]);
         }
-        assert_eq!(shifted_along_walls(&wedge(vec![]), 0, 0.5), None);
+        assert_eq!(shifted(&wedge(vec![]), 0, 0.5), None);
         for bad in [plate(&[], &[]), plate(&[(1.0, 1.0)], &[]), plate(&[(1.0, 1.0), (nan, 1.0)], &[(nan, 0.1)])] {
             let tank = wedge(vec![bad]);
-            assert_eq!(shifted_along_walls(&tank, 0, 0.5).unwrap().points.len(), tank.plates[0].points.len());
+            assert_eq!(shifted(&tank, 0, 0.5).unwrap().points.len(), tank.plates[0].points.len());
             assert_eq!(equally_spaced(&tank, &[0]).len(), 1);
         }
     }

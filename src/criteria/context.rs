@@ -3,12 +3,11 @@
 use crate::cases::LoadCase;
 use crate::geom::{Point, Vec2};
 use crate::problem::Place;
-use crate::sources::Source;
-use crate::statics::{Bound, EffectiveGravity, PourOver, Rims, Route, Settled};
+use crate::statics::{Bound, EffectiveGravity, GasPocket, PourOver, Rims, Route, Settled};
 use crate::study::{Limit, ValidStudy};
-use crate::units::{Measure, Phrase, Quantity};
+use crate::units::{Measure, Phrase, Quantity, UnitSystem};
 
-use super::{Reach, Sense, State, Trust, Verdict};
+use super::{Reach, Sense, State, Trust, Verdict, by_records, unconfirmed};
 
 /// Physics of one load case.
 pub struct Context<'a> {
@@ -58,56 +57,15 @@ impl View<'_> {
     }
 }
 
-/// Utilisation beyond which a verdict is close.
-const CLOSE_ABOVE: f64 = 0.9;
-
-/// Rounding of a utilisation: a brim that is exactly reached is not yet passed.
-const UTILISATION_ROUNDING: f64 = 1e-9;
-
 impl Context<'_> {
     /// A verdict from demand and limit. The demand is compared in `sense`.
     pub fn verdict(&self, criterion: &'static str, demand: Measure, limit: Measure, sense: Sense) -> Verdict {
-        let (smaller, larger) = match sense {
-            Sense::AtMost => (demand.si, limit.si),
-            Sense::AtLeast => (limit.si, demand.si),
-        };
-        // Nothing is a share of zero or less: then the comparison alone decides.
-        let utilisation = if larger > 0.0 {
-            smaller.max(0.0) / larger
-        } else if smaller <= larger {
-            0.0
-        } else {
-            f64::INFINITY
-        };
-        Verdict {
-            state: state_of(utilisation),
-            demand: Some(demand),
-            limit: Some(limit),
-            utilisation: Some(utilisation),
-            ..self.not_judged(criterion, sense, String::new())
-        }
+        Verdict::judged(criterion, demand, limit, sense, self.trust())
     }
 
     /// A verdict that is not judged, and why.
     pub fn not_judged(&self, criterion: &'static str, sense: Sense, reason: String) -> Verdict {
-        Verdict {
-            criterion,
-            state: State::NotJudged,
-            demand: None,
-            limit: None,
-            sense,
-            utilisation: None,
-            place: Place::Whole,
-            place_words: "tank".to_owned(),
-            at: None,
-            working: Vec::new(),
-            mend: Vec::new(),
-            source: Source::RigidAcceleration,
-            trust: self.trust(),
-            remark: reason,
-            unconfirmed_record: None,
-            bound: None,
-        }
+        Verdict::not_judged(criterion, sense, reason, self.trust())
     }
 
     /// What to do: a fill, rounded down, so that the one shown holds.
@@ -170,9 +128,37 @@ impl Context<'_> {
         let all = self
             .views
             .iter()
-            .map(|view| Verdict { bound: (self.views.len() > 1).then_some(view.bound), ..verdict(view) });
+            .map(|view| (view, verdict(view)))
+            .map(|(view, verdict)| self.over_gas(view, verdict))
+            .map(|(view, verdict)| Verdict { bound: (self.views.len() > 1).then_some(view.bound), ..verdict });
         let worse = |a: Verdict, b: Verdict| if b.order(&a).is_lt() { b } else { a };
         all.reduce(worse).expect("a case has a bound")
+    }
+
+    /// A verdict that rests on a gas pocket which touches no mouth never holds: it is not judged, since the liquid has been
+    /// followed as if the gas were vented. One that fails still does, and says so. With nothing moved from rest
+    /// the pocket is as it was.
+    fn over_gas<'v>(&self, view: &'v View<'v>, verdict: Verdict) -> (&'v View<'v>, Verdict) {
+        let has_moved = view.way.and_then(|w| w.stop.as_ref()).is_some_and(|stop| stop.turned_rad > 0.0);
+        let pockets = view.settled.map_or(&[][..], |settled| &settled.gas);
+        if !has_moved || pockets.is_empty() || verdict.state == State::NotJudged {
+            return (view, verdict);
+        }
+        let compartment = verdict.at.and_then(|at| self.study.region().open().part_at(at));
+        let is_beside = |p: &&GasPocket| compartment.is_none_or(|c| c == p.compartment);
+        let Some(pocket) = pockets.iter().find(is_beside) else { return (view, verdict) };
+        let volume = Measure::new(Quantity::Volume, pocket.volume_m3).text(UnitSystem::Si);
+        let words = format!(
+            "{volume} of gas in cell {} touches no mouth, and the liquid was followed as if it were vented",
+            pocket.cell_idx + 1
+        );
+        if verdict.state == State::Fails {
+            let remark = if verdict.remark.is_empty() { words } else { format!("{}; {words}", verdict.remark) };
+            return (view, Verdict { remark, ..verdict });
+        }
+        let Verdict { place, place_words, at, source, unconfirmed_record, .. } = verdict;
+        let unsure = self.not_judged(verdict.criterion, verdict.sense, words);
+        (view, Verdict { place, place_words, at, source, unconfirmed_record, ..unsure })
     }
 
     /// The settled bound.
@@ -182,25 +168,11 @@ impl Context<'_> {
 
     /// One verdict for each requirement record of a kind, from the record's value.
     pub fn by_records(&self, kind: fn(&Limit) -> Option<f64>, verdict: impl Fn(f64) -> Verdict) -> Vec<Verdict> {
-        let records = self.study.study().records_of(kind);
-        records
-            .map(|(i, limit)| Verdict { unconfirmed_record: self.unconfirmed(Some(i)), ..verdict(limit) })
-            .collect()
+        by_records(self.study, kind, verdict)
     }
 
     /// The index of a record when it is not confirmed.
     pub fn unconfirmed(&self, record_idx: Option<usize>) -> Option<usize> {
-        record_idx.filter(|&i| !self.study.study().records[i].confirmed)
-    }
-}
-
-/// State of a utilisation.
-pub(super) fn state_of(utilisation: f64) -> State {
-    if utilisation > 1.0 + UTILISATION_ROUNDING {
-        State::Fails
-    } else if utilisation > CLOSE_ABOVE {
-        State::Close
-    } else {
-        State::Holds
+        unconfirmed(self.study, record_idx)
     }
 }

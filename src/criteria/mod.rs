@@ -5,6 +5,7 @@
 mod contained;
 mod context;
 mod freeboard;
+mod layout;
 mod pressure;
 mod roof;
 mod vapour;
@@ -13,7 +14,10 @@ mod verdict;
 pub use contained::NAME as CONTAINED;
 pub use context::{Context, View};
 pub use freeboard::{FreeboardFill, NAME as FREEBOARD};
+pub use layout::{NAME as LAYOUT, Standing, judge_layout};
 pub use verdict::*;
+
+use crate::study::{Limit, ValidStudy};
 
 /// What a criterion gives: verdicts, and checks that do not apply with the reason.
 #[derive(Clone, Debug, Default, PartialEq)]
@@ -64,4 +68,15 @@ pub fn judge_those(context: &Context, is_wanted: impl Fn(RestsOn) -> bool) -> Ou
     }
     all.verdicts.sort_by(Verdict::order);
     all
+}
+
+/// One verdict for each requirement record of a kind, from the record's value.
+fn by_records<T>(study: &ValidStudy, kind: fn(&Limit) -> Option<T>, verdict: impl Fn(T) -> Verdict) -> Vec<Verdict> {
+    let records = study.study().records_of(kind);
+    records.map(|(i, limit)| Verdict { unconfirmed_record: unconfirmed(study, Some(i)), ..verdict(limit) }).collect()
+}
+
+/// The index of a record when it is not confirmed.
+fn unconfirmed(study: &ValidStudy, record_idx: Option<usize>) -> Option<usize> {
+    record_idx.filter(|&i| !study.study().records[i].confirmed)
 }

@@ -134,7 +134,66 @@ pub struct Absent {
     pub reason: Phrase,
 }
 
+/// Utilisation beyond which a verdict is close.
+const CLOSE_ABOVE: f64 = 0.9;
+
+/// Rounding of a utilisation: a brim that is exactly reached is not yet passed.
+const UTILISATION_ROUNDING: f64 = 1e-9;
+
 impl Verdict {
+    /// From demand and limit. The demand is compared in `sense`.
+    pub fn judged(
+        criterion: &'static str,
+        demand: Measure,
+        limit: Measure,
+        sense: Sense,
+        trust: Vec<Trust>,
+    ) -> Verdict {
+        let (smaller, larger) = match sense {
+            Sense::AtMost => (demand.si, limit.si),
+            Sense::AtLeast => (limit.si, demand.si),
+        };
+        // Nothing is a share of zero or less: then the comparison alone decides.
+        let utilisation = if larger > 0.0 {
+            smaller.max(0.0) / larger
+        } else if smaller <= larger {
+            0.0
+        } else {
+            f64::INFINITY
+        };
+        let state = if utilisation > 1.0 + UTILISATION_ROUNDING {
+            State::Fails
+        } else if utilisation > CLOSE_ABOVE {
+            State::Close
+        } else {
+            State::Holds
+        };
+        let (demand, limit, utilisation) = (Some(demand), Some(limit), Some(utilisation));
+        Verdict { state, demand, limit, utilisation, ..Verdict::not_judged(criterion, sense, String::new(), trust) }
+    }
+
+    /// Not judged, and why.
+    pub fn not_judged(criterion: &'static str, sense: Sense, reason: String, trust: Vec<Trust>) -> Verdict {
+        Verdict {
+            criterion,
+            state: State::NotJudged,
+            demand: None,
+            limit: None,
+            sense,
+            utilisation: None,
+            place: Place::Whole,
+            place_words: "tank".to_owned(),
+            at: None,
+            working: Vec::new(),
+            mend: Vec::new(),
+            source: Source::RigidAcceleration,
+            trust,
+            remark: reason,
+            unconfirmed_record: None,
+            bound: None,
+        }
+    }
+
     /// Worst first: state, then utilisation.
     pub fn order(&self, other: &Verdict) -> std::cmp::Ordering {
         let used = |v: &Verdict| v.utilisation.unwrap_or(0.0);

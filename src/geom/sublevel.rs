@@ -336,10 +336,9 @@ impl Sublevel {
 fn alternate(active: &mut [Active]) {
     for i in 0..active.len() {
         let wants_right = i % 2 == 1;
-        if active[i].piece.is_right != wants_right {
-            if let Some(offset) = active[i..].iter().position(|a| a.piece.is_right == wants_right) {
-                active[i..=i + offset].rotate_right(1);
-            }
+        // The place itself, where it is right already: nothing turns then.
+        if let Some(offset) = active[i..].iter().position(|a| a.piece.is_right == wants_right) {
+            active[i..=i + offset].rotate_right(1);
         }
     }
 }

@@ -1,15 +1,17 @@
 //! The thin row above the board where the chosen load case is named and typed.
 
-use egui::{Align, Popup, PopupCloseBehavior, Rect, Ui, pos2, vec2};
+use egui::{Align, Popup, PopupCloseBehavior, Rect, Role, Sense, Ui, WidgetInfo, pos2, vec2};
 
 use crate::app::Edit;
 use crate::cases::{Accel, AccelUnit, Attitude, LoadCase};
 use crate::units::{Quantity, Unit, number};
 
 use super::number::Number;
-use super::{Command, Desk, field, font, formula};
+use super::{Command, Desk, Stage, board, field, font, formula};
 
 const LEVEL: f64 = 0.0;
+
+const RELEASE_WORDS: &str = "Followed by a slow release back to rest: shows what stays trapped behind sills";
 
 /// The row in `rect`.
 pub fn case_head_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk) {
@@ -34,7 +36,8 @@ pub fn case_head_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk) {
     });
     accel_ui(ui, &mut row, desk, i, case.accel);
     attitude_ui(ui, &mut row, desk, i, case.attitude);
-    more_ui(ui, inset, desk, i, case);
+    let more = more_ui(ui, inset, desk, i, case);
+    stages_ui(ui, inset.with_min_x(row.x).with_max_x(more.left() - 20.0), desk);
 }
 
 /// A place that moves along a row.
@@ -147,7 +150,7 @@ fn attitude_ui(ui: &mut Ui, row: &mut Row, desk: &mut Desk, i: usize, attitude: 
 }
 
 /// What is seldom typed: onset, source, note, and the way of giving the acceleration.
-fn more_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, i: usize, case: &LoadCase) {
+fn more_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, i: usize, case: &LoadCase) -> Rect {
     let words = if case.note.is_empty() { "More" } else { "More, note" };
     let response = field::link_ui(ui, rect, Align::Max, words, "More of this case", desk.look);
     let popup = Popup::menu(&response).close_behavior(PopupCloseBehavior::CloseOnClickOutside);
@@ -169,9 +172,61 @@ fn more_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, i: usize, case: &LoadCase) 
             .optional()
             .try_row_ui(ui, desk, |si| Ok(with(&|c| c.onset_s = si)))
             .on_hover_text("Time over which the acceleration builds up; the settled verdicts do not use it");
+        Number::new(("duration", i), "Then held for", 0.0, desk.unit(Quantity::Time))
+            .or_none(case.duration_s)
+            .optional()
+            .try_row_ui(ui, desk, |si| Ok(with(&|c| c.duration_s = si)))
+            .on_hover_text("Time for which the acceleration is then held; none: for long");
+        let mut release = case.release;
+        if ui.checkbox(&mut release, "Then released").on_hover_text(RELEASE_WORDS).changed() {
+            desk.edit(with(&|c| c.release = release));
+        }
         field::text_row_ui(ui, desk, ("case source", i), "Source", &case.source, |t| with(&|c| c.source = t.clone()));
         field::text_row_ui(ui, desk, ("case note", i), "Note", &case.note, |t| with(&|c| c.note = t.clone()));
     });
+    response.rect
+}
+
+/// The states of the case, where there is more than one, and which of them the board shows; a click chooses.
+fn stages_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk) {
+    let Some(case) = desk.case() else { return };
+    let stages: Vec<Stage> = Stage::of(case).collect();
+    if stages.len() < 2 {
+        return;
+    }
+    let shown = desk.view.stage_of(case);
+    let mut right = rect.right();
+    for stage in stages.into_iter().rev() {
+        // As its surface is drawn.
+        let sample = if stage == Stage::Released { 0.0 } else { 34.0 };
+        let width = text_width(ui, stage.word(), font::body_heavy());
+        let place = rect.with_max_x(right).with_min_x(right - width - sample);
+        right = place.left() - 16.0;
+        if place.left() < rect.left() {
+            return;
+        }
+        let response = ui.interact(place, ui.next_auto_id().with(stage.word()), Sense::click());
+        let is_shown = shown == stage;
+        let spoken = format!("State shown, {}", stage.word());
+        response.widget_info(|| WidgetInfo::selected(Role::RadioButton, true, is_shown, &spoken));
+        let y = ui.painter().round_to_pixel_center(place.center().y);
+        let ends = [pos2(place.left(), y), pos2(place.left() + 26.0, y)];
+        match (sample > 0.0, is_shown) {
+            (true, true) => {
+                ui.painter().line_segment(ends, (1.9, desk.look.ink));
+            }
+            (true, false) => board::paint_other_bound(ui.painter(), ends, desk.look),
+            _ => {}
+        }
+        let (font, color) =
+            if is_shown { (font::body_heavy(), desk.look.ink) } else { (font::body(), desk.look.accent) };
+        let text = place.with_min_x(place.left() + sample).expand2(vec2(0.5, 0.0));
+        field::paint_fitting(ui, text, Align::Min, stage.word(), font, color);
+        super::marks::paint_focus(ui.painter(), place, &response, desk.look);
+        if response.on_hover_text(stage.words()).clicked() {
+            desk.view.stage = Some(stage);
+        }
+    }
 }
 
 fn accel_unit(desk: &Desk, unit: AccelUnit) -> Unit {

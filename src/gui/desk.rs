@@ -2,7 +2,7 @@
 
 use std::sync::Arc;
 
-use crate::analysis::Results;
+use crate::analysis::{CaseResult, Results};
 use crate::app::{Derived, Document, Edit};
 use crate::study::{Study, ValidStudy};
 use crate::units::{Measure, Quantity, Unit, UnitSystem};
@@ -34,6 +34,11 @@ impl<'a> Desk<'a> {
             Derived::Faulty { stale: Some((study, results)), .. } => Some(Judged { study, results, is_stale: true }),
             Derived::Faulty { stale: None, .. } => None,
         }
+    }
+
+    /// The chosen case, judged.
+    pub fn case(&self) -> Option<&'a CaseResult> {
+        self.judged()?.results.cases.get(self.view.case_idx)
     }
 
     /// Proposes a change of the document.

@@ -142,6 +142,9 @@ fn selected(place: &Place) -> Option<Selected> {
         Place::Vertex(i) => Some(Selected::Vertex(i)),
         Place::Crossing { edge_idx, .. } => Some(Selected::Edge(edge_idx)),
         Place::Obstacle { obstacle_idx, .. } => Some(Selected::Obstacle(obstacle_idx)),
+        Place::Plate { plate_idx, opening_idx: None } => Some(Selected::Plate(plate_idx)),
+        Place::Plate { plate_idx, opening_idx: Some(o) } => Some(Selected::Opening(plate_idx, o)),
+        Place::Compartment(i) => Some(Selected::Compartment(i)),
         Place::Point(i) => Some(Selected::Point(i)),
         _ => None,
     }

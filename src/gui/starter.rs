@@ -41,6 +41,7 @@ pub fn study() -> Study {
         compartments: Vec::new(),
         sump: None,
         discharge_coefficient: DISCHARGE_COEFFICIENT,
+        materials: Vec::new(),
         cases: vec![LoadCase {
             name: "Rest".to_owned(),
             accel: Accel::REST,

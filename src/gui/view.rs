@@ -1,26 +1,11 @@
 //! View state, and what panels propose. Nothing here is part of the document.
 
+use crate::analysis::CaseResult;
 use crate::app::Edit;
+use crate::geom::Point;
 use crate::units::UnitSystem;
 
-use super::Command;
-
-/// What the user has chosen on the board or in a column.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
-pub enum Selected {
-    /// An edge of the outline.
-    Edge(usize),
-    /// The vertex at which an edge of the outline starts.
-    Vertex(usize),
-    /// A whole obstacle.
-    Obstacle(usize),
-    /// One vertex of an obstacle.
-    ObstacleVertex(usize, usize),
-    /// A named point.
-    Point(usize),
-    /// The plumb bob.
-    Bob,
-}
+use super::{Command, Selected, Stage};
 
 /// What is chosen, how it is shown. Panels may change it in place.
 #[derive(Clone, Debug, Default, PartialEq)]
@@ -31,12 +16,33 @@ pub struct View {
     pub selected: Option<Selected>,
     /// The verdict whose working is open: (case, verdict).
     pub open_verdict: Option<(usize, usize)>,
+    /// The state of the case that the board shows; none: that of the open verdict's bound, else the settled one.
+    pub stage: Option<Stage>,
     /// Units shown.
     pub units: UnitSystem,
     /// Board camera: points a metre, and the section point in the middle; none until first fitted.
     pub camera: Option<Camera>,
+    /// The pen that draws a plate, while the user holds it.
+    pub pen: Option<Pen>,
     /// What the status line says at the left: position under the pointer, or why something snapped.
     pub status: String,
+}
+
+impl View {
+    /// The state that the board shows of a case.
+    pub fn stage_of(&self, case: &CaseResult) -> Stage {
+        let open = self.open_verdict.filter(|(case_idx, _)| *case_idx == self.case_idx);
+        let verdict = open.and_then(|(_, verdict_idx)| case.verdicts.get(verdict_idx));
+        let wishes = [self.stage, verdict.and_then(|v| v.bound).map(Stage::Under)];
+        wishes.into_iter().flatten().find(|stage| stage.state(case).is_some()).unwrap_or_default()
+    }
+}
+
+/// The pen that draws a plate.
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
+pub struct Pen {
+    /// Where the plate begins, once that is set.
+    pub from: Option<Point>,
 }
 
 /// Where the board looks.

@@ -59,32 +59,49 @@ pub fn root(low: f64, high: f64, tolerance: f64, mut f: impl FnMut(f64) -> f64) 
 /// value and, where it has one, its slope. Both ends are `low` where it is above zero there already.
 pub fn bracket(low: f64, high: f64, tolerance: f64, mut f: impl FnMut(f64) -> (f64, Option<f64>)) -> [f64; 2] {
     let (mut a, mut b) = (low, high);
-    let (mut x, (mut fx, mut slope)) = (low, f(low));
-    if fx > 0.0 {
+    // Where Newton would go from either end, and how far that end is off.
+    let aim = |x: f64, (fx, slope): (f64, Option<f64>)| slope.filter(|s| *s > 0.0).map(|s| (fx.abs(), x - fx / s));
+    let at_low = f(low);
+    if at_low.0 > 0.0 {
         return [low; 2];
     }
-    let mut width = b - a;
+    let (mut from_a, mut from_b) = (aim(low, at_low), None);
+    let (mut width, near) = (b - a, 0.5 * tolerance);
+    let mut stride = near;
     for i in 1..200 {
         if b - a <= tolerance {
             break;
         }
-        let newton = slope.filter(|s| *s > 0.0).map(|s| x - fx / s);
-        // A step that small is Newton at its end: the other side of the root tells.
-        let is_small = newton.is_some_and(|next| (next - x).abs() <= 0.25 * tolerance);
-        let newton = if is_small { Some(x + if fx > 0.0 { -tolerance } else { tolerance }) } else { newton };
+        let nearer = [from_a, from_b].into_iter().flatten().min_by(|p, q| p.0.total_cmp(&q.0));
+        // At its end Newton lands on the end that it came from, or beyond: just inside, the other side tells. Longer and
+        // longer strides, where that is not so just yet.
+        let (to_a, to_b) = (|to: f64| to <= a + near, |to: f64| to >= b - near);
+        let newton = nearer.map(|(_, to)| {
+            if to_a(to) {
+                a + stride
+            } else if to_b(to) {
+                b - stride
+            } else {
+                to
+            }
+        });
+        let hugs = nearer.is_some_and(|(_, to)| to_a(to) || to_b(to));
+        stride = if hugs { 1000.0 * stride } else { near };
         // Every fourth time, bisect if Newton has not quartered the bracket since: its slope may mislead.
-        let is_slow = i % 4 == 0 && b - a > 0.25 * width;
+        let is_slow = !hugs && i % 4 == 0 && b - a > 0.25 * width;
         if i % 4 == 0 {
             width = b - a;
         }
-        let is_inside = |next: &f64| *next > a && *next < b && !is_slow;
-        let next = newton.filter(is_inside).unwrap_or(0.5 * (a + b));
+        let next = newton.filter(|next| *next > a && *next < b && !is_slow).unwrap_or(0.5 * (a + b));
         if next <= a || next >= b {
             break;
         }
-        x = next;
-        (fx, slope) = f(x);
-        if fx > 0.0 { b = x } else { a = x }
+        let value = f(next);
+        if value.0 > 0.0 {
+            (b, from_b) = (next, aim(next, value));
+        } else {
+            (a, from_a) = (next, aim(next, value));
+        }
     }
     [a, b]
 }

@@ -1,14 +1,18 @@
-//! Bending of plates under pressure: panels between stiffeners, one-way strips, and the strength of panels.
+//! Plates: how they bend under pressure, and how they part the tank. Judges nothing.
 //!
+//! Bending, of panels between stiffeners and one-way strips, and the strength of panels: knows no section and no liquid.
 //! A [`Profile`] is the net pressure along a plate. A [`SolvedPanel`] is made once for its geometry and bent by any
 //! profile; [`strength`] turns what it carries into stress, deflection and thickness for a material. A [`Strip`] is a
 //! metre of plate that spans one way. Below: thin plates, small deflections; where that is left, the result says so
-//! as data. Knows no section, no liquid, no load case, and judges nothing.
+//! as data.
+//!
+//! Layout, in a module of its own: facts of the section, its plates and its liquid at rest.
 
 mod basis;
 mod bending;
 mod bent;
 mod error;
+mod layout;
 mod panel;
 mod profile;
 mod strength;
@@ -17,6 +21,7 @@ mod strip;
 pub use bending::{Bending, EdgeReaction, Extremes, Peak};
 pub use bent::{Bent, PointState};
 pub use error::PlateError;
+pub use layout::{Cell, Divider, Gap, Remnant, cells, dividers, gaps, undrained, unvented};
 pub use panel::{PanelGeometry, SolvedPanel, Support};
 pub use profile::{Piece, Profile};
 pub use strength::{

@@ -5,12 +5,14 @@ use crate::cases::{Accel, Attitude, LoadCase};
 use crate::geom::{Point, Vec2};
 use crate::liquid::Liquid;
 use crate::problem::{Place, Problem};
-use crate::section::{EdgeKind, Obstacle, OutlineEdge, Section, Vertex, WidthLaw};
+use crate::section::{
+    EdgeKind, Obstacle, Opening, OpeningShape, OutlineEdge, Panel, Plate, Section, Vertex, Wall, WidthLaw,
+};
 use crate::sources::Source;
 use crate::study::{Fill, Limit, NamedPoint, Record, Study, VerdictNote};
 use crate::units::{Measure, Quantity};
 
-/// A box 2 m by 1 m with a duct inside, open at its top.
+/// A box 2 m by 1 m with a duct and a sill inside, open at its top.
 pub(super) fn study() -> Study {
     let corner =
         |name: &str, kind, s, z| OutlineEdge { name: name.into(), kind, start: Point::new(s, z), sweep_rad: 0.0 };
@@ -30,7 +32,20 @@ pub(super) fn study() -> Study {
                 corner("rim", EdgeKind::Mouth, 2.0, 1.0),
                 corner("", EdgeKind::Wall, 0.0, 1.0),
             ],
-            plates: vec![],
+            plates: vec![Plate {
+                name: "sill".into(),
+                points: vec![Point::new(0.5, 0.0), Point::new(0.5, 0.7)],
+                thickness_m: 0.003,
+                corrosion_m: 0.0005,
+                material: "steel".into(),
+                panel: Panel::default(),
+                openings: vec![Opening {
+                    name: "drain gap".into(),
+                    from_m: 0.0,
+                    to_m: 0.05,
+                    shape: OpeningShape::Share(0.4),
+                }],
+            }],
             obstacles: vec![Obstacle {
                 name: "duct".into(),
                 vertices: duct.map(|(s, z)| Vertex { start: Point::new(s, z), sweep_rad: 0.0 }).into(),
@@ -47,14 +62,15 @@ pub(super) fn study() -> Study {
         compartments: vec![],
         sump: None,
         discharge_coefficient: crate::study::DISCHARGE_COEFFICIENT,
+        materials: vec![],
         cases: vec![
             LoadCase {
                 name: "Transfer stop".into(),
                 accel: Accel::Components { a_s: -1.5, a_z: 0.0, unit: Default::default() },
                 attitude: Attitude::GradePercent(1.0),
                 onset_s: Some(0.4),
-                duration_s: None,
-                release: false,
+                duration_s: Some(3.0),
+                release: true,
                 source: "drive data sheet".into(),
                 note: "with full load".into(),
             },
@@ -90,24 +106,32 @@ pub(super) fn study() -> Study {
     }
 }
 
-/// Results as they might be for [`study`]; the numbers are invented.
-pub(super) fn results() -> Results {
-    let chord = Chord { left: Point::new(0.0, 0.65), right: Point::new(2.0, 0.95) };
-    let settled = Settled {
+/// A pool between two ends of its surface, in one cell.
+fn pool(volume_m3: f64, level_m: f64, left: Point, right: Point, cell_idx: usize) -> Pool {
+    Pool {
+        volume_m3,
+        level_m,
+        offset_m: Some(level_m - 0.14),
+        surface: vec![Chord { left, right }],
+        deepest: Point::new(right.x, 0.0),
+        centroid: Point::new(0.5 * (left.x + right.x), 0.41),
+        compartment: 0,
+        cell_idxs: vec![cell_idx],
+        weight_pa_per_m: 9900.0,
+        wetted: vec![],
+    }
+}
+
+fn settled() -> Settled {
+    Settled {
         volume_m3: 0.78,
         spilled_m3: 0.01,
+        spills: vec![MouthSpill { mouth_idx: 0, volume_m3: 0.01 }],
         mass_kg: 778.6,
-        pools: vec![Pool {
-            volume_m3: 0.78,
-            level_m: 0.79,
-            offset_m: Some(0.65),
-            surface: vec![chord],
-            deepest: Point::new(2.0, 0.0),
-            centroid: Point::new(1.04, 0.41),
-            compartment: 0,
-            weight_pa_per_m: 9900.0,
-            wetted: vec![],
-        }],
+        pools: vec![
+            pool(0.62, 0.79, Point::new(0.5, 0.72), Point::new(2.0, 0.95), 1),
+            pool(0.16, 0.67, Point::new(0.0, 0.53), Point::new(0.5, 0.61), 0),
+        ],
         centroid: Point::new(1.04, 0.41),
         highest_wetted: Point::new(2.0, 0.95),
         peak_pa: 9300.0,
@@ -136,6 +160,16 @@ pub(super) fn results() -> Results {
                 peak: None,
             },
         ],
+        plates: vec![PlateLoad {
+            name: "sill".into(),
+            force_n: Vec2::new(-410.0, 0.0),
+            moment_n_m: 120.0,
+            acts_at: Some(Point::new(0.5, 0.293)),
+            net_n: -410.0,
+            peak: Some((-1190.0, Point::new(0.5, 0.05))),
+            stretches: vec![Stretch { from_m: 0.05, to_m: 0.7, from_pa: -1190.0, to_pa: -150.0 }],
+            highest: Some((7200.0, Point::new(0.5, 0.05))),
+        }],
         sides_force_n: Vec2::zeros(),
         sides_moment_n_m: 0.0,
         total_force_n: Vec2::new(1170.0, -7636.0),
@@ -145,8 +179,29 @@ pub(super) fn results() -> Results {
             PointPressure { name: "float".into(), at: Point::new(1.9, 0.98), gage_pa: 0.0, wet: false },
         ],
         roof: Some(RoofContact { wetted_length_m: 0.1, peak_pa: 120.0, at: Point::new(2.0, 1.0), edge_idx: 3 }),
-        plates: vec![],
-        cells_m3: vec![0.78],
+        cells_m3: vec![0.16, 0.62],
+        gas: vec![],
+    }
+}
+
+/// The same with the sill's opening shut.
+fn sealed() -> Settled {
+    let mut sealed = settled();
+    sealed.cells_m3 = vec![0.19, 0.59];
+    (sealed.pools[0].volume_m3, sealed.pools[1].volume_m3) = (0.59, 0.19);
+    sealed.plates[0].net_n = 230.0;
+    sealed
+}
+
+/// Results as they might be for [`study`]; the numbers are invented.
+pub(super) fn results() -> Results {
+    let cell = |name: &str, s, area_m2, still_m3| Cell {
+        name: name.into(),
+        inside: Point::new(s, 0.5),
+        compartment: 0,
+        area_m2,
+        capacity_m3: 0.5 * area_m2,
+        still_m3,
     };
     Results {
         capacity_m3: 0.99,
@@ -160,14 +215,9 @@ pub(super) fn results() -> Results {
             surface: vec![Chord { left: Point::new(0.0, 0.8), right: Point::new(2.0, 0.8) }],
             highest_share: Some(0.786),
         },
-        cells: vec![Cell {
-            name: "cell 1".into(),
-            inside: Point::new(1.0, 0.5),
-            compartment: 0,
-            area_m2: 2.0,
-            capacity_m3: 0.99,
-            still_m3: 0.79,
-        }],
+        cells: vec![cell("cell 1", 0.25, 0.5, 0.2), cell("cell 2", 1.4, 1.48, 0.59)],
+        compartments: vec![Compartment { name: "compartment 1".into(), own_idx: None }],
+        layout: Outcome::default(),
         cases: vec![
             CaseResult {
                 name: "Transfer stop".into(),
@@ -179,18 +229,27 @@ pub(super) fn results() -> Results {
                     slope: Some(0.153),
                 },
                 accel: Vec2::new(-1.5, 0.0),
-                settled: Ok(settled),
-                sealed: None,
-                released: None,
+                settled: Ok(settled()),
+                sealed: Some(Ok(sealed())),
+                released: Some(Ok(Settled { cells_m3: vec![0.17, 0.61], ..settled() })),
+                trapped: vec![Trapped { cell_idx: 1, volume_m3: 0.02 }],
                 routes: vec![],
-                pours: vec![],
+                pours: vec![Pour {
+                    wall: Wall::Plate { plate_idx: 0, span_m: [0.05, 0.7], is_left: true },
+                    at: Point::new(0.5, 0.7),
+                    to_right: true,
+                    volume_m3: 0.03,
+                }],
                 verdicts: vec![
                     verdict("Contained", State::Fails, Some(f64::INFINITY), Quantity::Volume, 0.01, 0.0),
                     Verdict {
                         unconfirmed_record: Some(0),
                         ..verdict("Wall pressure", State::Fails, Some(1.033), Quantity::GagePressure, 9300.0, 9000.0)
                     },
-                    verdict("Freeboard", State::Holds, Some(0.75), Quantity::Length, 0.15, 0.2),
+                    Verdict {
+                        bound: Some(Bound::Sealed),
+                        ..verdict("Freeboard", State::Holds, Some(0.75), Quantity::Length, 0.15, 0.2)
+                    },
                 ],
                 absent: vec![Absent {
                     criterion: "Roof contact",
@@ -209,8 +268,9 @@ pub(super) fn results() -> Results {
                 },
                 accel: Vec2::new(0.0, -9.80665),
                 settled: Err("free fall: effective gravity is zero".into()),
-                sealed: None,
+                sealed: Some(Err("free fall with openings shut, too".into())),
                 released: None,
+                trapped: vec![],
                 routes: vec![],
                 pours: vec![],
                 verdicts: vec![Verdict {

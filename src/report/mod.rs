@@ -3,6 +3,7 @@
 //! One model, [`Report`], over a study and its results. It computes nothing, every number comes from
 //! [`Results`]; it makes strings and knows neither files nor terminals nor screens.
 
+mod grid;
 pub mod json;
 mod lines;
 pub mod sweep;
@@ -13,13 +14,25 @@ mod fixture;
 
 use serde::Serialize;
 
-use crate::analysis::{CaseResult, Results, State, Verdict};
+use crate::analysis::{CaseResult, Compartment, Results, State, Verdict};
 use crate::cases::LoadCase;
+use crate::liquid::Liquid;
 use crate::problem::Place;
-use crate::study::Study;
+use crate::study::{Limit, Record, Study};
+use crate::units::Measure;
 
 /// What every output says at its end.
 pub const CAUTION: &str = "A design aid, settled states only: local codes and a licensed engineer decide.";
+
+/// The value of a requirement record, and whether it is a ceiling or a floor; none where the record is a rule without
+/// a number.
+fn value_of(record: &Record) -> Option<(&'static str, Measure)> {
+    let sense = if record.limit.is_ceiling() { "at most" } else { "at least" };
+    match record.limit {
+        Limit::DrainPath | Limit::VentPath => None,
+        limit => Some((sense, limit.measure())),
+    }
+}
 
 /// A judged study, and which of its load cases are shown.
 #[derive(Clone, Debug)]
@@ -89,7 +102,33 @@ impl<'a> Report<'a> {
                     (name, Some(edge_idx)) => format!("{name}, edge {}", edge_idx + 1),
                 }
             }
+            Place::Plate { plate_idx, opening_idx: None } => {
+                section.plates.get(*plate_idx).map_or_else(|| place.to_string(), |plate| plate.label(*plate_idx))
+            }
             _ => place.to_string(),
         }
+    }
+
+    /// The name of a cell.
+    fn cell_name(&self, idx: usize) -> String {
+        self.results.cells.get(idx).map_or_else(|| format!("cell {}", idx + 1), |cell| cell.name.clone())
+    }
+
+    /// The name of a compartment.
+    fn compartment_name(&self, idx: usize) -> String {
+        let found = self.results.compartments.get(idx);
+        found.map_or_else(|| format!("compartment {}", idx + 1), |c| c.name.clone())
+    }
+
+    /// The name of a mouth.
+    fn mouth_name(&self, idx: usize) -> String {
+        let mouths = self.study.section.mouths();
+        mouths.get(idx).map_or_else(|| format!("mouth {}", idx + 1), |mouth| mouth.name.clone())
+    }
+
+    /// The liquid of a compartment.
+    fn liquid_of(&self, compartment: &Compartment) -> &'a Liquid {
+        let own = compartment.own_idx.and_then(|i| self.study.compartments.get(i)?.liquid.as_ref());
+        own.unwrap_or(&self.study.liquid)
     }
 }

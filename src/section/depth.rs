@@ -10,7 +10,7 @@ impl Depth for WidthLaw {
         WidthLaw::constant(self)
     }
 
-    /// - integral of Omega ds: the volume between the edge and the law's lowest height, m3. In closed form on straight
+    /// Minus the integral of Omega ds: the volume between the edge and the law's lowest height, m3. In closed form on straight
     /// edges, by quadrature on arcs.
     fn under(&self, e: &Edge) -> f64 {
         if !e.is_arc() {

@@ -34,6 +34,14 @@ pub struct Placed {
     pub ends: [Attached; 2],
 }
 
+impl Placed {
+    /// Whether it stands or hangs rather than lies: from end to end it goes at least as far along z as along s.
+    pub fn is_upright(&self) -> bool {
+        let across = self.points[self.points.len() - 1] - self.points[0];
+        across.y.abs() >= across.x.abs()
+    }
+}
+
 /// An end of a plate within this share of the section's diagonal of a wall stands on it: what is lost when coordinates
 /// are typed to a tenth of a millimetre, and less than any gap that is left on purpose.
 pub const STANDS_WITHIN: f64 = 1e-4;
@@ -300,7 +308,7 @@ impl<'a> Layout<'a> {
         for i in 0..n_plates {
             let points: Vec<Point> = slits[i].nodes.iter().map(|n| n.1).collect();
             let (a, b) = (points[0], points[points.len() - 1]);
-            if (b.y - a.y).abs() < (b.x - a.x).abs() {
+            if !placed[i].is_upright() {
                 continue;
             }
             let tips = [(a, a - points[1], 0), (b, b - points[points.len() - 2], 1)];

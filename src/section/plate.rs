@@ -4,6 +4,8 @@ use std::f64::consts::PI;
 
 use crate::geom::{Edge, Point};
 
+use super::WidthLaw;
+
 /// A thin internal wall: an open chain of straight segments, in the kernel a slit of no width.
 ///
 /// Each end stands on the outline, on an obstacle, on another plate, or is free. Which it is follows from where it
@@ -99,6 +101,10 @@ impl Opening {
     }
 }
 
+/// A stretch of plate that rises by less than this share of its length lies level: its mean width is that in its middle,
+/// to the square of this.
+const LEVEL_WITHIN: f64 = 1e-6;
+
 impl Plate {
     /// The name shown: its own, or `plate 2`.
     pub fn label(&self, idx: usize) -> String {
@@ -128,10 +134,82 @@ impl Plate {
         self.points.last().copied().unwrap_or_else(Point::origin)
     }
 
+    /// Area of a stretch along it, m2.
+    fn area_m2(&self, width: &WidthLaw, from_m: f64, to_m: f64) -> f64 {
+        let mut start_m = 0.0;
+        let mut area_m2 = 0.0;
+        for e in self.segments() {
+            let length = e.length();
+            let (from, to) = ((from_m - start_m).max(0.0), (to_m - start_m).min(length));
+            start_m += length;
+            if from >= to {
+                continue;
+            }
+            let (low, high) = (e.point_at(from / length).y, e.point_at(to / length).y);
+            // By the integral of the width law, unless the stretch lies level.
+            let mean_m = if (high - low).abs() > LEVEL_WITHIN * (to - from) {
+                (width.omega(high) - width.omega(low)) / (high - low)
+            } else {
+                width.width(0.5 * (low + high))
+            };
+            area_m2 += mean_m * (to - from);
+        }
+        area_m2
+    }
+
+    /// The share of its area that is solid, openings taken off.
+    pub fn solid_share(&self, width: &WidthLaw) -> f64 {
+        let open = |o: &Opening| {
+            let area_m2 = self.area_m2(width, o.from_m, o.to_m);
+            area_m2 * o.open_share(area_m2 / o.length_m())
+        };
+        1.0 - self.openings.iter().map(open).sum::<f64>() / self.area_m2(width, 0.0, self.length_m())
+    }
+
     /// The openings from the first point on, with their indices.
     pub fn openings_in_order(&self) -> Vec<(usize, &Opening)> {
         let mut openings: Vec<(usize, &Opening)> = self.openings.iter().enumerate().collect();
         openings.sort_by(|a, b| a.1.from_m.total_cmp(&b.1.from_m));
         openings
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// A plate from (1, 0.2) up to (1, 1.2) and on to (1.5, 1.2), with openings.
+    fn bent(openings: &[(f64, f64, OpeningShape)]) -> Plate {
+        let opening =
+            |&(from_m, to_m, shape): &(f64, f64, OpeningShape)| Opening { name: String::new(), from_m, to_m, shape };
+        Plate {
+            name: String::new(),
+            points: vec![Point::new(1.0, 0.2), Point::new(1.0, 1.2), Point::new(1.5, 1.2)],
+            thickness_m: 0.005,
+            corrosion_m: 0.0,
+            material: String::new(),
+            panel: Panel::default(),
+            openings: openings.iter().map(opening).collect(),
+        }
+    }
+
+    #[test]
+    fn the_solid_share_takes_openings_off_by_their_area() {
+        // Worked out by hand. Constant width 2 m: area 3 m2. A width that grows from 1 m at z = 0 to 3 m at z = 2, 1 + z:
+        // upright part 1.7 m2, level part 0.5 x 2.2 = 1.1 m2; a slot from 0.6 m up, 0.8 to 1.2 m in z, 0.4 x 2.0 m2, and
+        // round the corner 0.1 m on, 0.1 x 2.2 m2. One hole 0.5 m wide has pi / 16 m2 whatever the width.
+        let constant = WidthLaw::Constant { width_m: 2.0 };
+        let growing = WidthLaw::Table(vec![(0.0, 1.0), (2.0, 3.0)]);
+        let (half, hole) = (OpeningShape::Share(0.5), OpeningShape::Holes { n: 1 });
+        for (width, openings, want) in [
+            (&constant, vec![], 1.0),
+            (&constant, vec![(0.0, 0.3, half)], 1.0 - 0.3 / 3.0),
+            (&constant, vec![(0.0, 0.3, half), (0.4, 0.9, hole)], 1.0 - (0.3 + PI / 16.0) / 3.0),
+            (&growing, vec![(0.6, 1.1, half)], 1.0 - 0.5 * (0.8 + 0.22) / 2.8),
+            (&growing, vec![(0.2, 0.7, hole)], 1.0 - PI / 16.0 / 2.8),
+        ] {
+            let got = bent(&openings).solid_share(width);
+            assert!((got - want).abs() < 1e-12, "{openings:?} in {width:?}: {got}, want {want}");
+        }
     }
 }

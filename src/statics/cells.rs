@@ -7,12 +7,21 @@ use super::pools::{Body, Look};
 /// Volume of the bodies' liquid in each cell of the region, m3. `look` is along the bodies' direction, under any bound:
 /// cells are cut finer.
 pub fn cell_volumes(region: &Region, width: &WidthLaw, look: &Look, bodies: &[Body]) -> Vec<f64> {
+    sums(region, &cell_volumes_by_body(region, width, look, bodies))
+}
+
+/// What each cell holds of all bodies, m3.
+pub(super) fn sums(region: &Region, by_body: &[Vec<f64>]) -> Vec<f64> {
+    (0..region.cells().n_parts()).map(|cell| by_body.iter().map(|body| body[cell]).sum()).collect()
+}
+
+/// The same for each body by itself.
+pub(super) fn cell_volumes_by_body(region: &Region, width: &WidthLaw, look: &Look, bodies: &[Body]) -> Vec<Vec<f64>> {
     let cells = region.cells();
-    let mut volumes = vec![0.0; cells.n_parts()];
     if cells.n_parts() == 1 {
-        volumes[0] = bodies.iter().map(|b| b.volume_m3).sum();
-        return volumes;
+        return bodies.iter().map(|b| vec![b.volume_m3]).collect();
     }
+    let mut volumes = vec![vec![0.0; cells.n_parts()]; bodies.len()];
     let fine = Look::new(cells, width, look.up);
     let levels: Vec<f64> = bodies.iter().map(|b| look.level_of(b)).collect();
     let owners = look.owners(bodies);
@@ -20,7 +29,7 @@ pub fn cell_volumes(region: &Region, width: &WidthLaw, look: &Look, bodies: &[Bo
         let part = cells.part_of(strip.edge_idxs[0]);
         let Some(owner) = look.basins.basin_at(strip.low).and_then(|basin| owners[basin]) else { continue };
         if strip.bottom < levels[owner] {
-            volumes[part] += fine.basins.strip_volume_below(&strip, levels[owner]);
+            volumes[owner][part] += fine.basins.strip_volume_below(&strip, levels[owner]);
         }
     }
     volumes

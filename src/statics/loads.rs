@@ -109,6 +109,9 @@ pub(super) fn edge_loads(
     loads
 }
 
+/// Net loads and pressures below this share of those on one side are what rounding leaves of equal ones.
+const ROUNDING: f64 = 1e-11;
+
 /// Net loads across every plate.
 pub(super) fn plate_loads(
     section: &Section,
@@ -122,24 +125,32 @@ pub(super) fn plate_loads(
         .map(|plate_idx| {
             let is_own = |w: &&WetPart| matches!(w.wall, Wall::Plate { plate_idx: p, .. } if p == plate_idx);
             let parts: Vec<&WetPart> = wet.iter().filter(is_own).collect();
-            let (mut force, mut moment, mut net) = (Vec2::zeros(), 0.0, 0.0);
+            let (mut force, mut moment, mut net, mut size) = (Vec2::zeros(), 0.0, 0.0, 0.0);
             let mut highest_on = None;
             for part in &parts {
                 let (f, m) = resultant(&part.edge, &section.width, press[part.body_idx], up, about);
                 force += f;
                 moment += m;
+                size += f.norm();
                 // The face's right-hand normal is the plate's own on its left side, the opposite on the right.
                 let tangent = part.edge.tangent_at(0.5);
                 let outward = f.dot(&Vec2::new(tangent.y, -tangent.x));
                 net += if is_left(part) { outward } else { -outward };
                 raise(&mut highest_on, highest(&part.edge, press[part.body_idx], up));
             }
+            if force.norm() <= ROUNDING * size {
+                force = Vec2::zeros();
+            }
+            if net.abs() <= ROUNDING * size {
+                net = 0.0;
+            }
             let stretches = stretches(&parts, press, up);
             let plate = &section.plates[plate_idx];
             let mut peak: Option<(f64, Point)> = None;
             for s in &stretches {
                 for (along, pa) in [(s.from_m, s.from_pa), (s.to_m, s.to_pa)] {
-                    if pa != 0.0 && peak.is_none_or(|p| pa.abs() > p.0.abs()) {
+                    // The first of equals.
+                    if pa != 0.0 && peak.is_none_or(|p| pa.abs() > p.0.abs() * (1.0 + ROUNDING)) {
                         peak = Some((pa, plate.point_at(along)));
                     }
                 }
@@ -168,8 +179,11 @@ fn is_left(part: &WetPart) -> bool {
 fn stretches(parts: &[&WetPart], press: &[Press], up: Vec2) -> Vec<Stretch> {
     let mut stops: Vec<f64> = parts.iter().flat_map(|p| p.along_m).collect();
     stops.sort_unstable_by(f64::total_cmp);
-    stops.dedup();
+    // Both sides end at the same places, but for rounding: no stretch lies between.
+    let slack = ROUNDING * stops.last().zip(stops.first()).map_or(0.0, |(last, first)| last - first);
+    stops.dedup_by(|b, a| *b - *a <= slack);
     let mut out: Vec<Stretch> = Vec::new();
+    let mut size = 0.0_f64;
     for w in stops.windows(2) {
         let middle = 0.5 * (w[0] + w[1]);
         let mut pa = [0.0; 2];
@@ -185,10 +199,16 @@ fn stretches(parts: &[&WetPart], press: &[Press], up: Vec2) -> Vec<Stretch> {
                 let p = part.edge.point_at((along - a) / (b - a));
                 let liquid = pressure_at(p, level_m, up, weight_pa_per_m);
                 pa[i] += if is_left(part) { liquid } else { -liquid };
+                size = size.max(liquid);
             }
         }
         if is_wet {
             out.push(Stretch { from_m: w[0], to_m: w[1], from_pa: pa[0], to_pa: pa[1] });
+        }
+    }
+    for pa in out.iter_mut().flat_map(|s| [&mut s.from_pa, &mut s.to_pa]) {
+        if pa.abs() <= ROUNDING * size {
+            *pa = 0.0;
         }
     }
     out

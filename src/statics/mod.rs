@@ -4,6 +4,7 @@
 
 mod bound;
 mod cells;
+mod gas;
 mod gravity;
 mod loads;
 mod pools;
@@ -17,10 +18,11 @@ mod wetted;
 
 pub use bound::Bound;
 pub use cells::cell_volumes;
+pub use gas::{GasPocket, gas_pockets};
 pub use gravity::{EffectiveGravity, effective_gravity};
 pub use loads::{EdgeLoad, PlateLoad, Stretch, pressure_at};
 pub use pools::{Body, Brim, Followed, Holder, LONGEST_STEP, Look, Pour, Spilled, Start, Stop, Trace, Turn, trace};
-pub use pour_over::{Lip, PourOver, highest_fill, pour_over};
+pub use pour_over::{Lip, MouthSpill, PourOver, highest_fill, pour_over, spills};
 pub use ramp::Ramp;
 pub use rim::Carried;
 pub use rise::{CarriedOn, Rims, Route};

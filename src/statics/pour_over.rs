@@ -3,7 +3,7 @@
 use crate::geom::Point;
 use crate::section::{Mouth, Wall};
 
-use super::pools::{Brim, Holder, LONGEST_STEP, Pour, Start, Stop, Trace, trace};
+use super::pools::{Brim, Holder, LONGEST_STEP, Pour, Spilled, Start, Stop, Trace, trace};
 use super::ramp::Ramp;
 
 /// Where liquid leaves.
@@ -13,6 +13,15 @@ pub struct Lip {
     pub mouth_idx: usize,
     /// Its brim there.
     pub brim: Point,
+}
+
+/// Liquid that left by one mouth.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct MouthSpill {
+    /// Which mouth.
+    pub mouth_idx: usize,
+    /// How much, m3.
+    pub volume_m3: f64,
 }
 
 /// The way to a load case under one bound.
@@ -48,6 +57,26 @@ pub fn pour_over(holder: &Holder, mouths: &[Mouth], ramps: &[Ramp]) -> Vec<PourO
     ramps.iter().map(|ramp| PourOver::new(holder, mouths, ramp, &at, &trace)).collect()
 }
 
+/// What left by each mouth, in the order in which they first spilled.
+pub fn spills(holder: &Holder, mouths: &[Mouth], spilled: &[Spilled]) -> Vec<MouthSpill> {
+    let mut spills: Vec<MouthSpill> = Vec::new();
+    for s in spilled {
+        let Some(mouth_idx) = mouth_of(holder, mouths, s.brim) else { continue };
+        match spills.iter_mut().find(|m| m.mouth_idx == mouth_idx) {
+            Some(m) => m.volume_m3 += s.volume_m3,
+            None => spills.push(MouthSpill { mouth_idx, volume_m3: s.volume_m3 }),
+        }
+    }
+    spills
+}
+
+fn mouth_of(holder: &Holder, mouths: &[Mouth], brim: Brim) -> Option<usize> {
+    match holder.wall(brim.face_idx) {
+        Wall::Outline { edge_idx, .. } => mouths.iter().position(|m| m.edge_idxs.contains(&edge_idx)),
+        _ => None,
+    }
+}
+
 impl PourOver {
     fn new(holder: &Holder, mouths: &[Mouth], ramp: &Ramp, at: &[f64], trace: &Trace) -> PourOver {
         let goal = at.iter().position(|&t| t == ramp.to_case_rad());
@@ -56,14 +85,7 @@ impl PourOver {
 
     /// Along `ramp`, whose end is `stop`; `trace` knows what happens first, also beyond it.
     pub fn to_stop(holder: &Holder, mouths: &[Mouth], ramp: &Ramp, stop: Option<Stop>, trace: &Trace) -> PourOver {
-        let lip = |brim: Brim| {
-            let edge_idx = match holder.wall(brim.face_idx) {
-                Wall::Outline { edge_idx, .. } => edge_idx,
-                _ => usize::MAX,
-            };
-            let mouth_idx = mouths.iter().position(|m| m.edge_idxs.contains(&edge_idx))?;
-            Some(Lip { mouth_idx, brim: brim.at })
-        };
+        let lip = |brim: Brim| Some(Lip { mouth_idx: mouth_of(holder, mouths, brim)?, brim: brim.at });
         let is_reached = |turned: f64| turned < ramp.to_end_rad() || turned <= ramp.to_case_rad();
         let first = trace.first_spill.filter(|&(turned, _)| is_reached(turned));
         let first = first.and_then(|(turned, s)| Some((ramp.share(turned), lip(s.brim)?)));

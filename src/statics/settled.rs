@@ -4,9 +4,11 @@ use crate::geom::{Edge, Point, Vec2, cross};
 use crate::problem::Place;
 use crate::section::{Face, Region, Section, Wall};
 
-use super::cells::cell_volumes;
+use super::cells::{cell_volumes_by_body, sums};
+use super::gas::{GasPocket, gas_pockets};
 use super::loads::{EdgeLoad, PlateLoad, Press, centroid, edge_loads, plate_loads, pressure_at};
 use super::pools::{Body, Look};
+use super::pour_over::MouthSpill;
 use super::tilted::Chord;
 use super::wetted::{WetPart, wetted};
 
@@ -53,6 +55,8 @@ pub struct Pool {
     pub centroid: Point,
     /// The compartment that it lies in.
     pub compartment: usize,
+    /// The cells that it stands in; empty where they were not asked for.
+    pub cell_idxs: Vec<usize>,
     /// rho |G| of its liquid, Pa/m.
     pub weight_pa_per_m: f64,
     /// The parts of walls and plates that it wets, the liquid on the left of each.
@@ -66,7 +70,9 @@ pub struct Settled {
     pub volume_m3: f64,
     /// Liquid that left on the way, m3.
     pub spilled_m3: f64,
-    /// Its mass, kg.
+    /// The same by mouths, in the order in which they first spilled.
+    pub spills: Vec<MouthSpill>,
+    /// Mass of the liquid left, kg.
     pub mass_kg: f64,
     /// The pools, the largest first.
     pub pools: Vec<Pool>,
@@ -100,6 +106,8 @@ pub struct Settled {
     pub roof: Option<RoofContact>,
     /// Volume of liquid in each cell of the region, m3; empty where it was not asked for.
     pub cells_m3: Vec<f64>,
+    /// Gas that touches no mouth, the largest pocket first.
+    pub gas: Vec<GasPocket>,
 }
 
 impl Settled {
@@ -112,8 +120,8 @@ impl Settled {
 /// What [`settle`] needs beside the section.
 #[derive(Clone, Copy)]
 pub struct Setting<'a> {
-    /// Liquid that left on the way, m3.
-    pub spilled_m3: f64,
+    /// Liquid that left on the way, by mouths.
+    pub spills: &'a [MouthSpill],
     /// |G|, m/s2.
     pub gravity_m_per_s2: f64,
     /// Density of the liquid of each compartment, kg/m3.
@@ -126,7 +134,7 @@ pub struct Setting<'a> {
     pub moment_about: Point,
     /// Named points.
     pub points: &'a [(&'a str, Point)],
-    /// Whether the volume in each cell is asked for.
+    /// Whether cells are asked for.
     pub with_cells: bool,
 }
 
@@ -153,6 +161,11 @@ pub fn settle(section: &Section, region: &Region, look: &Look, bodies: &[Body], 
     let edges = edge_loads(section, region, &wet, &press, up, about);
     let plates = plate_loads(section, region, &wet, &press, up, about);
     let most = bodies.iter().map(|b| b.volume_m3).fold(0.0, f64::max);
+    let in_cells = if setting.with_cells {
+        cell_volumes_by_body(region, width, look, bodies)
+    } else {
+        vec![Vec::new(); bodies.len()]
+    };
     let mut pools = Vec::new();
     let (mut total, mut total_moment, mut mass) = (Vec2::zeros(), 0.0, 0.0);
     let mut moments = Vec2::zeros();
@@ -178,6 +191,7 @@ pub fn settle(section: &Section, region: &Region, look: &Look, bodies: &[Body], 
             deepest,
             centroid,
             compartment: body.compartment,
+            cell_idxs: (0..in_cells[i].len()).filter(|&c| in_cells[i][c] > LEAST_POOL * body.volume_m3).collect(),
             weight_pa_per_m,
             wetted: wet.iter().filter(|w| w.body_idx == i).map(|w| Face { edge: w.edge, wall: w.wall }).collect(),
         });
@@ -198,7 +212,8 @@ pub fn settle(section: &Section, region: &Region, look: &Look, bodies: &[Body], 
     };
     Settled {
         volume_m3: bodies.iter().map(|b| b.volume_m3).sum(),
-        spilled_m3: setting.spilled_m3,
+        spilled_m3: setting.spills.iter().map(|s| s.volume_m3).fold(0.0, |a, b| a + b),
+        spills: setting.spills.to_vec(),
         mass_kg: mass,
         // Nothing: the lowest point, to which the centroid tends.
         centroid: if mass > 0.0 { Point::from(moments / mass) } else { lowest() },
@@ -218,7 +233,8 @@ pub fn settle(section: &Section, region: &Region, look: &Look, bodies: &[Body], 
         total_force_n: total,
         total_moment_n_m: total_moment,
         pools,
-        cells_m3: if setting.with_cells { cell_volumes(region, width, look, bodies) } else { Vec::new() },
+        cells_m3: if setting.with_cells { sums(region, &in_cells) } else { Vec::new() },
+        gas: gas_pockets(section, region, look, bodies),
     }
 }
 

@@ -13,6 +13,7 @@ impl Study {
     pub fn validate(&self) -> Result<ValidStudy, Vec<Problem>> {
         let mut problems = Vec::new();
         self.check_numbers(&mut problems);
+        self.check_materials(&mut problems);
         self.check_cases(&mut problems);
         let region = match section::check(&self.section) {
             Ok(region) => Some(region),
@@ -100,6 +101,41 @@ impl Study {
         }
     }
 
+    /// Materials of its own, and those that the plates name.
+    fn check_materials(&self, problems: &mut Vec<Problem>) {
+        for (i, material) in self.materials.iter().enumerate() {
+            let mut must = |ok: bool, message: String, hint: &str| {
+                if !ok {
+                    problems.push(Problem::fault(Place::Material(i), message, hint));
+                }
+            };
+            let m = material;
+            must(!m.name.is_empty(), "has no name".to_owned(), "name it, so that plates can call it");
+            let is_new = self.materials[..i].iter().all(|other| other.name != m.name);
+            must(is_new, format!("an earlier one is called {:?} too", m.name), "give each material its own name");
+            for (what, value, unit) in [
+                ("yield stress", m.yield_pa, "Pa"),
+                ("modulus", m.modulus_pa, "Pa"),
+                ("density", m.density_kg_per_m3, "kg/m3"),
+            ] {
+                let is_sane = value.is_finite() && value > 0.0;
+                must(is_sane, format!("its {what} is {value} {unit}"), "give a value above zero");
+            }
+            let hint = "give a number from 0 to 0.5; 0.3 is usual for metals";
+            must((0.0..=0.5).contains(&m.poisson), format!("its Poisson's ratio is {}", m.poisson), hint);
+            let hint = "give yield over allowable stress: 1 or more";
+            must(m.factor.is_finite() && m.factor >= 1.0, format!("its factor is {}", m.factor), hint);
+        }
+        for (plate_idx, plate) in self.section.plates.iter().enumerate() {
+            if !plate.material.is_empty() && self.material(&plate.material).is_none() {
+                let message =
+                    format!("its material {:?} is neither in the scenario nor in the table", plate.material);
+                let place = Place::Plate { plate_idx, opening_idx: None };
+                problems.push(Problem::warning(place, message, "choose one of the table, or add it"));
+            }
+        }
+    }
+
     fn check_cases(&self, problems: &mut Vec<Problem>) {
         if self.cases.is_empty() {
             problems.push(Problem::fault(Place::Field("load cases"), "there is no load case", "add one"));
@@ -131,6 +167,10 @@ impl Study {
     fn check_points(&self, region: &Region, problems: &mut Vec<Problem>) {
         let outline = Path::new(self.section.edges());
         let slack = 1e-9 * region.diagonal_m();
+        if self.sump.is_some_and(|p| region.open().part_at(p).is_none()) {
+            let message = "lies outside the tank: drain paths are judged as if there were none";
+            problems.push(Problem::warning(Place::Field("sump"), message, "move it inside, or take it out"));
+        }
         for (i, point) in self.points.iter().enumerate() {
             let p = point.at;
             if !(p.x.is_finite() && p.y.is_finite()) {

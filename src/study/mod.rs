@@ -2,14 +2,17 @@
 
 mod check;
 mod record;
+mod shipped;
 mod valid;
 
 use crate::cases::LoadCase;
 use crate::geom::Point;
 use crate::liquid::Liquid;
+use crate::material::{self, Material};
 use crate::section::Section;
 
 pub use record::{Limit, Record};
+pub use shipped::{Known, Shipped, shipped_records};
 pub use valid::ValidStudy;
 
 /// Discharge coefficient of an opening in a thin plate where the user gives none.
@@ -93,6 +96,8 @@ pub struct Study {
     pub sump: Option<Point>,
     /// Discharge coefficient C_d of openings.
     pub discharge_coefficient: f64,
+    /// Materials of its own, beside those of [`material::table`].
+    pub materials: Vec<Material>,
     /// Load cases, in the order shown.
     pub cases: Vec<LoadCase>,
     /// Points at which pressure is asked for.
@@ -106,8 +111,13 @@ pub struct Study {
 }
 
 impl Study {
+    /// The material of that name: its own, or else the table's.
+    pub fn material(&self, name: &str) -> Option<&Material> {
+        self.materials.iter().find(|m| m.name == name).or_else(|| material::named(name))
+    }
+
     /// Requirement records of one kind: index and value.
-    pub fn records_of(&self, kind: fn(&Limit) -> Option<f64>) -> impl Iterator<Item = (usize, f64)> {
+    pub fn records_of<T>(&self, kind: fn(&Limit) -> Option<T>) -> impl Iterator<Item = (usize, T)> {
         self.records.iter().enumerate().filter_map(move |(i, r)| kind(&r.limit).map(|value| (i, value)))
     }
 

@@ -61,6 +61,14 @@ impl Limit {
         }
     }
 
+    /// Whether it asks for a layout of plates, rather than of a load case.
+    pub fn is_of_layout(self) -> bool {
+        !matches!(
+            self,
+            Limit::WallPressure(_) | Limit::RoofPressure(_) | Limit::FreeboardAllowance(_) | Limit::VapourMargin(_)
+        )
+    }
+
     /// Whether the value is a ceiling rather than a floor.
     pub fn is_ceiling(self) -> bool {
         !matches!(

@@ -239,6 +239,7 @@ pub fn study() -> BoxedStrategy<Study> {
                 compartments,
                 sump,
                 discharge_coefficient,
+                materials: vec![],
                 cases,
                 points,
                 moment_about,

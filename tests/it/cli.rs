@@ -160,33 +160,33 @@ fn without_the_window_opening_it_says_so() {
 }
 
 #[test]
-fn the_sample_in_readme_is_what_is_printed() {
-    let command = "brimwright judge ";
-    let sample = block_of_readme("text", &format!("$ {command}"));
-    let (first, want) = sample.split_once('\n').expect("a command line");
-    let arguments = first.trim_start_matches("$ ").trim_start_matches(command);
-    // Every second part stands between quotation marks.
-    let parts = arguments.split('"').enumerate();
-    let arguments: Vec<&str> =
-        parts.flat_map(|(i, part)| if i % 2 == 1 { vec![part] } else { part.split_whitespace().collect() }).collect();
-    let output = judge(arguments);
-    assert!(stdout(&output) == want, "README shows\n{want}\nprinted is\n{}", stdout(&output));
+fn the_samples_in_readme_are_what_is_printed() {
+    let command = "$ brimwright judge ";
+    let samples = blocks_of_readme("text", command);
+    assert_eq!(samples.len(), 2, "{samples:?}");
+    for sample in samples {
+        let (first, want) = sample.split_once('\n').expect("a command line");
+        // Every second part stands between quotation marks.
+        let parts = first.trim_start_matches(command).split('"').enumerate();
+        let arguments = parts.flat_map(|(i, p)| if i % 2 == 1 { vec![p] } else { p.split_whitespace().collect() });
+        let output = judge(arguments);
+        assert!(stdout(&output) == want, "README shows\n{want}\nprinted is\n{}", stdout(&output));
+    }
 }
 
 #[test]
 fn the_scenario_in_readme_is_judged() {
-    let text = block_of_readme("ron", "(");
+    let [text] = blocks_of_readme("ron", "(")[..] else { panic!("one scenario") };
     let study = scenario::parse(text.as_bytes()).unwrap_or_else(|p| panic!("{p:?} in\n{text}"));
     let study = study.validate().unwrap_or_else(|p| panic!("{p:?} in\n{text}"));
     let results = analysis::run(&study);
     assert!(results.cases.iter().all(|case| case.settled.is_ok()), "{results:#?}");
 }
 
-/// The first block of README.md in a language that starts with `start`.
-fn block_of_readme(language: &str, start: &str) -> String {
+/// The blocks of README.md in a language that start with `start`.
+fn blocks_of_readme(language: &str, start: &str) -> Vec<&'static str> {
     let readme = include_str!("../../README.md");
     let fence = format!("```{language}\n");
-    let block = readme.split(&fence).skip(1).find(|rest| rest.starts_with(start));
-    let block = block.unwrap_or_else(|| panic!("no {language} block starts with {start}"));
-    block.split("```").next().expect("its text").to_owned()
+    let blocks = readme.split(&fence).skip(1).map(|rest| rest.split("```").next().expect("its text"));
+    blocks.filter(|block| block.starts_with(start)).collect()
 }

@@ -3,7 +3,7 @@
 use brimwright::app::{
     Derived, Document, Edit, apply, equally_spaced, plate_across, shifted_along_walls, with_length_kept_openings,
 };
-use brimwright::geom::{Edge, Point};
+use brimwright::geom::{Edge, Point, Vec2};
 use brimwright::section::{EdgeKind, OutlineEdge};
 use brimwright::study::{Fill, Study};
 use proptest::prelude::*;
@@ -349,7 +349,7 @@ proptest! {
         let across = plate_across(section, Point::new(from_s, from_z), Point::new(to_s, to_z));
         prop_assert_eq!((across.points.len(), across.openings.len()), (2, 0));
         for (i, plate) in section.plates.iter().enumerate() {
-            let shifted = shifted_along_walls(section, i, ds_m).expect("the plate is there");
+            let shifted = shifted_along_walls(section, i, Vec2::new(ds_m, 0.0)).expect("the plate is there");
             for after in [&shifted, &spaced[i], &with_length_kept_openings(plate, other.clone())] {
                 prop_assert_eq!(after.openings.len(), plate.openings.len());
                 let length_m = after.length_m();
@@ -359,7 +359,7 @@ proptest! {
                 }
             }
         }
-        prop_assert_eq!(shifted_along_walls(section, n, ds_m), None);
+        prop_assert_eq!(shifted_along_walls(section, n, Vec2::new(ds_m, 0.0)), None);
     }
 
     #[test]
@@ -374,7 +374,7 @@ proptest! {
         study.section.outline[3].sweep_rad = bulge;
         let drawn = plate_across(&study.section, Point::new(from_s, 0.9), Point::new(from_s, 1.1));
         study.section.plates = vec![drawn];
-        let moved = shifted_along_walls(&study.section, 0, to_s - from_s).expect("the plate is there");
+        let moved = shifted_along_walls(&study.section, 0, Vec2::new(to_s - from_s, 0.0)).expect("the plate is there");
         let want = plate_across(&study.section, Point::new(to_s, 0.9), Point::new(to_s, 1.1));
         for (got, want) in moved.points.iter().zip(&want.points) {
             prop_assert!((got - want).norm() < 1e-12, "moved to {moved:?}, drawn there it is {want:?}");

@@ -94,19 +94,27 @@ fn a_textbook_tilt_comes_out_in_the_documented_keys() {
     let folder = Folder::new();
     let (run, status) = json_of(&folder.file("tray.ron", &tray(500.0, &case("slow", 2.0, 1.0))));
     assert_eq!(status, 0, "{run:#}");
-    let settled = &run["cases"][0]["settled"];
+    let case = &run["cases"][0];
     let slope = -2.0 / (9.80665 + 1.0);
-    for (key, want) in [
-        ("slope", slope),
-        ("offset_m", 0.5 - slope),
-        ("volume_m3", 0.5),
-        ("spilled_m3", 0.0),
-        ("peak_gage_pa", 1000.0 * (9.80665 + 1.0) * (0.5 - slope)),
+    for (pointer, want) in [
+        ("/effective_gravity/slope", slope),
+        ("/settled/pools/0/offset_m", 0.5 - slope),
+        ("/settled/volume_m3", 0.5),
+        ("/settled/spilled_m3", 0.0),
+        ("/settled/peak_gage_pa", 1000.0 * (9.80665 + 1.0) * (0.5 - slope)),
     ] {
-        let got = settled[key].as_f64().unwrap_or_else(|| panic!("{key} of {settled:#}"));
-        assert!((got - want).abs() <= 1e-12 * want.abs().max(1.0), "{key}: want {want}, got {got}");
+        let got = case.pointer(pointer).and_then(Value::as_f64).unwrap_or_else(|| panic!("{pointer} of {case:#}"));
+        assert!((got - want).abs() <= 1e-12 * want.abs().max(1.0), "{pointer}: want {want}, got {got}");
     }
     assert_eq!(run["still"]["level_z_m"].as_f64(), Some(0.5));
+}
+
+#[test]
+fn loads_and_volumes_add_up_in_the_shipped_scenarios() {
+    for file in shipped_scenarios() {
+        let (run, _) = json_of(&file);
+        adds_up(&run);
+    }
 }
 
 #[test]
@@ -123,4 +131,34 @@ fn several_files_make_an_array_in_the_order_given() {
     assert_eq!(runs[0]["problems"][0]["line"], 2, "{runs:#}");
     assert!(runs[0]["problems"][0]["hint"].is_string());
     assert_eq!(runs[1]["cases"][0]["name"], "slow");
+}
+
+/// What must add up in the JSON of one file: the loads of edges, plates and side walls to the load on the tank; the
+/// volumes of pools, of cells, and what spilled by each mouth, to the liquid that there was.
+pub fn adds_up(run: &Value) {
+    let list = |value: &Value| value.as_array().unwrap_or_else(|| panic!("no list: {value:#}")).clone();
+    let number = |value: &Value| value.as_f64().unwrap_or_else(|| panic!("no number: {value:#}"));
+    let sum = |rows: &Value, key: &str| list(rows).iter().map(|row| number(&row[key])).sum::<f64>();
+    let near = |what: &str, got: f64, want: f64, size: f64| {
+        let allowed = 1e-9 * size;
+        assert!((got - want).abs() <= allowed, "{}, {what}: {got}, want {want} +- {allowed}", run["title"]);
+    };
+    let capacity = number(&run["capacity_m3"]);
+    near("capacity of the cells", sum(&run["cells"], "capacity_m3"), capacity, capacity);
+    near("still in the cells", sum(&run["cells"], "still_m3"), number(&run["still"]["volume_m3"]), capacity);
+    for case in list(&run["cases"]) {
+        for state in ["settled", "sealed", "released"].map(|name| &case[name]).into_iter().filter(|s| !s.is_null()) {
+            let (volume, spilled) = (number(&state["volume_m3"]), number(&state["spilled_m3"]));
+            near("liquid", volume + spilled, number(&run["still"]["volume_m3"]), capacity);
+            near("pools", sum(&state["pools"], "volume_m3"), volume, capacity);
+            near("spills", sum(&state["spills"], "volume_m3"), spilled, capacity);
+            near("cells", list(&state["cells_m3"]).iter().map(number).sum(), volume, capacity);
+            for key in ["force_s_n", "force_z_n", "moment_n_m"] {
+                let parts = ["edges", "plates"].map(|rows| sum(&state[rows], key));
+                let want = number(&state["total"][key]);
+                let size = list(&state["edges"]).iter().map(|row| number(&row[key]).abs()).fold(want.abs(), f64::max);
+                near(key, parts[0] + parts[1] + number(&state["sides"][key]), want, size);
+            }
+        }
+    }
 }

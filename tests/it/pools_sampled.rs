@@ -123,7 +123,7 @@ fn the_way_does_not_hang_on_its_step() {
 
 fn as_grid_pool(followed: &Followed, look: &Look, body: &Body) -> GridPool {
     let setting = Setting {
-        spilled_m3: 0.0,
+        spills: &[],
         gravity_m_per_s2: 1.0,
         density_kg_per_m3: &|_| 1.0,
         gas_pa: 0.0,

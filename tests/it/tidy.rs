@@ -24,13 +24,16 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("statics", &["problem", "num", "geom", "section"]),
     ("study", &["units", "problem", "geom", "section", "liquid", "cases", "statics"]),
     ("criteria", &["units", "sources", "problem", "progress", "num", "geom", "cases", "statics", "study"]),
-    ("analysis", &["units", "problem", "progress", "num", "geom", "cases", "statics", "study", "criteria"]),
+    ("analysis", &["units", "problem", "progress", "num", "geom", "section", "cases", "statics", "study", "criteria"]),
     ("scenario", &["units", "problem", "geom", "section", "liquid", "cases", "study"]),
     ("report", &["units", "sources", "problem", "geom", "section", "liquid", "cases", "study", "analysis"]),
     ("app", &["problem", "progress", "geom", "section", "liquid", "cases", "study", "analysis", "scenario"]),
     (
         "gui",
-        &["units", "problem", "geom", "section", "liquid", "cases", "study", "analysis", "scenario", "report", "app"],
+        &[
+            "units", "problem", "geom", "section", "liquid", "material", "cases", "study", "analysis", "scenario",
+            "report", "app",
+        ],
     ),
     ("cli", &["units", "problem", "progress", "study", "analysis", "report", "app", "gui"]),
 ];

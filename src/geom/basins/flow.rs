@@ -35,6 +35,8 @@ pub struct StripView {
     pub low: Point,
     /// Level of its bottom.
     pub bottom: f64,
+    /// Level of its top.
+    pub top: f64,
     slab_idx: usize,
     strip_idx: usize,
 }
@@ -250,6 +252,7 @@ impl Basins<'_> {
                 StripView {
                     low: self.sublevel.point(0.5 * (l.u_at(low) + r.u_at(low)), low),
                     bottom: slab.bottom + self.sublevel.origin_level(),
+                    top: slab.top + self.sublevel.origin_level(),
                     slab_idx: k,
                     strip_idx: i,
                     basin: self.basin_of(k, i),
@@ -300,7 +303,7 @@ impl Basins<'_> {
     }
 
     /// Whether a level slit shuts all of a span of u at `v`.
-    fn is_shut(&self, v: f64, a: f64, b: f64) -> bool {
+    pub(super) fn is_shut(&self, v: f64, a: f64, b: f64) -> bool {
         let flats = self.sublevel.flats();
         let first = flats.partition_point(|f| f.v < v);
         let here = flats[first..].iter().take_while(|f| f.v == v && f.v <= v).filter(|f| f.is_floor);

@@ -10,6 +10,7 @@
 mod ask;
 mod build;
 mod flow;
+mod touch;
 
 use super::{Edge, Point, Sublevel};
 

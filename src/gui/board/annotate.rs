@@ -10,12 +10,12 @@ use crate::analysis::State;
 use crate::geom::Point;
 use crate::gui::{Look, font, marks};
 use crate::problem::Severity;
-use crate::units::{Measure, Quantity, fixed};
+use crate::units::{Measure, Quantity, number};
 
 use super::dims::paint_freeboard;
 use super::drag::Feedback;
 use super::labels::Labels;
-use super::legend::{decimals_of, paint_legend};
+use super::legend::paint_legend;
 use super::lines;
 use super::scene::Scene;
 
@@ -23,28 +23,31 @@ use super::scene::Scene;
 pub fn annotate(painter: &Painter, scene: &Scene, look: &Look) {
     let mut labels = off_walls(scene);
     scene.dial.areas(&scene.hanging).into_iter().for_each(|area| labels.keep_off(area));
-    for piece in &scene.model.surface {
+    for piece in scene.model.surface() {
         labels.keep_off_line(&[scene.at(piece.left), scene.at(piece.right)]);
     }
-    let marks = scene.model.points.iter().map(|p| p.at).chain(scene.model.centroid);
+    let named = scene.model.points.iter().chain(&scene.model.compartments).map(|p| p.at);
+    let marks = named.chain(scene.model.sump).chain(scene.model.centroid);
     for at in marks.chain(scene.judged.map(|_| scene.model.moment_about)) {
         labels.keep_off(Rect::from_center_size(scene.at(at), Vec2::splat(11.0)));
     }
-    let pen = Pen { painter, scene, look };
-    pen.paint_reason(&mut labels);
-    pen.paint_faults(&mut labels);
-    let still = pen.paint_still_level();
+    let writer = Writer { painter, scene, look };
+    writer.paint_reason(&mut labels);
+    writer.paint_faults(&mut labels);
+    let still = writer.paint_still_level();
     if let Some(freeboard) = &scene.model.freeboard {
         paint_freeboard(painter, scene, freeboard, &mut labels, look);
     }
-    pen.paint_brims(&mut labels);
+    writer.paint_brims(&mut labels);
     if let Some(still) = still {
-        pen.paint_still_label(&mut labels, still);
+        writer.paint_still_label(&mut labels, still);
     }
-    pen.paint_governs(&mut labels);
-    pen.paint_loads(&mut labels);
-    pen.paint_isobar_labels(&mut labels);
-    pen.paint_points(&mut labels);
+    writer.paint_governs(&mut labels);
+    writer.paint_prisms(&mut labels);
+    writer.paint_loads(&mut labels);
+    writer.paint_sills(&mut labels);
+    writer.paint_isobar_labels(&mut labels);
+    writer.paint_places(&mut labels);
     paint_legend(painter, scene, look);
 }
 
@@ -52,6 +55,11 @@ pub fn annotate(painter: &Painter, scene: &Scene, look: &Look) {
 pub fn paint_feedback(painter: &Painter, scene: &Scene, pos: Pos2, feedback: &Feedback, look: &Look) {
     let hint = Stroke::new(1.2, look.accent);
     let at = feedback.at.map_or(pos, |p| scene.at(p));
+    if let Some(line) = feedback.line {
+        let ends = line.map(|p| scene.at(p));
+        lines::segment(painter, ends, Stroke::new(6.25, look.board));
+        lines::segment(painter, ends, Stroke::new(2.25, look.accent));
+    }
     if feedback.at.is_some() {
         for arm in [vec2(58.0, 0.0), vec2(0.0, 58.0)] {
             lines::dashed(painter, &[at - arm, at + arm], hint, 2.0, 3.0);
@@ -77,13 +85,13 @@ pub fn paint_feedback(painter: &Painter, scene: &Scene, pos: Pos2, feedback: &Fe
     painter.galley(rect.min, words, look.accent);
 }
 
-/// Labels that shall not cover a wall, a mouth or an obstacle.
+/// Labels that shall not cover a wall, a mouth, an obstacle or a plate.
 fn off_walls(scene: &Scene) -> Labels {
     let mut labels = Labels::new(scene.screen.rect);
     for edge in &scene.model.edges {
         labels.keep_off_line(&scene.screen.line(&edge.points));
     }
-    for points in &scene.model.obstacles {
+    for points in scene.model.obstacles.iter().chain(scene.model.plates.iter().map(|plate| &plate.points)) {
         labels.keep_off_line(&scene.screen.line(points));
     }
     labels
@@ -97,19 +105,20 @@ struct Still {
     right: f32,
 }
 
-struct Pen<'a> {
-    painter: &'a Painter,
-    scene: &'a Scene<'a>,
-    look: &'a Look,
+/// Writes on the drawing.
+pub(super) struct Writer<'a> {
+    pub(super) painter: &'a Painter,
+    pub(super) scene: &'a Scene<'a>,
+    pub(super) look: &'a Look,
 }
 
-impl Pen<'_> {
-    fn text(&self, text: impl Into<String>, font: FontId, color: Color32) -> Arc<Galley> {
+impl Writer<'_> {
+    pub(super) fn text(&self, text: impl Into<String>, font: FontId, color: Color32) -> Arc<Galley> {
         self.painter.layout_no_wrap(text.into(), font, color)
     }
 
     /// Text on a piece of paper of its own.
-    fn put(&self, rect: Rect, text: Arc<Galley>) {
+    pub(super) fn put(&self, rect: Rect, text: Arc<Galley>) {
         self.painter.rect_filled(rect.expand2(vec2(2.0, -1.0)), 0.0, self.look.board);
         self.painter.galley(rect.min, text, self.look.ink);
     }
@@ -187,6 +196,22 @@ impl Pen<'_> {
         }
     }
 
+    /// What liquid went over on the way, and how much.
+    fn paint_sills(&self, labels: &mut Labels) {
+        for sill in &self.scene.model.sills {
+            let at = self.scene.at(sill.at);
+            let corners = vec![at + vec2(0.0, -8.0), at + vec2(5.0, 0.0), at + vec2(-5.0, 0.0)];
+            self.painter.add(Shape::convex_polygon(corners, self.look.board, Stroke::new(1.25, self.look.ink)));
+            labels.keep_off(Rect::from_min_max(at + vec2(-5.0, -8.0), at + vec2(5.0, 0.0)));
+            let unit = Quantity::Volume.unit_near(self.scene.units, sill.volume_m3);
+            let text = format!("{} {} over", number(unit.from_si(sill.volume_m3), 3), unit.symbol);
+            let text = self.text(text, font::tick(), self.look.ink);
+            if let Some(rect) = labels.place(text.size(), around(at - vec2(0.0, 4.0), 9.0)) {
+                self.put(rect, text);
+            }
+        }
+    }
+
     /// The dashed line, and the words that go to it.
     fn paint_still_level(&self) -> Option<Still> {
         let z = self.scene.model.still_z_m?;
@@ -236,125 +261,10 @@ impl Pen<'_> {
             }
         }
     }
-
-    fn paint_loads(&self, labels: &mut Labels) {
-        let loads = &self.scene.model.loads;
-        let largest = loads.iter().map(|l| l.force_n.norm()).fold(0.0, f64::max);
-        let mut sorted: Vec<_> = loads.iter().filter(|l| l.force_n.norm() > 1e-3 * largest).collect();
-        sorted.sort_by(|a, b| b.force_n.norm().total_cmp(&a.force_n.norm()));
-        for load in sorted {
-            let along = self.scene.screen.screen_vec(load.force_n).normalized();
-            let on_edge = self.scene.at(load.on_edge);
-            let wanted = 14.0 + 40.0 * (load.force_n.norm() / largest).sqrt() as f32;
-            let room = self.scene.screen.rect.shrink(4.0);
-            // Outward from the wall; toward it from inside where the board ends before.
-            let lengths = (0..).map(|k| wanted - k as f32).take_while(|l| *l >= wanted.min(20.0));
-            let outward = lengths.into_iter().find(|l| room.contains(on_edge + along * *l));
-            let (tail, tip, out) = match outward {
-                Some(length) => (on_edge, on_edge + along * length, along),
-                None => (on_edge - along * wanted, on_edge, -along),
-            };
-            lines::arrow(self.painter, tail, tip, Stroke::new(1.4, self.look.ink), self.look.board);
-            labels.keep_off_line(&[tail, tip]);
-            let force = Measure::new(Quantity::Force, load.force_n.norm()).text(self.scene.units);
-            let text = self.text(force, font::small_figure(), self.look.ink);
-            let (end, middle) = (if out == along { tip } else { tail }, tail + (tip - tail) * 0.5);
-            let side = along.rot90();
-            let places = [
-                (end + out * 5.0, align_toward(out)),
-                (end + side * 8.0, align_toward(side)),
-                (end - side * 8.0, align_toward(-side)),
-                (middle + side * 8.0, align_toward(side)),
-                (middle - side * 8.0, align_toward(-side)),
-            ];
-            if let Some(rect) = labels.place(text.size(), places) {
-                self.put(rect, text);
-            }
-        }
-    }
-
-    /// Numbers on paper at the lower ends of the isobars; the deepest one bears the unit.
-    fn paint_isobar_labels(&self, labels: &mut Labels) {
-        let model = &self.scene.model;
-        let Some(tints) = model.tints else { return };
-        let unit = Quantity::GagePressure.unit(self.scene.units);
-        let decimals = decimals_of(unit.from_si(tints.step_pa));
-        let mut needs_unit = true;
-        for isobar in model.isobars.iter().rev() {
-            let (Some(first), Some(last)) = (isobar.chords.first(), isobar.chords.last()) else { continue };
-            let (left, right) = (self.scene.at(first[0]), self.scene.at(last[1]));
-            let along = (right - left).normalized();
-            let value = fixed(unit.from_si(isobar.gage_pa), decimals);
-            let words = if needs_unit { format!("{value} {}", unit.symbol) } else { value };
-            let text = self.text(words, font::tick(), self.look.ink2);
-            let mut ends = [(left, -along), (right, along)];
-            if right.y > left.y + 1.0 {
-                ends.swap(0, 1);
-            }
-            let down = vec2(0.0, 1.0);
-            let ways =
-                ends.into_iter().flat_map(|(end, out)| [out, (out + down).normalized(), down].map(|way| (end, way)));
-            let free = ways.into_iter().find_map(|(end, out)| {
-                let place = (end + out * 10.0, align_toward(out));
-                labels.place(text.size(), [place]).map(|rect| (end, out, rect))
-            });
-            if let Some((end, out, rect)) = free {
-                let tick = [end + out * 2.0, end + out * 8.0];
-                lines::segment(self.painter, tick, Stroke::new(0.75, self.look.ink.gamma_multiply(0.55)));
-                self.put(rect, text);
-                needs_unit = false;
-            }
-        }
-    }
-
-    fn paint_points(&self, labels: &mut Labels) {
-        let model = &self.scene.model;
-        for point in &model.points {
-            let at = self.scene.at(point.at);
-            self.painter.circle(at, 3.0, self.look.ink, Stroke::new(2.0, self.look.board));
-            let gage = point.gage_pa.map(|pa| Measure::new(Quantity::GagePressure, pa).text(self.scene.units));
-            let words = [Some(point.name.clone()), gage].into_iter().flatten().collect::<Vec<_>>().join("  ");
-            let text = self.text(words, font::tick(), self.look.ink);
-            if let Some(rect) = labels.place(text.size(), around(at, 8.0)) {
-                self.put(rect, text);
-            }
-        }
-        if let Some(centroid) = model.centroid {
-            let at = self.scene.at(centroid);
-            paint_centroid(self.painter, at, self.look);
-            let text = self.text("centroid", font::tick(), self.look.ink);
-            if let Some(rect) = labels.place(text.size(), around(at, 10.0)) {
-                self.put(rect, text);
-            }
-        }
-        if self.scene.judged.is_some() {
-            let at = self.scene.at(model.moment_about);
-            for stroke in [Stroke::new(3.25, self.look.board), Stroke::new(1.25, self.look.ink3)] {
-                for arm in [vec2(6.0, 0.0), vec2(0.0, 6.0)] {
-                    lines::segment(self.painter, [at - arm, at + arm], stroke);
-                }
-            }
-            self.painter.circle_stroke(at, 3.0, Stroke::new(1.0, self.look.ink3));
-            let text = self.text("moment point", font::tick(), self.look.ink3);
-            if let Some(rect) = labels.place(text.size(), around(at, 8.0)) {
-                self.put(rect, text);
-            }
-        }
-    }
 }
 
-/// The usual mark of a centre of gravity: a circle with two dark quarters.
-fn paint_centroid(painter: &Painter, at: Pos2, look: &Look) {
-    painter.circle(at, 7.5, look.board, Stroke::NONE);
-    for from in [0.0, std::f32::consts::PI] {
-        let arc = (0..=6).map(|i| at + 5.5 * Vec2::angled(from + std::f32::consts::FRAC_PI_2 * i as f32 / 6.0));
-        let wedge = std::iter::once(at).chain(arc).collect();
-        painter.add(Shape::convex_polygon(wedge, look.ink, Stroke::NONE));
-    }
-    painter.circle_stroke(at, 5.5, Stroke::new(1.25, look.ink));
-}
-
-fn around(at: Pos2, off: f32) -> [(Pos2, Align2); 6] {
+/// Places for a label round a mark, as far off.
+pub(super) fn around(at: Pos2, off: f32) -> [(Pos2, Align2); 6] {
     [
         (at + vec2(off, 0.0), Align2::LEFT_CENTER),
         (at - vec2(off, 0.0), Align2::RIGHT_CENTER),
@@ -366,7 +276,7 @@ fn around(at: Pos2, off: f32) -> [(Pos2, Align2); 6] {
 }
 
 /// Aligns a label that lies in this direction from its thing.
-fn align_toward(out: Vec2) -> Align2 {
+pub(super) fn align_toward(out: Vec2) -> Align2 {
     let axis = |v: f32| {
         if v > 0.4 {
             egui::Align::Min

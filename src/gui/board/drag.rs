@@ -8,13 +8,16 @@ use crate::app::Edit;
 use crate::cases::{Accel, AccelUnit};
 use crate::geom::{Edge, Point, Vec2};
 use crate::gui::Camera;
-use crate::study::{Fill, NamedPoint};
+use crate::study::Fill;
 use crate::units::{Measure, Quantity, fixed};
 
+use super::anchors::snapper;
 use super::bob::Dial;
+use super::plate_drag::PlateHold;
 use super::scene::Scene;
-use super::snap::{Anchor, Snapper, tidy};
-use super::target::{Target, edge_name, form_words, place_words};
+use super::snap::{Snapped, tidy};
+use super::target::Target;
+use super::words::{edge_name, form_words, place_words};
 
 /// How near rest, or no sideways or upward part, the bob must be to snap to it, points.
 const BOB_REACH: f32 = 4.0;
@@ -39,6 +42,8 @@ pub enum Held {
     Edge(usize, Point, Point),
     /// An edge, bent.
     Middle(usize, Point),
+    /// A plate or a part of one.
+    Plate(PlateHold),
     /// The still level, z in metres.
     StillLevel(f64),
     /// The bob.
@@ -63,6 +68,8 @@ pub struct Feedback {
     pub at: Option<Point>,
     /// Points that it aligned with.
     pub aligned_with: Vec<Point>,
+    /// A line that is being drawn.
+    pub line: Option<[Point; 2]>,
 }
 
 impl Drag {
@@ -77,7 +84,9 @@ impl Drag {
             Some(Target::Bob) => {
                 (scene.case()).map(|c| Held::Bob { dial: scene.dial, gravity: c.gravity.vec, accel: c.accel })
             }
-            Some(other) => other.anchor(scene).map(|p| Held::Place(other, p)),
+            Some(other) => PlateHold::begin(scene, other)
+                .map(Held::Plate)
+                .or_else(|| other.anchor(scene).map(|p| Held::Place(other, p))),
             None => None,
         };
         Drag { held: held.unwrap_or(Held::Board(scene.screen.camera)), press }
@@ -92,12 +101,15 @@ impl Drag {
     pub fn label(&self, scene: &Scene) -> Option<String> {
         Some(match self.held {
             Held::Board(_) => return None,
+            Held::Plate(ref hold) => hold.label(),
             Held::Place(Target::Vertex(i), _) => format!("Move vertex {}", i + 1),
             Held::Place(Target::ObstacleVertex(i, j), _) => {
                 format!("Move vertex {} of obstacle {}", j + 1, i + 1)
             }
             Held::Place(Target::Obstacle(i), _) => format!("Move obstacle {}", i + 1),
             Held::Place(Target::Point(i), _) => format!("Move point {}", i + 1),
+            Held::Place(Target::Compartment(i), _) => format!("Move the point of compartment {}", i + 1),
+            Held::Place(Target::Sump, _) => "Move the sump".to_owned(),
             Held::Place(..) => "Move the moment point".to_owned(),
             Held::Edge(i, ..) => format!("Move {}", edge_name(scene, i)),
             Held::Middle(i, _) => format!("Bend {}", edge_name(scene, i)),
@@ -123,9 +135,10 @@ impl Drag {
         let moved = screen.section_from_screen(pos) - screen.section_from_screen(self.press);
         match &self.held {
             Held::Board(_) => (Vec::new(), Feedback::default()),
+            Held::Plate(hold) => hold.edits(scene, moved, keys),
             Held::Place(target, from) => place_edits(scene, *target, *from + moved, keys),
             Held::Edge(i, start, end) => {
-                let snapped = snapper(scene, keys, Target::Edge(*i)).point(start + moved);
+                let snapped = snapper(scene, keys, Some(Target::Edge(*i))).point(start + moved);
                 let shift = snapped.at - start;
                 let other = Point::from((end + shift).coords.map(tidy));
                 let next = (i + 1) % scene.edges.len().max(1);
@@ -144,7 +157,7 @@ impl Drag {
 
 /// The edits that put `target` at `p`.
 pub fn place_edits(scene: &Scene, target: Target, p: Point, keys: Modifiers) -> (Vec<Edit>, Feedback) {
-    let snapped = snapper(scene, keys, target).point(p);
+    let snapped = snapper(scene, keys, Some(target)).point(p);
     let edits = move_to(scene, target, snapped.at);
     (edits, placed(scene, snapped))
 }
@@ -160,9 +173,18 @@ pub fn move_to(scene: &Scene, target: Target, to: Point) -> Vec<Edit> {
         Target::Obstacle(i) => vec![Edit::ShiftObstacle(i, to.x - now.x, to.y - now.y)],
         Target::MomentPoint => vec![Edit::MomentAbout(to)],
         Target::Point(i) => {
-            let mut points: Vec<NamedPoint> = scene.study.points.clone();
+            let mut points = scene.study.points.clone();
             points[i].at = to;
             vec![Edit::Points(points)]
+        }
+        Target::Compartment(i) => {
+            let mut compartments = scene.study.compartments.clone();
+            compartments[i].at = to;
+            vec![Edit::Compartments(compartments)]
+        }
+        Target::Sump => vec![Edit::Sump(Some(to))],
+        Target::Plate(_) | Target::PlatePoint(..) | Target::Opening(..) | Target::OpeningEnd(..) => {
+            PlateHold::begin(scene, target).map_or_else(Vec::new, |hold| hold.exact_edits(to - now))
         }
         Target::Bob | Target::Middle(_) | Target::Edge(_) | Target::StillLevel => Vec::new(),
     }
@@ -204,15 +226,16 @@ pub fn accel_edit(scene: &Scene, accel: Vec2, keys: Modifiers) -> Option<Edit> {
 fn bend_edits(scene: &Scene, i: usize, wish: Point, keys: Modifiers) -> (Vec<Edit>, Feedback) {
     let (Some(edge), n) = (scene.edges.get(i).copied(), scene.edges.len()) else { return Default::default() };
     let (before, after) = (scene.edges[(i + n - 1) % n], scene.edges[(i + 1) % n]);
-    let (sweep, reason) = snapper(scene, keys, Target::Middle(i)).sweep(edge.start, edge.end, wish, before, after);
+    let (sweep, reason) =
+        snapper(scene, keys, Some(Target::Middle(i))).sweep(edge.start, edge.end, wish, before, after);
     let bent = Edge { sweep, ..edge };
     let words = form_words(&bent, scene.units);
-    let feedback = Feedback { words, reason, at: Some(bent.point_at(0.5)), aligned_with: Vec::new() };
+    let feedback = Feedback { words, reason, at: Some(bent.point_at(0.5)), ..Default::default() };
     (vec![Edit::BendEdge(i, sweep)], feedback)
 }
 
 fn level_edits(scene: &Scene, z: f64, keys: Modifiers) -> (Vec<Edit>, Feedback) {
-    let (z, reason) = snapper(scene, keys, Target::StillLevel).level(z);
+    let (z, _, reason) = snapper(scene, keys, Some(Target::StillLevel)).coordinate(1, z);
     let z = scene.judged.map_or(z, |(study, _)| {
         let (low, high) = study.tilted(Vec2::y()).span();
         z.clamp(low, high)
@@ -248,39 +271,13 @@ fn bob_edits(scene: &Scene, dial: &Dial, gravity: Vec2, began: Vec2, keys: Modif
     (vec![edit], Feedback { words, reason, ..Default::default() })
 }
 
-fn placed(scene: &Scene, snapped: super::snap::Snapped) -> Feedback {
+/// What a point shows that snapped.
+pub fn placed(scene: &Scene, snapped: Snapped) -> Feedback {
     Feedback {
         words: place_words(snapped.at, scene),
         reason: snapped.reason,
         at: Some(snapped.at),
         aligned_with: snapped.aligned_with,
-    }
-}
-
-/// What there is to snap to while `moved` moves.
-fn snapper<'a>(scene: &'a Scene, keys: Modifiers, moved: Target) -> Snapper<'a> {
-    let n = scene.edges.len();
-    let outline = (scene.edges.iter().enumerate())
-        .filter(|(i, _)| match moved {
-            Target::Vertex(v) => v != *i,
-            Target::Edge(e) => e != *i && (e + 1) % n != *i,
-            _ => true,
-        })
-        .map(|(i, e)| Anchor { at: e.start, name: format!("vertex {}", i + 1) });
-    let obstacles = scene.study.section.obstacles.iter().enumerate().flat_map(|(i, o)| {
-        let named = o.vertices.iter().enumerate().map(move |(j, v)| (i, j, v.start));
-        named
-            .filter(move |(i, j, _)| match moved {
-                Target::ObstacleVertex(oi, oj) => (oi, oj) != (*i, *j),
-                Target::Obstacle(oi) => oi != *i,
-                _ => true,
-            })
-            .map(|(i, j, at)| Anchor { at, name: format!("obstacle {}, vertex {}", i + 1, j + 1) })
-    });
-    Snapper {
-        screen: &scene.screen,
-        units: scene.units,
-        anchors: outline.chain(obstacles).collect(),
-        is_on: !keys.ctrl,
+        line: None,
     }
 }

@@ -5,11 +5,11 @@ use egui::{EventFilter, Id, Key, Modifiers, Rect, Response, Role, Sense, Ui, Wid
 
 use crate::app::Edit;
 use crate::geom::{Edge, Point, Vec2};
-use crate::gui::{Proposal, Selected, View, marks};
-use crate::study::NamedPoint;
+use crate::gui::{Proposal, View, marks};
 use crate::units::{Quantity, UnitSystem};
 
 use super::drag::{accel_edit, level_edit, move_to};
+use super::plate_drag::PlateHold;
 use super::scene::{Scene, looking_at};
 use super::snap::tidy;
 use super::target::Target;
@@ -91,7 +91,15 @@ fn obey(ui: &Ui, scene: &Scene, focused: Option<Target>, view: &mut View, out: &
     }
     if arrow != Vec2::zeros() {
         match focused {
-            Some(target) => out.extend(nudge(scene, target, arrow, coarse).into_iter().map(Proposal::Edit)),
+            // A plate may take others along: one press is one step.
+            Some(target) => match PlateHold::begin(scene, target) {
+                Some(hold) => {
+                    out.push(Proposal::BeginGesture(hold.label()));
+                    out.extend(nudge(scene, target, arrow, coarse).into_iter().map(Proposal::Edit));
+                    out.push(Proposal::EndGesture);
+                }
+                None => out.extend(nudge(scene, target, arrow, coarse).into_iter().map(Proposal::Edit)),
+            },
             None => {
                 let step = vec2(-arrow.x as f32, arrow.y as f32) * if coarse { 120.0 } else { 30.0 };
                 view.camera = Some(scene.screen.panned(step));
@@ -101,7 +109,7 @@ fn obey(ui: &Ui, scene: &Scene, focused: Option<Target>, view: &mut View, out: &
     look_around(ui, scene, view);
     let removes = ui
         .input_mut(|i| i.consume_key(Modifiers::NONE, Key::Delete) || i.consume_key(Modifiers::NONE, Key::Backspace));
-    if removes && let Some(edit) = view.selected.and_then(|s| removal(scene, s)) {
+    if removes && let Some(edit) = view.selected.and_then(|s| s.removal(scene.study)) {
         out.push(Proposal::Edit(edit));
         view.selected = None;
     }
@@ -151,17 +159,4 @@ fn bent(i: usize, edge: &Edge, by: Vec2) -> Edit {
     // An arrow along the chord cannot bend it.
     let moved = if along.abs() > 0.3 * by.norm() { by.norm() * along.signum() } else { 0.0 };
     Edit::BendEdge(i, Edge::with_sagitta(edge.start, edge.end, edge.sagitta() + moved).sweep)
-}
-
-/// The edit that takes a chosen thing out; none for what cannot be taken out.
-pub fn removal(scene: &Scene, selected: Selected) -> Option<Edit> {
-    match selected {
-        Selected::Vertex(i) => Some(Edit::RemoveVertex(i)),
-        Selected::Obstacle(i) | Selected::ObstacleVertex(i, _) => Some(Edit::RemoveObstacle(i)),
-        Selected::Point(i) => {
-            let kept = scene.study.points.iter().enumerate().filter(|(k, _)| *k != i).map(|(_, p)| p.clone());
-            Some(Edit::Points(kept.collect::<Vec<NamedPoint>>()))
-        }
-        Selected::Edge(_) | Selected::Bob => None,
-    }
 }

@@ -16,7 +16,7 @@ pub fn paint_legend(painter: &Painter, scene: &Scene, look: &Look) {
     let width = dial.rect.width() - 34.0;
     let bar =
         Rect::from_min_max(pos2(dial.rect.left(), bottom - 28.0), pos2(dial.rect.left() + width, bottom - 17.0));
-    let is_tinted = scene.model.bands.iter().any(|b| b.tint != Tint::NotJudged);
+    let is_tinted = scene.model.bands().any(|b| b.tint != Tint::NotJudged);
     if bar.top() - 20.0 < dial.lowest(&scene.hanging) || !is_tinted {
         return;
     }

@@ -19,9 +19,20 @@ pub fn segment(painter: &Painter, points: [Pos2; 2], stroke: impl Into<Stroke>) 
 
 /// A dashed line along `path`.
 pub fn dashed(painter: &Painter, path: &[Pos2], stroke: Stroke, dash: f32, gap: f32) {
+    dashes(painter, path, stroke, dash, dash + gap, 0.0);
+}
+
+/// A line of long dashes and dots.
+pub fn dash_dot(painter: &Painter, path: &[Pos2], stroke: Stroke) {
+    dashes(painter, path, stroke, 8.0, 15.5, 0.0);
+    dashes(painter, path, stroke, 1.5, 15.5, 11.0);
+}
+
+/// A dash every `period`, the first one after `offset`.
+fn dashes(painter: &Painter, path: &[Pos2], stroke: Stroke, dash: f32, period: f32, offset: f32) {
     let area = painter.clip_rect().expand(8.0);
-    let period = f64::from(dash + gap);
-    let mut walked = 0.0;
+    let period = f64::from(period);
+    let mut walked = -f64::from(offset);
     for pair in path.windows(2) {
         let (a, b) = (pair[0], pair[1]);
         let length = f64::from((b - a).length());
@@ -29,7 +40,7 @@ pub fn dashed(painter: &Painter, path: &[Pos2], stroke: Stroke, dash: f32, gap: 
             let (seen_from, seen_to) = (f64::from(t0) * length, f64::from(t1) * length);
             let at = |along: f64| a + (b - a) * (along / length) as f32;
             let first = ((walked + seen_from) / period).floor();
-            let n = ((seen_to - seen_from) / period).ceil() as usize + 1;
+            let n = ((seen_to - seen_from) / period).ceil() as usize + 2;
             for k in 0..n {
                 let start = (first + k as f64) * period - walked;
                 let (start, end) = (start.max(seen_from), (start + f64::from(dash)).min(seen_to));

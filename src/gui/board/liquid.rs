@@ -5,7 +5,7 @@
 use crate::geom::{Point, Vec2};
 use crate::units::{Quantity, UnitSystem};
 
-use super::strips::{Strip, bands, chords, extent};
+use super::strips::{Side, Strip, bands, chords, extent};
 
 /// Tints at most: one step is a round number in the shown unit.
 const N_TINTS: f64 = 8.0;
@@ -73,9 +73,20 @@ pub struct Isobar {
     pub chords: Vec<[Point; 2]>,
 }
 
+/// One body of liquid, tinted.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct Tinted {
+    /// From the floor up.
+    pub bands: Vec<Band>,
+    /// From the surface down.
+    pub isobars: Vec<Isobar>,
+}
+
 /// A body of liquid with one level.
-#[derive(Clone, Copy, Debug)]
+#[derive(Clone, Debug)]
 pub struct Body {
+    /// What bounds it; what lies above its level is left out.
+    pub sides: Vec<Side>,
     /// Against effective gravity.
     pub up: Vec2,
     /// Level v = up . x of its surface, m.
@@ -87,41 +98,43 @@ pub struct Body {
 }
 
 impl Body {
-    /// Its bands, from the floor up, and isobars, from the surface down, inside the closed chains `loops`.
-    pub fn tinted(&self, loops: &[Vec<Point>], tints: Option<TintScale>) -> (Vec<Band>, Vec<Isobar>) {
-        let Some((floor, roof)) = extent(loops, self.up) else { return Default::default() };
+    /// Its bands and isobars. All bodies of a drawing share one scale, so that their tints compare.
+    pub fn tinted(&self, tints: Option<TintScale>) -> Tinted {
+        let sides = &self.sides;
+        let Some((floor, roof)) = extent(sides, self.up) else { return Tinted::default() };
         let level = self.level_m.min(roof);
         if level <= floor {
-            return Default::default();
+            return Tinted::default();
         }
         let Some(tints) = tints.filter(|_| self.weight_pa_per_m > 0.0) else {
-            let strips = bands(loops, self.up, &[floor, level]).remove(0);
-            return (vec![Band { tint: Tint::NotJudged, strips }], Vec::new());
+            let strips = bands(sides, self.up, &[floor, level]).remove(0);
+            return Tinted { bands: vec![Band { tint: Tint::NotJudged, strips }], isobars: Vec::new() };
         };
         let pressure_at = |v: f64| self.gas_pa + self.weight_pa_per_m * (self.level_m - v);
         let level_of = |i: usize| self.level_m - (tints.gage_pa(i) - self.gas_pa) / self.weight_pa_per_m;
         let is_inside = |i: &usize| pressure_at(level) < tints.gage_pa(*i) && tints.gage_pa(*i) < pressure_at(floor);
         let steps: Vec<usize> = (1..=tints.n).filter(is_inside).collect();
-        let isobar = |&i: &usize| Isobar { gage_pa: tints.gage_pa(i), chords: chords(loops, self.up, level_of(i)) };
+        let isobar = |&i: &usize| Isobar { gage_pa: tints.gage_pa(i), chords: chords(sides, self.up, level_of(i)) };
         let isobars = steps.iter().map(isobar).collect();
         let mut levels = vec![floor];
         levels.extend(steps.iter().rev().map(|&i| level_of(i)));
         levels.push(level);
         let surface = (0..=tints.n).rev().find(|&i| tints.gage_pa(i) <= pressure_at(level)).unwrap_or(0);
         let deepest = steps.last().copied().unwrap_or(surface);
-        let bands = (bands(loops, self.up, &levels).into_iter().enumerate())
+        let bands = (bands(sides, self.up, &levels).into_iter().enumerate())
             .map(|(i, strips)| {
                 let idx = deepest.saturating_sub(i);
                 Band { tint: if idx < tints.n { Tint::Step(idx) } else { Tint::AboveScale }, strips }
             })
             .collect();
-        (bands, isobars)
+        Tinted { bands, isobars }
     }
 }
 
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::gui::board::strips::sides;
 
     #[test]
     fn steps_are_round_in_the_shown_unit() {
@@ -144,9 +157,10 @@ mod tests {
     fn bands_follow_the_pressure() {
         // A unit square of water to z = 0.9 m, gas at 1 kPa: 1 kPa at the surface, 9.8 kPa at the floor.
         let square = [(0.0, 0.0), (1.0, 0.0), (1.0, 1.0), (0.0, 1.0)].map(|(s, z)| Point::new(s, z)).to_vec();
-        let body = Body { up: Vec2::y(), level_m: 0.9, gas_pa: 1e3, weight_pa_per_m: 9800.0 };
+        let sides = sides(&square).collect();
+        let body = Body { sides, up: Vec2::y(), level_m: 0.9, gas_pa: 1e3, weight_pa_per_m: 9800.0 };
         let tints = TintScale { step_pa: 2e3, first: 0, n: 4 };
-        let (bands, isobars) = body.tinted(&[square], Some(tints));
+        let Tinted { bands, isobars } = body.tinted(Some(tints));
         let got: Vec<(Tint, f64)> =
             bands.iter().map(|b| (b.tint, b.strips.iter().map(Strip::area).sum::<f64>())).collect();
         let thick = 2e3 / 9800.0;

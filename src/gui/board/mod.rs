@@ -6,18 +6,26 @@
 //!
 //! [`Edit`]: crate::app::Edit
 
+mod anchors;
 mod annotate;
 mod bob;
 mod dims;
 mod drag;
+mod handles;
+mod isobars;
 mod keys;
 mod labels;
 mod legend;
 mod lines;
 mod liquid;
+mod loads;
 mod menu;
 mod model;
 mod paint;
+mod paint_plate;
+mod pen;
+mod places;
+mod plate_drag;
 mod pointer;
 mod rulers;
 mod scene;
@@ -25,6 +33,7 @@ mod screen;
 mod snap;
 mod strips;
 mod target;
+mod words;
 
 use egui::{Align2, Id, Painter, Rect, Role, Sense, Ui, WidgetInfo};
 
@@ -35,7 +44,8 @@ use crate::units::UnitSystem;
 
 use super::{Look, Proposal, View, font};
 
-use model::Detail;
+use model::{Detail, Shown};
+use pointer::Pointing;
 use scene::Scene;
 use target::Target;
 
@@ -65,13 +75,16 @@ pub fn board_ui(ui: &mut Ui, doc: &Document, view: &mut View, look: &Look, out: 
     let painter = ui.painter().with_clip_rect(ui.clip_rect().intersect(board));
     painter.rect_filled(board, 0.0, look.board);
     let inside = painter.with_clip_rect(painter.clip_rect().intersect(area));
-    paint_scene(&inside, &scene, view, pointing.target, look);
+    paint_scene(&inside, &scene, view, &pointing, look);
     let focused = keys::handles_ui(ui, &canvas, &scene, view, out);
     if let Some((target, response)) = &focused {
         keys::paint_focus(ui, &scene, *target, response, look);
     }
     if let Some(pos) = pointing.pos.filter(|_| pointing.is_dragging) {
         annotate::paint_feedback(&inside, &scene, pos, &pointing.feedback, look);
+    }
+    if let Some(pen) = view.pen {
+        pen::paint_hint(&inside, &scene, pen, look);
     }
     rulers::paint_rulers(&painter, board, &scene.screen, view.units, pointing.pos, look);
     super::marks::paint_focus(&painter, board.shrink(5.0), &canvas, look);
@@ -90,14 +103,22 @@ pub fn thumbnail_ui(
     let (low, high) = study.region().bounds();
     let screen = Screen::fitted(rect, rect.shrink(2.0), low, high);
     let detail = Detail { sagitta_m: 0.25 / screen.scale(), units: UnitSystem::Si };
-    let model = BoardModel::judged(study, results, case_idx, None, detail);
+    let model = BoardModel::judged(study, results, Shown { case_idx, ..Default::default() }, detail);
     let painter = painter.with_clip_rect(painter.clip_rect().intersect(rect));
     paint::paint_liquid(&painter, &screen, &model, paint::CARD_PENS, look);
     paint::paint_surface(&painter, &screen, &model, paint::CARD_PENS, look);
+    paint_plate::paint_plates(&painter, &screen, &model, paint::CARD_PENS, look);
     paint::paint_walls(&painter, &screen, &model, paint::CARD_PENS, look);
 }
 
-fn paint_scene(painter: &Painter, scene: &Scene, view: &View, hovered: Option<Target>, look: &Look) {
+/// The line of the bound that is not shown, as in the drawing.
+pub fn paint_other_bound(painter: &Painter, ends: [egui::Pos2; 2], look: &Look) {
+    lines::dash_dot(painter, &ends, egui::Stroke::new(1.1, look.ink));
+}
+
+fn paint_scene(painter: &Painter, scene: &Scene, view: &View, pointing: &Pointing, look: &Look) {
+    let hovered = pointing.target;
+    let pointed_at = pointing.pos.filter(|_| hovered.is_none() && !pointing.is_dragging);
     let (screen, model) = (&scene.screen, &*scene.model);
     rulers::paint_grid(painter, screen, scene.units, look);
     if model.edges.is_empty() {
@@ -108,6 +129,7 @@ fn paint_scene(painter: &Painter, scene: &Scene, view: &View, hovered: Option<Ta
     paint::paint_glow(painter, scene, view.selected, hovered, look);
     paint::paint_surface(painter, screen, model, paint::BOARD_PENS, look);
     paint::paint_last_good(painter, screen, model, look);
+    paint_plate::paint_plates(painter, screen, model, paint::BOARD_PENS, look);
     paint::paint_walls(painter, screen, model, paint::BOARD_PENS, look);
     // A section that has been zoomed or moved under the bob shows through its paper.
     for area in scene.dial.areas(&scene.hanging).into_iter().filter(|area| area.intersects(scene.bounds())) {
@@ -115,5 +137,11 @@ fn paint_scene(painter: &Painter, scene: &Scene, view: &View, hovered: Option<Ta
     }
     annotate::annotate(painter, scene, look);
     bob::paint_bob(painter, &scene.dial, &scene.hanging, scene.units, look);
-    paint::paint_handles(painter, scene, view.selected, hovered, look);
+    // With one pool alone the whole liquid would be lined.
+    if let Some(p) = pointed_at.filter(|_| model.pools.len() > 1)
+        && let Some(pool) = model.pools.iter().find(|pool| pool.contains(screen.section_from_screen(p)))
+    {
+        paint::paint_pool(painter, scene, pool, look);
+    }
+    handles::paint_handles(painter, scene, view.selected, hovered, look);
 }

@@ -2,70 +2,103 @@
 //!
 //! Draws what the model says and nothing else; labels and dimensions are in `annotate`.
 
-use egui::{Color32, Mesh, Painter, Pos2, Rect, Shape, Stroke, StrokeKind, pos2, vec2};
+use egui::{Align2, Color32, Mesh, Painter, Pos2, Shape, Stroke, pos2};
 
+use crate::analysis::Chord;
 use crate::geom::{Point, Vec2};
-use crate::gui::{Look, Selected};
+use crate::gui::{Look, Selected, font};
 use crate::section::EdgeKind;
+use crate::units::{Quantity, number};
 
 use super::lines;
 use super::liquid::Tint;
-use super::model::BoardModel;
+use super::model::{BoardModel, Pool};
 use super::scene::Scene;
 use super::screen::Screen;
-use super::strips::{Strip, bands, chords, extent};
-use super::target::Target;
+use super::strips::{Strip, bands, chords, extent, sides};
+use super::target::{Target, target_of};
 
 /// Widths of the lines of a section.
 #[derive(Clone, Copy, Debug)]
 pub struct Pens {
     /// Walls.
     pub wall: f32,
+    /// Plates.
+    pub plate: f32,
     /// The settled surface.
     pub surface: f32,
-    /// Isobars; none where zero.
+    /// Isobars; where zero neither they nor ticks at openings.
     pub isobar: f32,
 }
 
 /// The board's own pens.
-pub const BOARD_PENS: Pens = Pens { wall: 2.5, surface: 1.9, isobar: 0.75 };
+pub const BOARD_PENS: Pens = Pens { wall: 2.5, plate: 2.25, surface: 1.9, isobar: 0.75 };
 
 /// Pens of a small drawing.
-pub const CARD_PENS: Pens = Pens { wall: 1.5, surface: 1.25, isobar: 0.0 };
+pub const CARD_PENS: Pens = Pens { wall: 1.5, plate: 1.25, surface: 1.25, isobar: 0.0 };
 
 /// Liquid: tints, hatch above full scale, isobars.
 pub fn paint_liquid(painter: &Painter, screen: &Screen, model: &BoardModel, pens: Pens, look: &Look) {
     let n = model.tints.map_or(1, |t| t.n);
     let mut mesh = Mesh::default();
-    for band in &model.bands {
+    for band in model.bands() {
         let color = match band.tint {
             Tint::Step(i) => look.band(i, n),
             Tint::AboveScale => look.band(n - 1, n),
             Tint::NotJudged => look.line2,
         };
-        band.strips.iter().for_each(|strip| fill(&mut mesh, screen, strip, color));
+        for strip in &band.strips {
+            fill(&mut mesh, screen, strip, color);
+            // A small drawing may be faded, and then seams show; gaps do not.
+            if pens.isobar > 0.0 {
+                fill_seams(&mut mesh, screen, strip, color);
+            }
+        }
     }
     painter.add(mesh);
-    for band in model.bands.iter().filter(|b| b.tint == Tint::AboveScale) {
+    for band in model.bands().filter(|b| b.tint == Tint::AboveScale) {
         let stroke = Stroke::new(0.75, look.board.gamma_multiply(0.55));
-        band.strips.iter().for_each(|strip| hatch(painter, screen, strip.polygon(), stroke));
+        band.strips.iter().for_each(|strip| hatch(painter, screen, &strip.polygon(), stroke));
     }
     if pens.isobar > 0.0 {
         let stroke = Stroke::new(pens.isobar, look.ink.gamma_multiply(0.55));
-        for [a, b] in model.isobars.iter().flat_map(|i| &i.chords) {
+        for [a, b] in model.isobars().flat_map(|i| &i.chords) {
             lines::segment(painter, [screen.screen_from_section(*a), screen.screen_from_section(*b)], stroke);
         }
     }
 }
 
-/// The settled surface, over a halo.
+/// The surfaces under the other bound, dash-dotted, then those that are shown, over a halo.
 pub fn paint_surface(painter: &Painter, screen: &Screen, model: &BoardModel, pens: Pens, look: &Look) {
-    for width in [(4.0, look.board), (pens.surface, look.ink)] {
-        for piece in &model.surface {
-            let ends = [piece.left, piece.right].map(|p| screen.screen_from_section(p));
-            lines::segment(painter, ends, Stroke::from(width));
+    let ends = |piece: &Chord| [piece.left, piece.right].map(|p| screen.screen_from_section(p));
+    if pens.isobar > 0.0 {
+        for piece in &model.other_surface {
+            lines::segment(painter, ends(piece), Stroke::new(3.0, look.board));
+            lines::dash_dot(painter, &ends(piece), Stroke::new(1.1, look.ink));
         }
     }
+    for width in [(4.0, look.board), (pens.surface, look.ink)] {
+        model.surface().for_each(|piece| lines::segment(painter, ends(piece), Stroke::from(width)));
+    }
+}
+
+/// The line round a pool that is pointed at, and its volume.
+pub fn paint_pool(painter: &Painter, scene: &Scene, pool: &Pool, look: &Look) {
+    let accent = Stroke::new(1.25, look.accent);
+    let surface = pool.surface.iter().map(|piece| [piece.left, piece.right]);
+    for side in pool.sides.iter().copied().chain(surface) {
+        lines::segment(painter, side.map(|p| scene.at(p)), accent);
+    }
+    let unit = Quantity::Volume.unit_near(scene.units, pool.volume_m3);
+    let words = format!("{} {}", number(unit.from_si(pool.volume_m3), 4), unit.symbol);
+    let text = painter.layout_no_wrap(words, font::body_heavy(), look.accent);
+    let mut at = scene.at(pool.centroid);
+    if scene.model.centroid.is_some_and(|p| (scene.at(p) - at).length() < 24.0) {
+        at.y += 24.0;
+    }
+    let rect = Align2::CENTER_CENTER.anchor_size(at, text.size());
+    painter.rect_filled(rect.expand2(egui::vec2(4.0, 1.0)), 0.0, look.board);
+    painter.galley(rect.min, text, look.accent);
 }
 
 /// Walls, mouths and obstacles.
@@ -123,10 +156,17 @@ pub fn paint_glow(
         painter.add(Shape::line(screen.line(points), glow));
     }
     let under_pointer = hovered.map(|t| (t, Stroke::new(8.5, look.ink.gamma_multiply(0.18))));
-    let chosen = selected.map(|s| (super::pointer::target_of(s), glow));
+    let chosen = selected.map(|s| (target_of(s), glow));
     for (target, stroke) in under_pointer.into_iter().chain(chosen) {
         let path = match target {
             Target::Edge(i) | Target::Middle(i) => scene.model.edges.get(i).map(|e| screen.line(&e.points)),
+            Target::Plate(i) | Target::PlatePoint(i, _) => {
+                scene.model.plates.get(i).map(|plate| screen.line(&plate.points))
+            }
+            Target::Opening(i, o) | Target::OpeningEnd(i, o, _) => {
+                let openings = scene.model.plates.get(i).map(|plate| &plate.openings);
+                openings.and_then(|openings| openings.get(o)).map(|opening| screen.line(&opening.points))
+            }
             Target::Obstacle(i) => scene.model.obstacles.get(i).map(|points| {
                 let mut path = screen.line(points);
                 path.extend(path.first().copied());
@@ -145,59 +185,14 @@ pub fn paint_glow(
     }
 }
 
-/// Square handles at vertices, round ones at the middles of edges, for what is chosen or pointed at.
-pub fn paint_handles(
-    painter: &Painter,
-    scene: &Scene,
-    selected: Option<Selected>,
-    hovered: Option<Target>,
-    look: &Look,
-) {
-    let n = scene.edges.len();
-    let mut shown: Vec<(Target, bool)> = Vec::new();
-    let mut show = |target: Target, is_chosen: bool| {
-        match target {
-            Target::Edge(i) | Target::Middle(i) if i < n => {
-                let ends = [Target::Vertex(i), Target::Vertex((i + 1) % n), Target::Middle(i)];
-                shown.extend(ends.map(|t| (t, is_chosen)));
-            }
-            Target::Vertex(i) if i < n => {
-                let around = [Target::Vertex((i + n - 1) % n), Target::Vertex((i + 1) % n)];
-                shown.extend(around.map(|t| (t, false)));
-                shown.push((target, is_chosen));
-            }
-            Target::Obstacle(i) | Target::ObstacleVertex(i, _) if is_chosen => {
-                let n = scene.study.section.obstacles.get(i).map_or(0, |o| o.vertices.len());
-                shown.extend((0..n).map(|j| (Target::ObstacleVertex(i, j), target == Target::ObstacleVertex(i, j))));
-            }
-            Target::Point(_) | Target::MomentPoint => shown.push((target, is_chosen)),
-            _ => {}
-        };
-    };
-    hovered.into_iter().for_each(|t| show(t, false));
-    selected.into_iter().for_each(|s| show(super::pointer::target_of(s), true));
-    for (target, is_chosen) in shown {
-        let Some(at) = target.handle(scene).filter(|p| scene.screen.rect.expand(8.0).contains(*p)) else { continue };
-        let stroke = if is_chosen { Stroke::new(1.5, look.accent) } else { Stroke::new(1.25, look.ink2) };
-        match target {
-            Target::Middle(_) => painter.circle(at, 4.0, look.board, stroke),
-            Target::Point(_) | Target::MomentPoint => painter.circle_stroke(at, 8.0, stroke),
-            _ => {
-                let rect = Rect::from_center_size(at, vec2(8.0, 8.0));
-                painter.rect(rect, 0.0, look.board, stroke, StrokeKind::Middle)
-            }
-        };
-    }
-}
-
 fn paint_obstacle(painter: &Painter, screen: &Screen, points: &[Point], pens: Pens, look: &Look) {
-    let loops = [points.to_vec()];
-    if let Some((low, high)) = extent(&loops, Vec2::y()).filter(|(low, high)| low < high) {
+    let chain: Vec<_> = sides(points).collect();
+    if let Some((low, high)) = extent(&chain, Vec2::y()).filter(|(low, high)| low < high) {
         let mut mesh = Mesh::default();
-        let strips = bands(&loops, Vec2::y(), &[low, high]).remove(0);
+        let strips = bands(&chain, Vec2::y(), &[low, high]).remove(0);
         strips.iter().for_each(|strip| fill(&mut mesh, screen, strip, look.sunk));
         painter.add(mesh);
-        hatch(painter, screen, points.to_vec(), Stroke::new(0.75, look.ink2));
+        hatch(painter, screen, points, Stroke::new(0.75, look.ink2));
     }
     let path = screen.line(points);
     if path.len() > 2 {
@@ -213,24 +208,34 @@ fn post(mouth: &[Pos2], end: usize, pens: Pens) -> Pos2 {
 }
 
 fn fill(mesh: &mut Mesh, screen: &Screen, strip: &Strip, color: Color32) {
-    let first = mesh.vertices.len() as u32;
-    for (left, right) in strip.left.iter().zip(&strip.right) {
-        mesh.colored_vertex(screen.screen_from_section(*left), color);
-        mesh.colored_vertex(screen.screen_from_section(*right), color);
-    }
-    for i in 0..strip.left.len().saturating_sub(1) as u32 {
-        let corner = first + 2 * i;
-        mesh.add_triangle(corner, corner + 1, corner + 2);
-        mesh.add_triangle(corner + 1, corner + 3, corner + 2);
+    let rows = strip.left.iter().zip(&strip.right).map(|(l, r)| [*l, *r].map(|p| screen.screen_from_section(p)));
+    let rows: Vec<[Pos2; 2]> = rows.collect();
+    rows.windows(2).for_each(|pair| quad(mesh, pair[0], pair[1], color));
+}
+
+/// Where strips part, the end of one lies within the side of another, and rounding leaves gaps: a pixel over each.
+fn fill_seams(mesh: &mut Mesh, screen: &Screen, strip: &Strip, color: Color32) {
+    let last = strip.left.len().saturating_sub(1);
+    for (left, right) in [0, last].into_iter().filter_map(|i| strip.left.get(i).zip(strip.right.get(i))) {
+        let [left, right] = [*left, *right].map(|p| screen.screen_from_section(p));
+        let across = (right - left).normalized().rot90() * 0.5;
+        quad(mesh, [left - across, right - across], [left + across, right + across], color);
     }
 }
 
+fn quad(mesh: &mut Mesh, below: [Pos2; 2], above: [Pos2; 2], color: Color32) {
+    let first = mesh.vertices.len() as u32;
+    below.into_iter().chain(above).for_each(|p| mesh.colored_vertex(p, color));
+    mesh.add_triangle(first, first + 1, first + 2);
+    mesh.add_triangle(first + 1, first + 3, first + 2);
+}
+
 /// A 45 degree hatch inside a closed chain, a line every 5 points.
-fn hatch(painter: &Painter, screen: &Screen, points: Vec<Point>, stroke: Stroke) {
+fn hatch(painter: &Painter, screen: &Screen, points: &[Point], stroke: Stroke) {
     let across = Vec2::new(-1.0, 1.0) * std::f64::consts::FRAC_1_SQRT_2;
     let step = 5.0 / screen.scale();
-    let loops = [points];
-    let Some((low, high)) = extent(&loops, across) else { return };
+    let chain: Vec<_> = sides(points).collect();
+    let Some((low, high)) = extent(&chain, across) else { return };
     // Only the lines that cross the drawing area.
     let seen =
         [screen.rect.left_top(), screen.rect.right_top(), screen.rect.left_bottom(), screen.rect.right_bottom()];
@@ -239,7 +244,7 @@ fn hatch(painter: &Painter, screen: &Screen, points: Vec<Point>, stroke: Stroke)
     let high = levels.iter().copied().fold(f64::NEG_INFINITY, f64::max).min(high);
     let (first, last) = ((low / step).ceil() as i64, (high / step).floor() as i64);
     for k in first..=last {
-        for [a, b] in chords(&loops, across, k as f64 * step) {
+        for [a, b] in chords(&chain, across, k as f64 * step) {
             lines::segment(painter, [screen.screen_from_section(a), screen.screen_from_section(b)], stroke);
         }
     }

@@ -6,14 +6,16 @@ use egui::{CursorIcon, Id, Key, Modifiers, PointerButton, Pos2, Response, Ui};
 use crate::analysis;
 use crate::app::Edit;
 use crate::geom::Point;
-use crate::gui::{Proposal, Selected, View};
+use crate::gui::{Proposal, Stage, View, plating};
 
+use super::anchors::grid_snapper;
 use super::bob::Dial;
 use super::drag::{Drag, Feedback, Held};
 use super::keys::focus_id;
+use super::pen;
 use super::scene::Scene;
-use super::snap::Snapper;
-use super::target::{Target, place_words};
+use super::target::Target;
+use super::words::place_words;
 
 /// What the pointer does in this frame.
 #[derive(Clone, Debug, Default)]
@@ -51,6 +53,12 @@ pub fn zoom(ui: &Ui, canvas: &Response, scene: &Scene, view: &mut View) -> bool 
 pub fn point(ui: &Ui, canvas: &Response, scene: &Scene, view: &mut View, out: &mut Vec<Proposal>) -> Pointing {
     let keys = ui.input(|i| i.modifiers);
     let drag = ui.data(|d| d.get_temp::<Drag>(canvas.id));
+    if drag.is_none()
+        && let Some(pen) = view.pen
+        && let Some(pointing) = pen::draw(ui, canvas, scene, pen, view, out)
+    {
+        return pointing;
+    }
     let drag = match drag {
         Some(drag) => go_on(ui, canvas, scene, drag, out),
         None => begin(ui, canvas, scene, view, out),
@@ -129,21 +137,31 @@ fn hover(
     } else if let Some(target) = target {
         ui.set_cursor_icon(match target {
             Target::StillLevel => CursorIcon::ResizeVertical,
-            Target::Edge(_) => CursorIcon::PointingHand,
+            Target::Edge(_) | Target::Plate(_) => CursorIcon::PointingHand,
             _ => CursorIcon::Grab,
         });
     }
     let what = match target {
-        Some(Target::Vertex(_) | Target::ObstacleVertex(..) | Target::Point(_) | Target::MomentPoint) | None => {
-            target.map(|t| t.words(scene).split(", s ").next().unwrap_or_default().to_lowercase())
-        }
+        Some(
+            Target::Vertex(_)
+            | Target::ObstacleVertex(..)
+            | Target::PlatePoint(..)
+            | Target::Compartment(_)
+            | Target::Sump
+            | Target::Point(_)
+            | Target::MomentPoint,
+        )
+        | None => target.map(|t| t.words(scene).split(", s ").next().unwrap_or_default().to_lowercase()),
         Some(t) => Some(t.words(scene)),
     };
+    let stage = scene.case().map(|case| view.stage_of(case)).unwrap_or_default();
     let on = what.map(|w| format!("on {w}")).unwrap_or_default();
-    view.status = status(&status(&place_words(p, scene), &pressure_words(p, scene)), &on);
+    view.status = status(&status(&place_words(p, scene), &pressure_words(p, scene, stage)), &on);
     if canvas.double_clicked() {
-        if let Some(Target::Edge(i) | Target::Middle(i)) = target {
-            out.push(Proposal::Edit(split(scene, i, pos, keys)));
+        match target {
+            Some(Target::Edge(i) | Target::Middle(i)) => out.push(Proposal::Edit(split(scene, i, pos, keys))),
+            Some(Target::Plate(i)) => out.extend(split_plate(scene, i, pos, keys).map(Proposal::Edit)),
+            _ => {}
         }
     } else if canvas.clicked() {
         choose(ui, canvas, view, target);
@@ -153,10 +171,16 @@ fn hover(
 
 /// Splits an edge where the pointer is, at a round place where there is one.
 pub fn split(scene: &Scene, edge_idx: usize, pos: Pos2, keys: Modifiers) -> Edit {
-    let snapper = Snapper { screen: &scene.screen, units: scene.units, anchors: Vec::new(), is_on: !keys.ctrl };
-    let wish = snapper.point(scene.screen.section_from_screen(pos)).at;
+    let wish = grid_snapper(scene, keys).point(scene.screen.section_from_screen(pos)).at;
     let edge = scene.edges[edge_idx];
     Edit::SplitEdge(edge_idx, edge.point_at(edge.nearest(wish).0))
+}
+
+/// Adds a corner to a plate where the pointer is, at a round place where there is one.
+pub fn split_plate(scene: &Scene, plate_idx: usize, pos: Pos2, keys: Modifiers) -> Option<Edit> {
+    let wish = grid_snapper(scene, keys).point(scene.screen.section_from_screen(pos)).at;
+    let (plate, _) = plating::with_corner(scene.study.section.plates.get(plate_idx)?, wish)?;
+    Some(Edit::Plate(plate_idx, Box::new(plate)))
 }
 
 fn choose(ui: &Ui, canvas: &Response, view: &mut View, target: Option<Target>) {
@@ -171,31 +195,22 @@ fn held_target(drag: &Drag) -> Option<Target> {
         Held::Place(target, _) => Some(target),
         Held::Edge(i, ..) => Some(Target::Edge(i)),
         Held::Middle(i, _) => Some(Target::Middle(i)),
+        Held::Plate(ref hold) => Some(hold.target()),
         Held::StillLevel(_) => Some(Target::StillLevel),
         Held::Bob { .. } => Some(Target::Bob),
     }
 }
 
 /// Gage pressure under the pointer, where there is liquid.
-fn pressure_words(p: Point, scene: &Scene) -> String {
-    let pressure = scene.judged.and_then(|(study, results)| {
-        analysis::gage_pressure_at(study, results.cases.get(scene.case_idx)?, analysis::Bound::Settled, p)
-    });
+fn pressure_words(p: Point, scene: &Scene, stage: Stage) -> String {
+    let Stage::Under(bound) = stage else { return String::new() };
+    let pressure = scene
+        .judged
+        .and_then(|(study, results)| analysis::gage_pressure_at(study, results.cases.get(scene.case_idx)?, bound, p));
     pressure.map_or_else(String::new, |p| p.text(scene.units))
 }
 
-fn status(words: &str, reason: &str) -> String {
+/// Words and the reason after them; either may be empty.
+pub fn status(words: &str, reason: &str) -> String {
     [words, reason].into_iter().filter(|w| !w.is_empty()).collect::<Vec<_>>().join("   ")
-}
-
-/// What `selected` stands for as a thing on the board.
-pub fn target_of(selected: Selected) -> Target {
-    match selected {
-        Selected::Edge(i) => Target::Edge(i),
-        Selected::Vertex(i) => Target::Vertex(i),
-        Selected::Obstacle(i) => Target::Obstacle(i),
-        Selected::ObstacleVertex(i, j) => Target::ObstacleVertex(i, j),
-        Selected::Point(i) => Target::Point(i),
-        Selected::Bob => Target::Bob,
-    }
 }

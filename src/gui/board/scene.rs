@@ -7,13 +7,13 @@ use egui::{Id, Pos2, Rect, Ui};
 use crate::analysis::{CaseResult, Results};
 use crate::app::{Derived, Document};
 use crate::geom::{Edge, Point, Vec2};
-use crate::gui::{Camera, View};
+use crate::gui::{Camera, Selected, View};
 use crate::section::EdgeKind;
 use crate::study::{Study, ValidStudy};
 use crate::units::UnitSystem;
 
 use super::bob::{Dial, Hanging};
-use super::model::{BoardModel, Detail};
+use super::model::{BoardModel, Detail, Shown};
 use super::screen::Screen;
 
 /// Largest distance of a drawn arc from the true one, points: a quarter still shows its corners.
@@ -139,21 +139,29 @@ fn other_cases(results: &Results, case_idx: usize) -> Vec<(usize, Vec2)> {
     numbered.filter(|(i, _)| *i != case_idx).map(|(i, c)| (i + 1, c.gravity.vec)).collect()
 }
 
-/// The model of a judged study, kept until study, case, scale or verdict change. The results are kept with it, so
+/// The model of a judged study, kept until study, scale or what is shown change. The results are kept with it, so
 /// that their address stays theirs.
 #[derive(Clone)]
 struct Cached {
     study: Arc<ValidStudy>,
     results: Arc<Results>,
-    case_idx: usize,
-    open: Option<usize>,
+    shown: Shown,
     detail: Detail,
     model: Arc<BoardModel>,
 }
 
 fn cached_model(ui: &Ui, id: Id, doc: &Document, view: &View, screen: &Screen) -> Arc<BoardModel> {
     let detail = Detail { sagitta_m: SAGITTA / screen.scale(), units: view.units };
-    let open = view.open_verdict.filter(|(case, _)| *case == view.case_idx).map(|(_, verdict)| verdict);
+    let case = match doc.derived() {
+        Derived::Judged { results, .. } => results.cases.get(view.case_idx),
+        Derived::Faulty { .. } => None,
+    };
+    let shown = Shown {
+        case_idx: view.case_idx,
+        open_verdict: view.open_verdict.filter(|(case, _)| *case == view.case_idx).map(|(_, verdict)| verdict),
+        stage: case.map(|case| view.stage_of(case)).unwrap_or_default(),
+        plate_idx: view.selected.and_then(Selected::plate),
+    };
     let (study, results) = match doc.derived() {
         Derived::Judged { study, results } => (study, results),
         Derived::Faulty { problems, stale } => {
@@ -164,19 +172,12 @@ fn cached_model(ui: &Ui, id: Id, doc: &Document, view: &View, screen: &Screen) -
     if let Some(cached) = ui.data(|d| d.get_temp::<Cached>(id))
         && Arc::ptr_eq(&cached.results, results)
         && Arc::ptr_eq(&cached.study, study)
-        && (cached.case_idx, cached.open, cached.detail) == (view.case_idx, open, detail)
+        && (cached.shown, cached.detail) == (shown, detail)
     {
         return cached.model;
     }
-    let model = Arc::new(BoardModel::judged(study, results, view.case_idx, open, detail));
-    let cached = Cached {
-        study: study.clone(),
-        results: results.clone(),
-        case_idx: view.case_idx,
-        open,
-        detail,
-        model: model.clone(),
-    };
+    let model = Arc::new(BoardModel::judged(study, results, shown, detail));
+    let cached = Cached { study: study.clone(), results: results.clone(), shown, detail, model: model.clone() };
     ui.data_mut(|d| d.insert_temp(id, cached));
     model
 }

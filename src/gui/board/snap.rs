@@ -1,9 +1,10 @@
-//! Snapping: a dragged point goes to other vertices' s and z, to the grid, else to a round number. A bent edge
-//! goes straight, to a half circle, tangent to its neighbours, else to a round radius.
+//! Snapping: a dragged point goes to other vertices' s and z, to the grid, else to a round number; the end of a plate
+//! goes onto walls. A bent edge goes straight, to a half circle, tangent to its neighbours, else to a round radius.
 //!
 //! Knows no gesture: it turns a wish into a place, with the reason in words.
 
 use crate::geom::{Edge, Point, Vec2, cross};
+use crate::gui::plating::Line;
 use crate::units::{Measure, Quantity, UnitSystem};
 
 use super::rulers;
@@ -11,6 +12,12 @@ use super::screen::{Screen, round_step};
 
 /// How near a point must be to snap to another one's s or z, points.
 const ALIGN_REACH: f64 = 6.0;
+
+/// How near the end of a plate must be to a corner or a line to go there, points.
+const STAND_REACH: f64 = 8.0;
+
+/// What a point that shares another one's s, or z, is called.
+const ALIGNED_WORDS: [&str; 2] = ["plumb with", "level with"];
 
 /// How near it must be to a line of the grid.
 const GRID_REACH: f64 = 4.0;
@@ -70,11 +77,11 @@ impl Snapper<'_> {
         let mut out = Snapped { at: p, aligned_with: Vec::new(), reason: String::new() };
         let mut reasons = Vec::new();
         let mut is_on_grid = false;
-        for (axis, found, words) in [(0, plumb, "plumb with"), (1, level, "level with")] {
+        for (axis, found) in [(0, plumb), (1, level)] {
             if let Some(anchor) = found {
                 out.at[axis] = anchor.at[axis];
                 out.aligned_with.push(anchor.at);
-                reasons.push(format!("{words} {}", anchor.name));
+                reasons.push(format!("{} {}", ALIGNED_WORDS[axis], anchor.name));
             } else {
                 let (value, on_grid) = self.round(p[axis]);
                 out.at[axis] = value;
@@ -88,15 +95,63 @@ impl Snapper<'_> {
         out
     }
 
-    /// A single height that wants to be at `z`, snapped as a point's z is.
-    pub fn level(&self, z: f64) -> (f64, String) {
+    /// A single coordinate that wants to be `v` (axis 0: s, axis 1: z), snapped as a point's is; and the point that it
+    /// aligned with.
+    pub fn coordinate(&self, axis: usize, v: f64) -> (f64, Option<Point>, String) {
         if !self.is_on {
-            return (z, String::new());
+            return (v, None, String::new());
         }
-        match (self.aligned(1, z), self.round(z)) {
-            (Some(anchor), _) => (anchor.at.y, format!("level with {}", anchor.name)),
-            (None, (value, true)) => (value, "on grid".to_owned()),
-            (None, (value, false)) => (value, String::new()),
+        match (self.aligned(axis, v), self.round(v)) {
+            (Some(anchor), _) => {
+                (anchor.at[axis], Some(anchor.at), format!("{} {}", ALIGNED_WORDS[axis], anchor.name))
+            }
+            (None, (value, true)) => (value, None, "on grid".to_owned()),
+            (None, (value, false)) => (value, None, String::new()),
+        }
+    }
+
+    /// A distance along a line that wants to be `v`: a round one.
+    pub fn distance(&self, v: f64) -> (f64, String) {
+        if !self.is_on {
+            return (v, String::new());
+        }
+        let (value, is_on_grid) = self.round(v);
+        (value, if is_on_grid { "at a round distance".to_owned() } else { String::new() })
+    }
+
+    /// Where the end of a plate goes that wants to be at `p`: to a corner, else onto a line, there in line with other
+    /// corners or at a round place, else where any point goes. It does not go to the places `but`.
+    pub fn onto(&self, p: Point, lines: &[Line], but: &[Point]) -> Snapped {
+        let reach_m = STAND_REACH / self.screen.scale();
+        let placed = |at, aligned_with, reason| Snapped { at, aligned_with, reason };
+        if !self.is_on {
+            return self.point(p);
+        }
+        let off = |a: &&Anchor| (a.at - p).norm();
+        let corners = self.anchors.iter().filter(|a| off(a) <= reach_m && !but.contains(&a.at));
+        if let Some(corner) = corners.min_by(|a, b| off(a).total_cmp(&off(b))) {
+            return placed(corner.at, Vec::new(), format!("at {}", corner.name));
+        }
+        let near = lines.iter().map(|line| (line, line.edge.nearest(p)));
+        let nearest = near.min_by(|a, b| a.1.1.total_cmp(&b.1.1)).filter(|(_, (_, off))| *off <= reach_m);
+        let Some((line, (t, _))) = nearest else { return self.point(p) };
+        // First along the axis along which the line runs.
+        let tangent = line.edge.tangent_at(t);
+        let axes = if tangent.x.abs() >= tangent.y.abs() { [0, 1] } else { [1, 0] };
+        for axis in axes {
+            if let Some(anchor) = self.aligned(axis, p[axis])
+                && let Some(at) = place_on(&line.edge, axis, anchor.at[axis], p, 2.0 * reach_m)
+                && !but.contains(&at)
+            {
+                let reason = format!("on {}, {} {}", line.name, ALIGNED_WORDS[axis], anchor.name);
+                return placed(at, vec![anchor.at], reason);
+            }
+        }
+        let (round, is_on_grid) = self.round(p[axes[0]]);
+        let grid = if is_on_grid { ", on grid" } else { "" };
+        match place_on(&line.edge, axes[0], round, p, 2.0 * reach_m) {
+            Some(at) => placed(at, Vec::new(), format!("on {}{grid}", line.name)),
+            None => placed(line.edge.point_at(t), Vec::new(), format!("on {}", line.name)),
         }
     }
 
@@ -173,6 +228,16 @@ pub fn tidy(v: f64) -> f64 {
     if tidied.is_finite() { tidied + 0.0 } else { v }
 }
 
+/// The place on the edge with this coordinate, near `p`.
+fn place_on(edge: &Edge, axis: usize, value: f64, p: Point, reach_m: f64) -> Option<Point> {
+    let direction = if axis == 0 { Vec2::x() } else { Vec2::y() };
+    let places = edge.crossings(direction, value).into_iter().map(|t| edge.point_at(t));
+    let nearest = places.min_by(|a, b| (a - p).norm().total_cmp(&(b - p).norm()));
+    let mut at = nearest.filter(|at| (at - p).norm() <= reach_m)?;
+    at[axis] = value;
+    Some(at)
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -207,6 +272,43 @@ mod tests {
         }
         let free = Point::new(0.5401, 0.8302);
         assert_eq!(snapper(&screen, false).point(free).at, free, "with Ctrl nothing snaps");
+    }
+
+    #[test]
+    fn the_end_of_a_plate_goes_to_corners_and_onto_lines() {
+        let screen = screen();
+        let line = |edge, name: &str| Line { edge, name: name.to_owned() };
+        let lines = [
+            line(Edge::line(Point::new(-2.0, 0.0), Point::new(2.0, 0.0)), "floor"),
+            line(Edge::line(Point::new(2.0, 0.0), Point::new(1.0, 2.0)), "right wall"),
+            line(Edge::through(Point::new(1.0, 2.0), Point::new(0.0, 2.5), Point::new(-1.0, 2.0)), "roof"),
+        ];
+        let snap = snapper(&screen, true);
+        for (wish, want, reason) in [
+            ((0.144, 0.02), (0.14, 0.0), "on floor"),
+            ((0.298, -0.03), (0.3, 0.0), "on floor, on grid"),
+            ((0.54, 0.01), (0.523, 0.0), "on floor, plumb with vertex 3"),
+            ((0.55, 1.78), (0.523, 1.76), "at vertex 3"),
+            // A slanted wall: a round height on it, or level with another vertex.
+            ((1.51, 0.948), (1.525, 0.95), "on right wall"),
+            ((1.60, 0.84), (1.5765, 0.847), "on right wall, level with vertex 5"),
+            // Too far from any line.
+            ((0.344, 0.256), (0.34, 0.26), ""),
+        ] {
+            let got = snap.onto(Point::new(wish.0, wish.1), &lines, &[]);
+            assert!(
+                (got.at - Point::new(want.0, want.1)).norm() < 1e-12,
+                "wish {wish:?}: {got:?}, expected {want:?}"
+            );
+            assert_eq!(got.reason, reason, "wish {wish:?}");
+        }
+        let on_roof = snap.onto(Point::new(0.201, 2.45), &lines, &[]);
+        let off = lines[2].edge.nearest(on_roof.at).1;
+        assert!(off < 1e-12 && on_roof.at.x == 0.2, "on the arc at a round s: {on_roof:?}, {off} m off");
+        let taken = [Point::new(0.523, 1.76)];
+        assert_ne!(snap.onto(Point::new(0.55, 1.78), &lines, &taken).at, taken[0], "its own other end");
+        let free = Point::new(0.1101, 0.0202);
+        assert_eq!(snapper(&screen, false).onto(free, &lines, &[]).at, free, "with Ctrl nothing snaps");
     }
 
     #[test]

@@ -36,15 +36,23 @@ pub fn right_of(up: Vec2) -> Vec2 {
     Vec2::new(up.y, -up.x)
 }
 
-/// The bands of the region inside `loops` (closed chains, even-odd: obstacles are loops too) between each level
-/// `up . p` and the next one; one band fewer than `levels`, which rise.
-pub fn bands(loops: &[Vec<Point>], up: Vec2, levels: &[f64]) -> Vec<Vec<Strip>> {
+/// A straight part of what bounds a region, in either sense.
+pub type Side = [Point; 2];
+
+/// The sides of a closed chain.
+pub fn sides(points: &[Point]) -> impl Iterator<Item = Side> {
+    points.iter().zip(points.iter().cycle().skip(1)).map(|(a, b)| [*a, *b])
+}
+
+/// The bands of the region inside `sides` (even-odd: obstacles and plates are sides too; sides along the levels may be
+/// left out) between each level `up . p` and the next one; one band fewer than `levels`, which rise.
+pub fn bands(sides: &[Side], up: Vec2, levels: &[f64]) -> Vec<Vec<Strip>> {
     let n_bands = levels.len().saturating_sub(1);
     let mut out: Vec<Vec<Strip>> = vec![Vec::new(); n_bands];
     if n_bands == 0 {
         return out;
     }
-    let mut flights = flights(loops, up);
+    let mut flights = flights(sides, up);
     flights.sort_by(|a, b| a.low.v.total_cmp(&b.low.v));
     let (first, last) = (levels[0], levels[n_bands]);
     let mut cuts: Vec<f64> = flights
@@ -94,32 +102,29 @@ pub fn bands(loops: &[Vec<Point>], up: Vec2, levels: &[f64]) -> Vec<Vec<Strip>> 
     out
 }
 
-/// The pieces of the level `up . p = level` inside `loops`, from left to right.
-pub fn chords(loops: &[Vec<Point>], up: Vec2, level: f64) -> Vec<[Point; 2]> {
+/// The pieces of the level `up . p = level` inside `sides`, from left to right.
+pub fn chords(sides: &[Side], up: Vec2, level: f64) -> Vec<[Point; 2]> {
     let mut crossings: Vec<f64> =
-        flights(loops, up).iter().filter(|f| f.low.v <= level && level < f.high.v).map(|f| f.u_at(level)).collect();
+        flights(sides, up).iter().filter(|f| f.low.v <= level && level < f.high.v).map(|f| f.u_at(level)).collect();
     crossings.sort_by(f64::total_cmp);
     let right = right_of(up);
     let place = |u: f64| Point::from(right * u + up * level);
     crossings.chunks_exact(2).map(|pair| [place(pair[0]), place(pair[1])]).collect()
 }
 
-/// Lowest and highest level that the loops reach; none without points.
-pub fn extent(loops: &[Vec<Point>], up: Vec2) -> Option<(f64, f64)> {
-    loops.iter().flatten().map(|p| up.dot(&p.coords)).fold(None, |found, v| match found {
+/// Lowest and highest level that the sides reach; none without sides.
+pub fn extent(sides: &[Side], up: Vec2) -> Option<(f64, f64)> {
+    sides.iter().flatten().map(|p| up.dot(&p.coords)).fold(None, |found, v| match found {
         None => Some((v, v)),
         Some((low, high)) => Some((f64::min(low, v), f64::max(high, v))),
     })
 }
 
-/// Whether `p` lies inside a closed chain.
-pub fn contain(points: &[Point], p: Point) -> bool {
-    let up = Vec2::new(0.0, 1.0);
-    let right_of_p = flights(&[points.to_vec()], up)
-        .iter()
-        .filter(|f| f.low.v <= p.y && p.y < f.high.v && f.u_at(p.y) > p.x)
-        .count();
-    right_of_p % 2 == 1
+/// Whether `p` lies inside the sides, as they are seen along `up`.
+pub fn contain(sides: &[Side], up: Vec2, p: Point) -> bool {
+    let (u, v) = (right_of(up).dot(&p.coords), up.dot(&p.coords));
+    let flights = flights(sides, up);
+    flights.iter().filter(|f| f.low.v <= v && v < f.high.v && f.u_at(v) > u).count() % 2 == 1
 }
 
 /// A vertex along and across the levels.
@@ -149,22 +154,18 @@ impl Flight {
     }
 }
 
-fn flights(loops: &[Vec<Point>], up: Vec2) -> Vec<Flight> {
+fn flights(sides: &[Side], up: Vec2) -> Vec<Flight> {
     let right = right_of(up);
-    let uv = |p: &Point| Uv { u: right.dot(&p.coords), v: up.dot(&p.coords) };
-    let mut out = Vec::with_capacity(loops.iter().map(Vec::len).sum());
-    for points in loops {
-        let Some(mut from) = points.last().map(uv) else { continue };
-        for to in points.iter().map(uv) {
-            if from.v < to.v {
-                out.push(Flight { low: from, high: to });
-            } else if to.v < from.v {
-                out.push(Flight { low: to, high: from });
-            }
-            from = to;
+    let uv = |p: Point| Uv { u: right.dot(&p.coords), v: up.dot(&p.coords) };
+    let rising = sides.iter().filter_map(|&[from, to]| {
+        let (from, to) = (uv(from), uv(to));
+        match from.v.total_cmp(&to.v) {
+            std::cmp::Ordering::Less => Some(Flight { low: from, high: to }),
+            std::cmp::Ordering::Greater => Some(Flight { low: to, high: from }),
+            std::cmp::Ordering::Equal => None,
         }
-    }
-    out
+    });
+    rising.collect()
 }
 
 #[cfg(test)]
@@ -176,6 +177,10 @@ mod tests {
         points.iter().map(|&(s, z)| Point::new(s, z)).collect()
     }
 
+    fn closed(loops: &[Vec<Point>]) -> Vec<Side> {
+        loops.iter().flat_map(|points| sides(points)).collect()
+    }
+
     fn total(bands: &[Vec<Strip>]) -> f64 {
         bands.iter().flatten().map(Strip::area).sum()
     }
@@ -183,7 +188,7 @@ mod tests {
     #[test]
     fn a_square_is_cut_in_proportion() {
         let square = shape(&[(0.0, 0.0), (2.0, 0.0), (2.0, 2.0), (0.0, 2.0)]);
-        let got = bands(&[square], Vec2::new(0.0, 1.0), &[0.0, 0.5, 1.5, 3.0]);
+        let got = bands(&closed(&[square]), Vec2::new(0.0, 1.0), &[0.0, 0.5, 1.5, 3.0]);
         let areas: Vec<f64> = got.iter().map(|b| b.iter().map(Strip::area).sum()).collect();
         assert_eq!(areas, [1.0, 2.0, 1.0]);
         assert!(got.iter().all(|b| b.len() == 1), "one strip each: {got:?}");
@@ -195,14 +200,14 @@ mod tests {
         let trough =
             shape(&[(0.0, 0.0), (1.0, 0.0), (1.0, 1.0), (2.0, 1.0), (2.0, 0.0), (3.0, 0.0), (3.0, 3.0), (0.0, 3.0)]);
         let duct = shape(&[(1.0, 1.5), (1.0, 2.0), (2.0, 2.0), (2.0, 1.5)]);
-        let loops = [trough, duct];
+        let loops = closed(&[trough, duct]);
         let up = Vec2::new(0.0, 1.0);
         assert_eq!(chords(&loops, up, 0.5).len(), 2);
         assert_eq!(chords(&loops, up, 1.2).len(), 1);
         assert_eq!(chords(&loops, up, 1.7).len(), 2);
         let got = total(&bands(&loops, up, &[0.0, 2.5]));
         assert!((got - (3.0 * 2.5 - 1.0 - 0.5)).abs() < 1e-12, "{got}");
-        assert!(contain(&loops[0], Point::new(0.5, 0.5)) && !contain(&loops[0], Point::new(1.5, 0.5)));
+        assert!(contain(&loops, up, Point::new(0.5, 0.5)) && !contain(&loops, up, Point::new(1.5, 0.5)));
     }
 
     proptest! {
@@ -221,7 +226,7 @@ mod tests {
             }).collect();
             let want = crate::geom::Path::polygon(&points).signed_area();
             let up = Vec2::new(angle.sin(), angle.cos());
-            let loops = [points];
+            let loops = closed(&[points]);
             let (low, high) = extent(&loops, up).unwrap();
             let levels: Vec<f64> =
                 (0..=n_cuts).map(|i| low + (high - low) * i as f64 / n_cuts as f64).collect();

@@ -2,10 +2,15 @@
 //!
 //! Knows no verdict and no case, save the highest fill that holds.
 
+mod compartments;
 mod fill;
+mod flow;
+mod limits;
 mod liquid;
 mod mouths;
+mod openings;
 mod outline;
+mod plates;
 mod records;
 mod scenario;
 mod width;
@@ -33,10 +38,13 @@ type Part = (&'static str, fn(&mut Ui, &mut Desk, &mut TankColumn));
 const PARTS: &[Part] = &[
     ("Liquid", liquid::liquid_ui),
     ("Outline", outline::outline_ui),
+    ("Plates", plates::plates_ui),
+    ("Compartments", compartments::compartments_ui),
     ("Mouths", mouths::mouths_ui),
     ("Obstacles", outline::obstacles_ui),
     ("Width law", width::width_ui),
     ("Gas and air", liquid::gas_ui),
+    ("Sump and openings", flow::flow_ui),
     ("Requirement records", records::records_ui),
     ("Named points", mouths::points_ui),
     ("Scenario", scenario::scenario_ui),
@@ -103,7 +111,9 @@ fn headings_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, column: &mut TankColumn
 fn short(title: &str) -> &str {
     match title {
         "Width law" => "Width",
+        "Compartments" => "Compart.",
         "Gas and air" => "Gas",
+        "Sump and openings" => "Sump",
         "Requirement records" => "Records",
         "Named points" => "Points",
         title => title,

@@ -22,8 +22,10 @@ use super::problems::{self, FileTrouble};
 use super::settings::Settings;
 use super::tank::TankColumn;
 use super::verdicts::VerdictColumn;
-use super::{Command, Desk, Look, Proposal, Selected, View};
-use super::{board, case_head, commands, header, loads, look, plots, starter, status, strip, tank, verdicts};
+use super::{Command, Desk, Look, Pen, Proposal, Selected, Stage, View};
+use super::{
+    board, case_head, commands, header, loads, look, plating, plots, starter, status, strip, tank, verdicts,
+};
 
 use filing::{Intent, example};
 use opened::OpenVerdict;
@@ -135,8 +137,16 @@ impl Window {
             Command::Quit => self.intend(ctx, Intent::Close),
             Command::Undo => self.doc.undo(),
             Command::Redo => self.doc.redo(),
+            Command::DrawPlate => self.view.pen = if self.view.pen.is_some() { None } else { Some(Pen::default()) },
+            Command::DuplicatePlate => self.duplicate_plate(),
+            Command::SpacePlates => {
+                if let Some(plates) = plating::equally_spaced(&self.doc.study().section) {
+                    self.doc.edit(&Edit::Plates(plates));
+                }
+            }
             Command::DeleteSelected => self.delete_selected(),
             Command::FitBoard => self.view.camera = None,
+            Command::NextStage => self.show_next_stage(),
             Command::ResetSizes => self.settings.sizes = Default::default(),
             Command::Units(units) => {
                 self.view.units = units;
@@ -267,19 +277,7 @@ impl Window {
     /// Nothing chosen may outlive what it points to.
     fn keep_view_valid(&mut self) {
         let study = self.doc.study();
-        let n_edges = study.section.outline.len();
-        let is_there = match self.view.selected {
-            Some(Selected::Edge(i) | Selected::Vertex(i)) => i < n_edges,
-            Some(Selected::Obstacle(i)) => i < study.section.obstacles.len(),
-            Some(Selected::ObstacleVertex(i, v)) => {
-                study.section.obstacles.get(i).is_some_and(|o| v < o.vertices.len())
-            }
-            Some(Selected::Point(i)) => i < study.points.len(),
-            Some(Selected::Bob) | None => true,
-        };
-        if !is_there {
-            self.view.selected = None;
-        }
+        self.view.selected = self.view.selected.filter(|selected| selected.is_in(study));
         self.view.case_idx = self.view.case_idx.min(study.cases.len().saturating_sub(1));
         self.keep_verdict_open();
     }
@@ -325,19 +323,27 @@ impl Window {
     }
 
     fn delete_selected(&mut self) {
-        match self.view.selected {
-            Some(Selected::Vertex(i)) => self.doc.edit(&Edit::RemoveVertex(i)),
-            Some(Selected::Obstacle(i)) => self.doc.edit(&Edit::RemoveObstacle(i)),
-            Some(Selected::Point(i)) => {
-                let mut points = self.doc.study().points.clone();
-                if i < points.len() {
-                    points.remove(i);
-                    self.doc.edit(&Edit::Points(points));
-                }
-            }
-            _ => return,
+        if let Some(edit) = self.view.selected.and_then(|selected| selected.removal(self.doc.study())) {
+            self.doc.edit(&edit);
+            self.view.selected = None;
         }
-        self.view.selected = None;
+    }
+
+    fn show_next_stage(&mut self) {
+        let Derived::Judged { results, .. } = self.doc.derived() else { return };
+        let Some(case) = results.cases.get(self.view.case_idx) else { return };
+        let shown = self.view.stage_of(case);
+        let following = Stage::of(case).skip_while(|stage| *stage != shown).nth(1);
+        self.view.stage = following.or_else(|| Stage::of(case).next());
+    }
+
+    fn duplicate_plate(&mut self) {
+        let section = &self.doc.study().section;
+        let copy = self.view.selected.and_then(Selected::plate).and_then(|i| plating::copied(section, i));
+        if let Some(copy) = copy {
+            self.view.selected = Some(Selected::Plate(section.plates.len()));
+            self.doc.edit(&Edit::AddPlate(Box::new(copy)));
+        }
     }
 
     fn add_case(&mut self, case: LoadCase) {

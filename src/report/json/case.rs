@@ -2,16 +2,14 @@
 
 use serde::Serialize;
 
-use crate::analysis::{CaseResult, EdgeLoad, PointPressure, Pool, RoofContact, Settled};
+use crate::analysis::{CaseResult, Pour, Settled};
 use crate::cases::LoadCase;
-use crate::geom::Vec2;
-use crate::problem::Place;
-
 use crate::units::UnitSystem;
 
 use super::super::Report;
+use super::state::State;
 use super::verdict::VerdictRow;
-use super::{Num, Piece, coordinates, num};
+use super::{Num, num};
 
 #[derive(Clone, Debug, Serialize)]
 pub(super) struct Case {
@@ -22,9 +20,15 @@ pub(super) struct Case {
     accel_z_m_per_s2: Num,
     attitude_rad: Num,
     onset_s: Num,
+    duration_s: Num,
+    release: bool,
     effective_gravity: Gravity,
-    settled: Option<SettledState>,
-    unsettled: Option<String>,
+    settled: Option<State>,
+    sealed: Option<State>,
+    released: Option<State>,
+    missing: Vec<Missing>,
+    pours: Vec<PourRow>,
+    trapped: Vec<TrappedRow>,
     verdicts: Vec<VerdictRow>,
     absent: Vec<AbsentRow>,
 }
@@ -32,6 +36,14 @@ pub(super) struct Case {
 impl Case {
     pub(super) fn new(report: &Report, input: &LoadCase, result: &CaseResult) -> Case {
         let gravity = &result.gravity;
+        let mut missing = vec![];
+        let mut state = |name, found: Option<&Result<Settled, String>>| match found? {
+            Ok(settled) => Some(State::new(report, settled)),
+            Err(reason) => {
+                missing.push(Missing { state: name, reason: reason.clone() });
+                None
+            }
+        };
         Case {
             name: result.name.clone(),
             note: input.note.clone(),
@@ -40,13 +52,25 @@ impl Case {
             accel_z_m_per_s2: num(result.accel.y),
             attitude_rad: num(input.attitude.angle_rad()),
             onset_s: input.onset_s.and_then(num),
+            duration_s: input.duration_s.and_then(num),
+            release: input.release,
             effective_gravity: Gravity {
                 s_m_per_s2: num(gravity.vec.x),
                 z_m_per_s2: num(gravity.vec.y),
                 magnitude_m_per_s2: num(gravity.magnitude),
+                slope: gravity.slope.and_then(num),
+                tilt_rad: gravity.tilt_rad.and_then(num),
             },
-            settled: result.settled.as_ref().ok().map(|settled| SettledState::new(report, result, settled)),
-            unsettled: result.settled.as_ref().err().cloned(),
+            settled: state("settled", Some(&result.settled)),
+            sealed: state("sealed", result.sealed.as_ref()),
+            released: state("released", result.released.as_ref()),
+            missing,
+            pours: result.pours.iter().map(|pour| PourRow::new(report, pour)).collect(),
+            trapped: result
+                .trapped
+                .iter()
+                .map(|t| TrappedRow { cell: report.cell_name(t.cell_idx), volume_m3: num(t.volume_m3) })
+                .collect(),
             verdicts: result.verdicts.iter().map(|v| VerdictRow::new(report, result, v)).collect(),
             absent: result
                 .absent
@@ -66,172 +90,41 @@ struct Gravity {
     s_m_per_s2: Num,
     z_m_per_s2: Num,
     magnitude_m_per_s2: Num,
-}
-
-#[derive(Clone, Debug, Serialize)]
-struct SettledState {
-    volume_m3: Num,
-    spilled_m3: Num,
-    n_pools: usize,
-    pools: Vec<PoolRow>,
     slope: Num,
     tilt_rad: Num,
-    centroid_s_m: Num,
-    centroid_z_m: Num,
-    highest_wetted_s_m: Num,
-    highest_wetted_z_m: Num,
-    peak_gage_pa: Num,
-    peak_place: String,
-    peak_s_m: Num,
-    peak_z_m: Num,
-    lowest_abs_pa: Num,
-    edges: Vec<EdgeRow>,
-    sides: Load,
-    total: Load,
-    points: Vec<PointRow>,
-    roof: Option<Roof>,
-}
-
-impl SettledState {
-    fn new(report: &Report, case: &CaseResult, settled: &Settled) -> SettledState {
-        let (centroid_s_m, centroid_z_m) = coordinates(Some(settled.centroid));
-        let (highest_wetted_s_m, highest_wetted_z_m) = coordinates(Some(settled.highest_wetted));
-        let (peak_s_m, peak_z_m) = coordinates(Some(settled.peak_at));
-        SettledState {
-            volume_m3: num(settled.volume_m3),
-            spilled_m3: num(settled.spilled_m3),
-            n_pools: settled.pools.len(),
-            pools: settled.pools.iter().map(PoolRow::new).collect(),
-            slope: case.gravity.slope.and_then(num),
-            tilt_rad: case.gravity.tilt_rad.and_then(num),
-            centroid_s_m,
-            centroid_z_m,
-            highest_wetted_s_m,
-            highest_wetted_z_m,
-            peak_gage_pa: num(settled.peak_pa),
-            peak_place: report.place_words(&settled.peak_place),
-            peak_s_m,
-            peak_z_m,
-            lowest_abs_pa: num(settled.lowest_abs_pa),
-            edges: settled.edges.iter().map(EdgeRow::new).collect(),
-            sides: Load::new(settled.sides_force_n, settled.sides_moment_n_m),
-            total: Load::new(settled.total_force_n, settled.total_moment_n_m),
-            points: settled.points.iter().map(PointRow::new).collect(),
-            roof: settled.roof.as_ref().map(|roof| Roof::new(report, roof)),
-        }
-    }
 }
 
 #[derive(Clone, Debug, Serialize)]
-struct PoolRow {
-    volume_m3: Num,
-    level_m: Num,
-    offset_m: Num,
-    centroid_s_m: Num,
-    centroid_z_m: Num,
-    deepest_s_m: Num,
-    deepest_z_m: Num,
-    surface: Vec<Piece>,
-}
-
-impl PoolRow {
-    fn new(pool: &Pool) -> PoolRow {
-        let (centroid_s_m, centroid_z_m) = coordinates(Some(pool.centroid));
-        let (deepest_s_m, deepest_z_m) = coordinates(Some(pool.deepest));
-        PoolRow {
-            volume_m3: num(pool.volume_m3),
-            level_m: num(pool.level_m),
-            offset_m: pool.offset_m.and_then(num),
-            centroid_s_m,
-            centroid_z_m,
-            deepest_s_m,
-            deepest_z_m,
-            surface: pool.surface.iter().map(Piece::new).collect(),
-        }
-    }
+struct Missing {
+    state: &'static str,
+    reason: String,
 }
 
 #[derive(Clone, Debug, Serialize)]
-struct Load {
-    force_s_n: Num,
-    force_z_n: Num,
-    moment_n_m: Num,
-}
-
-impl Load {
-    fn new(force_n: Vec2, moment_n_m: f64) -> Load {
-        Load { force_s_n: num(force_n.x), force_z_n: num(force_n.y), moment_n_m: num(moment_n_m) }
-    }
-}
-
-#[derive(Clone, Debug, Serialize)]
-struct EdgeRow {
-    name: String,
-    is_wall: bool,
-    wetted_length_m: Num,
-    #[serde(flatten)]
-    load: Load,
-    acts_at_s_m: Num,
-    acts_at_z_m: Num,
-    peak_gage_pa: Num,
-    peak_s_m: Num,
-    peak_z_m: Num,
-}
-
-impl EdgeRow {
-    fn new(edge: &EdgeLoad) -> EdgeRow {
-        let (acts_at_s_m, acts_at_z_m) = coordinates(edge.acts_at);
-        let (peak_s_m, peak_z_m) = coordinates(edge.peak.map(|(_, at)| at));
-        EdgeRow {
-            name: edge.name.clone(),
-            is_wall: edge.is_wall,
-            wetted_length_m: num(edge.wetted_length_m),
-            load: Load::new(edge.force_n, edge.moment_n_m),
-            acts_at_s_m,
-            acts_at_z_m,
-            peak_gage_pa: edge.peak.and_then(|(pa, _)| num(pa)),
-            peak_s_m,
-            peak_z_m,
-        }
-    }
-}
-
-#[derive(Clone, Debug, Serialize)]
-struct PointRow {
-    name: String,
+struct PourRow {
+    sill: String,
     s_m: Num,
     z_m: Num,
-    gage_pa: Num,
-    wet: bool,
+    to_right: bool,
+    volume_m3: Num,
 }
 
-impl PointRow {
-    fn new(point: &PointPressure) -> PointRow {
-        let (s_m, z_m) = coordinates(Some(point.at));
-        PointRow { name: point.name.clone(), s_m, z_m, gage_pa: num(point.gage_pa), wet: point.wet }
+impl PourRow {
+    fn new(report: &Report, pour: &Pour) -> PourRow {
+        PourRow {
+            sill: report.place_words(&pour.wall.place()),
+            s_m: num(pour.at.x),
+            z_m: num(pour.at.y),
+            to_right: pour.to_right,
+            volume_m3: num(pour.volume_m3),
+        }
     }
 }
 
 #[derive(Clone, Debug, Serialize)]
-struct Roof {
-    wetted_length_m: Num,
-    peak_gage_pa: Num,
-    peak_place: String,
-    peak_s_m: Num,
-    peak_z_m: Num,
-}
-
-impl Roof {
-    fn new(report: &Report, roof: &RoofContact) -> Roof {
-        let (peak_s_m, peak_z_m) = coordinates(Some(roof.at));
-        Roof {
-            wetted_length_m: num(roof.wetted_length_m),
-            peak_gage_pa: num(roof.peak_pa),
-            peak_place: report.place_words(&Place::Edge(roof.edge_idx)),
-            peak_s_m,
-            peak_z_m,
-        }
-    }
+struct TrappedRow {
+    cell: String,
+    volume_m3: Num,
 }
 
 #[derive(Clone, Debug, Serialize)]

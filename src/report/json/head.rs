@@ -5,7 +5,8 @@ use serde::Serialize;
 use crate::sources;
 use crate::study::Record;
 
-use super::super::{CAUTION, Counts, Report};
+use super::super::{CAUTION, Counts, Report, value_of};
+use super::parts::{CellRow, CompartmentRow, DrawnPlate};
 use super::{Num, Piece, num, source_key};
 
 #[derive(Clone, Debug, Serialize)]
@@ -21,6 +22,9 @@ pub(super) struct Judged {
     capacity_m3: Num,
     liquid: Liquid,
     still: Still,
+    cells: Vec<CellRow>,
+    compartments: Vec<CompartmentRow>,
+    plates: Vec<DrawnPlate>,
     records: Vec<RecordRow>,
     bibliography: Vec<Entry>,
     counts: Counts,
@@ -56,6 +60,9 @@ impl Judged {
                 highest_share: still.highest_share.and_then(num),
                 surface: still.surface.iter().map(Piece::new).collect(),
             },
+            cells: CellRow::all(report),
+            compartments: CompartmentRow::all(report),
+            plates: DrawnPlate::all(report),
             records: study.records.iter().map(RecordRow::new).collect(),
             bibliography: sources::all()
                 .filter(|(key, _)| report.verdicts().any(|v| v.source == *key))
@@ -94,9 +101,9 @@ struct Still {
 #[derive(Clone, Debug, Serialize)]
 struct RecordRow {
     title: String,
-    sense: &'static str,
+    sense: Option<&'static str>,
     limit: Num,
-    unit: &'static str,
+    unit: Option<&'static str>,
     clause: String,
     edition: String,
     origin: String,
@@ -105,12 +112,12 @@ struct RecordRow {
 
 impl RecordRow {
     fn new(record: &Record) -> RecordRow {
-        let limit = record.limit.measure();
+        let value = value_of(record);
         RecordRow {
             title: record.title.clone(),
-            sense: if record.limit.is_ceiling() { "at most" } else { "at least" },
-            limit: num(limit.si),
-            unit: limit.quantity.si_symbol(),
+            sense: value.map(|(sense, _)| sense),
+            limit: value.and_then(|(_, limit)| num(limit.si)),
+            unit: value.map(|(_, limit)| limit.quantity.si_symbol()),
             clause: record.clause.clone(),
             edition: record.edition.clone(),
             origin: record.origin.clone(),

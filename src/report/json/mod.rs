@@ -5,6 +5,9 @@
 
 mod case;
 mod head;
+mod loads;
+mod parts;
+mod state;
 mod verdict;
 
 use serde::Serialize;
@@ -194,12 +197,27 @@ mod tests {
     fn every_state_of_a_case_is_told() {
         let value = value();
         let [held, dropped] = [&value["cases"][0], &value["cases"][1]];
-        assert_eq!(held["settled"]["pools"].as_array().map(Vec::len), Some(1));
+        for state in ["settled", "sealed", "released"] {
+            let keys = |value: &Value| value.as_object().map(|map| map.keys().cloned().collect::<Vec<_>>());
+            assert_eq!(held[state]["n_pools"], 2, "{state}");
+            assert_eq!(keys(&held[state]), keys(&held["settled"]), "{state} has the keys of settled");
+        }
+        assert_eq!(held["sealed"]["plates"][0]["net_n"], 230.0);
+        assert_eq!(held["pours"][0]["sill"], "sill");
+        assert_eq!(held["trapped"][0]["cell"], "cell 2");
+        assert_eq!(held["settled"]["spills"][0]["mouth"], "rim");
+        assert_eq!(held["verdicts"][2]["bound"], "sealed");
+        assert_eq!(held["verdicts"][0]["bound"], Value::Null);
         assert_eq!(held["verdicts"][0]["note"], "lid is planned");
         assert_eq!(held["verdicts"][1]["unconfirmed_record"], "Tray wall");
         assert_eq!(held["absent"][0]["criterion"], "Roof contact");
         assert_eq!(dropped["settled"], Value::Null);
-        assert_eq!(dropped["unsettled"], "free fall: effective gravity is zero");
+        assert_eq!((&dropped["sealed"], &dropped["released"]), (&Value::Null, &Value::Null));
+        let missing = serde_json::json!([
+            { "state": "settled", "reason": "free fall: effective gravity is zero" },
+            { "state": "sealed", "reason": "free fall with openings shut, too" },
+        ]);
+        assert_eq!(dropped["missing"], missing);
         assert_eq!(dropped["verdicts"][0]["state"], "not judged");
         assert_eq!(dropped["verdicts"][0]["unit"], Value::Null);
     }

@@ -2,8 +2,7 @@
 
 use serde::Serialize;
 
-use crate::analysis::{CaseResult, Reach, Verdict};
-
+use crate::analysis::{Bound, CaseResult, Reach, Verdict};
 use crate::units::UnitSystem;
 
 use super::super::Report;
@@ -18,6 +17,7 @@ pub(super) struct VerdictRow {
     limit: Num,
     unit: Option<&'static str>,
     utilisation: Num,
+    bound: Option<&'static str>,
     place: String,
     at_s_m: Num,
     at_z_m: Num,
@@ -45,6 +45,7 @@ impl VerdictRow {
             limit: verdict.limit.and_then(|m| num(m.si)),
             unit: verdict.demand.or(verdict.limit).map(|m| m.quantity.si_symbol()),
             utilisation: verdict.utilisation.and_then(num),
+            bound: verdict.bound.map(Bound::word),
             place: verdict.place_words.clone(),
             at_s_m,
             at_z_m,

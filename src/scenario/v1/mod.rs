@@ -109,6 +109,7 @@ impl From<Scenario> for Study {
             compartments: file.compartments.map(study::Compartment::from),
             sump: file.sump.map(Point::from),
             discharge_coefficient: file.discharge_coefficient.map_or(study::DISCHARGE_COEFFICIENT, Num::si),
+            materials: Vec::new(),
             cases: file.cases.map(LoadCase::from),
             points: file.points.map(|p| NamedPoint { name: p.name, at: point(p.s_mm, p.z_mm) }),
             moment_about: file.moment_about.into(),

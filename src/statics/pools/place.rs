@@ -1,6 +1,6 @@
 //! Puts liquid in place along a direction: over its low points, up to a sill or a brim, and beyond it to the neighbour.
 
-use crate::geom::Point;
+use crate::geom::{Point, Vec2};
 use crate::section::{Attached, Wall};
 
 use super::look::{Body, Look};
@@ -65,13 +65,32 @@ pub(super) struct Placed {
 }
 
 /// The claim that is nearest to parting.
-#[derive(Clone, Copy, Debug)]
+#[derive(Clone, Debug)]
 pub(super) struct Parting {
     pub claim_idx: usize,
     /// The basin that holds all its low points.
     pub basin: usize,
-    /// How far it stands above the highest sill within, as a volume.
-    pub room_m3: f64,
+    /// How far it is from parting.
+    pub room: Room,
+}
+
+/// How far a body is from parting, and at what.
+#[derive(Clone, Debug)]
+pub(super) struct Room {
+    /// As a volume; below zero where it has parted.
+    pub m3: f64,
+    to: Event,
+}
+
+/// What parts a body.
+#[derive(Clone, Debug)]
+enum Event {
+    /// It falls to the highest sill between its low points; the basins of its sides.
+    Sill(Vec<usize>),
+    /// The sill over which this part of it pours to others sinks to that one.
+    OtherSill(usize),
+    /// This mouth, a face, sinks to it.
+    Mouth(u32),
 }
 
 /// What keeps liquid from being put in place.
@@ -91,7 +110,7 @@ impl Holder<'_> {
         let mut has_parted = false;
         for claim in &claims {
             let Some(basin) = basins.join(&claim.lows) else { return Err(Unplaced::Lost) };
-            has_parted |= self.room_over_sills(look, basin, claim).is_some_and(|room| room < 0.0);
+            has_parted |= self.room_over_sills(look, basin, claim).is_some_and(|room| room.m3 < 0.0);
             let (volume_m3, compartment) = (claim.volume_m3, claim.compartment);
             bodies.push(Body { volume_m3, compartment, basin, lows: claim.lows.clone() });
         }
@@ -116,27 +135,70 @@ impl Holder<'_> {
         for (claim_idx, claim) in claims.iter().enumerate() {
             let basin = look.basins.join(&claim.lows);
             let room = basin.and_then(|basin| Some((basin, self.room_over_sills(look, basin, claim)?)));
-            if let Some((basin, room_m3)) = room
-                && least.is_none_or(|l| room_m3 < l.room_m3)
+            if let Some((basin, room)) = room
+                && least.as_ref().is_none_or(|l| room.m3 < l.room.m3)
             {
-                least = Some(Parting { claim_idx, basin, room_m3 });
+                least = Some(Parting { claim_idx, basin, room });
             }
         }
         least
     }
 
-    /// How far a body of several low points stands above the highest sill between them, as a volume; none for one.
-    fn room_over_sills(&self, look: &Look, basin: usize, claim: &Claim) -> Option<f64> {
-        let b = &look.basins.all()[basin];
+    /// How far a body of several low points is from falling apart, as a volume; none for one. It does where it falls to the
+    /// highest sill between them; where a sill to others sinks to that one; and where a mouth does.
+    fn room_over_sills(&self, look: &Look, basin: usize, claim: &Claim) -> Option<Room> {
+        let all = look.basins.all();
+        let b = &all[basin];
         if b.children.is_empty() {
             return None;
         }
-        let above_sill = claim.volume_m3 - b.volume_at_bottom;
-        // A mouth below the sill empties it down to there.
-        let inner =
-            (0..basin).filter(|&i| look.basins.is_within(i, basin)).filter_map(|i| look.basins.all()[i].mouth);
-        let brim = inner.map(|(level, _)| (level - b.bottom) * self.scale_m2).fold(f64::INFINITY, f64::min);
-        Some(above_sill.min(brim))
+        let mut parts = Vec::with_capacity(b.children.len());
+        let mut outer = (if b.parent.is_some() { b.top } else { f64::INFINITY }, basin);
+        let mut brim: Option<(f64, u32)> = None;
+        for &child in &b.children {
+            // Its own low points alone: others there may be dry, or another body's.
+            let lows: Vec<usize> = claim.lows.iter().copied().filter(|&l| look.basins.is_within(l, child)).collect();
+            let Some(part) = look.basins.join(&lows) else {
+                outer = (b.bottom, child);
+                continue;
+            };
+            if part != child && all[part].top < outer.0 {
+                outer = (all[part].top, part);
+            }
+            let mouths = (0..=part).filter(|&i| all[i].mouth.is_some() && look.basins.is_within(i, part));
+            for mouth in mouths.filter_map(|i| all[i].mouth) {
+                if brim.is_none_or(|m| mouth.0 < m.0) {
+                    brim = Some(mouth);
+                }
+            }
+            parts.push(part);
+        }
+        let held: f64 = parts.iter().map(|&part| all[part].volume_at_top).sum();
+        let mut room = Room { m3: claim.volume_m3 - held, to: Event::Sill(parts) };
+        let outer_m3 = (outer.0 - b.bottom) * self.scale_m2;
+        if outer_m3 < room.m3 {
+            room = Room { m3: outer_m3, to: Event::OtherSill(outer.1) };
+        }
+        if let Some((level, face_idx)) = brim
+            && (level - b.bottom) * self.scale_m2 < room.m3
+        {
+            room = Room { m3: (level - b.bottom) * self.scale_m2, to: Event::Mouth(face_idx) };
+        }
+        Some(room)
+    }
+
+    /// How fast that room grows as the direction turns counter-clockwise, m3/rad, where that can be told.
+    pub(super) fn room_rate(&self, look: &Look, parting: &Parting) -> Option<f64> {
+        let child = *look.basins.all()[parting.basin].children.first()?;
+        let sill = || look.basins.outlet(child).map(|o| o.at);
+        // Levels of points turn about each other.
+        let right = Vec2::new(look.up.y, -look.up.x);
+        let rise = |p: Point, q: Point| -right.dot(&(p - q)) * self.scale_m2;
+        match &parting.room.to {
+            Event::Sill(parts) => parts.iter().map(|&part| look.capacity_rate(part).map(|r| -r)).sum(),
+            Event::OtherSill(basin) => Some(rise(look.basins.outlet(*basin)?.at, sill()?)),
+            Event::Mouth(face_idx) => Some(rise(look.lowest_on(*face_idx), sill()?)),
+        }
     }
 
     /// Lets what stands above a sill or a brim go, until nothing does.

@@ -267,11 +267,9 @@ impl<'a> Way<'_, 'a> {
         let (claims, _) = self.claims(now, &look);
         match self.holder.least_room_over_sills(&look, &claims) {
             None => (-self.holder.capacity_m3, None),
-            Some(Parting { basin, room_m3, .. }) => {
-                // What stands below the sill, all its sides together, turns about it.
-                let children = look.basins.all()[basin].children.iter();
-                let rate: Option<f64> = children.map(|&child| look.capacity_rate(child)).sum();
-                (-room_m3, rate.map(|r| self.sign() * r))
+            Some(parting) => {
+                let rate = self.holder.room_rate(&look, &parting);
+                (-parting.room.m3, rate.map(|r| -self.sign() * r))
             }
         }
     }

@@ -2,6 +2,7 @@
 
 mod drags;
 mod handles;
+mod plates;
 mod robust;
 
 use brimwright::app::{Derived, Document, Edit};
@@ -76,6 +77,7 @@ fn study() -> Study {
         compartments: vec![],
         sump: None,
         discharge_coefficient: 0.6,
+        materials: Vec::new(),
         cases: vec![case("Rest", 0.0, AccelUnit::MPerS2), case("Stop", 0.1, AccelUnit::G)],
         points: vec![NamedPoint { name: "sensor".to_owned(), at: Point::new(0.6, 0.2) }],
         moment_about: Point::new(0.0, 0.0),
@@ -102,8 +104,10 @@ fn view() -> View {
         case_idx: 0,
         selected: None,
         open_verdict: None,
+        stage: None,
         units: UnitSystem::Si,
         camera: None,
+        pen: None,
         status: String::new(),
     }
 }

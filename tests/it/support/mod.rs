@@ -45,6 +45,7 @@ pub fn study(section: Section, fill: Fill) -> Study {
         compartments: vec![],
         sump: None,
         discharge_coefficient: 0.6,
+        materials: vec![],
         cases: vec![held(0.0, 0.0)],
         points: vec![],
         moment_about: Point::origin(),

@@ -179,7 +179,8 @@ pub fn pull() -> impl Strategy<Value = Vec2> {
         .prop_map(|(a_s, to_left, a_z)| Vec2::new(if to_left { a_s } else { -a_s }, -1.0 - a_z))
 }
 
-fn plate(points: &[Point]) -> Plate {
+/// A plate 6 mm thick, without openings.
+pub fn plate(points: &[Point]) -> Plate {
     Plate {
         name: String::new(),
         points: points.to_vec(),

@@ -1,5 +1,7 @@
 //! The window, driven by the names that assistive technology reads. No screen, no graphics driver.
 
+mod tank;
+
 use std::path::Path;
 
 use brimwright::app::{Derived, Document, EXAMPLES, load};

@@ -1,12 +1,19 @@
 //! The one table of commands: text, shortcut, tooltip, when each can be used. Menus and keys read it; the window
 //! carries it out.
 
+mod when;
+
 use egui::{Key, KeyboardShortcut, Modifiers, ThemePreference};
 
 use crate::app::Document;
 use crate::units::UnitSystem;
 
-use super::{Selected, View};
+use super::View;
+
+use when::{
+    always, can_delete, can_redo, can_save, can_undo, has_case, has_case_after, has_case_before, has_cases,
+    has_plate, has_spaced_plates, has_stages,
+};
 
 /// Something that the user can ask for from a menu or with a key.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -29,10 +36,18 @@ pub enum Command {
     Undo,
     /// Bring the last undone step back.
     Redo,
+    /// Take up the pen that draws a plate, or put it away.
+    DrawPlate,
+    /// A copy of the chosen plate beside it.
+    DuplicatePlate,
+    /// All plates at equal distances.
+    SpacePlates,
     /// Delete what is chosen on the board.
     DeleteSelected,
     /// Show the whole section.
     FitBoard,
+    /// The board shows the next state of the case: under the other bound, or released.
+    NextStage,
     /// Units shown.
     Units(UnitSystem),
     /// Light, dark, or as the system says.
@@ -129,11 +144,35 @@ pub const TABLE: &[Row] = &[
     row(Command::Undo, Menu::Edit, "Undo", on(CTRL, Key::Z), "Take the last step back", can_undo),
     row(Command::Redo, Menu::Edit, "Redo", on(CTRL_SHIFT, Key::Z), "Bring the last undone step back", can_redo),
     group(
+        Command::DrawPlate,
+        Menu::Edit,
+        "Draw a plate",
+        on(Modifiers::NONE, Key::P),
+        "Drag from wall to wall on the board; an end may stay free",
+        always,
+    ),
+    row(
+        Command::DuplicatePlate,
+        Menu::Edit,
+        "Duplicate the plate",
+        on(CTRL_SHIFT, Key::D),
+        "A copy of the chosen plate beside it, from wall to wall like the first",
+        has_plate,
+    ),
+    row(
+        Command::SpacePlates,
+        Menu::Edit,
+        "Space the plates equally",
+        NO,
+        "Move the plates to equal distances; ends on walls stay on them",
+        has_spaced_plates,
+    ),
+    group(
         Command::DeleteSelected,
         Menu::Edit,
         "Delete what is chosen",
         on(Modifiers::NONE, Key::Delete),
-        "Take out the vertex, obstacle or point that is chosen on the board",
+        "Take out the vertex, plate, opening, obstacle or point that is chosen on the board",
         can_delete,
     ),
     row(
@@ -143,6 +182,14 @@ pub const TABLE: &[Row] = &[
         on(Modifiers::NONE, Key::Home),
         "Show the whole section on the board",
         always,
+    ),
+    row(
+        Command::NextStage,
+        Menu::View,
+        "Show the next state",
+        on(Modifiers::NONE, Key::B),
+        "Settled: levels have evened out through the openings. Sealed: nothing passes them. Released: back at rest",
+        has_stages,
     ),
     row(
         Command::ResetSizes,
@@ -303,42 +350,6 @@ const fn group(
 
 const fn on(modifiers: Modifiers, key: Key) -> Option<KeyboardShortcut> {
     Some(KeyboardShortcut::new(modifiers, key))
-}
-
-fn always(_: &Document, _: &View) -> bool {
-    true
-}
-
-fn can_save(doc: &Document, _: &View) -> bool {
-    doc.is_unsaved() || doc.path.is_none()
-}
-
-fn can_undo(doc: &Document, _: &View) -> bool {
-    doc.undo_label().is_some()
-}
-
-fn can_redo(doc: &Document, _: &View) -> bool {
-    doc.redo_label().is_some()
-}
-
-fn can_delete(_: &Document, view: &View) -> bool {
-    matches!(view.selected, Some(Selected::Vertex(_) | Selected::Obstacle(_) | Selected::Point(_)))
-}
-
-fn has_case(doc: &Document, view: &View) -> bool {
-    view.case_idx < doc.study().cases.len()
-}
-
-fn has_cases(doc: &Document, _: &View) -> bool {
-    doc.study().cases.len() > 1
-}
-
-fn has_case_before(doc: &Document, view: &View) -> bool {
-    view.case_idx > 0 && has_case(doc, view)
-}
-
-fn has_case_after(doc: &Document, view: &View) -> bool {
-    view.case_idx + 1 < doc.study().cases.len()
 }
 
 pub(super) fn lower_first(text: &str) -> String {
