@@ -39,8 +39,8 @@ pub fn envelope(
 ) -> Option<Envelope> {
     let n = n_directions.max(4);
     progress.begin(n + n / 4);
-    let most_m_per_s2 = most(study, attitude);
-    let holding = Holding::new(study, attitude, most_m_per_s2);
+    let most_m_per_s2 = largest_looked_at(study, attitude);
+    let holding = Holding::new(study, attitude, most_m_per_s2, progress)?;
     let at_rest = holding.at_rest().cloned();
     progress.advance(n / 4);
     let free_fall = holding.rest_gravity().normalize();
@@ -87,8 +87,8 @@ pub const N_DIRECTIONS: usize = 360;
 /// Every how many directions come first.
 const COARSE: usize = 10;
 
-/// Three times gravity, or past every case in the same attitude.
-fn most(study: &ValidStudy, attitude: Attitude) -> f64 {
+/// How far an envelope looks, m/s2: three times gravity, or past every case in the same attitude.
+pub fn largest_looked_at(study: &ValidStudy, attitude: Attitude) -> f64 {
     let g = study.study().gravity_m_per_s2;
     let own = study.study().cases.iter().filter(|case| case.attitude == attitude);
     own.map(|case| 1.25 * case.accel.to_m_per_s2(g).norm()).fold(3.0 * g, f64::max)

@@ -64,6 +64,11 @@ impl FillMap {
     }
 }
 
+/// The common fill of a study as a share of the common capacity: where it stands on its fill maps.
+pub fn common_share(study: &ValidStudy) -> Option<f64> {
+    study.common().map(|start| start.volume_m3 / start.vessel.capacity_m3())
+}
+
 /// Why a load case has no fill map.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, thiserror::Error)]
 pub enum NoFillMap {

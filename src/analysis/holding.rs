@@ -11,6 +11,7 @@ use crate::cases::{Accel, Attitude, LoadCase};
 use crate::criteria::RestsOn;
 use crate::geom::{Vec2, cross};
 use crate::num::root;
+use crate::progress::Progress;
 use crate::statics::{EffectiveGravity, effective_gravity};
 use crate::study::ValidStudy;
 
@@ -97,17 +98,21 @@ impl End {
 }
 
 impl<'a> Holding<'a> {
-    /// For accelerations of up to `most_m_per_s2` of a tank that stands at rest in an attitude.
-    pub fn new(study: &'a ValidStudy, attitude: Attitude, most_m_per_s2: f64) -> Holding<'a> {
-        let base = Base::new(study, attitude, most_m_per_s2);
+    /// For accelerations of up to `most_m_per_s2` of a tank that stands at rest in an attitude. None where it was asked to
+    /// end.
+    pub fn new(
+        study: &'a ValidStudy,
+        attitude: Attitude,
+        most_m_per_s2: f64,
+        progress: &'a Progress,
+    ) -> Option<Holding<'a>> {
+        let base = Base::new(study, attitude, most_m_per_s2, progress);
         let (left, right) = rayon::join(|| Side::new(&base, false), || Side::new(&base, true));
         let sides = [left, right];
         let always = sides[0].judge_at_rest(&base, RestsOn::Study);
-        let at_rest = sides
-            .iter()
-            .find_map(|side| (side.end.0 <= 0.0).then(|| side.end.1.clone()))
-            .or_else(|| sides[0].judge_at_rest(&base, RestsOn::Size));
-        Holding { base, sides, at_rest, always }
+        let by_direction = sides.iter().find_map(|side| side.at_rest.clone());
+        let at_rest = by_direction.or_else(|| sides[0].judge_at_rest(&base, RestsOn::Size));
+        (!progress.is_stopped()).then_some(Holding { base, sides, at_rest, always })
     }
 
     /// Effective gravity at rest, m/s2.
@@ -130,8 +135,7 @@ impl<'a> Holding<'a> {
     pub fn limit(&self, direction: Vec2) -> HoldLimit {
         let ray = Ray::new(self.base.rest, direction);
         let side = &self.sides[usize::from(ray.grows)];
-        let spill = side.spills_at.map(|turned| ray.accel_at(turned));
-        let spill = spill.filter(|accel| accel.is_finite() && !ray.meets_free_fall());
+        let spill = side.spills_at.map(|turned| ray.accel_at(turned)).filter(|accel| accel.is_finite());
         let ends = |accel_m_per_s2, end| HoldLimit { direction, accel_m_per_s2, end, spill_m_per_s2: spill };
         if let Some(end) = &self.at_rest {
             return ends(0.0, end.clone());
@@ -140,7 +144,7 @@ impl<'a> Holding<'a> {
         if ray.meets_free_fall() {
             let reason = "free fall: there is no settled surface".to_owned();
             (top, end) = (top.min(ray.rest), End::NotJudged { reason });
-        } else if ray.accel_at(side.end.0) <= top {
+        } else if ray.turns() && ray.accel_at(side.end.0) <= top {
             (top, end) = (ray.accel_at(side.end.0), side.end.1.clone());
         }
         match self.bracket(side, &ray, top) {
@@ -203,10 +207,12 @@ pub(super) struct Base<'a> {
     pub rest: Vec2,
     pub most_m_per_s2: f64,
     pub still: StillSurface,
+    /// Once stopped, what is worked out means nothing.
+    pub progress: &'a Progress,
 }
 
 impl<'a> Base<'a> {
-    fn new(study: &'a ValidStudy, attitude: Attitude, most_m_per_s2: f64) -> Base<'a> {
+    fn new(study: &'a ValidStudy, attitude: Attitude, most_m_per_s2: f64, progress: &'a Progress) -> Base<'a> {
         let case = LoadCase {
             name: String::new(),
             accel: Accel::REST,
@@ -218,7 +224,7 @@ impl<'a> Base<'a> {
             note: String::new(),
         };
         let rest = effective_gravity(study.study().gravity_m_per_s2, attitude.angle_rad(), Vec2::zeros()).vec;
-        Base { study, case, rest, most_m_per_s2, still: StillSurface::of(study) }
+        Base { study, case, rest, most_m_per_s2, still: StillSurface::of(study), progress }
     }
 
     pub fn gravity(&self, accel: Vec2) -> EffectiveGravity {
@@ -258,13 +264,18 @@ impl Ray {
         if turned <= 0.0 {
             return 0.0;
         }
-        if turned >= self.alpha || self.meets_free_fall() {
+        if turned >= self.alpha || !self.turns() {
             return f64::INFINITY;
         }
         self.rest * turned.sin() / (self.alpha - turned).sin()
     }
 
-    /// Straight along gravity: G vanishes on the way.
+    /// Straight along gravity the direction of G stays.
+    fn turns(&self) -> bool {
+        self.alpha > 1e-12 && !self.meets_free_fall()
+    }
+
+    /// Straight down: G vanishes on the way.
     fn meets_free_fall(&self) -> bool {
         self.alpha >= PI - 1e-12
     }

@@ -26,8 +26,8 @@ use sight::{Sight, Sighted, StillSurface};
 use ways::Course;
 
 pub use curves::{curves, freeboard_curve};
-pub use envelope::{Envelope, N_DIRECTIONS, envelope};
-pub use fill_map::{FillMap, MapPoint, N_LINES, NoFillMap, fill_map};
+pub use envelope::{Envelope, N_DIRECTIONS, envelope, largest_looked_at};
+pub use fill_map::{FillMap, MapPoint, N_LINES, NoFillMap, common_share, fill_map};
 pub use holding::{End, HoldLimit, Holding};
 pub use results::*;
 

@@ -23,6 +23,8 @@ const STEP: f64 = PI / 180.0;
 pub(super) struct Side<'a> {
     /// Under each bound, with what happens first.
     ways: Vec<(Followed<'a>, Trace)>,
+    /// What does not hold at rest already, of what rests on the direction alone.
+    pub at_rest: Option<End>,
     /// The turn beyond which something does not hold whatever the size of G, radians, and what.
     pub end: (f64, End),
     /// The turn at which liquid first leaves, radians, where it does.
@@ -75,7 +77,7 @@ impl<'a> Side<'a> {
         let at = even(end.0);
         let follow = |(first, &bound): (Trace, &_)| (Followed::new(ways::holder(study, bound), turn, &at), first);
         let ways = firsts.into_par_iter().zip(bounds).map(follow).collect();
-        let mut side = Side { ways, end, spills_at, marks: Vec::new() };
+        let mut side = Side { ways, at_rest: None, end, spills_at, marks: Vec::new() };
         side.end_by_direction(base, turn, &at);
         side.mark(base, turn);
         side
@@ -101,7 +103,7 @@ impl<'a> Side<'a> {
         let gravity = base.rest.norm() + base.most_m_per_s2;
         let verdicts = |turned: f64| {
             let accel = base.rest + turn.up(turned) * gravity;
-            let Some(stops) = self.stops(turned) else { return lost() };
+            let Some(stops) = self.stops(base, turned) else { return lost() };
             let course = self.course(base, accel, &stops);
             let risen = |b: usize, seen: &Rims, route: Route| match (route, &on[b]) {
                 (Route::Turned(..), Some(on)) if on.reaches(turned) => risen_z_m_on(on, seen, turned),
@@ -137,11 +139,14 @@ impl<'a> Side<'a> {
                 }
             }
         }
-        let Some((low, high)) = ends else { return };
-        let turned = if high > low { root(low, high, 1e-14, over) } else { 0.0 };
-        let found = [turned + 1e-9, high].into_iter().find_map(|t| End::of(&verdicts(t)));
-        let found = found.unwrap_or(End::Beyond);
-        self.end = (turned, found);
+        let at_rest = End::of(&verdicts(0.0));
+        let end = ends.map(|(low, high)| {
+            let turned = if high > low { root(low, high, 1e-14, over) } else { 0.0 };
+            let found = [turned + 1e-9, high].into_iter().find_map(|t| End::of(&verdicts(t)));
+            (turned, found.unwrap_or(End::Beyond))
+        });
+        self.at_rest = at_rest;
+        self.end = end.unwrap_or_else(|| self.end.clone());
     }
 
     /// Marks what holds along directions up to the end, those between at which it holds least included.
@@ -163,7 +168,7 @@ impl<'a> Side<'a> {
 
     fn mark_at(&self, base: &Base, turn: Turn, turned: f64) -> Mark {
         let nothing = Mark { turned, least: f64::INFINITY, most: 0.0 };
-        let Some(stops) = self.stops(turned) else { return nothing };
+        let Some(stops) = self.stops(base, turned) else { return nothing };
         let up = turn.up(turned);
         let over = |gravity: f64| {
             let accel = base.rest + up * gravity;
@@ -188,14 +193,14 @@ impl<'a> Side<'a> {
 
     /// What rests on the study, or on the size of G, at rest; nothing where it holds.
     pub fn judge_at_rest(&self, base: &Base, rests_on: RestsOn) -> Option<End> {
-        let Some(stops) = self.stops(0.0) else { return End::of(&lost()) };
+        let Some(stops) = self.stops(base, 0.0) else { return End::of(&lost()) };
         End::of(&self.judge_at(base, Vec2::zeros(), &stops, rests_on))
     }
 
     /// Judges the criteria of one kind at an acceleration to this side, those that need no rims.
     pub fn judge(&self, base: &Base, accel: Vec2, rests_on: RestsOn) -> Judged {
         let turned = Ramp::accelerate(base.rest, accel).map(|ramp| ramp.to_case_rad());
-        match turned.and_then(|turned| self.stops(turned)) {
+        match turned.and_then(|turned| self.stops(base, turned)) {
             Some(stops) => self.judge_at(base, accel, &stops, rests_on),
             None => lost(),
         }
@@ -225,7 +230,10 @@ impl<'a> Side<'a> {
     }
 
     /// Where everything stands under each bound.
-    fn stops(&self, turned: f64) -> Option<Vec<Stop>> {
+    fn stops(&self, base: &Base, turned: f64) -> Option<Vec<Stop>> {
+        if base.progress.is_stopped() {
+            return None;
+        }
         self.ways.iter().map(|(way, _)| way.at(turned)).collect()
     }
 }

@@ -61,9 +61,14 @@ impl<K: Clone + PartialEq, T> Background<K, T> {
         None
     }
 
-    /// The last result, and whether it belongs to the inputs that are wanted.
-    pub fn found(&self) -> Option<(&T, bool)> {
-        self.found.as_ref().map(|(inputs, result)| (result, Some(inputs) == self.wanted.as_ref()))
+    /// The last result with its inputs.
+    pub fn found(&self) -> Option<(&K, &T)> {
+        self.found.as_ref().map(|(inputs, result)| (inputs, result))
+    }
+
+    /// Whether the last result belongs to other inputs than those that are wanted.
+    pub fn is_old(&self) -> bool {
+        self.found.as_ref().map(|(inputs, _)| inputs) != self.wanted.as_ref()
     }
 
     /// Share that is done while work is under way.
@@ -76,7 +81,14 @@ impl<K: Clone + PartialEq, T> Background<K, T> {
         if let Work::Stopped(share) = self.work { Some(share) } else { None }
     }
 
-    /// Calls it off until other inputs are wanted; what is there stays.
+    /// Takes up what the user called off.
+    pub fn start_again(&mut self) {
+        if let Work::Stopped(_) = self.work {
+            self.work = Work::Waits;
+        }
+    }
+
+    /// Calls it off until other inputs are wanted, or it is taken up again; what is there stays.
     pub fn stop(&mut self) {
         if let Some(share) = self.share() {
             self.work = Work::Stopped(share);
@@ -101,13 +113,14 @@ mod tests {
         assert_eq!(twice.want(Some(1), 0.0, untouched), Some(QUIET_S));
         assert!(twice.want(Some(2), 0.1, untouched).is_some(), "changed again: it starts to rest anew");
         assert!(twice.want(Some(2), 0.2, untouched).is_some_and(|left| left < QUIET_S));
-        while twice.found() != Some((&4, true)) {
+        while twice.found() != Some((&2, &4)) {
             assert_eq!(twice.want(Some(2), 1.0, start), None);
         }
+        assert!(!twice.is_old());
         twice.want(Some(3), 2.0, untouched);
-        assert_eq!(twice.found(), Some((&4, false)), "old, and said to be");
+        assert_eq!((twice.found(), twice.is_old()), (Some((&2, &4)), true), "old, and said to be");
         twice.want(None, 3.0, untouched);
-        assert_eq!((twice.found(), twice.share()), (Some((&4, false)), None));
+        assert_eq!((twice.is_old(), twice.share()), (true, None));
     }
 
     #[test]
@@ -134,7 +147,11 @@ mod tests {
         }
         endless.stop();
         endless.want(Some(1), 2.0, |_| -> Job<i32> { panic!("stopped is stopped") });
-        assert_eq!((endless.stopped_at(), endless.found()), (Some(0.25), Some((&1, true))));
+        assert_eq!((endless.stopped_at(), endless.found()), (Some(0.25), Some((&1, &1))));
+        endless.start_again();
+        endless.want(Some(1), 2.5, start);
+        assert_eq!((endless.stopped_at(), endless.share().is_some()), (None, true));
+        endless.stop();
         endless.want(Some(2), 3.0, start);
         endless.want(Some(2), 4.0, start);
         assert_eq!((endless.stopped_at(), endless.share().is_some()), (None, true));

@@ -20,6 +20,7 @@ pub mod look;
 mod marks;
 mod modals;
 mod number;
+mod pictures;
 mod plating;
 mod plots;
 mod problems;

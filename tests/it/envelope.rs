@@ -1,10 +1,11 @@
 //! The hold envelope against whole judgements of load cases on both sides of it, and against closed forms.
 
-use std::f64::consts::{PI, TAU};
+use std::f64::consts::TAU;
 
-use brimwright::analysis::{self, CaseResult, End, Holding, State};
+use brimwright::analysis::{CaseResult, End, Holding, State};
 use brimwright::cases::Attitude;
 use brimwright::geom::Vec2;
+use brimwright::progress::Progress;
 use brimwright::section::{Opening, OpeningShape};
 use brimwright::study::{Fill, Limit, Record, Study};
 use proptest::prelude::*;
@@ -70,7 +71,8 @@ fn a_case_inside_holds_and_one_outside_does_not() {
     proptest!(config(60, 71), |(study in limited(), directions in directions)| {
         let Ok(valid) = study.validate() else { return Ok(()) };
         let attitude = study.cases[0].attitude;
-        let holding = Holding::new(&valid, attitude, 30.0);
+        let progress = Progress::default();
+        let holding = Holding::new(&valid, attitude, 30.0, &progress).unwrap();
         for (angle, share) in directions {
             let direction = Vec2::new(angle.cos(), angle.sin());
             let limit = holding.limit(direction);

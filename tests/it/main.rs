@@ -12,6 +12,7 @@ mod edits;
 mod envelope;
 mod examples;
 mod files;
+mod fill_map;
 mod gas_pockets;
 #[cfg(feature = "gui")]
 mod gui;

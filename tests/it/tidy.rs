@@ -24,7 +24,10 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("statics", &["problem", "num", "geom", "section"]),
     ("study", &["units", "problem", "geom", "section", "liquid", "cases", "statics"]),
     ("criteria", &["units", "sources", "problem", "progress", "num", "geom", "cases", "statics", "study"]),
-    ("analysis", &["units", "problem", "progress", "num", "geom", "section", "cases", "statics", "study", "criteria"]),
+    (
+        "analysis",
+        &["units", "problem", "progress", "num", "geom", "section", "cases", "statics", "study", "criteria"],
+    ),
     ("scenario", &["units", "problem", "geom", "section", "liquid", "cases", "study"]),
     ("report", &["units", "sources", "problem", "geom", "section", "liquid", "cases", "study", "analysis"]),
     ("app", &["problem", "progress", "geom", "section", "liquid", "cases", "study", "analysis", "scenario"]),
