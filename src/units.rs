@@ -203,6 +203,7 @@ impl Measure {
         // What even the smallest unit shows as a row of zeros is the rounding of a sum.
         let si = if self.si.abs() < 1e-4 * near.in_si { 0.0 } else { self.si };
         let unit = self.quantity.unit_near(system, si);
+        let significant = if self.quantity == Quantity::Count { 1 } else { significant };
         let number = number(unit.from_si(si), significant);
         match unit.symbol {
             "" => number,
@@ -332,6 +333,7 @@ mod tests {
         assert_eq!(text(Quantity::Moment, 0.0), "0.00 kN m");
         assert_eq!(text(Quantity::Moment, -3e-12), "0.00 kN m");
         assert_eq!(text(Quantity::GagePressure, 2.5), "2.50 Pa");
+        assert_eq!((text(Quantity::Count, 0.0), text(Quantity::Count, 12.0)), ("0".into(), "12".into()));
     }
 
     #[test]

@@ -7,13 +7,14 @@ use rayon::prelude::*;
 
 use crate::cases::{Accel, AccelUnit, LoadCase};
 use crate::geom::Vec2;
+use crate::plates::Bearer;
 use crate::progress::Progress;
 use crate::statics::{Followed, Route};
 use crate::study::ValidStudy;
 
 use super::results::{Bound, State, Verdict};
 use super::rims::{SharedRims, risen_z_m, risen_z_m_on};
-use super::sight::{Sight, Sighted, StillSurface};
+use super::sight::{Ground, Sight, Sighted, StillSurface};
 use super::ways;
 
 /// How many fills, and how many accelerations, make a fill map that shows every percent.
@@ -150,6 +151,7 @@ const STRIDES: [usize; 4] = [8, 4, 2, 1];
 struct Rows<'a> {
     study: &'a ValidStudy,
     cases: Vec<LoadCase>,
+    bearers: Vec<Bearer<'a>>,
     /// For each bound.
     rims: Vec<SharedRims>,
 }
@@ -164,7 +166,8 @@ impl<'a> Rows<'a> {
         let cases: Vec<LoadCase> = map.accels_m_per_s2.iter().map(with_size).collect();
         let ups: Vec<Vec2> = cases.iter().filter_map(|case| ways::start_of(study, case).gravity.up).collect();
         let shared = |bound: &Bound| SharedRims::new(study, *bound, ups.iter().copied());
-        Rows { study, cases, rims: ways::bounds(study).iter().map(shared).collect() }
+        let rims = ways::bounds(study).iter().map(shared).collect();
+        Rows { study, cases, bearers: super::bearers(study), rims }
     }
 
     /// The worst verdicts of one fill.
@@ -172,7 +175,7 @@ impl<'a> Rows<'a> {
         let capacity_m3 = self.study.common().map_or(0.0, |start| start.vessel.capacity_m3());
         let cases = accel_idxs.iter().map(|&j| self.cases[j].clone()).collect();
         let study = &self.study.with(share * capacity_m3, cases);
-        let still = StillSurface::of(study);
+        let ground = Ground { study, still: StillSurface::of(study), bearers: &self.bearers };
         let courses = ways::courses(study);
         let bounds = ways::bounds(study);
         let holders: Vec<_> = bounds.iter().map(|&bound| ways::holder(study, bound)).collect();
@@ -193,16 +196,16 @@ impl<'a> Rows<'a> {
                     let settled = super::settle_case(study, &holders[b], course, b, false);
                     let route = super::route(course, b);
                     let rims = course.gravity.up.and_then(|up| self.rims[b].seen(study, up));
-                    let risen = rims.as_ref().map_or(Vec::new(), |rims| match (route, &followed[b]) {
+                    let risen_z_m = rims.as_ref().map_or(Vec::new(), |rims| match (route, &followed[b]) {
                         (Route::Turned(turn, turned), Some(on)) if on.turn == turn && on.reaches(turned) => {
                             risen_z_m_on(on, rims, turned)
                         }
                         _ => risen_z_m(study, rims, route),
                     });
-                    Sight::new(study, course, still, settled, rims, risen, route)
+                    Sight { rims, risen_z_m, route, ..Sight::without_rims(&ground, course, b, settled) }
                 })
                 .collect();
-            let sighted = Sighted { study, case, course, still, sights: &sights };
+            let sighted = Sighted { ground: &ground, case, course, sights: &sights };
             MapPoint::of(&sighted.judge_briefly(|_| true).verdicts)
         };
         study.study().cases.iter().zip(&courses).map(judge).collect()

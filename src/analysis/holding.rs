@@ -11,13 +11,14 @@ use crate::cases::{Accel, Attitude, LoadCase};
 use crate::criteria::RestsOn;
 use crate::geom::{Vec2, cross};
 use crate::num::root;
+use crate::plates::Bearer;
 use crate::progress::Progress;
 use crate::statics::{EffectiveGravity, effective_gravity};
 use crate::study::ValidStudy;
 
 use super::results::{Bound, State, Verdict};
 use super::side::Side;
-use super::sight::{Sight, Sighted, StillSurface};
+use super::sight::{Ground, Sight, Sighted, StillSurface};
 use super::ways::Course;
 
 /// What holds from one attitude at rest.
@@ -206,7 +207,8 @@ pub(super) struct Base<'a> {
     /// Effective gravity there, m/s2.
     pub rest: Vec2,
     pub most_m_per_s2: f64,
-    pub still: StillSurface,
+    still: StillSurface,
+    bearers: Vec<Bearer<'a>>,
     /// Once stopped, what is worked out means nothing.
     pub progress: &'a Progress,
 }
@@ -224,7 +226,8 @@ impl<'a> Base<'a> {
             note: String::new(),
         };
         let rest = effective_gravity(study.study().gravity_m_per_s2, attitude.angle_rad(), Vec2::zeros()).vec;
-        Base { study, case, rest, most_m_per_s2, still: StillSurface::of(study), progress }
+        let (still, bearers) = (StillSurface::of(study), super::bearers(study));
+        Base { study, case, rest, most_m_per_s2, still, bearers, progress }
     }
 
     pub fn gravity(&self, accel: Vec2) -> EffectiveGravity {
@@ -236,8 +239,13 @@ impl<'a> Base<'a> {
         if let Some(reason) = sights.iter().find_map(|sight| sight.blocked.clone()) {
             return Err(reason);
         }
-        let sighted = Sighted { study: self.study, case: &self.case, course, still: self.still, sights };
+        let ground = self.ground();
+        let sighted = Sighted { ground: &ground, case: &self.case, course, sights };
         Ok(sighted.judge_briefly(|kind| kind == rests_on).verdicts)
+    }
+
+    pub fn ground(&self) -> Ground<'_> {
+        Ground { study: self.study, still: self.still, bearers: &self.bearers }
     }
 }
 

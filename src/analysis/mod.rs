@@ -17,12 +17,12 @@ use rayon::prelude::*;
 use crate::cases::LoadCase;
 use crate::criteria::{self, Standing};
 use crate::geom::{Point, Vec2};
-use crate::plates::dividers;
+use crate::plates::{Bearer, Solved, dividers};
 use crate::statics::{Body, Holder, Setting, Stop, pressure_at, settle, spills};
 use crate::study::ValidStudy;
 use crate::units::{Measure, Quantity, number};
 
-use sight::{Sight, Sighted, StillSurface};
+use sight::{Ground, Sight, Sighted, StillSurface};
 use ways::Course;
 
 pub use curves::{curves, freeboard_curve};
@@ -42,12 +42,10 @@ pub fn run(study: &ValidStudy) -> Results {
     let surface = surface_at_rest(study);
     let still_surface = StillSurface { z_m: level, length_m: length_m(surface.iter()) };
     let courses = ways::courses(study);
-    let judged: Vec<(CaseResult, Option<f64>)> = inputs
-        .cases
-        .par_iter()
-        .zip(&courses)
-        .map(|(case, course)| judge_case(study, case, course, still_surface))
-        .collect();
+    let bearers = bearers(study);
+    let ground = Ground { study, still: still_surface, bearers: &bearers };
+    let judged: Vec<(CaseResult, Option<f64>)> =
+        inputs.cases.par_iter().zip(&courses).map(|(case, course)| judge_case(&ground, case, course)).collect();
     let holds = judged.iter().filter_map(|(_, holds)| *holds).reduce(f64::min);
     let cases: Vec<CaseResult> = judged.into_iter().map(|(case, _)| case).collect();
     let rest_pa = inputs.liquid.weight_pa_per_m(inputs.gravity_m_per_s2) * (level - bottom);
@@ -120,18 +118,14 @@ pub fn gage_pressure_at(study: &ValidStudy, case: &CaseResult, bound: Bound, p: 
 }
 
 /// The load case, judged, and the volume that its way holds, where that could be judged.
-fn judge_case(
-    study: &ValidStudy,
-    case: &LoadCase,
-    course: &Course,
-    still: StillSurface,
-) -> (CaseResult, Option<f64>) {
+fn judge_case(ground: &Ground, case: &LoadCase, course: &Course) -> (CaseResult, Option<f64>) {
+    let study = ground.study;
     let gravity = course.gravity;
     let bounds = ways::bounds(study);
-    let sights: Vec<Sight> = (0..bounds.len()).map(|b| Sight::of_course(study, course, b, still)).collect();
+    let sights: Vec<Sight> = (0..bounds.len()).map(|b| Sight::of_course(ground, course, b)).collect();
     let holds: Vec<Option<f64>> =
         sights.iter().enumerate().map(|(b, sight)| holds(study, course, b, &sight.blocked)).collect();
-    let sighted = Sighted { study, case, course, still, sights: &sights };
+    let sighted = Sighted { ground, case, course, sights: &sights };
     let Outcome { verdicts, absent } = sighted.judge(&|b| holds[b]);
     let holds = holds.into_iter().flatten().reduce(f64::min);
     let released = case.release.then(|| settle_released(study, course));
@@ -141,7 +135,8 @@ fn judge_case(
     };
     let pours = course.ways.first().and_then(|w| w.as_ref()).and_then(|w| w.stop.as_ref());
     let pours = pours.map_or(Vec::new(), |stop| stop.pours.clone());
-    let mut states = sights.into_iter().map(|sight| sight.settled);
+    let (states, plates): (Vec<_>, Vec<_>) = sights.into_iter().map(|sight| (sight.settled, sight.plates)).unzip();
+    let mut states = states.into_iter();
     let settled = states.next().expect("there is a settled bound");
     let result = CaseResult {
         name: case.name.clone(),
@@ -153,10 +148,27 @@ fn judge_case(
         trapped,
         routes: bounds.iter().enumerate().map(|(b, &bound)| (bound, route(course, b))).collect(),
         pours,
+        plates: plates.into_iter().flatten().collect(),
         verdicts,
         absent,
     };
     (result, holds)
+}
+
+/// Every plate, ready to be loaded.
+fn bearers(study: &ValidStudy) -> Vec<Bearer<'_>> {
+    let (inputs, mut solved) = (study.study(), Solved::default());
+    let width = &inputs.section.width;
+    let plates = inputs.section.plates.iter().zip(study.region().plates());
+    plates
+        .map(|(plate, placed)| Bearer::new(plate, placed, width, inputs.material(&plate.material), &mut solved))
+        .collect()
+}
+
+/// What the plates bear in a state, in the order of the plates; nothing without one.
+fn borne(bearers: &[Bearer], bound: Bound, state: &Result<Settled, String>) -> Vec<PlateResult> {
+    let loads = state.iter().flat_map(|settled| &settled.plates);
+    bearers.iter().zip(loads).enumerate().map(|(i, (bearer, load))| bearer.under(i, bound, load)).collect()
 }
 
 /// The largest common fill that leaves no mouth on the way, where that can be told.

@@ -6,7 +6,7 @@ use crate::problem::Problem;
 pub use crate::criteria::{
     Absent, CONTAINED, FREEBOARD, LAYOUT, Outcome, Reach, Sense, State, Trust, Verdict, WorkLine,
 };
-pub use crate::plates::Cell;
+pub use crate::plates::{Cell, EndReaction, OutOfRange, PanelStrength, PlateResult, Span, Strength, Support, Weld};
 pub use crate::statics::{
     Bound, Chord, EdgeLoad, EffectiveGravity, GasPocket, MouthSpill, PlateLoad, PointPressure, Pool, Pour,
     RoofContact, Route, Settled, Stretch,
@@ -54,6 +54,8 @@ pub struct CaseResult {
     pub routes: Vec<(Bound, Route)>,
     /// What went over sills on the way, under the settled bound.
     pub pours: Vec<Pour>,
+    /// What the plates bear, one a plate and bound, the settled bound first.
+    pub plates: Vec<PlateResult>,
     /// Verdicts, worst first.
     pub verdicts: Vec<Verdict>,
     /// Checks that do not apply.

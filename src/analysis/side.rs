@@ -12,7 +12,7 @@ use crate::statics::{Followed, LONGEST_STEP, PourOver, Ramp, Rims, Route, Stop, 
 use super::holding::{Base, End, Judged, excess};
 use super::results::CONTAINED;
 use super::rims::{SharedRims, risen_z_m, risen_z_m_on};
-use super::sight::Sight;
+use super::sight::{Ground, Sight};
 use super::ways::{self, Course};
 
 /// Distance of the directions that are looked at first, radians: a degree. Where something changes between two of them is
@@ -105,6 +105,7 @@ impl<'a> Side<'a> {
             let accel = base.rest + turn.up(turned) * gravity;
             let Some(stops) = self.stops(base, turned) else { return lost() };
             let course = self.course(base, accel, &stops);
+            let ground = Ground { bearers: &[], ..base.ground() };
             let risen = |b: usize, seen: &Rims, route: Route| match (route, &on[b]) {
                 (Route::Turned(..), Some(on)) if on.reaches(turned) => risen_z_m_on(on, seen, turned),
                 _ => risen_z_m(study, seen, route),
@@ -116,7 +117,7 @@ impl<'a> Side<'a> {
                     let route = if stops[b].had_several { Route::Turned(turn, turned) } else { Route::One };
                     let seen = course.gravity.up.and_then(|up| rims[b].seen(study, up));
                     let risen_z_m = seen.as_ref().map_or(Vec::new(), |seen| risen(b, seen, route));
-                    Sight::new(study, &course, base.still, settled, seen, risen_z_m, route)
+                    Sight { rims: seen, risen_z_m, route, ..Sight::without_rims(&ground, &course, b, settled) }
                 })
                 .collect();
             base.judge(&course, &sights, RestsOn::Direction)
@@ -176,7 +177,7 @@ impl<'a> Side<'a> {
         };
         let settle = |(stop, way): (&Stop, &(Followed, Trace))| {
             let settled = super::settle_at(base.study, &way.0.holder, stop, 1.0, false);
-            super::LEAST_BOND_NUMBER / super::bond_per_gravity(base.study, &settled, base.still.length_m)
+            super::LEAST_BOND_NUMBER / super::bond_per_gravity(base.study, &settled, base.ground().still.length_m)
         };
         let least = stops.iter().zip(&self.ways).map(settle).fold(0.0, f64::max);
         let far = base.rest.norm() + base.most_m_per_s2;
@@ -208,14 +209,12 @@ impl<'a> Side<'a> {
 
     fn judge_at(&self, base: &Base, accel: Vec2, stops: &[Stop], rests_on: RestsOn) -> Judged {
         let course = self.course(base, accel, stops);
-        let sights: Vec<Sight> = stops
-            .iter()
-            .zip(&self.ways)
-            .map(|(stop, (way, _))| {
-                let settled = super::settle_at(base.study, &way.holder, stop, course.gravity.magnitude, false);
-                Sight::new(base.study, &course, base.still, Ok(settled), None, Vec::new(), Route::One)
-            })
-            .collect();
+        let ground = base.ground();
+        let sight = |(b, (stop, (way, _))): (usize, (&Stop, &(Followed, Trace)))| {
+            let settled = super::settle_at(base.study, &way.holder, stop, course.gravity.magnitude, false);
+            Sight::without_rims(&ground, &course, b, Ok(settled))
+        };
+        let sights: Vec<Sight> = stops.iter().zip(&self.ways).enumerate().map(sight).collect();
         base.judge(&course, &sights, rests_on)
     }
 

@@ -21,7 +21,8 @@ pub(super) fn judge(arguments: &JudgeArguments) -> ExitCode {
         let file = path.display().to_string();
         match judged(path, arguments.case.as_deref()) {
             Ok(Judged { study, results, case_idxs }) => {
-                let report = Report { file: &file, study: study.study(), results: &results, case_idxs };
+                let has_layout = arguments.case.is_none();
+                let report = Report { file: &file, study: study.study(), results: &results, case_idxs, has_layout };
                 outcome = outcome.max(Outcome::of(report.counts()));
                 counts.push(report.counts());
                 if arguments.json {

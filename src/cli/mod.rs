@@ -46,7 +46,7 @@ struct JudgeArguments {
     /// Units of the table
     #[arg(long, value_enum, default_value_t = Units::Si)]
     units: Units,
-    /// Show and count this load case only
+    /// Show and count this load case only, without the layout of plates
     #[arg(long, value_name = "NAME")]
     case: Option<String>,
 }

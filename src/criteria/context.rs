@@ -2,6 +2,7 @@
 
 use crate::cases::LoadCase;
 use crate::geom::{Point, Vec2};
+use crate::plates::PlateResult;
 use crate::problem::Place;
 use crate::statics::{Bound, EffectiveGravity, GasPocket, PourOver, Rims, Route, Settled};
 use crate::study::{Limit, ValidStudy};
@@ -37,12 +38,14 @@ pub struct View<'a> {
     pub holds_m3: &'a dyn Fn() -> Option<f64>,
     /// The settled state, or why there is none.
     pub settled: Result<&'a Settled, &'a str>,
+    /// What each plate bears; empty where there is no settled state.
+    pub plates: &'a [PlateResult],
     /// The rims carried on; none where effective gravity does not point toward the floor.
     pub rims: Option<&'a Rims>,
     /// How the liquid comes to the case where the walls are carried on.
     pub route: Route,
     /// For each mouth, z of the settled surface above its brim with the walls carried on, m, where that can be told.
-    pub risen_z_m: Vec<Option<f64>>,
+    pub risen_z_m: &'a [Option<f64>],
     /// Why nothing of this case can be judged: free fall, capillarity.
     pub blocked: Option<String>,
 }

@@ -8,6 +8,7 @@ mod freeboard;
 mod layout;
 mod pressure;
 mod roof;
+mod strength;
 mod vapour;
 mod verdict;
 
@@ -50,8 +51,14 @@ pub struct Criterion {
 }
 
 /// Every criterion, in the order in which they are run.
-pub const CRITERIA: &[Criterion] =
-    &[contained::CRITERION, freeboard::CRITERION, roof::CRITERION, pressure::CRITERION, vapour::CRITERION];
+pub const CRITERIA: &[Criterion] = &[
+    contained::CRITERION,
+    freeboard::CRITERION,
+    roof::CRITERION,
+    pressure::CRITERION,
+    strength::CRITERION,
+    vapour::CRITERION,
+];
 
 /// Runs every criterion; verdicts worst first.
 pub fn judge(context: &Context) -> Outcome {

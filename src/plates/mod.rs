@@ -6,9 +6,12 @@
 //! metre of plate that spans one way. Below: thin plates, small deflections; where that is left, the result says so
 //! as data.
 //!
+//! Bearing: a plate of the section under the net pressure along it, by those.
+//!
 //! Layout, in a module of its own: facts of the section, its plates and its liquid at rest.
 
 mod basis;
+mod bearing;
 mod bending;
 mod bent;
 mod error;
@@ -18,6 +21,7 @@ mod profile;
 mod strength;
 mod strip;
 
+pub use bearing::{Bearer, PanelStrength, PlateResult, Solved, Span, Weld, spans, welds};
 pub use bending::{Bending, EdgeReaction, Extremes, Peak};
 pub use bent::{Bent, PointState};
 pub use error::PlateError;

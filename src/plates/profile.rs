@@ -52,6 +52,11 @@ impl Profile {
         Profile { points: self.points.iter().rev().map(|(at, pressure)| (length_m - at, *pressure)).collect() }
     }
 
+    /// The same, `factor` times as strong.
+    pub fn times(&self, factor: f64) -> Profile {
+        Profile { points: self.points.iter().map(|(at, pressure)| (*at, factor * pressure)).collect() }
+    }
+
     /// The parts of its pieces between the start of the plate and `length_m`.
     pub fn pieces(&self, length_m: f64) -> impl Iterator<Item = Piece> {
         self.points.windows(2).filter_map(move |pair| {

@@ -180,7 +180,7 @@ fn settled() -> Settled {
         ],
         roof: Some(RoofContact { wetted_length_m: 0.1, peak_pa: 120.0, at: Point::new(2.0, 1.0), edge_idx: 3 }),
         cells_m3: vec![0.16, 0.62],
-        gas: vec![],
+        gas: vec![GasPocket { cell_idx: 0, volume_m3: 0.012, at: Point::new(0.1, 0.95), compartment: 0 }],
     }
 }
 
@@ -217,7 +217,14 @@ pub(super) fn results() -> Results {
         },
         cells: vec![cell("cell 1", 0.25, 0.5, 0.2), cell("cell 2", 1.4, 1.48, 0.59)],
         compartments: vec![Compartment { name: "compartment 1".into(), own_idx: None }],
-        layout: Outcome::default(),
+        layout: Outcome {
+            verdicts: vec![verdict("Plate coverage", State::Holds, Some(0.9), Quantity::Share, 0.7, 0.63)],
+            absent: vec![Absent {
+                criterion: "Vent path",
+                place_words: "tank".into(),
+                reason: "none is asked".into(),
+            }],
+        },
         cases: vec![
             CaseResult {
                 name: "Transfer stop".into(),
@@ -234,6 +241,7 @@ pub(super) fn results() -> Results {
                 released: Some(Ok(Settled { cells_m3: vec![0.17, 0.61], ..settled() })),
                 trapped: vec![Trapped { cell_idx: 1, volume_m3: 0.02 }],
                 routes: vec![],
+                plates: vec![],
                 pours: vec![Pour {
                     wall: Wall::Plate { plate_idx: 0, span_m: [0.05, 0.7], is_left: true },
                     at: Point::new(0.5, 0.7),
@@ -273,6 +281,7 @@ pub(super) fn results() -> Results {
                 trapped: vec![],
                 routes: vec![],
                 pours: vec![],
+                plates: vec![],
                 verdicts: vec![Verdict {
                     demand: None,
                     limit: None,

@@ -14,7 +14,7 @@ mod fixture;
 
 use serde::Serialize;
 
-use crate::analysis::{CaseResult, Compartment, Results, State, Verdict};
+use crate::analysis::{CaseResult, Compartment, Outcome, Results, State, Verdict};
 use crate::cases::LoadCase;
 use crate::liquid::Liquid;
 use crate::problem::Place;
@@ -45,6 +45,8 @@ pub struct Report<'a> {
     pub results: &'a Results,
     /// Indices of the load cases shown.
     pub case_idxs: Vec<usize>,
+    /// Whether the layout of plates is shown, which is judged once for all load cases.
+    pub has_layout: bool,
 }
 
 /// How many load cases, and how many verdicts in each state.
@@ -63,9 +65,9 @@ pub struct Counts {
 }
 
 impl<'a> Report<'a> {
-    /// A report of every load case.
+    /// A report of everything.
     pub fn new(file: &'a str, study: &'a Study, results: &'a Results) -> Report<'a> {
-        Report { file, study, results, case_idxs: (0..results.cases.len()).collect() }
+        Report { file, study, results, case_idxs: (0..results.cases.len()).collect(), has_layout: true }
     }
 
     /// The load cases shown: number from one, inputs, results.
@@ -86,7 +88,13 @@ impl<'a> Report<'a> {
     }
 
     fn verdicts(&self) -> impl Iterator<Item = &'a Verdict> {
-        self.cases().flat_map(|(_, _, case)| &case.verdicts)
+        let layout = self.layout().into_iter().flat_map(|layout| &layout.verdicts);
+        layout.chain(self.cases().flat_map(|(_, _, case)| &case.verdicts))
+    }
+
+    /// The layout of plates, where it is shown.
+    fn layout(&self) -> Option<&'a Outcome> {
+        self.has_layout.then_some(&self.results.layout)
     }
 
     /// A place in words, with the name that the user gave it.

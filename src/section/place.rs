@@ -1,5 +1,7 @@
 //! Plates put in place: on what their ends stand, and every fault of theirs.
 
+use std::f64::consts::FRAC_PI_4;
+
 use crate::geom::{Edge, Path, Point, Vec2, cross};
 use crate::problem::{Place, Problem};
 
@@ -112,11 +114,11 @@ impl<'a> Layout<'a> {
             fault(&whole, message, "give a distance above zero, or leave it out");
         }
         let segments: Vec<Edge> = plate.segments().collect();
+        if let Some(e) = segments.iter().find(|e| e.length() <= self.slack) {
+            let message = format!("has no length at s {:.4} m, z {:.4} m", e.start.x, e.start.y);
+            return fault(&whole, message, "move one of its corners, or delete the plate");
+        }
         for (i, e) in segments.iter().enumerate() {
-            if e.length() <= self.slack {
-                let message = format!("has no length at s {:.4} m, z {:.4} m", e.start.x, e.start.y);
-                return fault(&whole, message, "move one of its corners, or delete the plate");
-            }
             for (j, other) in segments.iter().enumerate().skip(i + 1) {
                 let joint = e.end;
                 let shared = |p: &Point| j == i + 1 && (p - joint).norm() <= self.slack;
@@ -135,6 +137,11 @@ impl<'a> Layout<'a> {
                 fault(&place, message, "let it end further along the plate than it begins");
                 continue;
             }
+            if o.to_m - o.from_m <= self.stands {
+                let message = format!("is shorter than {:.2e} m, within which places are one", self.stands);
+                fault(&place, message, "make it longer, or delete it");
+                continue;
+            }
             if o.from_m < -self.stands || o.to_m > length + self.stands {
                 let message = format!(
                     "from {:.4} m to {:.4} m runs off the plate, which is {length:.4} m long",
@@ -144,13 +151,19 @@ impl<'a> Layout<'a> {
             }
             let share = o.open_share(self.width_at(plate.point_at(0.5 * (o.from_m + o.to_m))));
             let is_sane = share.is_finite() && share > 0.0 && share <= 1.0 + 1e-9;
-            if !is_sane {
+            let fits = match o.shape {
+                OpeningShape::Share(_) => true,
+                OpeningShape::Holes { .. } => share <= FRAC_PI_4 * (1.0 + 1e-9),
+                OpeningShape::Perforated { diameter_m, pitch_m, .. } => 0.0 < diameter_m && diameter_m < pitch_m,
+            };
+            if !(is_sane && fits) {
                 let hint = match o.shape {
                     OpeningShape::Share(_) => "give a share above 0 % and up to 100 %",
                     OpeningShape::Holes { .. } => "give at least one hole, and no more than fit side by side",
                     OpeningShape::Perforated { .. } => "give a hole diameter above zero and a pitch larger than it",
                 };
-                fault(&place, format!("{} % of it would be open", number(share * 100.0)), hint);
+                let message = format!("{} % of it would be open", number(share * 100.0));
+                fault(&place, if is_sane { "its holes do not fit".to_owned() } else { message }, hint);
             }
             for (other_idx, other) in plate.openings.iter().enumerate().take(opening_idx) {
                 if o.from_m < other.to_m - self.slack && other.from_m < o.to_m - self.slack {

@@ -76,6 +76,13 @@ impl WidthLaw {
         }
     }
 
+    /// The largest width between two heights, m.
+    pub fn widest(&self, low_z: f64, high_z: f64) -> f64 {
+        let axis = self.range().map(|(low, high)| 0.5 * (low + high));
+        let inner = self.kinks().into_iter().chain(axis).filter(|z| low_z < *z && *z < high_z);
+        inner.chain([low_z, high_z]).map(|z| self.width(z)).fold(0.0, f64::max)
+    }
+
     /// Omega(z): integral of w from the lowest height, m2. For a constant width, from z = 0.
     pub fn omega(&self, z: f64) -> f64 {
         self.integrals(z)[0]

@@ -63,7 +63,7 @@ pub fn gas_pockets(section: &Section, region: &Region, look: &Look, bodies: &[Bo
         faces.into_iter().any(|f| look.cut.part_of(f) == part && look.cut.is_mouth(f as u32))
     };
     let is_alone = |s: &Space| found.iter().all(|o| o.root == s.root || o.parts.iter().all(|p| !s.parts.contains(p)));
-    let is_pocket = |s: &&Space| !s.is_vented && !(is_alone(s) && !s.parts.iter().any(|&p| has_mouth(p)));
+    let is_pocket = |s: &&Space| !s.is_vented && (!is_alone(s) || s.parts.iter().any(|&p| has_mouth(p)));
     let mut pockets: Vec<GasPocket> = found
         .iter()
         .filter(is_pocket)

@@ -112,7 +112,7 @@ fn holds(holder: &Holder, mouths: &[Mouth], stop: &Stop) -> Option<f64> {
 
 /// The largest volume of the common fill that leaves no mouth on the way along `ramp`, by following fills one after
 /// another: a root of the room that is left, since more liquid never leaves more room. Relative to the capacity,
-/// accurate to 1e-9.
+/// accurate to 1e-7.
 pub fn highest_fill(holder_of: &dyn Fn(&[Start]) -> f64, starts: &[Start]) -> f64 {
     let Some(common) = starts.iter().position(|s| s.is_common) else { return 0.0 };
     let capacity = starts[common].vessel.capacity_m3();
@@ -124,5 +124,5 @@ pub fn highest_fill(holder_of: &dyn Fn(&[Start]) -> f64, starts: &[Start]) -> f6
     if over(capacity) <= 0.0 {
         return capacity;
     }
-    crate::num::root(0.0, capacity, 1e-9 * capacity, over)
+    crate::num::root(0.0, capacity, 1e-7 * capacity, over)
 }

@@ -3,7 +3,7 @@
 use crate::cases::Accel;
 use crate::geom::{Path, Vec2};
 use crate::problem::{Place, Problem, Severity};
-use crate::section::{self, Region};
+use crate::section::{self, Region, Wall};
 use crate::statics::{Start, Vessel};
 
 use super::{Fill, Limit, Study, ValidStudy};
@@ -30,6 +30,7 @@ impl Study {
         };
         if let Some(region) = &region {
             self.check_points(region, &mut problems);
+            check_mouths(region, &starts, &mut problems);
             if mouths.is_empty() {
                 problems.push(Problem::warning(
                     Place::Field("mouths"),
@@ -237,6 +238,27 @@ impl Study {
             }
         }
         liquids
+    }
+}
+
+/// Warns of mouths that stand open below the still level of a compartment beside them.
+fn check_mouths(region: &Region, starts: &[Start], problems: &mut Vec<Problem>) {
+    let open = region.open();
+    let mut levels = vec![f64::NEG_INFINITY; open.n_parts()];
+    for start in starts.iter().filter(|s| s.volume_m3 > 0.0) {
+        let level = start.vessel.tilted(Vec2::y()).level_for_volume(start.volume_m3);
+        start.compartments.iter().for_each(|&part| levels[part] = level);
+    }
+    let slack = 1e-9 * region.diagonal_m();
+    for (i, face) in open.faces().iter().enumerate() {
+        let Wall::Outline { edge_idx, is_mouth: true } = face.wall else { continue };
+        let (lowest, level) = (face.edge.extent(Vec2::y()).0.0, levels[open.part_of(i)]);
+        let place = Place::Edge(edge_idx);
+        if level > lowest + slack && problems.iter().all(|p| p.place != place) {
+            let message =
+                format!("is a mouth that reaches down to z {lowest:.4} m, below the still level at z {level:.4} m");
+            problems.push(Problem::warning(place, message, "lower the fill, or move the mouth up"));
+        }
     }
 }
 

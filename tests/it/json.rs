@@ -19,7 +19,9 @@ fn every_case_and_verdict_has_what_the_contract_says() {
         assert!(!cases.is_empty(), "{}", file.display());
         for case in cases {
             assert!(case["name"].is_string() && case.get("settled").is_some(), "{case:#}");
-            for verdict in case["verdicts"].as_array().expect("a list of verdicts") {
+        }
+        for judged in cases.iter().chain([&run["layout"]]) {
+            for verdict in judged["verdicts"].as_array().expect("a list of verdicts") {
                 for key in ["criterion", "state", "place", "source"] {
                     assert!(verdict[key].as_str().is_some_and(|s| !s.is_empty()), "{key}: {verdict:#}");
                 }
@@ -37,9 +39,9 @@ fn every_case_and_verdict_has_what_the_contract_says() {
 fn states_follow_utilisation_and_come_worst_first() {
     for file in shipped_scenarios() {
         let (run, _) = json_of(&file);
-        for case in run["cases"].as_array().expect("cases") {
+        for judged in run["cases"].as_array().expect("cases").iter().chain([&run["layout"]]) {
             let mut last = 0;
-            for verdict in case["verdicts"].as_array().expect("verdicts") {
+            for verdict in judged["verdicts"].as_array().expect("verdicts") {
                 let state = verdict["state"].as_str().expect("a state");
                 let rank = ["fails", "not judged", "close", "holds"].iter().position(|s| *s == state);
                 let rank = rank.unwrap_or_else(|| panic!("{state} is no state"));
@@ -68,7 +70,8 @@ fn counts_and_exit_status_agree_with_the_verdicts() {
             .as_array()
             .expect("cases")
             .iter()
-            .flat_map(|case| case["verdicts"].as_array().expect("verdicts"))
+            .chain([&run["layout"]])
+            .flat_map(|judged| judged["verdicts"].as_array().expect("verdicts"))
             .map(|verdict| verdict["state"].as_str().expect("a state"))
             .collect();
         for (key, word) in [("fails", "fails"), ("not_judged", "not judged"), ("close", "close"), ("holds", "holds")]

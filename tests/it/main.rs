@@ -1,6 +1,7 @@
 //! The integration tests: one binary, one module a subject.
 
 mod arbitrary;
+mod bad_plates;
 mod bad_sections;
 #[cfg(feature = "gui")]
 mod board;
@@ -19,6 +20,8 @@ mod gui;
 mod json;
 mod layout_rules;
 mod panels;
+mod partitions;
+mod plate_strength;
 mod pools_by_hand;
 mod pools_sampled;
 mod program;

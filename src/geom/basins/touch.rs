@@ -71,7 +71,10 @@ mod tests {
     }
 
     /// Strips of a box 2 by 1 with a level slit from its left wall to `tip`, half way up.
-    fn box_with_slit(tip: f64) -> (Vec<[usize; 2]>, Vec<(usize, usize, bool)>) {
+    /// Strips and their touches.
+    type Seen = (Vec<[usize; 2]>, Vec<(usize, usize, bool)>);
+
+    fn box_with_slit(tip: f64) -> Seen {
         let p = Point::new;
         let corners = [p(0.0, 0.0), p(2.0, 0.0), p(2.0, 1.0), p(0.0, 1.0), p(0.0, 0.5), p(tip, 0.5), p(0.0, 0.5)];
         let edges: Vec<Edge> = (0..7).map(|i| Edge::line(corners[i], corners[(i + 1) % 7])).collect();

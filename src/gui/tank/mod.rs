@@ -2,6 +2,7 @@
 //!
 //! Knows no verdict and no case, save the highest fill that holds.
 
+mod cells;
 mod compartments;
 mod fill;
 mod flow;
@@ -39,6 +40,7 @@ const PARTS: &[Part] = &[
     ("Liquid", liquid::liquid_ui),
     ("Outline", outline::outline_ui),
     ("Plates", plates::plates_ui),
+    ("Cells", cells::cells_ui),
     ("Compartments", compartments::compartments_ui),
     ("Mouths", mouths::mouths_ui),
     ("Obstacles", outline::obstacles_ui),

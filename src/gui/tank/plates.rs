@@ -1,6 +1,6 @@
 //! Plates: chosen by a click, typed exactly, corner by corner.
 
-use egui::{Align, Stroke, Ui, pos2};
+use egui::{Align, Rect, Stroke, Ui, pos2};
 
 use crate::app::Edit;
 use crate::geom::Point;
@@ -21,8 +21,8 @@ pub(super) fn plates_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
     let plates = &desk.study().section.plates;
     let note = match plates.is_empty() {
         true => "none",
-        false if is_narrow(ui) => "s",
-        false => "s, thickness",
+        false if is_narrow(ui) => "s, solid",
+        false => "s, thickness, solid",
     };
     field::heading_ui(ui, desk.look, "Plates", note);
     let open = desk.view.selected.and_then(Selected::plate);
@@ -52,10 +52,11 @@ pub(super) fn plates_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
     }
 }
 
-/// One row: mark, name, s of the foot, and the thickness where there is room. Gives whether it was clicked.
+/// One row: mark, name, s of the foot, the thickness where there is room, the share that is solid. Gives whether it was
+/// clicked.
 fn row_ui(ui: &mut Ui, desk: &mut Desk, i: usize, plate: &Plate, is_open: bool) -> bool {
     let label = plate.label(i);
-    let taken = if is_narrow(ui) { 16.0 } else { 66.0 };
+    let taken = if is_narrow(ui) { 64.0 } else { 112.0 };
     let rect = field::row_rect(ui);
     let response = list_row_ui(ui, rect, desk, is_open, &label, &format!("Plate {}, {label}", i + 1), taken);
     let x = ui.painter().round_to_pixel_center(rect.left() + 5.0);
@@ -63,26 +64,33 @@ fn row_ui(ui: &mut Ui, desk: &mut Desk, i: usize, plate: &Plate, is_open: bool) 
     for (from, to) in [(-7.0, -2.5), (2.5, 7.0)] {
         ui.painter().line_segment([pos2(x, rect.center().y + from), pos2(x, rect.center().y + to)], ink);
     }
-    let length = |m: f64, significant: usize, right: f32| {
-        let number = Measure::new(Quantity::Length, m).number(desk.units(), significant);
-        let unit = format!(" {}", desk.unit(Quantity::Length).symbol);
-        let job = font::runs([
-            (number.as_str(), font::figure(), desk.look.ink),
-            (unit.as_str(), font::small(), desk.look.ink3),
-        ]);
-        field::paint_job(ui, rect.with_max_x(right), Align::Max, job);
-    };
     let foot = plate.points.iter().min_by(|a, b| a.y.total_cmp(&b.y)).map_or(0.0, |p| p.x);
-    if is_narrow(ui) {
-        length(foot, 4, rect.right());
-    } else {
-        length(foot, 4, rect.right() - 54.0);
-        length(plate.thickness_m, 2, rect.right());
+    let solid = plate.solid_share(&desk.study().section.width);
+    let figures = [
+        (Quantity::Length, foot, 4, if is_narrow(ui) { 50.0 } else { 98.0 }),
+        (Quantity::Length, plate.thickness_m, 2, 50.0),
+        (Quantity::Share, solid, 3, 0.0),
+    ];
+    for (k, (quantity, si, significant, from_right)) in figures.into_iter().enumerate() {
+        if si.is_finite() && !(k == 1 && is_narrow(ui)) {
+            measure_ui(ui, rect.with_max_x(rect.right() - from_right), desk, Measure::new(quantity, si), significant);
+        }
     }
     response.on_hover_text(label).clicked()
 }
 
-/// Whether only one number has room beside a name.
+/// A number with its unit, at the right of `rect`.
+pub(super) fn measure_ui(ui: &Ui, rect: Rect, desk: &Desk, measure: Measure, significant: usize) {
+    let number = measure.number(desk.units(), significant);
+    let unit = format!(" {}", desk.unit(measure.quantity).symbol);
+    let job = font::runs([
+        (number.as_str(), font::figure(), desk.look.ink),
+        (unit.as_str(), font::small(), desk.look.ink3),
+    ]);
+    field::paint_job(ui, rect, Align::Max, job);
+}
+
+/// Whether only two numbers have room beside a name.
 fn is_narrow(ui: &Ui) -> bool {
     ui.available_width() < 220.0
 }
@@ -112,7 +120,8 @@ fn plate_fields_ui(ui: &mut Ui, desk: &mut Desk, i: usize, plate: &Plate) {
         with(&|p| p.material = name.clone())
     });
     let mut rows: Vec<(Option<&str>, &str)> = vec![(None, "choose")];
-    rows.extend(material::table().iter().map(|m| (Some(m.name.as_str()), m.name.as_str())));
+    let known = desk.study().materials.iter().chain(material::table());
+    rows.extend(known.map(|m| (Some(m.name.as_str()), m.name.as_str())));
     if let Some(Some(name)) = field::choice_row_ui(ui, desk.look, "From the table", None, &rows) {
         desk.edit(with(&|p| p.material = name.to_owned()));
     }

@@ -4,11 +4,10 @@ use serde::Serialize;
 
 use crate::analysis::{CaseResult, Pour, Settled};
 use crate::cases::LoadCase;
-use crate::units::UnitSystem;
 
 use super::super::Report;
 use super::state::State;
-use super::verdict::VerdictRow;
+use super::verdict::{AbsentRow, VerdictRow};
 use super::{Num, num};
 
 #[derive(Clone, Debug, Serialize)]
@@ -71,16 +70,8 @@ impl Case {
                 .iter()
                 .map(|t| TrappedRow { cell: report.cell_name(t.cell_idx), volume_m3: num(t.volume_m3) })
                 .collect(),
-            verdicts: result.verdicts.iter().map(|v| VerdictRow::new(report, result, v)).collect(),
-            absent: result
-                .absent
-                .iter()
-                .map(|a| AbsentRow {
-                    criterion: a.criterion,
-                    place: a.place_words.clone(),
-                    reason: a.reason.text(UnitSystem::Si),
-                })
-                .collect(),
+            verdicts: result.verdicts.iter().map(|v| VerdictRow::new(report, Some(result), v)).collect(),
+            absent: result.absent.iter().map(AbsentRow::new).collect(),
         }
     }
 }
@@ -125,11 +116,4 @@ impl PourRow {
 struct TrappedRow {
     cell: String,
     volume_m3: Num,
-}
-
-#[derive(Clone, Debug, Serialize)]
-struct AbsentRow {
-    criterion: &'static str,
-    place: String,
-    reason: String,
 }

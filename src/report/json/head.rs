@@ -7,6 +7,7 @@ use crate::study::Record;
 
 use super::super::{CAUTION, Counts, Report, value_of};
 use super::parts::{CellRow, CompartmentRow, DrawnPlate};
+use super::verdict::{AbsentRow, VerdictRow};
 use super::{Num, Piece, num, source_key};
 
 #[derive(Clone, Debug, Serialize)]
@@ -25,6 +26,7 @@ pub(super) struct Judged {
     cells: Vec<CellRow>,
     compartments: Vec<CompartmentRow>,
     plates: Vec<DrawnPlate>,
+    layout: Option<Layout>,
     records: Vec<RecordRow>,
     bibliography: Vec<Entry>,
     counts: Counts,
@@ -63,6 +65,10 @@ impl Judged {
             cells: CellRow::all(report),
             compartments: CompartmentRow::all(report),
             plates: DrawnPlate::all(report),
+            layout: report.layout().map(|layout| Layout {
+                verdicts: layout.verdicts.iter().map(|v| VerdictRow::new(report, None, v)).collect(),
+                absent: layout.absent.iter().map(AbsentRow::new).collect(),
+            }),
             records: study.records.iter().map(RecordRow::new).collect(),
             bibliography: sources::all()
                 .filter(|(key, _)| report.verdicts().any(|v| v.source == *key))
@@ -96,6 +102,12 @@ struct Still {
     mass_kg: Num,
     highest_share: Num,
     surface: Vec<Piece>,
+}
+
+#[derive(Clone, Debug, Serialize)]
+struct Layout {
+    verdicts: Vec<VerdictRow>,
+    absent: Vec<AbsentRow>,
 }
 
 #[derive(Clone, Debug, Serialize)]

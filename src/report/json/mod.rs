@@ -203,6 +203,9 @@ mod tests {
             assert_eq!(keys(&held[state]), keys(&held["settled"]), "{state} has the keys of settled");
         }
         assert_eq!(held["sealed"]["plates"][0]["net_n"], 230.0);
+        assert_eq!(held["settled"]["gas_pockets"][0]["cell"], "cell 1");
+        assert_eq!(value["layout"]["verdicts"][0]["criterion"], "Plate coverage");
+        assert_eq!(value["layout"]["absent"][0]["criterion"], "Vent path");
         assert_eq!(held["pours"][0]["sill"], "sill");
         assert_eq!(held["trapped"][0]["cell"], "cell 2");
         assert_eq!(held["settled"]["spills"][0]["mouth"], "rim");

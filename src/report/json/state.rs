@@ -2,7 +2,7 @@
 
 use serde::Serialize;
 
-use crate::analysis::{PointPressure, Pool, RoofContact, Settled};
+use crate::analysis::{GasPocket, PointPressure, Pool, RoofContact, Settled};
 use crate::problem::Place;
 
 use super::super::Report;
@@ -18,6 +18,7 @@ pub(super) struct State {
     n_pools: usize,
     pools: Vec<PoolRow>,
     cells_m3: Vec<Num>,
+    gas_pockets: Vec<GasRow>,
     centroid_s_m: Num,
     centroid_z_m: Num,
     highest_wetted_s_m: Num,
@@ -52,6 +53,7 @@ impl State {
             n_pools: settled.pools.len(),
             pools: settled.pools.iter().map(|pool| PoolRow::new(report, pool)).collect(),
             cells_m3: settled.cells_m3.iter().map(|&m3| num(m3)).collect(),
+            gas_pockets: settled.gas.iter().map(|pocket| GasRow::new(report, pocket)).collect(),
             centroid_s_m,
             centroid_z_m,
             highest_wetted_s_m,
@@ -106,6 +108,27 @@ impl PoolRow {
             centroid_z_m,
             compartment: report.compartment_name(pool.compartment),
             cells: pool.cell_idxs.iter().map(|&i| report.cell_name(i)).collect(),
+        }
+    }
+}
+
+#[derive(Clone, Debug, Serialize)]
+struct GasRow {
+    volume_m3: Num,
+    s_m: Num,
+    z_m: Num,
+    compartment: String,
+    cell: String,
+}
+
+impl GasRow {
+    fn new(report: &Report, pocket: &GasPocket) -> GasRow {
+        GasRow {
+            volume_m3: num(pocket.volume_m3),
+            s_m: num(pocket.at.x),
+            z_m: num(pocket.at.y),
+            compartment: report.compartment_name(pocket.compartment),
+            cell: report.cell_name(pocket.cell_idx),
         }
     }
 }

@@ -2,7 +2,8 @@
 
 use serde::Serialize;
 
-use crate::analysis::{Bound, CaseResult, Reach, Verdict};
+use crate::analysis::{Absent, Bound, CaseResult, Reach, Verdict};
+use crate::study::VerdictNote;
 use crate::units::UnitSystem;
 
 use super::super::Report;
@@ -32,11 +33,14 @@ pub(super) struct VerdictRow {
 }
 
 impl VerdictRow {
-    pub(super) fn new(report: &Report, case: &CaseResult, verdict: &Verdict) -> VerdictRow {
+    /// `case` is the load case that it is of, none for the layout.
+    pub(super) fn new(report: &Report, case: Option<&CaseResult>, verdict: &Verdict) -> VerdictRow {
         let study = report.study;
         let (at_s_m, at_z_m) = coordinates(verdict.at);
         let record = verdict.unconfirmed_record.and_then(|idx| study.records.get(idx));
-        let note = study.verdict_notes.iter().find(|n| n.case == case.name && n.criterion == verdict.criterion);
+        let is_own =
+            |n: &&VerdictNote| case.is_some_and(|case| n.case == case.name) && n.criterion == verdict.criterion;
+        let note = study.verdict_notes.iter().find(is_own);
         VerdictRow {
             criterion: verdict.criterion,
             state: verdict.state.word(),
@@ -70,6 +74,23 @@ impl VerdictRow {
             mend: verdict.mend.iter().map(|m| m.text(UnitSystem::Si)).collect(),
             unconfirmed_record: record.map(|r| r.title.clone()),
             note: note.map(|n| n.text.clone()),
+        }
+    }
+}
+
+#[derive(Clone, Debug, Serialize)]
+pub(super) struct AbsentRow {
+    criterion: &'static str,
+    place: String,
+    reason: String,
+}
+
+impl AbsentRow {
+    pub(super) fn new(absent: &Absent) -> AbsentRow {
+        AbsentRow {
+            criterion: absent.criterion,
+            place: absent.place_words.clone(),
+            reason: absent.reason.text(UnitSystem::Si),
         }
     }
 }

@@ -51,7 +51,7 @@ impl Table<'_> {
         self.pools(case);
         self.states(case);
         self.plate_loads(case);
-        self.verdicts(case);
+        self.verdicts(&case.verdicts, &case.absent);
     }
 
     fn settled(&mut self, case: &CaseResult, settled: &Settled) {
@@ -78,6 +78,8 @@ impl Table<'_> {
                 format!("reaches z {}", self.level(Quantity::Length, settled.highest_wetted.y)),
             ],
         );
+        let pockets = self.pockets(case);
+        self.fact("gas", pockets);
         self.fact("poured", case.pours.iter().map(|pour| self.pour(case, pour)).collect::<Vec<_>>());
         if let Some(Ok(_)) = case.released {
             self.fact("trapped", [self.trapped(case)]);
@@ -139,6 +141,18 @@ impl Table<'_> {
                 format!("{all}: {}", parts.join(", "))
             }
         }
+    }
+
+    /// Gas that no mouth opens to air.
+    fn pockets(&self, case: &CaseResult) -> Vec<String> {
+        let states = self.states_of(case).into_iter();
+        states
+            .flat_map(|(name, state)| state.gas.iter().map(move |pocket| (name, pocket)))
+            .map(|(name, pocket)| {
+                let volume = self.measure(Quantity::Volume, pocket.volume_m3);
+                format!("{name}: {volume} in {} touches no mouth", self.report.cell_name(pocket.cell_idx))
+            })
+            .collect()
     }
 
     /// What went over a sill.

@@ -122,6 +122,17 @@ impl Table<'_> {
         grid.write(&mut self.lines);
     }
 
+    /// The verdicts on the layout of plates, where there are any plates or rules.
+    pub(super) fn layout(&mut self) {
+        let Some(layout) = self.report.layout() else { return };
+        if layout.verdicts.is_empty() && self.report.study.section.plates.is_empty() {
+            return;
+        }
+        self.lines.gap();
+        self.lines.facts("   ", ["Plate layout, the tank standing level and at rest"]);
+        self.verdicts(&layout.verdicts, &layout.absent);
+    }
+
     /// From which point to which one a plate is drawn.
     fn drawn(&self, plate: &Plate) -> String {
         let (Some(&from), Some(&to)) = (plate.points.first(), plate.points.last()) else { return "–".to_owned() };

@@ -17,6 +17,7 @@ use super::{CAUTION, Counts, Report};
 pub fn text(report: &Report, units: UnitSystem) -> String {
     let mut table = Table { report, units, lines: Lines::default() };
     table.head();
+    table.layout();
     for (n, input, case) in report.cases() {
         table.case(n, input, case);
     }
@@ -158,12 +159,30 @@ mod tests {
    sill   settled   −0.410 kN  z 293.0 mm  −1.19 kPa at z 50.00 mm
           sealed    +0.230 kN  z 293.0 mm  −1.19 kPa at z 50.00 mm
 ",
+            "
+   Plate layout, the tank standing level and at rest
+
+   state       criterion          used  demand and limit
+   holds       Plate coverage     0.90  70.0 %, at most 63.0 %
+",
+            "   gas       settled: 0.0120 m³ in cell 1 touches no mouth
+             sealed: 0.0120 m³ in cell 1 touches no mouth
+",
             "   poured    0.0300 m³ to the right over sill at s 500.0 mm, z 700.0 mm\n",
             "   trapped   after the release 0.0200 m³ more in cell 2 than before\n",
             "               rim, right end · sealed bound · own derivation, pour-over\n",
         ] {
             assert!(text.contains(want), "want\n{want}in\n{text}");
         }
+    }
+
+    #[test]
+    fn a_report_of_one_load_case_leaves_the_layout_out() {
+        let (study, results) = (fixture::study(), fixture::results());
+        let report = Report { case_idxs: vec![0], has_layout: false, ..Report::new("tray.ron", &study, &results) };
+        let text = text(&report, UnitSystem::Si);
+        assert!(!text.contains("Plate layout") && !text.contains("Plate coverage"), "{text}");
+        assert_eq!(report.counts().holds, 1, "Freeboard alone");
     }
 
     #[test]
@@ -234,7 +253,7 @@ mod tests {
     fn the_summary_counts_over_files_and_is_two_lines() {
         let (study, results) = (fixture::study(), fixture::results());
         let counts = Report::new("tray.ron", &study, &results).counts();
-        let want = format!("4 fail · 2 not judged · 0 close · 2 hold · 4 load cases · 2 files\n{CAUTION}\n");
+        let want = format!("4 fail · 2 not judged · 0 close · 4 hold · 4 load cases · 2 files\n{CAUTION}\n");
         assert_eq!(summary(&[counts, counts]), want);
     }
 

@@ -31,13 +31,12 @@ impl Table<'_> {
 
     /// Whether nothing that is shown of a state differs from another.
     pub(super) fn reads_as(&self, state: &Settled, other: Option<&Settled>) -> bool {
-        let net = |s: &Settled| -> Vec<String> {
-            s.plates.iter().map(|plate| self.measure(Quantity::Force, plate.net_n)).collect()
+        let shown = |s: &Settled| -> Vec<String> {
+            let nets = s.plates.iter().map(|plate| self.measure(Quantity::Force, plate.net_n));
+            let gas = s.gas.iter().map(|pocket| self.measure(Quantity::Volume, pocket.volume_m3));
+            self.held(s).into_iter().chain(self.differences(s)).chain(nets).chain(gas).collect()
         };
-        other.is_some_and(|other| {
-            let is_held = self.held(state) == self.held(other);
-            is_held && self.differences(state) == self.differences(other) && net(state) == net(other)
-        })
+        other.is_some_and(|other| shown(state) == shown(other))
     }
 
     /// What a state holds in each cell.

@@ -1,18 +1,17 @@
-//! The verdicts of a load case, worst first, and the checks that do not apply.
+//! Verdicts, worst first, and the checks that do not apply.
 
-use crate::analysis::{CaseResult, Reach, State, Trust, Verdict};
+use crate::analysis::{Absent, Reach, State, Trust, Verdict};
 use crate::units::{Measure, utilisation_text};
 
 use super::super::lines::{left, right, width};
 use super::Table;
 
 impl Table<'_> {
-    pub(super) fn verdicts(&mut self, case: &CaseResult) {
-        let criterion = case
-            .verdicts
+    pub(super) fn verdicts(&mut self, verdicts: &[Verdict], absent: &[Absent]) {
+        let criterion = verdicts
             .iter()
             .map(|v| width(v.criterion))
-            .chain(case.absent.iter().map(|a| width(a.criterion)))
+            .chain(absent.iter().map(|a| width(a.criterion)))
             .chain([width("criterion")])
             .max()
             .unwrap_or(0);
@@ -21,7 +20,7 @@ impl Table<'_> {
             format!("   {}  {}  {}  ", left(state, 10), left(name, criterion), right(used, 7))
         };
         self.lines.facts(&row("state", "criterion", "used"), ["demand and limit"]);
-        for v in &case.verdicts {
+        for v in verdicts {
             self.lines
                 .facts(&row(v.state.word(), v.criterion, &utilisation_text(v.utilisation)), [self.comparison(v)]);
             // A verdict that is not judged has its reason below; how far a method reaches would only confuse.
@@ -34,7 +33,7 @@ impl Table<'_> {
             let record = v.unconfirmed_record.and_then(|idx| self.report.study.records.get(idx));
             self.detail(record.map(|r| format!("rests on an unconfirmed record: {}", r.title)));
         }
-        for a in &case.absent {
+        for a in absent {
             self.lines.facts(&row("absent", a.criterion, ""), [""]);
             self.detail(Some(format!("{}: {}", a.place_words, a.reason.text(self.units))));
         }

@@ -127,8 +127,8 @@ fn a_compartment_has_its_own_fill_and_liquid() {
     let mut harness = plain_box();
     press(&mut harness, "Add a plate");
     press(&mut harness, "Add a compartment");
-    type_into(&mut harness, "A point inside, s", "300");
     type_into(&mut harness, "A point inside, z", "150");
+    type_into(&mut harness, "A point inside, s", "300");
     choose(&mut harness, "Filled by, share", "still level");
     type_into(&mut harness, "Own still level, z", "400");
     press(&mut harness, "A liquid of its own");
@@ -238,4 +238,13 @@ fn the_board_shows_each_state_that_a_case_has() {
     assert_eq!(stage(&harness), Stage::Released);
     run(&mut harness, Command::NextStage);
     assert_eq!(stage(&harness), Stage::ALL[0], "round again");
+}
+
+/// A plate in the middle of a box of 2 m by 1 m by 1 m, half full: two cells of 1 m3 that hold half of it.
+#[test]
+fn cells_are_listed_with_what_they_hold() {
+    let mut harness = plain_box();
+    press(&mut harness, "Add a plate");
+    let words = "still 0.500 m³, capacity 1.00 m³, area 1.00 m²";
+    assert_eq!(harness.query_all_by_label_contains(words).count(), 2);
 }

@@ -9,6 +9,7 @@ pub mod limited;
 pub mod plated;
 pub mod random;
 pub mod shapes;
+pub mod states;
 pub mod table;
 
 use brimwright::analysis::{self, CaseResult, Chord, EdgeLoad, Results, Settled, Verdict};
