@@ -17,8 +17,11 @@ use super::rims::{SharedRims, risen_z_m, risen_z_m_on};
 use super::sight::{Ground, Sight, Sighted, StillSurface};
 use super::ways;
 
-/// How many fills, and how many accelerations, make a fill map that shows every percent.
-pub const N_LINES: usize = 101;
+/// How many fills make a fill map that shows every percent.
+pub const N_FILLS: usize = 101;
+
+/// How many accelerations go with them.
+pub const N_ACCELS: usize = 100;
 
 /// What a fill map shows beyond the case, as a multiple of its acceleration.
 const REACH: f64 = 1.5;
@@ -34,7 +37,7 @@ pub struct FillMap {
     pub case_m_per_s2: f64,
     /// Fills, as shares of the common capacity, from empty to full.
     pub shares: Vec<f64>,
-    /// Sizes of the acceleration, m/s2, from rest to beyond the case.
+    /// Sizes of the acceleration, m/s2, in even steps from zero, which is left out, to beyond the case.
     pub accels_m_per_s2: Vec<f64>,
     /// One a fill and acceleration, all accelerations of the first fill first; none where not worked out yet.
     pub points: Vec<Option<MapPoint>>,
@@ -105,13 +108,13 @@ pub fn fill_map(
         return Err(NoFillMap::AtRest);
     }
     let (n_fills, n_accels) = (n_fills.max(2), n_accels.max(2));
-    let even = |n: usize, end: f64| (0..n).map(|i| end * i as f64 / (n - 1) as f64).collect::<Vec<f64>>();
+    let share = |i: usize, n: usize| i as f64 / n as f64;
     let mut map = FillMap {
         case_idx,
         direction: accel / size,
         case_m_per_s2: size,
-        shares: even(n_fills, 1.0),
-        accels_m_per_s2: even(n_accels, REACH * size),
+        shares: (0..n_fills).map(|i| share(i, n_fills - 1)).collect(),
+        accels_m_per_s2: (1..=n_accels).map(|j| REACH * size * share(j, n_accels)).collect(),
         points: vec![None; n_fills * n_accels],
     };
     let rows = Rows::new(study, case, &map);

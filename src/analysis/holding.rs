@@ -152,8 +152,10 @@ impl<'a> Holding<'a> {
             None => ends(top, end),
             Some((low, high)) => {
                 let accel = root(low, high, 1e-13 * (high + 1e-3 * ray.rest), |accel| self.excess(side, &ray, accel));
-                let beyond = [accel * (1.0 + 1e-9) + 1e-12 * ray.rest, high];
-                let found = beyond.into_iter().find_map(|accel| End::of(&self.by_size(side, &ray, accel)));
+                // A limit that is reached is not yet passed: a hair further on it is.
+                let beyond = [1e-9, 1e-8, 1e-7, 1e-6].map(|hair| (accel + hair * (accel + ray.rest)).min(high));
+                let found =
+                    beyond.into_iter().chain([high]).find_map(|accel| End::of(&self.by_size(side, &ray, accel)));
                 ends(accel, found.unwrap_or(End::Beyond))
             }
         }

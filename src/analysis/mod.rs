@@ -27,7 +27,7 @@ use ways::Course;
 
 pub use curves::{curves, freeboard_curve};
 pub use envelope::{Envelope, N_DIRECTIONS, envelope, largest_looked_at};
-pub use fill_map::{FillMap, MapPoint, N_LINES, NoFillMap, common_share, fill_map};
+pub use fill_map::{FillMap, MapPoint, N_ACCELS, N_FILLS, NoFillMap, common_share, fill_map};
 pub use holding::{End, HoldLimit, Holding};
 pub use results::*;
 

@@ -74,7 +74,7 @@ impl<'a> Side<'a> {
                 end = own;
             }
         }
-        let at = even(end.0);
+        let at = turns_to(end.0);
         let follow = |(first, &bound): (Trace, &_)| (Followed::new(ways::holder(study, bound), turn, &at), first);
         let ways = firsts.into_par_iter().zip(bounds).map(follow).collect();
         let mut side = Side { ways, at_rest: None, end, spills_at, marks: Vec::new() };
@@ -143,7 +143,9 @@ impl<'a> Side<'a> {
         let at_rest = End::of(&verdicts(0.0));
         let end = ends.map(|(low, high)| {
             let turned = if high > low { root(low, high, 1e-14, over) } else { 0.0 };
-            let found = [turned + 1e-9, high].into_iter().find_map(|t| End::of(&verdicts(t)));
+            // A limit that is reached is not yet passed: a hair further on it is.
+            let beyond = [1e-10, 1e-8, 1e-6].map(|hair| (turned + hair).min(high));
+            let found = beyond.into_iter().chain([high]).find_map(|t| End::of(&verdicts(t)));
             (turned, found.unwrap_or(End::Beyond))
         });
         self.at_rest = at_rest;
@@ -152,7 +154,7 @@ impl<'a> Side<'a> {
 
     /// Marks what holds along directions up to the end, those between at which it holds least included.
     fn mark(&mut self, base: &Base, turn: Turn) {
-        let marks: Vec<Mark> = even(self.end.0).par_iter().map(|t| self.mark_at(base, turn, *t)).collect();
+        let marks: Vec<Mark> = turns_to(self.end.0).par_iter().map(|t| self.mark_at(base, turn, *t)).collect();
         let dips: Vec<Mark> = marks
             .par_windows(3)
             .filter(|w| w[1].most.is_finite() && w[1].most < w[0].most && w[1].most <= w[2].most)
@@ -243,9 +245,14 @@ fn lost() -> Judged {
     Err(LOST.to_owned())
 }
 
-/// Turns from zero to `end`, evenly, no more than a step apart.
-fn even(end: f64) -> Vec<f64> {
+/// Turns from zero to `end`, no more than a step apart, and closer beside zero: rest is where vents close and surfaces
+/// leave a roof.
+fn turns_to(end: f64) -> Vec<f64> {
     let n = (end / STEP).ceil().max(0.0) as usize;
-    let between = (0..n).map(|i| end * i as f64 / n as f64);
-    between.chain([end]).collect()
+    let even = (0..n).map(|i| end * i as f64 / n as f64);
+    let mut turns: Vec<f64> =
+        even.chain([0.02, 0.1, 0.25, 0.5].map(|share| share * end.min(STEP))).chain([end]).collect();
+    turns.sort_unstable_by(f64::total_cmp);
+    turns.dedup();
+    turns
 }

@@ -5,7 +5,7 @@ use std::process::ExitCode;
 
 use clap::{Args, ValueEnum};
 
-use crate::analysis::{self, Envelope, FillMap, N_DIRECTIONS, N_LINES};
+use crate::analysis::{self, Envelope, FillMap, N_ACCELS, N_DIRECTIONS, N_FILLS};
 use crate::app::{self, FileError};
 use crate::problem::{Place, Problem};
 use crate::progress::Progress;
@@ -85,7 +85,7 @@ fn fill_maps(study: &ValidStudy, chosen: &[usize]) -> Result<String, Vec<Problem
     let mut maps: Vec<(&str, FillMap)> = Vec::new();
     let mut without = Vec::new();
     for &i in chosen {
-        match analysis::fill_map(study, i, N_LINES, N_LINES, &Progress::default(), &|_| {}) {
+        match analysis::fill_map(study, i, N_FILLS, N_ACCELS, &Progress::default(), &|_| {}) {
             Ok(map) => maps.push((&study.study().cases[i].name, map)),
             Err(why) => without.push(Problem::fault(Place::Case(i), why.to_string(), "choose another load case")),
         }

@@ -6,7 +6,9 @@ use std::path::{Path, PathBuf};
 use std::sync::Arc;
 use std::time::Duration;
 
-use crate::analysis::{self, CaseResult, Envelope, FillMap, FreeboardCurve, N_DIRECTIONS, N_LINES, NoFillMap, Route};
+use crate::analysis::{
+    self, CaseResult, Envelope, FillMap, FreeboardCurve, N_ACCELS, N_DIRECTIONS, N_FILLS, NoFillMap, Route,
+};
 use crate::app::{self, Background, Derived, Document, FileError, Job, Workers};
 use crate::cases::{Accel, Attitude, LoadCase};
 use crate::progress::Progress;
@@ -171,7 +173,7 @@ impl Pictures {
                 workers.start(wake(), move |progress, send| {
                     let Some(study) = study else { return };
                     let partial = |map: &FillMap| send(Arc::new(Ok(map.clone())));
-                    let whole = analysis::fill_map(&study, case_idx, N_LINES, N_LINES, progress, &partial);
+                    let whole = analysis::fill_map(&study, case_idx, N_FILLS, N_ACCELS, progress, &partial);
                     // What was called off stays as it came.
                     if whole != Err(NoFillMap::Stopped) {
                         send(Arc::new(whole));
@@ -328,7 +330,7 @@ fn text_of(
             let envelope = analysis::envelope(study, case.attitude, N_DIRECTIONS, progress, &|_| {})?;
             Some(Ok(sweep::envelope_csv(&[&envelope])))
         }
-        Table::FillMap => match analysis::fill_map(study, case_idx, N_LINES, N_LINES, progress, &|_| {}) {
+        Table::FillMap => match analysis::fill_map(study, case_idx, N_FILLS, N_ACCELS, progress, &|_| {}) {
             Ok(map) => Some(Ok(sweep::fill_map_csv(&[(&case.name, &map)]))),
             Err(NoFillMap::Stopped) => None,
             Err(why) => Some(Err(why)),

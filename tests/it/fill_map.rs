@@ -125,9 +125,9 @@ fn an_empty_tank_holds_and_a_full_one_does_not_move() {
     let tank = crate::support::plated::Plated::tank(shapes::rectangle(2.0, 1.0)).with_mouth(2);
     let study = Study { cases: vec![held(2.0, 0.0)], ..study(tank.section(), Fill::Share(0.5)) };
     let map = analysis::fill_map(&study.validate().unwrap(), 0, 5, 5, &Progress::default(), &|_| {}).unwrap();
-    let states: Vec<State> = (1..5).map(|j| map.point(0, j).unwrap().state).collect();
+    let states: Vec<State> = (0..5).map(|j| map.point(0, j).unwrap().state).collect();
     assert!(states.iter().all(|s| *s == State::Holds), "empty: {states:?}");
-    let states: Vec<State> = (1..5).map(|j| map.point(4, j).unwrap().state).collect();
+    let states: Vec<State> = (0..5).map(|j| map.point(4, j).unwrap().state).collect();
     assert!(states.iter().all(|s| *s == State::Fails), "full: {states:?}");
     // Half full, 2 m long, 0.5 m of freeboard: it spills at a slope of 1/2, so at g / 2.
     let j = 2;

@@ -86,7 +86,11 @@ impl Holds {
             let galley = painter.layout_no_wrap(word, font::tick(), faded(look.ink2));
             let beside = places.into_iter().map(|place| {
                 let aside = (place - rest).normalized() * 7.0;
-                let align = if aside.x >= 0.0 { Align2::LEFT_CENTER } else { Align2::RIGHT_CENTER };
+                let align = match (aside.y > 2.0 * aside.x.abs(), aside.x >= 0.0) {
+                    (true, _) => Align2::CENTER_TOP,
+                    (false, true) => Align2::LEFT_CENTER,
+                    (false, false) => Align2::RIGHT_CENTER,
+                };
                 (place + aside, align)
             });
             if let Some(rect) = labels.place(galley.size(), beside) {

@@ -2,7 +2,7 @@
 
 use std::sync::Arc;
 
-use egui::{Align2, Color32, ColorImage, Painter, Pos2, Rect, Stroke, TextureHandle, TextureOptions, Ui, pos2, vec2};
+use egui::{Align2, Color32, ColorImage, Pos2, Rect, Stroke, TextureHandle, TextureOptions, Ui, pos2, vec2};
 
 use crate::analysis::{FillMap, MapPoint, NoFillMap, State};
 use crate::gui::pictures::Shown;
@@ -57,13 +57,13 @@ pub(super) fn fill_map_ui(
         Err(why) => return chart::empty_ui(ui, rect, &why.to_string(), look),
     };
     let (accel, fill) = (desk.unit(Quantity::Acceleration), desk.unit(Quantity::Share));
-    let most = map.accels_m_per_s2.last().copied().unwrap_or(1.0);
+    let ends = [map.accels_m_per_s2.first(), map.accels_m_per_s2.last()];
     let chart = Chart {
         id: "fill map",
         x_words: "along the case".to_owned(),
         x_unit: accel.symbol,
         y_unit: "fill %",
-        x: [0.0, accel.from_si(most)],
+        x: ends.map(|end| accel.from_si(*end.unwrap_or(&0.0))),
         y: [0.0, fill.from_si(1.0)],
         curves: Vec::new(),
         veiled: Vec::new(),
@@ -160,25 +160,14 @@ impl Drawn {
             let stroke = Stroke::new(width, look.ink.gamma_multiply(fade));
             pieces.iter().for_each(|[a, b]| _ = painter.line_segment([at(*a), at(*b)], stroke));
         }
-        for (pieces, word) in self.contours.iter().zip(["0.9", "1"]) {
-            label_contour(&painter, frame, pieces, word, at, look);
+        for (pieces, (word, share)) in self.contours.iter().zip([("0.9", 0.35), ("1", 0.65)]) {
+            // From its upper left end to its lower right one: apart from each other where the contours lie close.
+            let mut along: Vec<[f64; 2]> = pieces.iter().map(|piece| piece[0]).collect();
+            along.sort_by(|a, b| (a[0] - a[1]).total_cmp(&(b[0] - b[1])));
+            if let Some(place) = along.get((share * along.len() as f64) as usize) {
+                chart::label(&painter, &frame, at(*place), Align2::CENTER_CENTER, word, look.ink, look);
+            }
         }
-    }
-}
-
-/// The number of a contour, on the piece that is nearest to the middle of its height.
-fn label_contour(
-    painter: &Painter,
-    frame: Rect,
-    pieces: &[[[f64; 2]; 2]],
-    word: &str,
-    at: impl Fn([f64; 2]) -> Pos2,
-    look: &Look,
-) {
-    let wanted = if word == "1" { 0.3 } else { 0.6 };
-    let off = |piece: &&[[f64; 2]; 2]| (piece[0][1] - wanted).abs();
-    if let Some(piece) = pieces.iter().min_by(|a, b| off(a).total_cmp(&off(b))) {
-        chart::label(painter, &frame, at(piece[0]), Align2::CENTER_CENTER, word, look.ink, look);
     }
 }
 

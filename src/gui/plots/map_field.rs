@@ -44,6 +44,7 @@ impl Field {
             State::Close | State::Holds => Some(point.utilisation.unwrap_or(0.0).clamp(0.0, 1.0)),
         };
         let values = ys.iter().flat_map(|&i| xs.iter().map(move |&j| map.point(i, j).and_then(value))).collect();
+        // Both are even, so their places are too.
         let share = |idxs: Vec<usize>, n: usize| idxs.into_iter().map(|i| i as f64 / (n - 1) as f64).collect();
         Some(Field { xs: share(xs, n_x), ys: share(ys, n_y), values })
     }

@@ -217,9 +217,8 @@ impl Window {
     fn keep_pictures(&mut self, ctx: &egui::Context, n_plots: usize) {
         let shows_map = self.plots.shows_map(n_plots);
         self.pictures.keep_up(ctx, &self.doc, self.view.case_idx, shows_map);
-        match self.pictures.exported() {
-            Some(Ok(words) | Err(words)) => self.event = words,
-            None => {}
+        if let Some(Ok(words) | Err(words)) = self.pictures.exported() {
+            self.event = words;
         }
     }
 
