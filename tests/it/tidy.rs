@@ -25,7 +25,10 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("study", &["units", "problem", "geom", "section", "liquid", "material", "cases", "statics"]),
     (
         "criteria",
-        &["units", "sources", "problem", "progress", "num", "geom", "section", "cases", "statics", "plates", "study"],
+        &[
+            "units", "sources", "problem", "progress", "num", "geom", "section", "material", "cases", "statics",
+            "plates", "study",
+        ],
     ),
     (
         "analysis",
