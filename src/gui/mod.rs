@@ -41,6 +41,7 @@ pub use desk::Desk;
 pub use files::Dialogs;
 pub use launch::launch;
 pub use look::Look;
+pub use pictures::Table;
 pub use selected::Selected;
 pub use settings::Settings;
 pub use stage::Stage;

@@ -36,4 +36,5 @@ mod reference;
 mod report;
 mod scenario;
 mod support;
+mod sweep;
 mod tidy;

@@ -91,6 +91,9 @@ pub(super) fn fill_map_ui(
 /// What is under the pointer, in words.
 fn hover_ui(ui: &Ui, rect: Rect, frame: Rect, map: &FillMap, desk: &Desk) {
     let response = ui.interact(rect, egui::Id::unique("fill map point"), egui::Sense::hover());
+    let n_known = map.points.iter().flatten().count();
+    let words = format!("Fill map, {n_known} of {} points", map.points.len());
+    response.widget_info(|| egui::WidgetInfo::labeled(egui::Role::Image, true, &words));
     let Some(pos) = response.hover_pos().filter(|pos| frame.contains(*pos)) else { return };
     let nearest = |share: f32, n: usize| (share * (n - 1) as f32).round().clamp(0.0, (n - 1) as f32) as usize;
     let j = nearest((pos.x - frame.left()) / frame.width(), map.accels_m_per_s2.len());

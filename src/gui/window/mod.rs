@@ -99,6 +99,11 @@ impl Window {
         &self.view
     }
 
+    /// The hold envelope round the bob, and whether it belongs to an older state of the study.
+    pub fn holds(&self) -> Option<Holds> {
+        self.pictures.envelope().map(|e| Holds { envelope: e.result.clone(), is_old: e.is_old })
+    }
+
     /// What is remembered from one start to the next.
     pub fn settings(&self) -> &Settings {
         &self.settings
@@ -184,13 +189,13 @@ impl Window {
 
     fn regions_ui(&mut self, ui: &mut Ui, regions: &Regions, look: &'static Look, out: &mut Vec<Proposal>) {
         ui.painter().rect_filled(ui.max_rect(), 0.0, look.panel);
+        let holds = self.holds();
         let mut desk = Desk { doc: &self.doc, view: &mut self.view, look, out };
         header::header_ui(ui, regions.header, regions.menus_are_folded, &mut desk, &self.settings.recent);
         tank::tank_ui(ui, regions.tank, regions.tank_is_folded, &mut desk, &mut self.tank);
         case_head::case_head_ui(ui, regions.case_head, &mut desk);
         let mut board = ui.new_child(UiBuilder::new().max_rect(regions.board).id_salt("board"));
         board.set_clip_rect(regions.board.intersect(ui.clip_rect()));
-        let holds = self.pictures.envelope().map(|e| Holds { envelope: e.result.clone(), is_old: e.is_old });
         board::board_ui(&mut board, desk.doc, desk.view, holds, look, desk.out);
         if let Some(trouble) = &self.trouble {
             if problems::file_trouble_ui(ui, regions.plots, &mut desk, trouble) {

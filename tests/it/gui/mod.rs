@@ -1,5 +1,6 @@
 //! The window, driven by the names that assistive technology reads. No screen, no graphics driver.
 
+mod pictures;
 mod tank;
 
 use std::path::Path;
