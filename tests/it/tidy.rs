@@ -43,8 +43,8 @@ const ARROWS: &[(&str, &[&str])] = &[
     (
         "gui",
         &[
-            "units", "problem", "geom", "section", "liquid", "material", "cases", "study", "analysis", "scenario",
-            "report", "app",
+            "units", "problem", "progress", "geom", "section", "liquid", "material", "cases", "study", "analysis",
+            "scenario", "report", "app",
         ],
     ),
     ("cli", &["units", "problem", "progress", "study", "analysis", "report", "app", "gui"]),
