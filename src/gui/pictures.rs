@@ -23,6 +23,9 @@ const SHORT_S: f64 = 0.4;
 /// How often the bar is drawn anew, s.
 const BAR_EVERY_S: f64 = 0.3;
 
+/// How often the bar is drawn anew, s.
+const BAR_EVERY_S: f64 = 0.3;
+
 /// A result, and whether it belongs to other inputs than those shown.
 #[derive(Clone, Copy, Debug)]
 pub struct Shown<'a, T> {
@@ -200,157 +203,6 @@ impl Pictures {
             // Results wake the window by themselves: this is for the bar alone.
             let to_bar_s = since_s + SHORT_S - now_s;
             ctx.request_repaint_after(Duration::from_secs_f64(if to_bar_s > 0.0 { to_bar_s } else { BAR_EVERY_S }));
-        }
-    }
-
-    /// The hold envelope of the chosen case's attitude.
-    Envelope,
-    /// The fill map of the chosen case.
-    FillMap,
-}
-
-impl Table {
-    /// The word for it in a file name.
-    pub fn file_word(self) -> &'static str {
-        match self {
-            Table::Envelope => "envelope",
-            Table::FillMap => "fill-map",
-        }
-    }
-}
-
-#[derive(Debug)]
-struct Export {
-    path: PathBuf,
-    job: Job<Result<(), Failed>>,
-}
-
-#[derive(Debug)]
-enum Failed {
-    NoMap(NoFillMap),
-    File(FileError),
-}
-
-/// What the status line says of work under way.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Work {
-    /// What it is.
-    pub name: &'static str,
-    /// Share that is done, 0 to 1.
-    pub share: f64,
-}
-
-/// What the envelope depends on. The study without what does not change it.
-#[derive(Clone, Debug, PartialEq)]
-struct EnvelopeInputs {
-    study: Arc<Study>,
-    attitude: Attitude,
-    /// Largest acceleration of its cases decides how far is looked.
-    most_m_per_s2: f64,
-}
-
-/// What the fill map depends on.
-#[derive(Clone, Debug, PartialEq)]
-struct MapInputs {
-    study: Arc<Study>,
-    case: Option<(Accel, Attitude)>,
-}
-
-#[derive(Clone, Debug)]
-struct Inputs {
-    revision: u64,
-    case_idx: usize,
-    envelope: EnvelopeInputs,
-    fill_map: MapInputs,
-}
-
-impl Inputs {
-    fn new(revision: u64, case_idx: usize, study: &ValidStudy) -> Inputs {
-        let inputs = study.study();
-        let bare = Arc::new(Study {
-            title: String::new(),
-            author: String::new(),
-            revision: String::new(),
-            notes: String::new(),
-            cases: Vec::new(),
-            verdict_notes: Vec::new(),
-            ..inputs.clone()
-        });
-        let case = inputs.cases.get(case_idx);
-        let attitude = case.map_or(Attitude::Level, |case| case.attitude);
-        let filled = Arc::new(Study { fill: Fill::Share(0.0), ..(*bare).clone() });
-        Inputs {
-            revision,
-            case_idx,
-            envelope: EnvelopeInputs {
-                study: bare,
-                attitude,
-                most_m_per_s2: analysis::largest_looked_at(study, attitude),
-            },
-            fill_map: MapInputs { study: filled, case: case.map(|case| (case.accel, case.attitude)) },
-        }
-    }
-}
-
-impl Pictures {
-    /// Brings everything in step with a document and its chosen case. What is not shown is not worked out.
-    pub fn keep_up(&mut self, ctx: &egui::Context, doc: &Document, case_idx: usize, shows_map: bool) {
-        let now_s = ctx.input(|i| i.time);
-        let judged = match doc.derived() {
-            Derived::Judged { study, results } if case_idx < results.cases.len() => Some((study, results)),
-            _ => None,
-        };
-        let at = (doc.revision(), case_idx);
-        self.inputs = match (self.inputs.take(), judged) {
-            (_, None) => None,
-            (Some(inputs), Some(_)) if (inputs.revision, inputs.case_idx) == at => Some(inputs),
-            (_, Some((study, _))) => Some(Inputs::new(at.0, at.1, study)),
-        };
-        let (inputs, workers) = (self.inputs.as_ref(), &self.workers);
-        let wake = || {
-            let ctx = ctx.clone();
-            move || ctx.request_repaint()
-        };
-        let study = judged.map(|(study, _)| study);
-        let slow = judged.filter(|(_, results)| !is_quick(&results.cases[case_idx]));
-        let soon = [
-            self.envelope.want(inputs.map(|i| i.envelope.clone()), now_s, |of| {
-                let (study, attitude) = (study.cloned(), of.attitude);
-                workers.start(wake(), move |progress, send| {
-                    let Some(study) = study else { return };
-                    let partial = |envelope: &Envelope| send(Arc::new(envelope.clone()));
-                    analysis::envelope(&study, attitude, N_DIRECTIONS, progress, &partial)
-                        .into_iter()
-                        .for_each(|found| send(Arc::new(found)));
-                })
-            }),
-            self.fill_map.want(inputs.filter(|_| shows_map).map(|i| i.fill_map.clone()), now_s, |_| {
-                let study = study.cloned();
-                workers.start(wake(), move |progress, send| {
-                    let Some(study) = study else { return };
-                    let partial = |map: &FillMap| send(Arc::new(Ok(map.clone())));
-                    let whole = analysis::fill_map(&study, case_idx, N_FILLS, N_ACCELS, progress, &partial);
-                    // What was called off stays as it came.
-                    if whole != Err(NoFillMap::Stopped) {
-                        send(Arc::new(whole));
-                    }
-                })
-            }),
-            self.freeboard.want(slow.map(|_| at), now_s, |_| {
-                let judged = slow.map(|(study, results)| (study.clone(), results.clone()));
-                workers.start(wake(), move |progress, send| {
-                    let Some((study, results)) = judged else { return };
-                    let curve = analysis::freeboard_curve(&study, &results.cases[case_idx], progress);
-                    curve.into_iter().for_each(send);
-                })
-            }),
-        ];
-        if let Some(soon) = soon.into_iter().flatten().reduce(f64::min) {
-            ctx.request_repaint_after(Duration::from_secs_f64(soon));
-        }
-        self.busy_since_s = self.running().map(|_| self.busy_since_s.unwrap_or(now_s));
-        if self.busy_since_s.is_some() {
-            ctx.request_repaint_after(Duration::from_millis(100));
         }
     }
 
