@@ -23,9 +23,6 @@ const SHORT_S: f64 = 0.4;
 /// How often the bar is drawn anew, s.
 const BAR_EVERY_S: f64 = 0.3;
 
-/// How often the bar is drawn anew, s.
-const BAR_EVERY_S: f64 = 0.3;
-
 /// A result, and whether it belongs to other inputs than those shown.
 #[derive(Clone, Copy, Debug)]
 pub struct Shown<'a, T> {
