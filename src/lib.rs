@@ -17,6 +17,7 @@ pub mod material;
 pub mod num;
 pub mod plates;
 pub mod problem;
+pub mod progress;
 pub mod report;
 pub mod scenario;
 pub mod section;

@@ -2,20 +2,17 @@
 
 use crate::criteria::FreeboardFill;
 use crate::geom::Vec2;
+use crate::progress::Progress;
 use crate::section::{Face, Wall};
 use crate::statics::{Carried, Rims, effective_gravity, pressure_at};
 use crate::study::ValidStudy;
 
 use super::results::*;
 
-/// The curves of one load case, for the plots. Empty where the case index is out of range.
+/// The quick curves of one load case, for the plots. Empty where the case index is out of range.
 pub fn curves(study: &ValidStudy, results: &Results, case_idx: usize) -> Curves {
     let Some(result) = results.cases.get(case_idx) else { return Curves::default() };
-    Curves {
-        tilt: tilt_curve(study, results, case_idx),
-        wall: wall_curve(study, results, result),
-        freeboard: freeboard_curve(study, result),
-    }
+    Curves { tilt: tilt_curve(study, results, case_idx), wall: wall_curve(study, results, result) }
 }
 
 fn tilt_curve(study: &ValidStudy, results: &Results, case_idx: usize) -> TiltCurve {
@@ -115,9 +112,12 @@ fn sorted(stops: &mut [f64]) -> &[f64] {
     stops
 }
 
-fn freeboard_curve(study: &ValidStudy, result: &CaseResult) -> FreeboardCurve {
+/// Required and available freeboard of one load case against fill. Quick where the liquid stays in one pool; else each
+/// point follows it over sills. None where it was asked to end.
+pub fn freeboard_curve(study: &ValidStudy, result: &CaseResult, progress: &Progress) -> Option<FreeboardCurve> {
     const N_POINTS: u32 = 48;
-    let absent = |reason: String| FreeboardCurve { absent: Some(reason), ..FreeboardCurve::default() };
+    progress.begin(N_POINTS as usize);
+    let absent = |reason: String| Some(FreeboardCurve { absent: Some(reason), ..FreeboardCurve::default() });
     // Where the verdict is not judged the curve claims nothing either.
     let verdicts: Vec<&Verdict> = result.verdicts.iter().filter(|v| v.criterion == FREEBOARD).collect();
     if let (Some(first), true) = (verdicts.first(), verdicts.iter().all(|v| v.state == State::NotJudged)) {
@@ -153,8 +153,12 @@ fn freeboard_curve(study: &ValidStudy, result: &CaseResult) -> FreeboardCurve {
             curve.required.push([share, required]);
             curve.available.push([share, available]);
         }
+        if !progress.advance(1) {
+            return None;
+        }
     }
     curve.now = fill.at(volume).map(|(required, _)| [volume / capacity, required]);
-    curve.holds_to = fill.highest_volume_m3().and_then(|v| fill.at(v).map(|(required, _)| [v / capacity, required]));
-    curve
+    let highest = fill.highest_volume_m3(progress);
+    curve.holds_to = highest.and_then(|v| fill.at(v).map(|(required, _)| [v / capacity, required]));
+    (!progress.is_stopped()).then_some(curve)
 }

@@ -3,22 +3,32 @@
 mod cells;
 mod compartments;
 mod curves;
+mod envelope;
+mod fill_map;
+mod holding;
 mod results;
+mod rims;
+mod side;
+mod sight;
 mod ways;
 
 use rayon::prelude::*;
 
 use crate::cases::LoadCase;
-use crate::criteria::{self, Context, Standing, View};
+use crate::criteria::{self, Standing};
 use crate::geom::{Point, Vec2};
 use crate::plates::{Bearer, Solved, dividers};
-use crate::statics::{Body, Rims, Setting, Stop, pressure_at, settle, spills};
+use crate::statics::{Body, Holder, Setting, Stop, pressure_at, settle, spills};
 use crate::study::ValidStudy;
 use crate::units::{Measure, Quantity, number};
 
+use sight::{Ground, Sight, Sighted, StillSurface};
 use ways::Course;
 
-pub use curves::curves;
+pub use curves::{curves, freeboard_curve};
+pub use envelope::{Envelope, N_DIRECTIONS, envelope, largest_looked_at};
+pub use fill_map::{FillMap, MapPoint, N_ACCELS, N_FILLS, NoFillMap, common_share, fill_map};
+pub use holding::{End, HoldLimit, Holding};
 pub use results::*;
 
 /// Judges every load case.
@@ -27,21 +37,15 @@ pub fn run(study: &ValidStudy) -> Results {
     let still_tilted = study.tilted(Vec2::y());
     let volume = study.fill_volume_m3();
     let common = study.common();
-    let level = match common {
-        Some(start) => start.vessel.tilted(Vec2::y()).level_for_volume(start.volume_m3),
-        None => still_tilted.level_for_volume(volume),
-    };
+    let level = still_level_m(study);
     let (bottom, top) = still_tilted.span();
-    let surface = still_surface(study);
-    let still_length_m = length_m(surface.iter());
+    let surface = surface_at_rest(study);
+    let still_surface = StillSurface { z_m: level, length_m: length_m(surface.iter()) };
     let courses = ways::courses(study);
     let bearers = bearers(study);
-    let judged: Vec<(CaseResult, Option<f64>)> = inputs
-        .cases
-        .par_iter()
-        .zip(&courses)
-        .map(|(case, course)| judge_case(study, case, course, &bearers, level, still_length_m))
-        .collect();
+    let ground = Ground { study, still: still_surface, bearers: &bearers };
+    let judged: Vec<(CaseResult, Option<f64>)> =
+        inputs.cases.par_iter().zip(&courses).map(|(case, course)| judge_case(&ground, case, course)).collect();
     let holds = judged.iter().filter_map(|(_, holds)| *holds).reduce(f64::min);
     let cases: Vec<CaseResult> = judged.into_iter().map(|(case, _)| case).collect();
     let rest_pa = inputs.liquid.weight_pa_per_m(inputs.gravity_m_per_s2) * (level - bottom);
@@ -77,8 +81,16 @@ pub fn run(study: &ValidStudy) -> Results {
     }
 }
 
+/// Level of the common fill at rest, or else of all liquid, m.
+fn still_level_m(study: &ValidStudy) -> f64 {
+    match study.common() {
+        Some(start) => start.vessel.tilted(Vec2::y()).level_for_volume(start.volume_m3),
+        None => study.tilted(Vec2::y()).level_for_volume(study.fill_volume_m3()),
+    }
+}
+
 /// Surface of the still liquid, level and at rest, plates cutting it.
-fn still_surface(study: &ValidStudy) -> Vec<Chord> {
+fn surface_at_rest(study: &ValidStudy) -> Vec<Chord> {
     let holder = ways::holder(study, Bound::Sealed);
     let look = holder.look(Vec2::y());
     let bodies = holder.still(&look);
@@ -106,45 +118,16 @@ pub fn gage_pressure_at(study: &ValidStudy, case: &CaseResult, bound: Bound, p: 
 }
 
 /// The load case, judged, and the volume that its way holds, where that could be judged.
-fn judge_case(
-    study: &ValidStudy,
-    case: &LoadCase,
-    course: &Course,
-    bearers: &[Bearer],
-    still_z_m: f64,
-    still_length_m: f64,
-) -> (CaseResult, Option<f64>) {
-    let inputs = study.study();
+fn judge_case(ground: &Ground, case: &LoadCase, course: &Course) -> (CaseResult, Option<f64>) {
+    let study = ground.study;
     let gravity = course.gravity;
     let bounds = ways::bounds(study);
-    let states: Vec<Result<Settled, String>> = (0..bounds.len()).map(|b| settle_case(study, course, b)).collect();
-    let rims: Vec<Option<Rims>> = bounds
-        .iter()
-        .map(|&bound| {
-            let up = gravity.up?;
-            Rims::new(study.region(), bound, &inputs.section.width, study.mouths(), up)
-        })
-        .collect();
-    let borne: Vec<Vec<PlateResult>> = bounds.iter().zip(&states).map(|(&b, s)| borne(bearers, b, s)).collect();
-    let views: Vec<View> = (0..bounds.len())
-        .map(|b| {
-            let way = course.ways[b].as_ref();
-            let blocked = blocked(study, &gravity, states[b].as_ref().ok(), still_length_m);
-            View {
-                bound: bounds[b],
-                way,
-                holds_m3: holds(study, course, b, &blocked),
-                settled: states[b].as_ref().map_err(String::as_str),
-                plates: &borne[b],
-                rims: rims[b].as_ref(),
-                route: route(course, b),
-                blocked,
-            }
-        })
-        .collect();
-    let holds = views.iter().filter_map(|v| v.holds_m3).reduce(f64::min);
-    let context = Context { study, case, accel: course.accel, gravity, still_z_m, views };
-    let Outcome { verdicts, absent } = criteria::judge(&context);
+    let sights: Vec<Sight> = (0..bounds.len()).map(|b| Sight::of_course(ground, course, b)).collect();
+    let holds: Vec<Option<f64>> =
+        sights.iter().enumerate().map(|(b, sight)| holds(study, course, b, &sight.blocked)).collect();
+    let sighted = Sighted { ground, case, course, sights: &sights };
+    let Outcome { verdicts, absent } = sighted.judge(&|b| holds[b]);
+    let holds = holds.into_iter().flatten().reduce(f64::min);
     let released = case.release.then(|| settle_released(study, course));
     let trapped = match (&released, course.ramp) {
         (Some(Ok(released)), Some(ramp)) => compartments::trapped(study, &ramp, released),
@@ -152,6 +135,7 @@ fn judge_case(
     };
     let pours = course.ways.first().and_then(|w| w.as_ref()).and_then(|w| w.stop.as_ref());
     let pours = pours.map_or(Vec::new(), |stop| stop.pours.clone());
+    let (states, plates): (Vec<_>, Vec<_>) = sights.into_iter().map(|sight| (sight.settled, sight.plates)).unzip();
     let mut states = states.into_iter();
     let settled = states.next().expect("there is a settled bound");
     let result = CaseResult {
@@ -164,7 +148,7 @@ fn judge_case(
         trapped,
         routes: bounds.iter().enumerate().map(|(b, &bound)| (bound, route(course, b))).collect(),
         pours,
-        plates: borne.into_iter().flatten().collect(),
+        plates: plates.into_iter().flatten().collect(),
         verdicts,
         absent,
     };
@@ -206,7 +190,13 @@ fn route(course: &Course, bound_idx: usize) -> Route {
     }
 }
 
-fn settle_case(study: &ValidStudy, course: &Course, bound_idx: usize) -> Result<Settled, String> {
+fn settle_case(
+    study: &ValidStudy,
+    holder: &Holder,
+    course: &Course,
+    bound_idx: usize,
+    with_cells: bool,
+) -> Result<Settled, String> {
     if course.gravity.up.is_none() {
         return Err("free fall: effective gravity is zero and there is no settled surface".to_owned());
     }
@@ -214,28 +204,29 @@ fn settle_case(study: &ValidStudy, course: &Course, bound_idx: usize) -> Result<
         return Err("the way from rest to this case leads through free fall".to_owned());
     };
     let stop = way.stop.as_ref().ok_or("the liquid could not be followed to this case")?;
-    Ok(settle_at(study, bound_idx, stop, course.gravity.magnitude))
+    Ok(settle_at(study, holder, stop, course.gravity.magnitude, with_cells))
 }
 
 /// After the release: back at rest, under the settled bound.
 fn settle_released(study: &ValidStudy, course: &Course) -> Result<Settled, String> {
     let trace = ways::release(study, course, 0).ok_or("there is no way to this case, and so none back")?;
     let stop = trace.stops.first().ok_or("the liquid could not be followed back to rest")?;
-    Ok(settle_at(study, 0, stop, study.study().gravity_m_per_s2))
+    let holder = ways::holder(study, Bound::Settled);
+    Ok(settle_at(study, &holder, stop, study.study().gravity_m_per_s2, true))
 }
 
-fn settle_at(study: &ValidStudy, bound_idx: usize, stop: &Stop, gravity_m_per_s2: f64) -> Settled {
+fn settle_at(study: &ValidStudy, holder: &Holder, stop: &Stop, gravity_m_per_s2: f64, with_cells: bool) -> Settled {
     let inputs = study.study();
-    let holder = ways::holder(study, ways::bounds(study)[bound_idx]);
     let points: Vec<(&str, Point)> = inputs.points.iter().map(|p| (p.name.as_str(), p.at)).collect();
     let setting = Setting {
-        spills: &spills(&holder, study.mouths(), &stop.spilled),
+        spills: &spills(holder, study.mouths(), &stop.spilled),
         gravity_m_per_s2,
         density_kg_per_m3: &|compartment| study.liquid_of(compartment).density_kg_per_m3,
         gas_pa: inputs.ullage_gage_pa,
         air_pa: inputs.air_pressure_abs_pa,
         moment_about: inputs.moment_about,
         points: &points,
+        with_cells,
     };
     let look = holder.look(stop.up);
     settle(&inputs.section, study.region(), &look, &stop.bodies, &setting)
@@ -244,8 +235,7 @@ fn settle_at(study: &ValidStudy, bound_idx: usize, stop: &Stop, gravity_m_per_s2
 /// Bond number rho |G| L^2 / sigma below which capillarity rules the surface. Source: [BondNumber].
 const LEAST_BOND_NUMBER: f64 = 10.0;
 
-/// Why nothing of the case can be judged. Capillarity is measured by the longer of the still and the settled surface:
-/// the few drops that a spill leaves must not hide the spill.
+/// Why nothing of the case can be judged.
 fn blocked(
     study: &ValidStudy,
     gravity: &EffectiveGravity,
@@ -255,15 +245,26 @@ fn blocked(
     if gravity.up.is_none() {
         return Some("free fall: there is no settled surface".to_owned());
     }
-    let liquid = &study.study().liquid;
-    let length = length_m(settled?.pools.iter().flat_map(|p| &p.surface)).max(still_length_m);
-    let bond = liquid.weight_pa_per_m(gravity.magnitude) * length * length / liquid.surface_tension();
-    (length > 0.0 && bond < LEAST_BOND_NUMBER).then(|| {
+    let bond = gravity.magnitude * bond_per_gravity(study, settled?, still_length_m);
+    (bond < LEAST_BOND_NUMBER).then(|| {
         format!(
             "capillarity: Bond number {} is below {LEAST_BOND_NUMBER:.0}, surface tension shapes the surface",
             number(bond, 2)
         )
     })
+}
+
+/// The Bond number of a state under an effective gravity of 1 m/s2; infinite where there is no surface. Capillarity is
+/// measured by the longer of the still and the settled surface: the few drops that a spill leaves must not hide the
+/// spill.
+fn bond_per_gravity(study: &ValidStudy, settled: &Settled, still_length_m: f64) -> f64 {
+    let liquid = &study.study().liquid;
+    let length = length_m(settled.pools.iter().flat_map(|p| &p.surface)).max(still_length_m);
+    if length > 0.0 {
+        liquid.weight_pa_per_m(1.0) * length * length / liquid.surface_tension()
+    } else {
+        f64::INFINITY
+    }
 }
 
 /// Length of a surface over all its pieces, m.

@@ -193,13 +193,11 @@ pub struct FreeboardCurve {
     pub absent: Option<String>,
 }
 
-/// The curves of one load case.
+/// The quick curves of one load case.
 #[derive(Clone, Debug, Default, PartialEq)]
 pub struct Curves {
     /// Tilt against acceleration.
     pub tilt: TiltCurve,
     /// Pressure along the wall.
     pub wall: WallCurve,
-    /// Freeboard against fill.
-    pub freeboard: FreeboardCurve,
 }

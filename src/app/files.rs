@@ -80,7 +80,12 @@ pub fn load(path: &Path) -> Result<Study, FileError> {
 pub fn save_atomic(path: &Path, study: &Study) -> Result<(), FileError> {
     let text = scenario::write(study);
     scenario::parse(text.as_bytes()).map_err(|problems| FileError::Unwritable { path: path.into(), problems })?;
-    replace(path, text.as_bytes()).map_err(|error| FileError::Io { path: path.into(), action: "saved", error })
+    write_atomic(path, text.as_bytes())
+}
+
+/// Writes any other file in the same careful way.
+pub fn write_atomic(path: &Path, bytes: &[u8]) -> Result<(), FileError> {
+    replace(path, bytes).map_err(|error| FileError::Io { path: path.into(), action: "saved", error })
 }
 
 fn read_bounded(path: &Path) -> io::Result<Vec<u8>> {

@@ -1,6 +1,7 @@
 //! The command line. It alone prints; it judges nothing itself.
 
 mod judge;
+mod sweep;
 
 use std::io::{self, Write};
 use std::path::PathBuf;
@@ -28,6 +29,10 @@ enum Command {
     /// Exit status: 0 all verdicts hold (or are close), 1 a verdict fails, 2 an input is unusable, 3 nothing
     /// fails but a verdict is not judged. Of several files the most serious counts: 2, then 1, then 3, then 0.
     Judge(JudgeArguments),
+    /// Write how far a tank can go as comma-separated values, in SI units
+    ///
+    /// Exit status: 0 written, 2 an input is unusable.
+    Sweep(sweep::SweepArguments),
 }
 
 #[derive(Debug, Args)]
@@ -68,6 +73,7 @@ pub fn run() -> ExitCode {
     let arguments = Arguments::parse();
     match arguments.command {
         Some(Command::Judge(arguments)) => judge::judge(&arguments),
+        Some(Command::Sweep(arguments)) => sweep::run(&arguments),
         None => open_window(arguments.file),
     }
 }

@@ -7,9 +7,9 @@ use crate::sources::Source;
 use crate::statics::{Lip, PourOver};
 use crate::units::{Measure, Phrase, Quantity, fixed, number};
 
-use super::{Context, Criterion, Outcome, Sense, State, Verdict, View, WorkLine};
+use super::{Context, Criterion, Outcome, RestsOn, Sense, State, Verdict, View, WorkLine};
 
-pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
+pub(super) const CRITERION: Criterion = Criterion { name: NAME, rests_on: RestsOn::Direction, judge };
 
 /// Its name, which the curves look it up by.
 pub const NAME: &str = "Contained";
@@ -29,19 +29,24 @@ fn verdict(context: &Context, view: &View) -> Verdict {
     let Some(way) = view.way else {
         return not_judged("the way from rest to this case leads through free fall");
     };
-    let (Some(stop), Some(holds_m3)) = (&way.stop, view.holds_m3) else {
+    let Some(stop) = &way.stop else {
         return not_judged("the liquid could not be followed to this case");
     };
-    let spill = Spill { way, holds_m3, spilled_m3: stop.spilled.iter().map(|s| s.volume_m3).sum() };
-    let (spill, volume) = (&spill, context.study.common().map_or(0.0, |s| s.volume_m3));
-    let (demand, limit) = demand_and_limit(context, spill, volume);
+    let volume = context.study.common().map_or(0.0, |s| s.volume_m3);
+    let by_size = demand_and_limit(context, way);
+    let holds_m3 = if by_size.is_some() && context.is_brief { None } else { (view.holds_m3)() };
+    let (demand, limit) = match (by_size, holds_m3) {
+        (Some(by_size), _) => by_size,
+        (None, Some(m3)) => (Measure::new(Quantity::Volume, volume), Some(Measure::new(Quantity::Volume, m3))),
+        (None, None) => return not_judged("what the brims hold on the way could not be worked out"),
+    };
     let mut verdict = match limit {
         Some(limit) => context.verdict(NAME, demand, limit, Sense::AtMost),
         None => Verdict {
             state: State::Holds,
             demand: Some(demand),
             utilisation: Some(0.0),
-            ..context.not_judged(NAME, Sense::AtMost, unlimited(context, spill))
+            ..context.not_judged(NAME, Sense::AtMost, unlimited(context, way))
         },
     };
     verdict.source = Source::BrimPath;
@@ -51,48 +56,45 @@ fn verdict(context: &Context, view: &View) -> Verdict {
         verdict.place_words = context.mouth_words(mouth_idx, brim);
         verdict.at = Some(brim);
     }
-    verdict.working = working(context, spill, governing, volume);
-    if verdict.state == State::Fails {
-        verdict.mend = mend(context, spill, limit);
+    if let (Some(holds_m3), false) = (holds_m3, context.is_brief) {
+        let spill = Spill { holds_m3, spilled_m3: stop.spilled.iter().map(|s| s.volume_m3).sum() };
+        verdict.working = working(context, &spill, governing, volume);
+        if verdict.state == State::Fails {
+            verdict.mend = mend(context, &spill, limit);
+        }
     }
     verdict
 }
 
 /// What the mouths do on the way.
-struct Spill<'a> {
-    way: &'a PourOver,
+struct Spill {
     holds_m3: f64,
     spilled_m3: f64,
 }
 
-/// Acceleration against acceleration at first spill; heel against heel; at rest on the level, volume against what
-/// the lowest brim holds.
-fn demand_and_limit(context: &Context, spill: &Spill, volume: f64) -> (Measure, Option<Measure>) {
+/// Acceleration against acceleration at first spill, heel against heel; the limit is none where it never spills.
+/// Nothing where volume is to be compared with what the lowest brim holds: at rest on the level, and where nothing is known
+/// beyond the case.
+fn demand_and_limit(context: &Context, way: &PourOver) -> Option<(Measure, Option<Measure>)> {
     let accel = context.accel.norm();
     let phi = context.case.attitude.angle_rad().abs();
     let (quantity, size) = match (accel > 0.0, phi > 0.0) {
         (true, _) => (Quantity::Acceleration, accel),
         (false, true) => (Quantity::Angle, phi),
-        (false, false) => {
-            let holds = Measure::new(Quantity::Volume, spill.holds_m3);
-            return (Measure::new(Quantity::Volume, volume), Some(holds));
-        }
+        (false, false) => return None,
     };
-    let demand = Measure::new(quantity, size);
-    if spill.way.is_lost_beyond {
-        // Beyond the case nothing is known: compare volumes instead.
-        let holds = Measure::new(Quantity::Volume, spill.holds_m3);
-        return (Measure::new(Quantity::Volume, volume), Some(holds));
+    if way.is_lost_beyond {
+        return None;
     }
-    let limit = spill.way.first.map(|(share, _)| share * size).filter(|x| x.is_finite());
-    (demand, limit.map(|x| Measure::new(quantity, x)))
+    let limit = way.first.map(|(share, _)| share * size).filter(|x| x.is_finite());
+    Some((Measure::new(quantity, size), limit.map(|x| Measure::new(quantity, x))))
 }
 
 /// Why there is no limit.
-fn unlimited(context: &Context, spill: &Spill) -> String {
+fn unlimited(context: &Context, way: &PourOver) -> String {
     if context.study.mouths().is_empty() {
         "the tank has no mouth: nothing can leave".to_owned()
-    } else if !spill.way.turns {
+    } else if !way.turns {
         "this acceleration does not turn effective gravity; at free fall and beyond nothing is judged".to_owned()
     } else {
         "no acceleration along this line makes it spill".to_owned()

@@ -24,6 +24,8 @@ pub struct Context<'a> {
     pub still_z_m: f64,
     /// The case under each bound, settled first.
     pub views: Vec<View<'a>>,
+    /// Only states, demands and limits are asked for: no working and no mending.
+    pub is_brief: bool,
 }
 
 /// Physics of one load case under one bound.
@@ -32,8 +34,8 @@ pub struct View<'a> {
     pub bound: Bound,
     /// The way to the case; none where it leads through free fall.
     pub way: Option<&'a PourOver>,
-    /// The largest common fill that leaves no mouth on the way, m3, where that can be told.
-    pub holds_m3: Option<f64>,
+    /// Works out the largest common fill that leaves no mouth on the way, m3, where that can be told.
+    pub holds_m3: &'a dyn Fn() -> Option<f64>,
     /// The settled state, or why there is none.
     pub settled: Result<&'a Settled, &'a str>,
     /// What each plate bears; empty where there is no settled state.
@@ -42,6 +44,8 @@ pub struct View<'a> {
     pub rims: Option<&'a Rims>,
     /// How the liquid comes to the case where the walls are carried on.
     pub route: Route,
+    /// For each mouth, z of the settled surface above its brim with the walls carried on, m, where that can be told.
+    pub risen_z_m: &'a [Option<f64>],
     /// Why nothing of this case can be judged: free fall, capillarity.
     pub blocked: Option<String>,
 }

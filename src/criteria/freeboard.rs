@@ -5,14 +5,15 @@
 
 use crate::geom::Vec2;
 use crate::num::bisect;
+use crate::progress::Progress;
 use crate::sources::Source;
 use crate::statics::{Carried, Rims, Route, Tilted};
 use crate::study::ValidStudy;
 use crate::units::{Measure, Phrase, Quantity, fixed};
 
-use super::{Absent, Context, Criterion, Outcome, Sense, State, Verdict, View, WorkLine};
+use super::{Absent, Context, Criterion, Outcome, RestsOn, Sense, State, Verdict, View, WorkLine};
 
-pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
+pub(super) const CRITERION: Criterion = Criterion { name: NAME, rests_on: RestsOn::Direction, judge };
 
 /// Its name, which the curves look it up by.
 pub const NAME: &str = "Freeboard";
@@ -57,13 +58,16 @@ fn verdict(context: &Context, view: &View, mouth_idx: usize) -> Verdict {
         return not_judged(reason);
     }
     let Some(rims) = view.rims else { return not_judged("effective gravity does not point toward the floor") };
-    let fill = FreeboardFill::new(context.study, rims, view.route, mouth_idx, allowance);
-    let volume = context.study.common().map_or(0.0, |s| s.volume_m3);
-    let Some((required, available)) = fill.at(volume) else {
+    let (Some(_), Some(risen_z_m)) = (context.study.common(), view.risen_z_m[mouth_idx]) else {
         return not_judged("the liquid could not be followed to this case");
     };
+    let mouth_z_m = mouth_z_m(context.study, mouth_idx);
+    let (required, available) = (risen_z_m - context.still_z_m + allowance, mouth_z_m - context.still_z_m);
     let length = |m: f64| Measure::new(Quantity::Length, m);
     let mut verdict = place(context.verdict(NAME, length(required), length(available), Sense::AtMost));
+    if context.is_brief {
+        return verdict;
+    }
     let mm = |m: f64| fixed(m * 1e3, 0);
     let rise = required - allowance;
     verdict.working = vec![
@@ -74,12 +78,13 @@ fn verdict(context: &Context, view: &View, mouth_idx: usize) -> Verdict {
         },
         WorkLine {
             symbols: "available = z_{mouth} − z_{still}".to_owned(),
-            numbers: format!("{} − {} mm", mm(fill.mouth_z_m()), mm(context.still_z_m)),
+            numbers: format!("{} − {} mm", mm(mouth_z_m), mm(context.still_z_m)),
             result: length(available),
         },
     ];
     if verdict.state == State::Fails {
-        if let Some(volume) = fill.highest_volume_m3() {
+        let fill = FreeboardFill::new(context.study, rims, view.route, mouth_idx, allowance);
+        if let Some(volume) = fill.highest_volume_m3(&Progress::default()) {
             verdict.mend.push(context.fill_that_holds(volume));
         }
         // Rounded up to the millimetre, so that the rim shown holds.
@@ -124,20 +129,17 @@ impl<'a> FreeboardFill<'a> {
         let (region, width) = (self.study.region(), &self.study.study().section.width);
         let starts = self.study.starts_with(volume_m3);
         let surface_z = self.rims.surface_z_m(&self.tilted, region, width, &starts, self.route, self.mouth_idx)?;
-        Some((surface_z - still_z + self.allowance_m, self.mouth_z_m() - still_z))
-    }
-
-    /// z of the mouth's lowest point, m.
-    pub fn mouth_z_m(&self) -> f64 {
-        self.study.mouths()[self.mouth_idx].brim(self.study.region(), Vec2::y()).0
+        Some((surface_z - still_z + self.allowance_m, mouth_z_m(self.study, self.mouth_idx) - still_z))
     }
 
     /// The highest volume at which the available freeboard covers the required one, m3; none where none does.
-    /// Fills are sampled in steps of 1/64 of capacity, then the turn is refined.
-    pub fn highest_volume_m3(&self) -> Option<f64> {
+    /// Fills are sampled in steps of 1/64 of capacity, then the turn is refined; once stopped, what it gives means nothing.
+    pub fn highest_volume_m3(&self, progress: &Progress) -> Option<f64> {
         const N_STEPS: u32 = 64;
         let capacity = self.study.common()?.vessel.capacity_m3();
-        let fails = |volume: f64| self.at(volume).is_none_or(|(required, available)| required > available);
+        let fails = |volume: f64| {
+            progress.is_stopped() || self.at(volume).is_none_or(|(required, available)| required > available)
+        };
         let volume = |i: u32| capacity * f64::from(i) / f64::from(N_STEPS);
         let holds = (1..=N_STEPS).rev().find(|&i| !fails(volume(i)))?;
         if holds == N_STEPS {
@@ -145,4 +147,9 @@ impl<'a> FreeboardFill<'a> {
         }
         Some(bisect(volume(holds), volume(holds + 1), 1e-12 * capacity, fails))
     }
+}
+
+/// z of a mouth's lowest point, m.
+fn mouth_z_m(study: &ValidStudy, mouth_idx: usize) -> f64 {
+    study.mouths()[mouth_idx].brim(study.region(), Vec2::y()).0
 }

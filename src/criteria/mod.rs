@@ -29,10 +29,23 @@ pub struct Outcome {
     pub absent: Vec<Absent>,
 }
 
+/// What of a load case decides a criterion, the study and how the tank stands being given.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum RestsOn {
+    /// Nothing: it reads the same in every load case.
+    Study,
+    /// The direction of effective gravity and the way to it, not its size.
+    Direction,
+    /// Its size too. Along one direction, what no longer holds does not hold under more either.
+    Size,
+}
+
 /// One criterion.
 pub struct Criterion {
     /// Its name, as shown.
     pub name: &'static str,
+    /// What decides it.
+    pub rests_on: RestsOn,
     /// Judges one load case.
     pub judge: fn(&Context) -> Outcome,
 }
@@ -49,8 +62,13 @@ pub const CRITERIA: &[Criterion] = &[
 
 /// Runs every criterion; verdicts worst first.
 pub fn judge(context: &Context) -> Outcome {
+    judge_those(context, |_| true)
+}
+
+/// Runs the criteria that rest on something `is_wanted`; verdicts worst first.
+pub fn judge_those(context: &Context, is_wanted: impl Fn(RestsOn) -> bool) -> Outcome {
     let mut all = Outcome::default();
-    for criterion in CRITERIA {
+    for criterion in CRITERIA.iter().filter(|c| is_wanted(c.rests_on)) {
         let outcome = (criterion.judge)(context);
         all.verdicts.extend(outcome.verdicts);
         all.absent.extend(outcome.absent);

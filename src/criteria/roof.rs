@@ -7,9 +7,9 @@ use crate::problem::Place;
 use crate::study::Limit;
 use crate::units::{Measure, Phrase, Quantity, fixed, number};
 
-use super::{Absent, Context, Criterion, Outcome, Sense, Verdict, View, WorkLine};
+use super::{Absent, Context, Criterion, Outcome, RestsOn, Sense, Verdict, View, WorkLine};
 
-pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
+pub(super) const CRITERION: Criterion = Criterion { name: NAME, rests_on: RestsOn::Size, judge };
 
 const NAME: &str = "Roof contact";
 

@@ -14,9 +14,9 @@ use crate::section::Plate;
 use crate::sources::Source;
 use crate::units::{Measure, Phrase, Quantity, fixed, number};
 
-use super::{Absent, Context, Criterion, Outcome, Sense, State, Trust, Verdict, View, WorkLine};
+use super::{Absent, Context, Criterion, Outcome, RestsOn, Sense, State, Trust, Verdict, View, WorkLine};
 
-pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
+pub(super) const CRITERION: Criterion = Criterion { name: NAME, rests_on: RestsOn::Size, judge };
 
 const NAME: &str = "Plate strength";
 

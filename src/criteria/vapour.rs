@@ -4,9 +4,9 @@
 use crate::sources::Source;
 use crate::units::{Measure, Quantity, number};
 
-use super::{Absent, Context, Criterion, Outcome, Sense, Verdict, WorkLine};
+use super::{Absent, Context, Criterion, Outcome, RestsOn, Sense, Verdict, WorkLine};
 
-pub(super) const CRITERION: Criterion = Criterion { name: NAME, judge };
+pub(super) const CRITERION: Criterion = Criterion { name: NAME, rests_on: RestsOn::Study, judge };
 
 const NAME: &str = "Vapour pressure";
 

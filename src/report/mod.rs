@@ -6,6 +6,7 @@
 mod grid;
 pub mod json;
 mod lines;
+pub mod sweep;
 pub mod table;
 
 #[cfg(test)]

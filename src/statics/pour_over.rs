@@ -80,7 +80,11 @@ fn mouth_of(holder: &Holder, mouths: &[Mouth], brim: Brim) -> Option<usize> {
 impl PourOver {
     fn new(holder: &Holder, mouths: &[Mouth], ramp: &Ramp, at: &[f64], trace: &Trace) -> PourOver {
         let goal = at.iter().position(|&t| t == ramp.to_case_rad());
-        let stop = goal.and_then(|i| trace.stops.get(i)).cloned();
+        PourOver::to_stop(holder, mouths, ramp, goal.and_then(|i| trace.stops.get(i)).cloned(), trace)
+    }
+
+    /// Along `ramp`, whose end is `stop`; `trace` knows what happens first, also beyond it.
+    pub fn to_stop(holder: &Holder, mouths: &[Mouth], ramp: &Ramp, stop: Option<Stop>, trace: &Trace) -> PourOver {
         let lip = |brim: Brim| Some(Lip { mouth_idx: mouth_of(holder, mouths, brim)?, brim: brim.at });
         let is_reached = |turned: f64| turned < ramp.to_end_rad() || turned <= ramp.to_case_rad();
         let first = trace.first_spill.filter(|&(turned, _)| is_reached(turned));

@@ -55,7 +55,7 @@ pub struct Pool {
     pub centroid: Point,
     /// The compartment that it lies in.
     pub compartment: usize,
-    /// The cells that it stands in.
+    /// The cells that it stands in; empty where they were not asked for.
     pub cell_idxs: Vec<usize>,
     /// rho |G| of its liquid, Pa/m.
     pub weight_pa_per_m: f64,
@@ -104,7 +104,7 @@ pub struct Settled {
     pub points: Vec<PointPressure>,
     /// Contact with the roof, if any.
     pub roof: Option<RoofContact>,
-    /// Volume of liquid in each cell of the region, m3.
+    /// Volume of liquid in each cell of the region, m3; empty where it was not asked for.
     pub cells_m3: Vec<f64>,
     /// Gas that touches no mouth, the largest pocket first.
     pub gas: Vec<GasPocket>,
@@ -134,6 +134,8 @@ pub struct Setting<'a> {
     pub moment_about: Point,
     /// Named points.
     pub points: &'a [(&'a str, Point)],
+    /// Whether cells are asked for.
+    pub with_cells: bool,
 }
 
 /// Bodies below this share of the largest one are drops that rounding leaves: they press nowhere to speak of, and are no
@@ -159,7 +161,11 @@ pub fn settle(section: &Section, region: &Region, look: &Look, bodies: &[Body], 
     let edges = edge_loads(section, region, &wet, &press, up, about);
     let plates = plate_loads(section, region, &wet, &press, up, about);
     let most = bodies.iter().map(|b| b.volume_m3).fold(0.0, f64::max);
-    let in_cells = cell_volumes_by_body(region, width, look, bodies);
+    let in_cells = if setting.with_cells {
+        cell_volumes_by_body(region, width, look, bodies)
+    } else {
+        vec![Vec::new(); bodies.len()]
+    };
     let mut pools = Vec::new();
     let (mut total, mut total_moment, mut mass) = (Vec2::zeros(), 0.0, 0.0);
     let mut moments = Vec2::zeros();
@@ -227,7 +233,7 @@ pub fn settle(section: &Section, region: &Region, look: &Look, bodies: &[Body], 
         total_force_n: total,
         total_moment_n_m: total_moment,
         pools,
-        cells_m3: sums(region, &in_cells),
+        cells_m3: if setting.with_cells { sums(region, &in_cells) } else { Vec::new() },
         gas: gas_pockets(section, region, look, bodies),
     }
 }

@@ -1,12 +1,13 @@
 //! A study without faults.
 
+use crate::cases::LoadCase;
 use crate::geom::Vec2;
 use crate::liquid::Liquid;
 use crate::problem::Problem;
 use crate::section::{Mouth, Region};
 use crate::statics::{Start, Tilted, Vessel};
 
-use super::Study;
+use super::{Fill, Study};
 
 /// A study without faults: the only door to [`crate::analysis::run`].
 #[derive(Clone, Debug)]
@@ -67,6 +68,12 @@ impl ValidStudy {
     pub fn starts_with(&self, common_m3: f64) -> Vec<Start> {
         let change = |s: &Start| Start { volume_m3: if s.is_common { common_m3 } else { s.volume_m3 }, ..s.clone() };
         self.starts.iter().map(change).collect()
+    }
+
+    /// The same study with another volume of the common fill, m3, and other load cases.
+    pub fn with(&self, common_m3: f64, cases: Vec<LoadCase>) -> ValidStudy {
+        let study = Study { fill: Fill::Volume(common_m3), cases, ..self.study.clone() };
+        ValidStudy { study, starts: self.starts_with(common_m3), ..self.clone() }
     }
 
     /// The liquid of a compartment of the region.

@@ -5,6 +5,7 @@
 #[cfg(feature = "gui")]
 mod frame;
 mod kernel;
+mod pictures;
 mod pools;
 #[path = "../it/support/mod.rs"]
 #[allow(dead_code)] // The checks use the rest of it.
@@ -17,6 +18,7 @@ const SECTIONS: &[(&str, fn())] = &[
     ("precision", kernel::precision),
     ("demos", kernel::demos),
     ("pools", pools::pools),
+    ("pictures", pictures::pictures),
     #[cfg(feature = "gui")]
     ("frame", frame::frame),
 ];

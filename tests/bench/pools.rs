@@ -12,7 +12,7 @@ use crate::timing::median_s;
 
 /// How the floor goes.
 #[derive(Clone, Copy)]
-enum Floor {
+pub enum Floor {
     /// One trough.
     Hollow,
     /// Eighteen waves, which liquid leaves one by one.
@@ -20,7 +20,7 @@ enum Floor {
 }
 
 /// A box with a floor of many edges, `n_edges` in all, and plates of several kinds: standing, hanging, free at both ends.
-fn tank(floor: Floor, n_edges: usize, n_plates: usize) -> Section {
+pub fn tank(floor: Floor, n_edges: usize, n_plates: usize) -> Section {
     let (length, height) = (8.0, 2.0);
     let n_floor = n_edges - 3;
     let floor = |i: usize| {

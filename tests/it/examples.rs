@@ -8,6 +8,7 @@ use brimwright::analysis::{self, CaseResult, Results, Settled, State};
 use brimwright::app::{EXAMPLES, Edit, apply};
 use brimwright::cases::{Accel, AccelUnit};
 use brimwright::geom::{Point, Vec2};
+use brimwright::progress::Progress;
 use brimwright::scenario;
 use brimwright::study::{Fill, Study};
 use brimwright::units::UnitSystem;
@@ -258,7 +259,7 @@ fn a_freeboard_that_is_not_judged_has_no_curve() {
         for (i, case) in results.cases.iter().enumerate() {
             let states: Vec<State> =
                 case.verdicts.iter().filter(|v| v.criterion == "Freeboard").map(|v| v.state).collect();
-            let curve = analysis::curves(&study, &results, i).freeboard;
+            let curve = analysis::freeboard_curve(&study, &results.cases[i], &Progress::default()).unwrap();
             let want = states.iter().any(|&s| s != State::NotJudged);
             assert_eq!(!curve.required.is_empty(), want, "{}, {}: {states:?}", example.file_name, case.name);
             assert_eq!(curve.absent.is_none(), want, "{}, {}", example.file_name, case.name);

@@ -11,8 +11,10 @@ mod cli;
 mod clipper;
 mod degenerate;
 mod edits;
+mod envelope;
 mod examples;
 mod files;
+mod fill_map;
 mod gas_pockets;
 #[cfg(feature = "gui")]
 mod gui;
@@ -36,4 +38,5 @@ mod reference;
 mod report;
 mod scenario;
 mod support;
+mod sweep;
 mod tidy;

@@ -13,6 +13,7 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("units", &[]),
     ("sources", &[]),
     ("problem", &[]),
+    ("progress", &[]),
     ("num", &[]),
     ("flow", &["num"]),
     ("geom", &["num"]),
@@ -25,20 +26,29 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("study", &["units", "problem", "geom", "section", "liquid", "material", "cases", "statics"]),
     (
         "criteria",
-        &["units", "sources", "problem", "num", "geom", "section", "material", "cases", "statics", "plates", "study"],
+        &[
+            "units", "sources", "problem", "progress", "num", "geom", "section", "material", "cases", "statics",
+            "plates", "study",
+        ],
     ),
-    ("analysis", &["units", "problem", "geom", "section", "cases", "statics", "plates", "study", "criteria"]),
+    (
+        "analysis",
+        &[
+            "units", "problem", "progress", "num", "geom", "section", "cases", "statics", "plates", "study",
+            "criteria",
+        ],
+    ),
     ("scenario", &["units", "problem", "geom", "section", "liquid", "cases", "study"]),
     ("report", &["units", "sources", "problem", "geom", "section", "liquid", "cases", "study", "analysis"]),
-    ("app", &["problem", "geom", "section", "liquid", "cases", "study", "analysis", "scenario"]),
+    ("app", &["problem", "progress", "geom", "section", "liquid", "cases", "study", "analysis", "scenario"]),
     (
         "gui",
         &[
-            "units", "problem", "geom", "section", "liquid", "material", "cases", "study", "analysis", "scenario",
-            "app",
+            "units", "problem", "progress", "geom", "section", "liquid", "material", "cases", "study", "analysis",
+            "scenario", "report", "app",
         ],
     ),
-    ("cli", &["units", "problem", "study", "analysis", "report", "app", "gui"]),
+    ("cli", &["units", "problem", "progress", "study", "analysis", "report", "app", "gui"]),
 ];
 
 /// Lines that a file may have.

@@ -8,6 +8,7 @@ use crate::geom::Vec2;
 use crate::gui::{Look, font};
 use crate::units::{Measure, Quantity, UnitSystem};
 
+use super::holds::Holds;
 use super::labels::Labels;
 use super::lines;
 
@@ -44,6 +45,8 @@ pub struct Hanging {
     pub tilt_rad: Option<f64>,
     /// Other cases: number as shown, effective gravity.
     pub others: Vec<(usize, Vec2)>,
+    /// How far it may go.
+    pub holds: Option<Holds>,
     /// The pointer is over it.
     pub is_pointed_at: bool,
 }
@@ -99,7 +102,18 @@ impl Dial {
 
     /// What the words, and the drawing under them, keep for themselves.
     pub fn areas(&self, hanging: &Hanging) -> [Rect; 2] {
-        let words = self.rect.with_max_y(self.rect.top() + words_height(self.rect.width()));
+        let drawing = self.drawing(hanging);
+        let holds = hanging.holds.as_ref().and_then(|holds| holds.area(self));
+        [self.words().expand(4.0), holds.map_or(drawing, |holds| drawing.union(holds))]
+    }
+
+    /// Where the words stand.
+    pub fn words(&self) -> Rect {
+        self.rect.with_max_y(self.rect.top() + words_height(self.rect.width()))
+    }
+
+    /// What is drawn round the bob and the cases.
+    fn drawing(&self, hanging: &Hanging) -> Rect {
         let mark = |at: Pos2, half: f32| Rect::from_center_size(at, egui::Vec2::splat(2.0 * half));
         let rings = self.rings(hanging.rest).last().unwrap_or(0.0) * self.scale;
         let mut drawing = mark(self.pivot, 12.0).union(mark(self.tip(hanging.rest), rings + 2.0));
@@ -114,12 +128,12 @@ impl Dial {
         } else {
             drawing = drawing.union(self.rect.with_min_y(self.pivot.y).with_max_y(self.pivot.y + 130.0));
         }
-        [words.expand(4.0), drawing]
+        drawing
     }
 
-    /// Lowest point that the drawing needs.
+    /// Lowest point that bob and cases need.
     pub fn lowest(&self, hanging: &Hanging) -> f32 {
-        self.areas(hanging)[1].bottom()
+        self.drawing(hanging).bottom()
     }
 
     fn hangs_along(&self, gravity: Vec2) -> egui::Vec2 {
@@ -203,8 +217,14 @@ pub fn paint_bob(painter: &Painter, dial: &Dial, hanging: &Hanging, units: UnitS
     }
 
     let mut labels = Labels::new(rect.expand(6.0));
+    if let Some(holds) = &hanging.holds {
+        holds.paint_ground(painter, dial, look);
+    }
     paint_rings(painter, dial, hanging, &mut labels, units, look);
     paint_cases(painter, dial, hanging, &mut labels, look);
+    if let Some(holds) = &hanging.holds {
+        holds.paint_edge(painter, dial, &mut labels, look);
+    }
 
     let (tip, along) = (dial.tip(now), dial.hangs_along(now));
     let across = along.rot90();

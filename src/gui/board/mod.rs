@@ -12,6 +12,7 @@ mod bob;
 mod dims;
 mod drag;
 mod handles;
+mod holds;
 mod isobars;
 mod keys;
 mod labels;
@@ -50,11 +51,20 @@ use scene::Scene;
 use target::Target;
 
 pub use bob::Dial;
+pub use holds::Holds;
 pub use model::BoardModel;
 pub use screen::Screen;
 
-/// The board, in all the room that `ui` has. The view changes in place; changes of the document go into `out`.
-pub fn board_ui(ui: &mut Ui, doc: &Document, view: &mut View, look: &Look, out: &mut Vec<Proposal>) {
+/// The board, in all the room that `ui` has, with what `holds` round the bob. The view changes in place; changes of the
+/// document go into `out`.
+pub fn board_ui(
+    ui: &mut Ui,
+    doc: &Document,
+    view: &mut View,
+    holds: Option<Holds>,
+    look: &Look,
+    out: &mut Vec<Proposal>,
+) {
     let board = ui.available_rect_before_wrap();
     ui.advance_cursor_after_rect(board);
     let id = Id::unique("board");
@@ -70,6 +80,7 @@ pub fn board_ui(ui: &mut Ui, doc: &Document, view: &mut View, look: &Look, out: 
         scene = Scene::new(ui, id, doc, view, area, held_dial);
     }
     let pointing = pointer::point(ui, &canvas, &scene, view, out);
+    scene.hanging.holds = holds;
     scene.hanging.is_pointed_at = pointing.target == Some(Target::Bob) && !pointing.is_dragging;
 
     let painter = ui.painter().with_clip_rect(ui.clip_rect().intersect(board));

@@ -70,6 +70,7 @@ impl<'a> Scene<'a> {
             rest,
             tilt_rad: case.map_or(Some(0.0), |c| c.gravity.tilt_rad),
             others,
+            holds: None,
             is_pointed_at: false,
         };
         Scene { study, judged, case_idx: view.case_idx, model, edges, screen, dial, hanging, units: view.units }

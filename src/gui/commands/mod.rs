@@ -9,10 +9,11 @@ use crate::app::Document;
 use crate::units::UnitSystem;
 
 use super::View;
+use super::pictures::Table;
 
 use when::{
-    always, can_delete, can_redo, can_save, can_undo, has_case, has_case_after, has_case_before, has_cases,
-    has_plate, has_spaced_plates, has_stages,
+    always, can_delete, can_redo, can_save, can_undo, has_acceleration, has_case, has_case_after, has_case_before,
+    has_cases, has_plate, has_spaced_plates, has_stages, is_judged,
 };
 
 /// Something that the user can ask for from a menu or with a key.
@@ -30,6 +31,8 @@ pub enum Command {
     Save,
     /// Choose a file and write to it.
     SaveAs,
+    /// Choose a file and write a table to it.
+    Export(Table),
     /// Leave.
     Quit,
     /// Take the last step back.
@@ -139,6 +142,22 @@ pub const TABLE: &[Row] = &[
         on(CTRL_SHIFT, Key::S),
         "Write the scenario to another file",
         always,
+    ),
+    group(
+        Command::Export(Table::FillMap),
+        Menu::File,
+        "Export the fill map…",
+        NO,
+        "Write fill against acceleration of the chosen case as comma-separated values",
+        has_acceleration,
+    ),
+    row(
+        Command::Export(Table::Envelope),
+        Menu::File,
+        "Export the hold envelope…",
+        NO,
+        "Write the largest acceleration that holds in every direction as comma-separated values",
+        is_judged,
     ),
     group(Command::Quit, Menu::File, "Quit", on(CTRL, Key::Q), "Close the window", always),
     row(Command::Undo, Menu::Edit, "Undo", on(CTRL, Key::Z), "Take the last step back", can_undo),

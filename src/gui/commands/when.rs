@@ -51,3 +51,13 @@ pub(super) fn has_case_before(doc: &Document, view: &View) -> bool {
 pub(super) fn has_case_after(doc: &Document, view: &View) -> bool {
     view.case_idx + 1 < doc.study().cases.len()
 }
+
+pub(super) fn is_judged(doc: &Document, view: &View) -> bool {
+    matches!(doc.derived(), Derived::Judged { .. }) && has_case(doc, view)
+}
+
+pub(super) fn has_acceleration(doc: &Document, view: &View) -> bool {
+    let gravity = doc.study().gravity_m_per_s2;
+    let case = doc.study().cases.get(view.case_idx);
+    is_judged(doc, view) && case.is_some_and(|case| case.accel.to_m_per_s2(gravity).norm() > 0.0)
+}

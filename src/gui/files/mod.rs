@@ -9,6 +9,7 @@ use std::sync::mpsc::{Receiver, channel};
 use std::time::{Duration, Instant};
 
 use super::Look;
+use super::pictures::Table;
 use path_dialog::{Answer, PathDialog};
 
 /// What a file is chosen for.
@@ -18,6 +19,26 @@ pub enum Purpose {
     Open,
     /// To write it.
     Save,
+    /// To write a table.
+    Table(Table),
+}
+
+impl Purpose {
+    /// Ending of the files that it is about.
+    fn extension(self) -> &'static str {
+        match self {
+            Purpose::Open | Purpose::Save => EXTENSION,
+            Purpose::Table(_) => "csv",
+        }
+    }
+
+    /// What a dialog calls them.
+    fn kind(self) -> &'static str {
+        match self {
+            Purpose::Open | Purpose::Save => "brimwright scenario",
+            Purpose::Table(_) => "table",
+        }
+    }
 }
 
 /// Where file dialogs come from.
@@ -113,13 +134,14 @@ fn ask_desktop(ctx: &egui::Context, purpose: Purpose, start: &Path) -> Receiver<
     let (ctx, start) = (ctx.clone(), start.to_owned());
     let spawned = std::thread::Builder::new().name("file dialog".to_owned()).spawn(move || {
         let (folder, name) = path_dialog::folder_and_name(&start);
-        let mut dialog = rfd::FileDialog::new().add_filter("brimwright scenario", &[EXTENSION]).set_directory(folder);
-        if purpose == Purpose::Save {
+        let mut dialog =
+            rfd::FileDialog::new().add_filter(purpose.kind(), &[purpose.extension()]).set_directory(folder);
+        if purpose != Purpose::Open {
             dialog = dialog.set_file_name(name);
         }
         let path = match purpose {
             Purpose::Open => dialog.pick_file(),
-            Purpose::Save => dialog.save_file(),
+            Purpose::Save | Purpose::Table(_) => dialog.save_file(),
         };
         // The window may be gone by now; then nobody waits for the answer.
         let _ = send.send(path);

@@ -4,7 +4,7 @@ use std::path::{Path, PathBuf};
 
 use egui::{Key, Ui, vec2};
 
-use super::{EXTENSION, Purpose};
+use super::Purpose;
 use crate::gui::{Look, font, modals};
 
 /// What the dialog says at the end of a frame.
@@ -37,7 +37,7 @@ struct Entry {
 impl PathDialog {
     pub(super) fn new(purpose: Purpose, start: &Path) -> PathDialog {
         let (folder, name) = folder_and_name(start);
-        let text = if purpose == Purpose::Save { name } else { String::new() };
+        let text = if purpose == Purpose::Open { String::new() } else { name };
         let mut dialog =
             PathDialog { purpose, folder, entries: Vec::new(), trouble: None, text, asks_to_overwrite: None };
         dialog.list();
@@ -61,6 +61,7 @@ impl PathDialog {
         let (title, verb) = match self.purpose {
             Purpose::Open => ("Open a scenario", "Open"),
             Purpose::Save => ("Save the scenario", "Save"),
+            Purpose::Table(_) => ("Export a table", "Export"),
         };
         ui.label(egui::RichText::new(title).font(font::title()).color(look.ink));
         ui.label(egui::RichText::new(self.folder.to_string_lossy()).font(font::small()).color(look.ink2));
@@ -136,7 +137,7 @@ impl PathDialog {
             return Answer::None;
         }
         if path.extension().is_none() {
-            path.set_extension(EXTENSION);
+            path.set_extension(self.purpose.extension());
         }
         if !path.parent().is_some_and(Path::is_dir) {
             self.trouble = Some(format!("There is no folder `{}`", path.parent().unwrap_or(&path).display()));
@@ -169,8 +170,8 @@ impl PathDialog {
         for entry in entries.flatten() {
             let path = entry.path();
             let name = entry.file_name().to_string_lossy().into_owned();
-            let is_scenario = path.extension().is_some_and(|e| e == EXTENSION);
-            if !name.starts_with('.') && (path.is_dir() || is_scenario) {
+            let is_wanted = path.extension().is_some_and(|e| e == self.purpose.extension());
+            if !name.starts_with('.') && (path.is_dir() || is_wanted) {
                 self.entries.push(Entry { is_file: !path.is_dir(), name });
             }
         }

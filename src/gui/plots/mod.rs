@@ -1,9 +1,12 @@
-//! The plots of the chosen load case: freeboard against fill, pressure along the wall, tilt against acceleration.
+//! The plots of the chosen load case: freeboard against fill, pressure along the wall, tilt against acceleration, the
+//! fill map.
 //!
-//! Curves come from [`crate::analysis::curves`]; nothing is worked out here but units.
+//! Curves and maps come from [`crate::analysis`]; nothing is worked out here but units.
 
 mod chart;
+mod fill_map;
 mod freeboard;
+mod map_field;
 mod tilt;
 mod wall;
 
@@ -14,6 +17,7 @@ use egui::{Rect, Ui, pos2, vec2};
 use crate::analysis::{self, Curves};
 
 use super::desk::Judged;
+use super::pictures::{Pictures, Shown};
 use super::{Desk, field, font};
 
 /// The plots that there are.
@@ -23,9 +27,10 @@ enum Kind {
     Freeboard,
     Wall,
     Tilt,
+    FillMap,
 }
 
-const ALL: [Kind; 3] = [Kind::Freeboard, Kind::Wall, Kind::Tilt];
+const ALL: [Kind; 4] = [Kind::Freeboard, Kind::Wall, Kind::Tilt, Kind::FillMap];
 
 impl Kind {
     fn title(self) -> &'static str {
@@ -33,6 +38,7 @@ impl Kind {
             Kind::Freeboard => "Required freeboard against fill",
             Kind::Wall => "Pressure along the wall",
             Kind::Tilt => "Tilt against acceleration",
+            Kind::FillMap => "Fill map",
         }
     }
 }
@@ -42,6 +48,7 @@ impl Kind {
 pub struct PlotArea {
     in_last_place: Option<Kind>,
     curves: Option<Cached>,
+    map: Option<fill_map::Drawn>,
 }
 
 #[derive(Debug)]
@@ -63,6 +70,11 @@ impl PlotArea {
         }
     }
 
+    /// Whether the fill map is among the plots in `n` places.
+    pub fn shows_map(&self, n: usize) -> bool {
+        self.shown(n).contains(&Kind::FillMap)
+    }
+
     /// The kinds shown in `n` places: the last place is the user's choice.
     fn shown(&self, n: usize) -> Vec<Kind> {
         let mut shown = ALL[..n.min(ALL.len())].to_vec();
@@ -78,7 +90,15 @@ impl PlotArea {
 }
 
 /// The plots in `rect`, side by side or one above the other.
-pub fn plots_ui(ui: &mut Ui, rect: Rect, n: usize, is_column: bool, desk: &mut Desk, area: &mut PlotArea) {
+pub fn plots_ui(
+    ui: &mut Ui,
+    rect: Rect,
+    n: usize,
+    is_column: bool,
+    desk: &mut Desk,
+    area: &mut PlotArea,
+    pictures: &mut Pictures,
+) {
     let look = desk.look;
     ui.painter().rect_filled(rect, 0.0, look.board);
     let case_idx = desk.view.case_idx;
@@ -105,13 +125,26 @@ pub fn plots_ui(ui: &mut Ui, rect: Rect, n: usize, is_column: bool, desk: &mut D
             field::paint_fitting(ui, title, egui::Align::Min, kind.title(), font::body_heavy(), look.ink);
         }
         let body = inner.with_min_y(title.bottom());
-        match &curves {
-            None => chart::empty_ui(ui, body, "Waits for a load case of a study without faults", look),
-            Some(curves) => match kind {
-                Kind::Freeboard => freeboard::freeboard_ui(ui, body, &curves.freeboard, desk),
-                Kind::Wall => wall::wall_ui(ui, body, &curves.wall, desk),
-                Kind::Tilt => tilt::tilt_ui(ui, body, &curves.tilt, desk),
+        let (Some(curves), Some(judged)) = (&curves, judged) else {
+            chart::empty_ui(ui, body, "Waits for a load case of a study without faults", look);
+            continue;
+        };
+        match kind {
+            Kind::Freeboard => match pictures.freeboard(judged, desk.doc.revision(), case_idx) {
+                Some(Shown { result, is_old }) => {
+                    ui.scope(|ui| {
+                        ui.set_opacity(if is_old { super::look::STALE_OPACITY } else { 1.0 });
+                        freeboard::freeboard_ui(ui, body, result, desk);
+                    });
+                }
+                None => chart::empty_ui(ui, body, "Follows the liquid over sills, fill by fill", look),
             },
+            Kind::Wall => wall::wall_ui(ui, body, &curves.wall, desk),
+            Kind::Tilt => tilt::tilt_ui(ui, body, &curves.tilt, desk),
+            Kind::FillMap => {
+                let share = analysis::common_share(judged.study);
+                fill_map::fill_map_ui(ui, body, pictures.fill_map(), share, desk, &mut area.map);
+            }
         }
     }
 }
@@ -149,7 +182,7 @@ mod tests {
     fn every_plot_can_be_reached_however_few_there_is_room_for() {
         for n in 1..=3 {
             for kind in ALL {
-                let area = PlotArea { in_last_place: Some(kind), curves: None };
+                let area = PlotArea { in_last_place: Some(kind), ..Default::default() };
                 let shown = area.shown(n);
                 assert_eq!(shown.len(), n);
                 assert!(shown.contains(&kind), "{kind:?} in {n} places: {shown:?}");

@@ -4,8 +4,9 @@ use std::path::{Path, PathBuf};
 
 use egui::{Ui, ViewportCommand};
 
-use crate::app::{self, EXAMPLES, FileError};
+use crate::app::{self, Derived, EXAMPLES, FileError};
 use crate::gui::files::{EXTENSION, Purpose};
+use crate::gui::pictures::Table;
 use crate::gui::problems::FileTrouble;
 use crate::gui::starter;
 use crate::study::Study;
@@ -81,6 +82,21 @@ impl Window {
                 self.intent = None;
                 self.trouble = Some(trouble(error, "saved"));
             }
+        }
+    }
+
+    /// Asks where a table shall go.
+    pub(super) fn export(&mut self, ctx: &egui::Context, table: Table) {
+        let path = self.proposed_path();
+        let stem = path.file_stem().map_or_else(String::new, |stem| stem.to_string_lossy().into_owned());
+        let path = path.with_file_name(format!("{stem}-{}.csv", table.file_word()));
+        self.chooser.ask(ctx, Purpose::Table(table), path);
+    }
+
+    pub(super) fn export_to(&mut self, ctx: &egui::Context, table: Table, path: &Path) {
+        match self.doc.derived() {
+            Derived::Judged { study, .. } => self.pictures.export(ctx, study, self.view.case_idx, table, path),
+            Derived::Faulty { .. } => self.event = "nothing was exported: the scenario has faults".to_owned(),
         }
     }
 

@@ -14,12 +14,15 @@ use crate::app::{Derived, Document, Edit};
 use crate::cases::{Accel, Attitude, LoadCase};
 use crate::study::Study;
 
+use super::board::Holds;
 use super::files::{Dialogs, FileChooser, Purpose};
 use super::layout::{self, Regions};
 use super::modals::{self, Unsaved};
+use super::pictures::Pictures;
 use super::plots::PlotArea;
 use super::problems::{self, FileTrouble};
 use super::settings::Settings;
+use super::status::Asked;
 use super::tank::TankColumn;
 use super::verdicts::VerdictColumn;
 use super::{Command, Desk, Look, Pen, Proposal, Selected, Stage, View};
@@ -38,6 +41,7 @@ pub struct Window {
     tank: TankColumn,
     verdicts: VerdictColumn,
     plots: PlotArea,
+    pictures: Pictures,
     chooser: FileChooser,
     trouble: Option<FileTrouble>,
     /// What waits for the question about unsaved changes, or for the file to be written first.
@@ -65,6 +69,7 @@ impl Window {
             tank: TankColumn::default(),
             verdicts: VerdictColumn::default(),
             plots: PlotArea::default(),
+            pictures: Pictures::default(),
             chooser: FileChooser::new(dialogs),
             trouble: None,
             intent: None,
@@ -94,6 +99,11 @@ impl Window {
         &self.view
     }
 
+    /// The hold envelope round the bob, and whether it belongs to an older state of the study.
+    pub fn holds(&self) -> Option<Holds> {
+        self.pictures.envelope().map(|e| Holds { envelope: e.result.clone(), is_old: e.is_old })
+    }
+
     /// What is remembered from one start to the next.
     pub fn settings(&self) -> &Settings {
         &self.settings
@@ -108,6 +118,7 @@ impl Window {
             out.extend(commands::pressed(ui.ctx(), &self.doc, &self.view).into_iter().map(Proposal::Run));
         }
         let regions = layout::regions(ui.max_rect(), self.settings.sizes);
+        self.keep_pictures(ui.ctx(), regions.n_plots);
         self.regions_ui(ui, &regions, look, &mut out);
         self.dividers_ui(ui, &regions, look);
         self.modals_ui(ui.ctx(), look);
@@ -134,6 +145,7 @@ impl Window {
             }
             Command::Save => self.save(ctx),
             Command::SaveAs => self.chooser.ask(ctx, Purpose::Save, self.proposed_path()),
+            Command::Export(table) => self.export(ctx, table),
             Command::Quit => self.intend(ctx, Intent::Close),
             Command::Undo => self.doc.undo(),
             Command::Redo => self.doc.redo(),
@@ -177,13 +189,14 @@ impl Window {
 
     fn regions_ui(&mut self, ui: &mut Ui, regions: &Regions, look: &'static Look, out: &mut Vec<Proposal>) {
         ui.painter().rect_filled(ui.max_rect(), 0.0, look.panel);
+        let holds = self.holds();
         let mut desk = Desk { doc: &self.doc, view: &mut self.view, look, out };
         header::header_ui(ui, regions.header, regions.menus_are_folded, &mut desk, &self.settings.recent);
         tank::tank_ui(ui, regions.tank, regions.tank_is_folded, &mut desk, &mut self.tank);
         case_head::case_head_ui(ui, regions.case_head, &mut desk);
         let mut board = ui.new_child(UiBuilder::new().max_rect(regions.board).id_salt("board"));
         board.set_clip_rect(regions.board.intersect(ui.clip_rect()));
-        board::board_ui(&mut board, desk.doc, desk.view, look, desk.out);
+        board::board_ui(&mut board, desk.doc, desk.view, holds, look, desk.out);
         if let Some(trouble) = &self.trouble {
             if problems::file_trouble_ui(ui, regions.plots, &mut desk, trouble) {
                 self.trouble = None;
@@ -191,13 +204,27 @@ impl Window {
         } else if matches!(desk.doc.derived(), Derived::Faulty { .. }) {
             problems::problems_ui(ui, regions.plots, &mut desk);
         } else {
-            plots::plots_ui(ui, regions.plots, regions.n_plots, regions.plots_are_beside, &mut desk, &mut self.plots);
+            let (plots, pictures) = (&mut self.plots, &mut self.pictures);
+            plots::plots_ui(ui, regions.plots, regions.n_plots, regions.plots_are_beside, &mut desk, plots, pictures);
         }
         strip::strip_ui(ui, regions.strip, regions.card_width, regions.cards_have_drawings, &mut desk);
         verdicts::verdicts_ui(ui, regions.verdicts, regions.verdict_row, &mut desk, &mut self.verdicts);
         let is_dropping = ui.input(|i| !i.raw.hovered_files.is_empty());
         let event = if is_dropping { "Let go to open the scenario" } else { &self.event };
-        status::status_ui(ui, regions.status, &desk, event, self.judged_ms);
+        match status::status_ui(ui, regions.status, &desk, event, self.judged_ms, &self.pictures) {
+            Some(Asked::Stop) => self.pictures.stop(),
+            Some(Asked::StartAgain) => self.pictures.start_again(),
+            None => {}
+        }
+    }
+
+    /// Brings what is worked out in the background in step with the document.
+    fn keep_pictures(&mut self, ctx: &egui::Context, n_plots: usize) {
+        let shows_map = self.plots.shows_map(n_plots);
+        self.pictures.keep_up(ctx, &self.doc, self.view.case_idx, shows_map);
+        if let Some(Ok(words) | Err(words)) = self.pictures.exported() {
+            self.event = words;
+        }
     }
 
     fn dividers_ui(&mut self, ui: &Ui, regions: &Regions, look: &Look) {
@@ -254,7 +281,8 @@ impl Window {
             Some((Purpose::Open, Some(path))) => self.open(&path),
             Some((Purpose::Save, Some(path))) => self.save_to(ctx, &path),
             Some((Purpose::Save, None)) => self.intent = None,
-            Some((Purpose::Open, None)) | None => {}
+            Some((Purpose::Table(table), Some(path))) => self.export_to(ctx, table, &path),
+            Some((Purpose::Open | Purpose::Table(_), None)) | None => {}
         }
     }
 

@@ -2,11 +2,13 @@
 //!
 //! Knows no pressure, no load case and no limit: a way is a turn of the direction.
 
+mod followed;
 mod look;
 mod place;
 mod still;
 mod trace;
 
+pub use followed::Followed;
 pub use look::{Body, Look};
 pub use place::{Brim, Pour, Spilled};
 pub use still::{Holder, Start};

@@ -30,10 +30,15 @@ impl Turn {
 }
 
 impl Turn {
-    /// The way back from where it has turned by `turned_rad`.
-    pub fn back_from(&self, turned_rad: f64) -> Turn {
+    /// The same way from where it has turned by `turned_rad`.
+    pub fn on_from(&self, turned_rad: f64) -> Turn {
         let sign = if self.grows { 1.0 } else { -1.0 };
-        Turn { start_rad: self.start_rad + sign * turned_rad, grows: !self.grows }
+        Turn { start_rad: self.start_rad + sign * turned_rad, ..*self }
+    }
+
+    /// The way back from there.
+    pub fn back_from(&self, turned_rad: f64) -> Turn {
+        Turn { grows: !self.grows, ..self.on_from(turned_rad) }
     }
 }
 

@@ -25,7 +25,7 @@ struct Desk {
 impl Desk {
     fn ui(&mut self, ui: &mut egui::Ui) {
         let mut out = Vec::new();
-        board::board_ui(ui, &self.doc, &mut self.view, Look::of(ui.theme()), &mut out);
+        board::board_ui(ui, &self.doc, &mut self.view, None, Look::of(ui.theme()), &mut out);
         for proposal in out {
             match proposal {
                 Proposal::Edit(edit) => self.doc.edit(&edit),

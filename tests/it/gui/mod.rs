@@ -1,5 +1,6 @@
 //! The window, driven by the names that assistive technology reads. No screen, no graphics driver.
 
+mod pictures;
 mod tank;
 
 use std::path::Path;
@@ -17,7 +18,9 @@ use egui_kittest::kittest::{NodeT, Queryable};
 type Driven = Harness<'static, Option<Window>>;
 
 fn window_of_size(width: f32, height: f32) -> Driven {
-    let mut harness = Harness::builder().with_size([width, height]).with_context_setup(look::install).build_ui_state(
+    // Work beside the window wakes it at any time: it settles in more steps than usual.
+    let builder = Harness::builder().with_size([width, height]).with_max_steps(100);
+    let mut harness = builder.with_context_setup(look::install).build_ui_state(
         |ui, window: &mut Option<Window>| {
             let start = || Window::new(ui.ctx(), None, Settings::default(), Dialogs::Own);
             window.get_or_insert_with(start).ui(ui);

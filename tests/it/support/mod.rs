@@ -5,6 +5,7 @@ pub mod followed;
 pub mod grid;
 pub mod grid_pools;
 pub mod hand_cases;
+pub mod limited;
 pub mod plated;
 pub mod random;
 pub mod shapes;
