@@ -18,6 +18,8 @@ pub enum Source {
     VapourMargin,
     /// The project's own derivation of layout facts.
     LayoutGeometry,
+    /// Flow through openings.
+    OrificeFlow,
     /// Effective gravity and standard gravity.
     StandardGravity,
     /// Thin plates in bending.
