@@ -21,7 +21,7 @@ mod profile;
 mod strength;
 mod strip;
 
-pub use bearing::{Bearer, PanelStrength, PlateResult, Solved, Span, Weld, spans, welds};
+pub use bearing::{Bearer, PanelStrength, PlateResult, SolvedPanels, Span, Weld, spans, welds};
 pub use bending::{Bending, EdgeReaction, Extremes, Peak};
 pub use bent::{Bent, PointState};
 pub use error::PlateError;
