@@ -40,6 +40,7 @@ pub fn verdicts_ui(ui: &mut Ui, rect: Rect, row_height: f32, desk: &mut Desk, co
             if judged.is_stale {
                 ui.set_opacity(super::look::STALE_OPACITY);
             }
+            layout_ui(ui, row_height, desk, judged);
             rows_ui(ui, row_height, desk, judged, column);
             quiet_rows_ui(ui, desk, judged, column);
         });
@@ -81,20 +82,39 @@ fn rows_ui(ui: &mut Ui, row_height: f32, desk: &mut Desk, judged: Judged, column
     }
 }
 
+/// The layout of plates, judged once for the tank and not for a case.
+fn layout_ui(ui: &mut Ui, row_height: f32, desk: &mut Desk, judged: Judged) {
+    let layout = &judged.results.layout;
+    if layout.verdicts.is_empty() {
+        return;
+    }
+    quiet_heading_ui(ui, desk, "Layout of plates, tank level and at rest");
+    for verdict in &layout.verdicts {
+        let (rect, response) = ui.allocate_exact_size(vec2(ui.available_width(), row_height), Sense::hover());
+        let spoken = spoken_words(verdict, None, desk);
+        response.widget_info(|| WidgetInfo::labeled(Role::Label, true, &spoken));
+        row_ui(ui, rect, desk, verdict, None, false);
+        let y = ui.painter().round_to_pixel_center(rect.bottom() - 0.5);
+        ui.painter().hline(rect.shrink2(vec2(INSET, 0.0)).x_range(), y, (1.0, desk.look.line2));
+        tooltip(response, verdict, desk);
+    }
+    quiet_heading_ui(ui, desk, "Load cases");
+}
+
 fn verdict_ui(ui: &mut Ui, row_height: f32, desk: &mut Desk, judged: Judged, at: (usize, usize)) {
     let look = desk.look;
     let verdict = &judged.results.cases[at.0].verdicts[at.1];
     let is_open = desk.view.open_verdict == Some(at) && !judged.is_stale;
     let top = ui.cursor().top();
     let (rect, response) = ui.allocate_exact_size(vec2(ui.available_width(), row_height), Sense::click());
-    let spoken = spoken_words(verdict, at.0, desk);
+    let spoken = spoken_words(verdict, Some(at.0), desk);
     response.widget_info(|| WidgetInfo::selected(Role::ListBoxOption, true, is_open, &spoken));
     let ground = ui.painter().add(egui::Shape::Noop);
     if response.clicked() {
         desk.view.open_verdict = if is_open { None } else { Some(at) };
         desk.view.case_idx = at.0;
     }
-    row_ui(ui, rect, desk, verdict, at.0, is_open);
+    row_ui(ui, rect, desk, verdict, Some(at.0), is_open);
     marks::paint_focus(ui.painter(), rect.shrink(5.0), &response, look);
     if is_open {
         working::working_ui(ui, INSET, desk, verdict, at.0);
@@ -114,7 +134,7 @@ fn verdict_ui(ui: &mut Ui, row_height: f32, desk: &mut Desk, judged: Judged, at:
     }
 }
 
-fn row_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: usize, is_open: bool) {
+fn row_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: Option<usize>, is_open: bool) {
     let look = desk.look;
     let painter = ui.painter();
     let inner = rect.shrink2(vec2(INSET, 0.0));
@@ -146,10 +166,11 @@ fn row_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: usize, 
     third_line_ui(ui, third, desk, verdict, case_idx);
 }
 
-fn third_line_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: usize) {
+fn third_line_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: Option<usize>) {
     let look = desk.look;
     let (small, strong) = (font::small, font::small_figure);
-    let place = format!("   case {}, {}", case_idx + 1, verdict.place_words);
+    let case = case_idx.map_or_else(String::new, |i| format!("case {}, ", i + 1));
+    let place = format!("   {case}{}", verdict.place_words);
     let job = match (verdict.demand, verdict.limit) {
         (Some(demand), Some(limit)) if verdict.state != State::NotJudged => {
             let unit = desk.unit_near(demand.quantity, demand.si.abs().max(limit.si.abs()));
@@ -164,7 +185,6 @@ fn third_line_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: 
             ])
         }
         _ => {
-            let case = format!("case {}, ", case_idx + 1);
             let remark = if verdict.remark.is_empty() { verdict.state.word() } else { &verdict.remark };
             font::runs([(case.as_str(), small(), look.ink2), (remark, small(), look.ink2)])
         }
@@ -179,7 +199,7 @@ fn quiet_rows_ui(ui: &mut Ui, desk: &Desk, judged: Judged, column: &VerdictColum
         if column.is_this_case_only && c != desk.view.case_idx {
             continue;
         }
-        for absent in &case.absent {
+        for absent in case.absent.iter().chain(&judged.results.layout.absent) {
             let title = match absent.place_words.as_str() {
                 "" => absent.criterion.to_owned(),
                 place => format!("{}, {place}", absent.criterion),
@@ -258,12 +278,12 @@ fn tooltip(response: Response, verdict: &Verdict, desk: &Desk) {
 }
 
 /// What assistive technology says: `Freeboard, fails, 1.09, 473 mm, at most 435 mm, hatch 1, case 3`.
-fn spoken_words(verdict: &Verdict, case_idx: usize, desk: &Desk) -> String {
+fn spoken_words(verdict: &Verdict, case_idx: Option<usize>, desk: &Desk) -> String {
     let mut words =
         vec![verdict.criterion.to_owned(), verdict.state.word().to_owned(), utilisation_text(verdict.utilisation)];
     words.extend(verdict.demand.map(|demand| desk.text(demand)));
     words.extend(verdict.limit.map(|limit| format!("{} {}", verdict.sense.words(), desk.text(limit))));
     words.push(verdict.place_words.clone());
-    words.push(format!("case {}", case_idx + 1));
+    words.extend(case_idx.map(|i| format!("case {}", i + 1)));
     words.join(", ")
 }

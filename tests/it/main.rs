@@ -1,5 +1,6 @@
 //! The integration tests: one binary, one module a subject.
 
+mod any_plates;
 mod arbitrary;
 mod bad_plates;
 mod bad_sections;

@@ -22,7 +22,10 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("statics", &["problem", "num", "geom", "section"]),
     ("plates", &["num", "geom", "section", "material", "statics"]),
     ("study", &["units", "problem", "geom", "section", "liquid", "material", "cases", "statics"]),
-    ("criteria", &["units", "sources", "problem", "num", "geom", "section", "cases", "statics", "plates", "study"]),
+    (
+        "criteria",
+        &["units", "sources", "problem", "num", "geom", "section", "material", "cases", "statics", "plates", "study"],
+    ),
     ("analysis", &["units", "problem", "geom", "section", "cases", "statics", "plates", "study", "criteria"]),
     ("scenario", &["units", "problem", "geom", "section", "liquid", "cases", "study"]),
     ("report", &["units", "sources", "problem", "geom", "section", "liquid", "cases", "study", "analysis"]),
