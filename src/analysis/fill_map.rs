@@ -12,7 +12,7 @@ use crate::progress::Progress;
 use crate::statics::{Followed, Route};
 use crate::study::ValidStudy;
 
-use super::results::{Bound, State, Verdict};
+use super::results::{Bound, SolvedPanels, State, Verdict};
 use super::rims::{SharedRims, risen_z_m, risen_z_m_on};
 use super::sight::{Ground, Sight, Sighted, StillSurface};
 use super::ways;
@@ -170,7 +170,7 @@ impl<'a> Rows<'a> {
         let ups: Vec<Vec2> = cases.iter().filter_map(|case| ways::start_of(study, case).gravity.up).collect();
         let shared = |bound: &Bound| SharedRims::new(study, *bound, ups.iter().copied());
         let rims = ways::bounds(study).iter().map(shared).collect();
-        Rows { study, cases, bearers: super::bearers(study), rims }
+        Rows { study, cases, bearers: super::bearers(study, &mut SolvedPanels::default()), rims }
     }
 
     /// The worst verdicts of one fill.

@@ -16,7 +16,7 @@ use crate::progress::Progress;
 use crate::statics::{EffectiveGravity, effective_gravity};
 use crate::study::ValidStudy;
 
-use super::results::{Bound, State, Verdict};
+use super::results::{Bound, SolvedPanels, State, Verdict};
 use super::side::Side;
 use super::sight::{Ground, Sight, Sighted, StillSurface};
 use super::ways::Course;
@@ -228,7 +228,7 @@ impl<'a> Base<'a> {
             note: String::new(),
         };
         let rest = effective_gravity(study.study().gravity_m_per_s2, attitude.angle_rad(), Vec2::zeros()).vec;
-        let (still, bearers) = (StillSurface::of(study), super::bearers(study));
+        let (still, bearers) = (StillSurface::of(study), super::bearers(study, &mut SolvedPanels::default()));
         Base { study, case, rest, most_m_per_s2, still, bearers, progress }
     }
 

@@ -17,7 +17,8 @@ use rayon::prelude::*;
 use crate::cases::LoadCase;
 use crate::criteria::{self, Standing};
 use crate::geom::{Point, Vec2};
-use crate::plates::{Bearer, Solved, dividers};
+use crate::plates::{Bearer, dividers};
+use crate::section::{Placed, Plate};
 use crate::statics::{Body, Holder, Setting, Stop, pressure_at, settle, spills};
 use crate::study::ValidStudy;
 use crate::units::{Measure, Quantity, number};
@@ -33,6 +34,11 @@ pub use results::*;
 
 /// Judges every load case.
 pub fn run(study: &ValidStudy) -> Results {
+    run_again(study, &mut SolvedPanels::default())
+}
+
+/// The same, sooner where an earlier run has solved panels of the same plates; those are kept that this one needs.
+pub fn run_again(study: &ValidStudy, panels: &mut SolvedPanels) -> Results {
     let inputs = study.study();
     let still_tilted = study.tilted(Vec2::y());
     let volume = study.fill_volume_m3();
@@ -42,7 +48,7 @@ pub fn run(study: &ValidStudy) -> Results {
     let surface = surface_at_rest(study);
     let still_surface = StillSurface { z_m: level, length_m: length_m(surface.iter()) };
     let courses = ways::courses(study);
-    let bearers = bearers(study);
+    let bearers = bearers(study, panels);
     let ground = Ground { study, still: still_surface, bearers: &bearers };
     let judged: Vec<(CaseResult, Option<f64>)> =
         inputs.cases.par_iter().zip(&courses).map(|(case, course)| judge_case(&ground, case, course)).collect();
@@ -156,13 +162,15 @@ fn judge_case(ground: &Ground, case: &LoadCase, course: &Course) -> (CaseResult,
 }
 
 /// Every plate, ready to be loaded.
-fn bearers(study: &ValidStudy) -> Vec<Bearer<'_>> {
-    let (inputs, mut solved) = (study.study(), Solved::default());
+fn bearers<'s>(study: &'s ValidStudy, panels: &mut SolvedPanels) -> Vec<Bearer<'s>> {
+    let inputs = study.study();
+    let earlier = std::mem::take(panels);
     let width = &inputs.section.width;
     let plates = inputs.section.plates.iter().zip(study.region().plates());
-    plates
-        .map(|(plate, placed)| Bearer::new(plate, placed, width, inputs.material(&plate.material), &mut solved))
-        .collect()
+    let bearer = |(plate, placed): (&'s Plate, &'s Placed)| {
+        Bearer::new(plate, placed, width, inputs.material(&plate.material), &earlier, panels)
+    };
+    plates.map(bearer).collect()
 }
 
 /// What the plates bear in a state, in the order of the plates; nothing without one.

@@ -6,7 +6,9 @@ use crate::problem::Problem;
 pub use crate::criteria::{
     Absent, CONTAINED, FREEBOARD, LAYOUT, Outcome, Reach, Sense, State, Trust, Verdict, WorkLine,
 };
-pub use crate::plates::{Cell, EndReaction, OutOfRange, PanelStrength, PlateResult, Span, Strength, Support, Weld};
+pub use crate::plates::{
+    Cell, EndReaction, OutOfRange, PanelStrength, PlateResult, SolvedPanels, Span, Strength, Support, Weld,
+};
 pub use crate::statics::{
     Bound, Chord, EdgeLoad, EffectiveGravity, GasPocket, MouthSpill, PlateLoad, PointPressure, Pool, Pour,
     RoofContact, Route, Settled, Stretch,

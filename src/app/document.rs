@@ -3,7 +3,7 @@
 use std::path::PathBuf;
 use std::sync::Arc;
 
-use crate::analysis::{self, Results};
+use crate::analysis::{self, Results, SolvedPanels};
 use crate::problem::Problem;
 use crate::study::{Study, ValidStudy};
 
@@ -51,13 +51,15 @@ pub struct Document {
     gesture: Option<(String, Arc<Study>)>,
     revision: u64,
     derived: Derived,
+    panels: SolvedPanels,
 }
 
 impl Document {
     /// Opens a study, which counts as saved.
     pub fn new(study: Study, path: Option<PathBuf>) -> Document {
         let study = Arc::new(study);
-        let derived = derive(&study, None);
+        let mut panels = SolvedPanels::default();
+        let derived = derive(&study, None, &mut panels);
         Document {
             saved: study.clone(),
             study,
@@ -67,6 +69,7 @@ impl Document {
             gesture: None,
             revision: 0,
             derived,
+            panels,
         }
     }
 
@@ -176,14 +179,14 @@ impl Document {
             Derived::Judged { study, results } => Some((study.clone(), results.clone())),
             Derived::Faulty { stale, .. } => stale.clone(),
         };
-        self.derived = derive(&self.study, stale);
+        self.derived = derive(&self.study, stale, &mut self.panels);
     }
 }
 
-fn derive(study: &Study, stale: Option<(Arc<ValidStudy>, Arc<Results>)>) -> Derived {
+fn derive(study: &Study, stale: Option<(Arc<ValidStudy>, Arc<Results>)>, panels: &mut SolvedPanels) -> Derived {
     match study.validate() {
         Ok(valid) => {
-            let results = Arc::new(analysis::run(&valid));
+            let results = Arc::new(analysis::run_again(&valid, panels));
             Derived::Judged { study: Arc::new(valid), results }
         }
         Err(problems) => Derived::Faulty { problems, stale },

@@ -21,11 +21,13 @@ mod profile;
 mod strength;
 mod strip;
 
-pub use bearing::{Bearer, PanelStrength, PlateResult, Solved, Span, Weld, spans, welds};
+pub use bearing::{Bearer, PanelStrength, PlateResult, SolvedPanels, Span, Weld, spans, welds};
 pub use bending::{Bending, EdgeReaction, Extremes, Peak};
 pub use bent::{Bent, PointState};
 pub use error::PlateError;
-pub use layout::{Cell, Divider, Gap, Remnant, cells, dividers, gaps, undrained, unvented};
+pub use layout::{
+    Cell, Divider, Gap, Passage, Remnant, Way, cells, dividers, gaps, passages, undrained, unvented, widest_ways,
+};
 pub use panel::{PanelGeometry, SolvedPanel, Support};
 pub use profile::{Piece, Profile};
 pub use strength::{

@@ -9,7 +9,7 @@ use brimwright::study::{Fill, Limit, Record, Study};
 
 use crate::support::plated::plate;
 use crate::support::shapes::{polygon, rectangle, section};
-use crate::support::{judge, study};
+use crate::support::{GRAVITY, judge, study};
 
 /// A tank 4 m long, 1 m high and 2 m wide, open at its top (edge 2).
 fn tank(plates: Vec<Plate>, fill: Fill) -> Study {
@@ -250,6 +250,40 @@ fn gas_under_a_full_height_plate_without_a_gap_stays_in() {
     // Where no mouth is drawn there is nothing to look for.
     let found = verdict(tank(vec![hanging()], &[]), Limit::VentPath);
     assert_eq!(found.state, State::NotJudged, "{found:?}");
+}
+
+#[test]
+fn a_rated_flow_passes_the_narrowest_of_the_widest_ways_below_the_still_level() {
+    // Torricelli with C_d = 0.6: (Q / (0.6 A))^2 / 2 g (standard hydraulics).
+    let (flow, limit) = (0.0631, 0.1);
+    let difference = |area: f64| (flow / (0.6 * area)).powi(2) / (2.0 * GRAVITY);
+    let rated = |study| verdict(study, Limit::RatedFlow { flow_m3_per_s: flow, difference_m: limit });
+    let gap = |s| with_opening(upright(s, 0.0, 1.0), 0.0, 0.1, OpeningShape::Share(1.0));
+    // A gap 0.1 high and 2 m wide.
+    check(&rated(tank(vec![gap(2.0)], Fill::Share(0.5))), State::Holds, difference(0.2), limit);
+    // A gap from 0.4 to 0.6 is half under.
+    let half = with_opening(upright(2.0, 0.0, 1.0), 0.4, 0.6, OpeningShape::Share(1.0));
+    check(&rated(tank(vec![half], Fill::Share(0.5))), State::Holds, difference(0.2), limit);
+    // Under a plate that hangs 0.3 off the floor; in a barrel that is a segment of its circle.
+    let hanging = || vec![upright(2.0, 0.3, 1.0)];
+    check(&rated(tank(hanging(), Fill::Share(0.5))), State::Holds, difference(0.6), limit);
+    let found = rated(barrel(vec![upright(2.0, 0.3, 1.8)], Fill::Share(0.5)));
+    check(&found, State::Holds, difference(segment(0.9, 0.3)), limit);
+    // Two holes of 0.1 m in the second of two plates are the narrower way; a hole above the level adds nothing.
+    let holes = with_opening(upright(3.0, 0.0, 1.0), 0.05, 0.15, OpeningShape::Holes { n: 2 });
+    let holes = with_opening(holes, 0.7, 0.9, OpeningShape::Holes { n: 1 });
+    let found = rated(tank(vec![gap(2.0), holes], Fill::Share(0.5)));
+    let area = 2.0 * PI / 4.0 * 0.01;
+    check(&found, State::Fails, difference(area), limit);
+    assert_eq!(found.place_words.matches("cell").count(), 2, "{}", found.place_words);
+    // It needs area by the root of what it is over: that much more makes it hold exactly.
+    let needed = area * (difference(area) / limit).sqrt();
+    assert!((difference(needed) - limit).abs() < 1e-12);
+    let mend = found.mend[0].text(Default::default());
+    assert!(mend.contains(&format!("{:.4} m²", needed - area)), "{mend}, {} m2 more", needed - area);
+    // Open above the level only.
+    let high = with_opening(upright(2.0, 0.0, 1.0), 0.7, 0.9, OpeningShape::Share(1.0));
+    assert_eq!(rated(tank(vec![high], Fill::Share(0.5))).state, State::NotJudged);
 }
 
 #[test]

@@ -1,7 +1,7 @@
 //! Plate strength and weld loads of plates in a tank. Loads are worked out by hand (own derivations, hydrostatics and
 //! standard beam formulas); the bending of panels has its own checks against published values, and is taken from there.
 
-use brimwright::analysis::{Bound, CaseResult, PanelStrength, PlateResult, State, Verdict, Weld};
+use brimwright::analysis::{self, Bound, CaseResult, PanelStrength, PlateResult, SolvedPanels, State, Verdict, Weld};
 use brimwright::geom::Point;
 use brimwright::material::named;
 use brimwright::plates::{PanelGeometry, Profile, SolvedPanel, Strength, Support, strength};
@@ -237,4 +237,15 @@ fn what_the_method_does_not_reach_is_not_judged_and_no_material_is_absent() {
     near("own limit", verdict(&judge(&study).cases[0]).limit.unwrap().si, 66e6);
     study.materials[0].factor = 0.5;
     assert!(study.validate().is_err(), "a factor below one is a fault");
+}
+
+#[test]
+fn kept_panels_change_no_result() {
+    let mut panels = SolvedPanels::default();
+    // Moved, made taller, and put back.
+    for plate in [upright(1.0, 0.0, 1.0), upright(1.2, 0.0, 1.0), upright(1.2, 0.2, 1.0), upright(1.0, 0.0, 1.0)] {
+        let study = tank(2.0, 1.0, plate, Fill::Share(0.6));
+        let valid = study.validate().expect("a sound study");
+        assert_eq!(analysis::run_again(&valid, &mut panels), analysis::run(&valid));
+    }
 }

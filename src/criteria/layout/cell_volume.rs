@@ -6,7 +6,7 @@ use crate::plates::Cell;
 use crate::study::Limit;
 use crate::units::{Measure, Phrase, Quantity, number};
 
-use super::{Outcome, Sense, Standing, Verdict, WorkLine};
+use super::{NOTHING, Outcome, Sense, Standing, Verdict, WorkLine};
 
 const NAME: &str = "Cell volume";
 
@@ -24,7 +24,7 @@ pub(super) fn judge(standing: &Standing) -> Outcome {
         _ => None,
     };
     let verdicts = |band| standing.cells.iter().map(|cell| verdict(standing, cell, band)).collect();
-    standing.by_records(NAME, kind, verdicts, || {
+    standing.by_records(NAME, kind, verdicts, NOTHING, || {
         let largest = standing.cells.iter().map(|c| c.capacity_m3).fold(0.0, f64::max);
         let largest = Measure::new(Quantity::Volume, largest);
         Phrase::new("no cell volume limit is given; the largest cell holds {}", [largest])

@@ -5,14 +5,14 @@ use crate::plates::Divider;
 use crate::study::Limit;
 use crate::units::{Measure, Phrase, Quantity, number};
 
-use super::{Absent, Outcome, Sense, Standing, Verdict, WorkLine, plate};
+use super::{Absent, NOTHING, Outcome, Sense, Standing, Verdict, WorkLine, plate};
 
 const NAME: &str = "Plate coverage";
 
 pub(super) fn judge(standing: &Standing) -> Outcome {
     let kind = |limit: &Limit| if let Limit::PlateCoverage(share) = *limit { Some(share) } else { None };
     let verdicts = |least| standing.dividers.iter().map(|divider| verdict(standing, divider, least)).collect();
-    let mut outcome = standing.by_records(NAME, kind, verdicts, || {
+    let mut outcome = standing.by_records(NAME, kind, verdicts, NOTHING, || {
         match standing.dividers.iter().map(Divider::coverage).reduce(f64::min) {
             Some(least) => {
                 let least = Measure::new(Quantity::Share, least);

@@ -7,7 +7,7 @@ use crate::section::Wall;
 use crate::study::Limit;
 use crate::units::{Measure, Phrase, Quantity};
 
-use super::{Outcome, Standing, Verdict};
+use super::{NOTHING, Outcome, Standing, Verdict};
 
 const NAME: &str = "Drain path";
 
@@ -19,6 +19,7 @@ pub(super) fn judge(standing: &Standing) -> Outcome {
         NAME,
         kind,
         |()| vec![verdict(standing, &remnants)],
+        NOTHING,
         || {
             let left: f64 = remnants.iter().map(|r| r.volume_m3).sum();
             if left > 0.0 {

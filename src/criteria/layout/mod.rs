@@ -5,9 +5,11 @@ mod cell_volume;
 mod coverage;
 mod drain;
 mod open_share;
+mod rated_flow;
 mod spacing;
 mod vent;
 
+use crate::geom::Vec2;
 use crate::plates::{Cell, Divider, Remnant};
 use crate::problem::Place;
 use crate::sources::Source;
@@ -30,8 +32,15 @@ pub struct Standing<'a> {
 }
 
 /// Every rule, in the order in which they are run.
-const RULES: &[fn(&Standing) -> Outcome] =
-    &[cell_volume::judge, coverage::judge, open_share::judge, spacing::judge, drain::judge, vent::judge];
+const RULES: &[fn(&Standing) -> Outcome] = &[
+    cell_volume::judge,
+    coverage::judge,
+    open_share::judge,
+    spacing::judge,
+    drain::judge,
+    vent::judge,
+    rated_flow::judge,
+];
 
 /// Runs every rule; verdicts worst first.
 pub fn judge_layout(standing: &Standing) -> Outcome {
@@ -61,13 +70,14 @@ impl Standing<'_> {
         Verdict { source: Source::LayoutGeometry, ..Verdict::not_judged(rule, sense, reason, trust()) }
     }
 
-    /// The worst of several verdicts for each record of a kind, none where there is nothing to judge; without a record,
-    /// absent for `reason`.
+    /// The worst of several verdicts for each record of a kind, absent for `nothing` where there are none; without a
+    /// record, absent for `reason`.
     fn by_records<T>(
         &self,
         rule: &'static str,
         kind: fn(&Limit) -> Option<T>,
         verdicts: impl Fn(T) -> Vec<Verdict>,
+        nothing: &str,
         reason: impl Fn() -> Phrase,
     ) -> Outcome {
         let mut outcome = Outcome::default();
@@ -75,13 +85,20 @@ impl Standing<'_> {
             let unconfirmed_record = unconfirmed(self.study, Some(i));
             match verdicts(limit).into_iter().min_by(Verdict::order) {
                 Some(worst) => outcome.verdicts.push(Verdict { unconfirmed_record, ..worst }),
-                None => outcome.absent.push(absent(rule, "no plate stands upright".into())),
+                None => outcome.absent.push(absent(rule, nothing.into())),
             }
         }
         if outcome == Outcome::default() {
             outcome.absent.push(absent(rule, reason()));
         }
         outcome
+    }
+
+    /// z of the still level that counts for a cell, m.
+    fn still_z_m(&self, cell: usize) -> f64 {
+        let compartment = self.cells[cell].compartment;
+        let start = self.study.starts().iter().find(|s| s.compartments.contains(&compartment));
+        start.map_or(f64::NEG_INFINITY, |s| s.vessel.tilted(Vec2::y()).level_for_volume(s.volume_m3))
     }
 
     /// The name of a plate.
@@ -129,6 +146,9 @@ impl Standing<'_> {
         verdict
     }
 }
+
+/// Why a rule about upright plates has nothing to judge.
+const NOTHING: &str = "no plate stands upright";
 
 /// Shares of what stays behind below this are rounding.
 const LEAST_SHARE: f64 = 1e-9;

@@ -6,7 +6,7 @@ use crate::plates::Divider;
 use crate::study::Limit;
 use crate::units::{Measure, Phrase, Quantity, number};
 
-use super::{Outcome, Sense, Standing, Verdict, WorkLine, plate};
+use super::{NOTHING, Outcome, Sense, Standing, Verdict, WorkLine, plate};
 
 const NAME: &str = "Open share";
 
@@ -17,7 +17,7 @@ pub(super) fn judge(standing: &Standing) -> Outcome {
         _ => None,
     };
     let verdicts = |limit| standing.dividers.iter().map(|divider| verdict(standing, divider, limit)).collect();
-    standing.by_records(NAME, kind, verdicts, || {
+    standing.by_records(NAME, kind, verdicts, NOTHING, || {
         let shares = || standing.dividers.iter().map(|d| Measure::new(Quantity::Share, d.open_share()));
         let by_size = |a: &Measure, b: &Measure| a.si.total_cmp(&b.si);
         match (shares().min_by(by_size), shares().max_by(by_size)) {

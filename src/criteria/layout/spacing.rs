@@ -7,7 +7,7 @@ use crate::problem::Place;
 use crate::study::Limit;
 use crate::units::{Measure, Phrase, Quantity, fixed};
 
-use super::{Outcome, Sense, Standing, Verdict, WorkLine, plate};
+use super::{NOTHING, Outcome, Sense, Standing, Verdict, WorkLine, plate};
 
 const NAME: &str = "Plate spacing";
 
@@ -15,7 +15,7 @@ pub(super) fn judge(standing: &Standing) -> Outcome {
     let kind = |limit: &Limit| if let Limit::PlateSpacing(m) = *limit { Some(m) } else { None };
     let gaps = gaps(standing.study.region());
     let verdicts = |most| gaps.iter().map(|gap| verdict(standing, gap, most)).collect();
-    standing.by_records(NAME, kind, verdicts, || {
+    standing.by_records(NAME, kind, verdicts, NOTHING, || {
         let widest = gaps.iter().map(Gap::length_m).fold(0.0, f64::max);
         Phrase::new("no spacing limit is given; the widest gap is {}", [Measure::new(Quantity::Length, widest)])
     })

@@ -5,7 +5,7 @@ use crate::plates::unvented;
 use crate::study::Limit;
 use crate::units::{Measure, Phrase, Quantity};
 
-use super::{Outcome, Sense, Standing};
+use super::{NOTHING, Outcome, Sense, Standing};
 
 const NAME: &str = "Vent path";
 
@@ -14,11 +14,11 @@ pub(super) fn judge(standing: &Standing) -> Outcome {
     if standing.study.mouths().is_empty() {
         let reason = || "the tank has no mouth that gas could get out by";
         let verdict = |()| vec![standing.not_judged(NAME, Sense::AtMost, reason().to_owned())];
-        return standing.by_records(NAME, kind, verdict, || reason().into());
+        return standing.by_records(NAME, kind, verdict, NOTHING, || reason().into());
     }
     let remnants = unvented(standing.study.region(), &standing.study.study().section.width);
     let verdict = |()| vec![standing.left_behind(NAME, &remnants, "V_{gas}", "gas")];
-    standing.by_records(NAME, kind, verdict, || {
+    standing.by_records(NAME, kind, verdict, NOTHING, || {
         let left: f64 = remnants.iter().map(|r| r.volume_m3).sum();
         if left > 0.0 {
             let left = Measure::new(Quantity::Volume, left);

@@ -25,9 +25,9 @@ pub struct Bearer<'a> {
 /// A solved panel, or why it cannot be calculated.
 type Panel = Result<Arc<SolvedPanel>, PlateError>;
 
-/// Panels that are solved already: many plates have the same.
+/// Panels that are solved: many plates have the same, and keep them while other things change.
 #[derive(Clone, Debug, Default)]
-pub struct Solved(Vec<(PanelGeometry, Panel)>);
+pub struct SolvedPanels(Vec<(PanelGeometry, Panel)>);
 
 /// What one plate bears under one bound of a load case.
 #[derive(Clone, Debug, PartialEq)]
@@ -69,19 +69,21 @@ impl PanelStrength {
 }
 
 impl<'a> Bearer<'a> {
-    /// Solves the panels of a plate that `solved` has not yet.
+    /// Solves the panels of a plate, if they are not among `earlier` ones or those that are `solved` already; from there on
+    /// they are.
     pub fn new(
         plate: &'a Plate,
         placed: &'a Placed,
         width: &'a WidthLaw,
         material: Option<&'a Material>,
-        solved: &mut Solved,
+        earlier: &SolvedPanels,
+        solved: &mut SolvedPanels,
     ) -> Bearer<'a> {
         let panels = material.map(|material| {
             let panel = |span: Span| {
                 let (width_m, height_m) = (span.width_m, span.length_m());
                 let support = support(plate.panel.edges, span.is_held);
-                (span, solved.panel(PanelGeometry { width_m, height_m, support, poisson: material.poisson }))
+                (span, solved.panel(earlier, PanelGeometry { width_m, height_m, support, poisson: material.poisson }))
             };
             (material, spans(plate, placed, width).into_iter().map(panel).collect())
         });
@@ -97,8 +99,11 @@ impl<'a> Bearer<'a> {
 
     fn worst_panel(&self, load: &PlateLoad) -> Option<Result<PanelStrength, String>> {
         let (material, panels) = self.panels.as_ref()?;
+        // Without a net load all are alike.
+        let is_idle = load.stretches.iter().all(|s| s.from_pa == 0.0 && s.to_pa == 0.0);
+        let n_panels = if is_idle { 1 } else { panels.len() };
         let mut worst: Option<PanelStrength> = None;
-        for (span, panel) in panels {
+        for (span, panel) in panels.iter().take(n_panels) {
             let found = match panel {
                 Ok(panel) => self.panel_strength(span, panel, material, load).map_err(|e| e.to_string()),
                 Err(error) => Err(error.to_string()),
@@ -137,12 +142,17 @@ impl<'a> Bearer<'a> {
     }
 }
 
-impl Solved {
-    fn panel(&mut self, geometry: PanelGeometry) -> Panel {
-        if let Some((_, panel)) = self.0.iter().find(|s| s.0 == geometry) {
+impl SolvedPanels {
+    fn find(&self, geometry: PanelGeometry) -> Option<&Panel> {
+        self.0.iter().find(|s| s.0 == geometry).map(|s| &s.1)
+    }
+
+    fn panel(&mut self, earlier: &SolvedPanels, geometry: PanelGeometry) -> Panel {
+        if let Some(panel) = self.find(geometry) {
             return panel.clone();
         }
-        let panel = SolvedPanel::new(geometry).map(Arc::new);
+        let known = earlier.find(geometry).cloned();
+        let panel = known.unwrap_or_else(|| SolvedPanel::new(geometry).map(Arc::new));
         self.0.push((geometry, panel.clone()));
         panel
     }

@@ -6,6 +6,6 @@ mod pressure;
 mod span;
 mod weld;
 
-pub use bearer::{Bearer, PanelStrength, PlateResult, Solved};
+pub use bearer::{Bearer, PanelStrength, PlateResult, SolvedPanels};
 pub use span::{Span, spans};
 pub use weld::{Weld, welds};

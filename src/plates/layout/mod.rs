@@ -5,8 +5,10 @@ mod cell;
 mod divider;
 mod gap;
 mod left_behind;
+mod passage;
 
 pub use cell::{Cell, cells};
 pub use divider::{Divider, dividers};
 pub use gap::{Gap, gaps};
 pub use left_behind::{Remnant, undrained, unvented};
+pub use passage::{Passage, Way, passages, widest_ways};
