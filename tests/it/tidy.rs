@@ -27,8 +27,8 @@ const ARROWS: &[(&str, &[&str])] = &[
     (
         "criteria",
         &[
-            "units", "sources", "problem", "progress", "num", "geom", "section", "material", "cases", "statics",
-            "plates", "study",
+            "units", "sources", "problem", "progress", "num", "flow", "geom", "section", "material", "cases",
+            "statics", "plates", "study",
         ],
     ),
     (
