@@ -70,7 +70,9 @@ pub fn steady_levels(
     if !is_joined.get(inlet_idx).is_some_and(|is_joined| *is_joined) {
         return Err(FlowError::NoWay { from_idx: inlet_idx, to_idx: outlet_idx });
     }
-    let still = Rated { passages, inlet, outlet, g_m_per_s2 };
+    // What is not joined to the outlet stays out of it, and cannot spoil it.
+    let passages: Vec<Passage> = passages.iter().filter(|passage| is_joined[passage.from_idx]).copied().collect();
+    let still = Rated { passages: &passages, inlet, outlet, g_m_per_s2 };
     // As long as it takes: from levels that have hardly moved to ones that would move no more.
     let mut levels_m = DVector::from_element(n_cells, outlet_m);
     for dt in (-3..=15).map(|power| 10.0_f64.powi(power)) {
