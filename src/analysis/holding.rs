@@ -178,8 +178,9 @@ impl<'a> Holding<'a> {
         (top > low && is_open && self.excess(side, ray, top) > 0.0).then_some((low, top))
     }
 
+    /// By how much what rests on the size of G is used beyond what holds.
     fn excess(&self, side: &Side, ray: &Ray, accel: f64) -> f64 {
-        excess(&self.by_size(side, ray, accel))
+        gravity_used(&self.by_size(side, ray, accel)).min(1e6) - 1.0
     }
 
     fn by_size(&self, side: &Side, ray: &Ray, accel: f64) -> Judged {
@@ -199,6 +200,12 @@ pub(super) fn excess(judged: &Judged) -> f64 {
         (_, Some(used)) => (used - 1.0).min(0.0),
     };
     verdicts.iter().map(of).fold(-1.0, f64::max)
+}
+
+/// The size of G over the largest one along its direction under which all of some verdicts hold.
+pub(super) fn gravity_used(judged: &Judged) -> f64 {
+    let Ok(verdicts) = judged else { return f64::INFINITY };
+    verdicts.iter().map(Verdict::gravity_used).fold(0.0, f64::max)
 }
 
 /// What both sides share.

@@ -2,7 +2,7 @@
 
 use nalgebra::DMatrix;
 
-use super::bending::{self, Bending};
+use super::bending::{self, Bending, Summits};
 use super::panel::SolvedPanel;
 
 /// A panel under a pressure.
@@ -31,14 +31,21 @@ pub struct PointState {
 impl PointState {
     /// The principal bending moment of largest magnitude, signed.
     pub fn principal_n(&self) -> f64 {
-        let (mean, half) = (0.5 * (self.across_n + self.along_n), 0.5 * (self.across_n - self.along_n));
-        let radius = half.hypot(self.twist_n);
-        if mean < 0.0 { mean - radius } else { mean + radius }
+        PointState::principal_of((self.across_n, self.along_n, self.twist_n))
     }
 
     /// The moment whose surface stress is von Mises's equivalent of this state's.
     pub fn von_mises_n(&self) -> f64 {
-        let (x, y, xy) = (self.across_n, self.along_n, self.twist_n);
+        PointState::von_mises_of((self.across_n, self.along_n, self.twist_n))
+    }
+
+    /// Of moments that span across and along, and twist.
+    pub(super) fn principal_of((x, y, xy): (f64, f64, f64)) -> f64 {
+        let (mean, half) = (0.5 * (x + y), 0.5 * (x - y));
+        mean + (half * half + xy * xy).sqrt().copysign(mean)
+    }
+
+    pub(super) fn von_mises_of((x, y, xy): (f64, f64, f64)) -> f64 {
         (x * x + y * y - x * y + 3.0 * xy * xy).sqrt()
     }
 }
@@ -58,13 +65,23 @@ impl Bent<'_> {
         self.state(derived(0, 0), derived(2, 0), derived(0, 2), derived(1, 1))
     }
 
+    /// What its strength is judged by: the part of [`Bent::bending`] that is soon had.
+    pub fn summits(&self) -> Summits {
+        bending::summits_of(self)
+    }
+
+    /// The force of largest magnitude along its sides, N/m, signed.
+    pub fn side_force_n_per_m(&self) -> f64 {
+        bending::side_force_of(self)
+    }
+
     /// The largest of everything.
     pub fn bending(&self) -> Bending {
         bending::of(self)
     }
 
     /// From the deflection and its second derivatives in the panel's own length unit.
-    pub(super) fn state(&self, w: f64, w_xx: f64, w_yy: f64, w_xy: f64) -> PointState {
+    fn state(&self, w: f64, w_xx: f64, w_yy: f64, w_xy: f64) -> PointState {
         let (poisson, square) = (self.panel.geometry().poisson, self.panel.unit_m * self.panel.unit_m);
         PointState {
             deflection_n_m2: w * square * square,
