@@ -42,8 +42,9 @@ pub(super) struct Mark {
 }
 
 impl Mark {
-    pub fn holds(&self, gravity: f64) -> bool {
-        self.least <= gravity && gravity <= self.most
+    /// That size of G over the largest one that holds; infinite where it is too small to be judged.
+    pub fn gravity_used(&self, gravity: f64) -> f64 {
+        if gravity < self.least { f64::INFINITY } else { gravity / self.most }
     }
 }
 
@@ -155,9 +156,10 @@ impl<'a> Side<'a> {
     /// Marks what holds along directions up to the end, those between at which it holds least included.
     fn mark(&mut self, base: &Base, turn: Turn) {
         let marks: Vec<Mark> = turns_to(self.end.0).par_iter().map(|t| self.mark_at(base, turn, *t)).collect();
+        let far = base.rest.norm() + base.most_m_per_s2;
         let dips: Vec<Mark> = marks
             .par_windows(3)
-            .filter(|w| w[1].most.is_finite() && w[1].most < w[0].most && w[1].most <= w[2].most)
+            .filter(|w| w[1].most < far && w[1].most < w[0].most && w[1].most <= w[2].most)
             .map(|w| {
                 let most = |turned: f64| self.mark_at(base, turn, turned).most;
                 let (turned, _) = golden_min(w[0].turned, w[2].turned, 1e-4, most);
@@ -183,7 +185,7 @@ impl<'a> Side<'a> {
         let bond = sights.iter().filter_map(bond).fold(f64::INFINITY, f64::min);
         let least = super::LEAST_BOND_NUMBER / bond;
         let used = gravity_used(&base.judge(&course, &sights, RestsOn::Size));
-        let most = if used <= 1.0 { f64::INFINITY } else { far / used };
+        let most = far / used;
         if most <= least.max(1e-9 * far) || least >= far {
             return nothing;
         }

@@ -143,71 +143,65 @@ impl<'a> Grid<'a> {
     fn new(bent: &'a Bent<'a>) -> Grid<'a> {
         let SolvedPanel { x, y, half: [hx, hy], unit_m, .. } = bent.panel;
         let (poisson, square) = (bent.panel.geometry().poisson, unit_m * unit_m);
-        let along = |q: usize, scale: f64| &bent.coefficients * &y.samples_turned[q] * (scale / hy.powi(q as i32));
-        let field = |p: usize, along: &DMatrix<f64>| &x.samples[p] * along;
-        let (value, bent_along) = (along(0, -square / (hx * hx)), along(2, -square));
-        let (mut across, mut along_y) = (field(2, &value), field(0, &bent_along));
-        for (x, y) in across.iter_mut().zip(along_y.iter_mut()) {
+        let turned = |q: usize| product(1.0 / hy.powi(q as i32), &bent.coefficients, &y.samples_turned[q]);
+        let (plain, sloped, curved) = (turned(0), turned(1), turned(2));
+        let mut across = product(-square / (hx * hx), &x.samples[2], &plain);
+        let mut along = product(-square, &x.samples[0], &curved);
+        for (x, y) in across.as_mut_slice().iter_mut().zip(along.as_mut_slice()) {
             (*x, *y) = (*x + poisson * *y, *y + poisson * *x);
         }
-        let twist = field(1, &along(1, -(1.0 - poisson) * square / hx));
-        let deflection = field(0, &along(0, square * square));
-        Grid { bent, deflection, across, along: along_y, twist }
+        let twist = product(-(1.0 - poisson) * square / hx, &x.samples[1], &sloped);
+        let deflection = product(square * square, &x.samples[0], &plain);
+        Grid { bent, deflection, across, along, twist }
     }
 
     fn summits(&self) -> Summits {
-        let moments = || self.across.iter().zip(&self.along).zip(&self.twist).map(|((x, y), xy)| (*x, *y, *xy));
-        let (rows, columns) = self.across.shape();
-        let values = DMatrix::from_iterator(rows, columns, moments().map(|m| PointState::principal_of(m)));
-        let principal = self.largest(&values, PointState::principal_n);
-        let values = DMatrix::from_iterator(rows, columns, moments().map(|m| PointState::von_mises_of(m)));
+        let principal = self.largest(&self.moments(PointState::principal_of), PointState::principal_n);
+        let von_mises = self.moments(PointState::von_mises_of);
         Summits {
             deflection_n_m2: self.largest(&self.deflection, |s| s.deflection_n_m2),
             principal,
-            von_mises: self.highest(&values, principal.value.abs(), PointState::von_mises_n),
+            von_mises: self.summit(&von_mises, 1.0, principal.value.abs(), PointState::von_mises_n),
         }
+    }
+
+    /// A value of the moments that span across and along, and the twist.
+    fn moments(&self, of: impl Fn(f64, f64, f64) -> f64) -> DMatrix<f64> {
+        let mut values = self.across.clone();
+        let others = self.along.as_slice().iter().zip(self.twist.as_slice());
+        values.as_mut_slice().iter_mut().zip(others).for_each(|(x, (y, xy))| *x = of(*x, *y, *xy));
+        values
     }
 
     /// The value of largest magnitude.
     fn largest(&self, values: &DMatrix<f64>, of: impl Fn(&PointState) -> f64) -> Peak {
-        let (high, low) = values.iter().fold((0.0, 0.0), |(high, low), v| (f64::max(high, *v), f64::min(low, *v)));
-        if high * (1.0 - SUMMIT_SHARE) > -low {
-            return self.highest(values, 0.0, of);
-        }
-        let negated = -values;
-        let low = self.highest(&negated, 0.0, |s| -of(s));
-        let high = self.highest(values, low.value, of);
-        if low.value > high.value { Peak { value: -low.value, ..low } } else { high }
+        let low = self.summit(values, -1.0, highest(values, 1.0).1, &of);
+        let high = self.summit(values, 1.0, -low.value, &of);
+        if -low.value > high.value { low } else { high }
     }
 
     fn extremes(&self, values: &DMatrix<f64>, of: impl Fn(&PointState) -> f64) -> Extremes {
-        let low = self.highest(&-values, 0.0, |s| -of(s));
-        Extremes { high: self.highest(values, 0.0, of), low: Peak { value: -low.value, ..low } }
+        Extremes { high: self.summit(values, 1.0, 0.0, &of), low: self.summit(values, -1.0, 0.0, &of) }
     }
 
-    /// The summit of a value: the highest point, moved to where the value bends over and taken there, unless that is far
-    /// below what `matters`; zero where all is below.
-    fn highest(&self, values: &DMatrix<f64>, matters: f64, of: impl Fn(&PointState) -> f64) -> Peak {
+    /// The summit of a value on the side of `sign`: the outermost point, moved to where the value bends over and taken there,
+    /// unless that is far below what `matters`; zero where all is on the other side.
+    fn summit(&self, values: &DMatrix<f64>, sign: f64, matters: f64, of: impl Fn(&PointState) -> f64) -> Peak {
         let SolvedPanel { x, y, .. } = self.bent.panel;
-        let (mut k, mut top) = (0, 0.0);
-        for (i, value) in values.iter().enumerate() {
-            if *value > top {
-                (k, top) = (i, *value);
-            }
-        }
+        let (k, top) = highest(values, sign);
         if top <= 0.0 {
             return Peak { value: 0.0, x_m: 0.0, y_m: 0.0 };
         }
         let (i, j) = (k % values.nrows(), k / values.nrows());
-        let on_point = Peak { value: top, x_m: self.x_m(x.points[i]), y_m: self.y_m(y.points[j]) };
+        let on_point = Peak { value: sign * top, x_m: self.x_m(x.points[i]), y_m: self.y_m(y.points[j]) };
         let is_corner = (i == 0 || i + 1 == values.nrows()) && (j == 0 || j + 1 == values.ncols());
         if is_corner || top < (1.0 - SUMMIT_SHARE) * matters {
             return on_point;
         }
-        let x_m = self.x_m(summit(&x.points, values.column(j).iter().copied(), i).0);
-        let y_m = self.y_m(summit(&y.points, values.row(i).iter().copied(), j).0);
+        let x_m = self.x_m(summit(&x.points, values.column(j).iter().map(|v| sign * v), i).0);
+        let y_m = self.y_m(summit(&y.points, values.row(i).iter().map(|v| sign * v), j).0);
         let value = of(&self.bent.at(x_m, y_m));
-        if value > top { Peak { value, x_m, y_m } } else { on_point }
+        if sign * value > top { Peak { value, x_m, y_m } } else { on_point }
     }
 
     fn side(&self) -> EdgeReaction {
@@ -256,6 +250,23 @@ impl<'a> Grid<'a> {
     fn y_m(&self, eta: f64) -> f64 {
         0.5 * (eta + 1.0) * self.bent.panel.geometry().height_m
     }
+}
+
+/// The highest of all values on the side of `sign`, above zero there, and its place among them.
+fn highest(values: &DMatrix<f64>, sign: f64) -> (usize, f64) {
+    let (mut best, mut top) = (0, 0.0);
+    for (i, value) in values.as_slice().iter().enumerate() {
+        if sign * value > top {
+            (best, top) = (i, sign * value);
+        }
+    }
+    (best, top)
+}
+
+fn product(scale: f64, a: &DMatrix<f64>, b: &DMatrix<f64>) -> DMatrix<f64> {
+    let mut product = DMatrix::zeros(a.nrows(), b.ncols());
+    product.gemm(scale, a, b, 0.0);
+    product
 }
 
 /// The force along a side, N/m, V = -(w_xxx + (2 - nu) w_xyy) at its left end: its mean, its value of largest magnitude, and

@@ -31,21 +31,21 @@ pub struct PointState {
 impl PointState {
     /// The principal bending moment of largest magnitude, signed.
     pub fn principal_n(&self) -> f64 {
-        PointState::principal_of((self.across_n, self.along_n, self.twist_n))
+        PointState::principal_of(self.across_n, self.along_n, self.twist_n)
     }
 
     /// The moment whose surface stress is von Mises's equivalent of this state's.
     pub fn von_mises_n(&self) -> f64 {
-        PointState::von_mises_of((self.across_n, self.along_n, self.twist_n))
+        PointState::von_mises_of(self.across_n, self.along_n, self.twist_n)
     }
 
     /// Of moments that span across and along, and twist.
-    pub(super) fn principal_of((x, y, xy): (f64, f64, f64)) -> f64 {
+    pub(super) fn principal_of(x: f64, y: f64, xy: f64) -> f64 {
         let (mean, half) = (0.5 * (x + y), 0.5 * (x - y));
         mean + (half * half + xy * xy).sqrt().copysign(mean)
     }
 
-    pub(super) fn von_mises_of((x, y, xy): (f64, f64, f64)) -> f64 {
+    pub(super) fn von_mises_of(x: f64, y: f64, xy: f64) -> f64 {
         (x * x + y * y - x * y + 3.0 * xy * xy).sqrt()
     }
 }
@@ -59,9 +59,8 @@ impl Bent<'_> {
         let x = self.panel.x.basis.samples(&[point(x_m, geometry.width_m)]);
         let y = self.panel.y.basis.samples(&[point(y_m, geometry.height_m)]);
         let [hx, hy] = self.panel.half;
-        let derived = |p: usize, q: usize| {
-            (&x[p] * &self.coefficients * y[q].transpose())[(0, 0)] / (hx.powi(p as i32) * hy.powi(q as i32))
-        };
+        let along = [0, 1, 2].map(|q| &self.coefficients * y[q].row(0).transpose() / hy.powi(q as i32));
+        let derived = |p: usize, q: usize| (x[p].row(0) * &along[q])[0] / hx.powi(p as i32);
         self.state(derived(0, 0), derived(2, 0), derived(0, 2), derived(1, 1))
     }
 

@@ -119,9 +119,22 @@ struct Way<'h, 'a> {
     now: Option<Now<'a>>,
 }
 
+/// Where everything stands at present.
 struct Now<'a> {
     look: Look<'a>,
     stop: Stop,
+    /// Of its bodies, m.
+    levels: Vec<f64>,
+    /// For each basin, the body that it lies in.
+    owners: Vec<Option<usize>>,
+}
+
+impl<'a> Now<'a> {
+    fn new(look: Look<'a>, stop: Stop) -> Now<'a> {
+        let levels = stop.bodies.iter().map(|b| look.level_of(b)).collect();
+        let owners = look.owners(&stop.bodies);
+        Now { look, stop, levels, owners }
+    }
 }
 
 struct Lost;
@@ -162,7 +175,7 @@ impl<'a> Way<'_, 'a> {
         {
             self.trace.first_spill = Some((0.0, *first));
         }
-        self.now = Some(Now { look, stop });
+        self.now = Some(Now::new(look, stop));
         Ok(())
     }
 
@@ -205,7 +218,7 @@ impl<'a> Way<'_, 'a> {
                 self.note_firsts(&now, &placed, to);
                 let mut stop = Stop { turned_rad: to, up: look.up, ..now.stop };
                 take(&mut stop, placed);
-                self.now = Some(Now { look, stop });
+                self.now = Some(Now::new(look, stop));
                 Ok(())
             }
             Err(Unplaced::Parted) => {
@@ -257,7 +270,7 @@ impl<'a> Way<'_, 'a> {
                 Some(Body { volume_m3: c.volume_m3, compartment: c.compartment, basin, lows: c.lows })
             })
             .collect();
-        self.now = Some(Now { look, stop });
+        self.now = Some(Now::new(look, stop));
         Ok(())
     }
 
@@ -284,7 +297,6 @@ impl<'a> Way<'_, 'a> {
     /// With them, pairs of bodies that became one because the sill between them is there no more.
     fn claims(&self, now: &Now, look: &Look) -> (Vec<Claim>, Vec<(usize, usize)>) {
         let bodies = &now.stop.bodies;
-        let levels: Vec<f64> = bodies.iter().map(|b| now.look.level_of(b)).collect();
         let mut claims: Vec<Claim> = bodies
             .iter()
             .enumerate()
@@ -302,12 +314,11 @@ impl<'a> Way<'_, 'a> {
                 claim.lows.extend(leads_to);
             }
         }
-        let owners = now.look.owners(bodies);
         for low in (0..look.basins.all().len()).filter(|&b| look.basins.is_leaf(b)) {
             let beside = look.basins.low_point(low).iter().find_map(|&(e, t)| now.look.basins.basin_beside(e, t));
             if let Some((basin, level)) = beside
-                && let Some(i) = owners[basin]
-                && level < levels[i]
+                && let Some(i) = now.owners[basin]
+                && level < now.levels[i]
             {
                 claims[i].lows.push(low);
             }
@@ -405,7 +416,7 @@ impl<'a> Way<'_, 'a> {
 /// What went from the higher to the lower of two bodies over a sill that is there no more: all of the higher one.
 fn over_a_sill_that_went(now: &Now, (i, j): (usize, usize)) -> Option<Pour> {
     let (a, b) = (&now.stop.bodies[i], &now.stop.bodies[j]);
-    let from = if now.look.level_of(a) > now.look.level_of(b) { a } else { b };
+    let from = if now.levels[i] > now.levels[j] { a } else { b };
     let outlet = now.look.basins.outlet(from.basin)?;
     Some(Pour {
         wall: now.look.cut.faces()[outlet.edge_idx as usize].wall,
