@@ -4,7 +4,7 @@
 //! that falls to a sill within it parts there, each side keeping what then stands on it.
 
 use crate::geom::Vec2;
-use crate::num::{bracket, root};
+use crate::num::{bracket, root_between};
 
 use super::look::{Body, Look};
 use super::place::{Brim, Claim, Parting, Placed, Pour, Spilled, Unplaced, merge_shared};
@@ -141,7 +141,7 @@ struct Lost;
 
 impl<'a> Way<'_, 'a> {
     fn start(&mut self, from: Option<&Stop>) -> Result<(), Lost> {
-        let look = self.holder.look(self.turn.up(0.0));
+        let look = self.look(0.0);
         let bodies = match from {
             Some(stop) => stop.bodies.clone(),
             None => self.holder.still(&look),
@@ -206,7 +206,7 @@ impl<'a> Way<'_, 'a> {
     fn advance(&mut self, to: f64) -> Result<(), Lost> {
         let now = self.now.take().ok_or(Lost)?;
         let from = now.stop.turned_rad;
-        let look = self.holder.look(self.turn.up(to));
+        let look = self.look(to);
         let (claims, met) = self.claims(&now, &look);
         match self.holder.place(&look, claims) {
             Ok(mut placed) => {
@@ -223,7 +223,9 @@ impl<'a> Way<'_, 'a> {
             }
             Err(Unplaced::Parted) => {
                 // Up to the last direction at which nothing has parted yet, and then a hair beyond it.
-                let [before, after] = bracket(from, to, 1e-13, |turned| self.parting(&now, turned));
+                let [before, after] = bracket(from, to, 1e-13, |turned| {
+                    if turned == from { self.parting(&now, &now.look) } else { self.parting(&now, &self.look(turned)) }
+                });
                 self.now = Some(now);
                 if before > from {
                     self.advance(before)?;
@@ -237,7 +239,7 @@ impl<'a> Way<'_, 'a> {
     /// Parts the body that has fallen to a sill within it at `turned`; each side keeps what stands on it.
     fn part(&mut self, turned: f64) -> Result<(), Lost> {
         let now = self.now.take().ok_or(Lost)?;
-        let look = self.holder.look(self.turn.up(turned));
+        let look = self.look(turned);
         let (mut claims, _) = self.claims(&now, &look);
         let Parting { claim_idx: culprit, basin, .. } =
             self.holder.least_room_over_sills(&look, &claims).ok_or(Lost)?;
@@ -274,17 +276,21 @@ impl<'a> Way<'_, 'a> {
         Ok(())
     }
 
-    /// By how much the body nearest to parting has fallen below its sill at `turned`, as a volume, and how fast that grows.
-    fn parting(&self, now: &Now, turned: f64) -> (f64, Option<f64>) {
-        let look = self.holder.look(self.turn.up(turned));
-        let (claims, _) = self.claims(now, &look);
-        match self.holder.least_room_over_sills(&look, &claims) {
+    /// By how much the body nearest to parting has fallen below its sill along `look`, as a volume, and how fast that grows.
+    fn parting(&self, now: &Now, look: &Look) -> (f64, Option<f64>) {
+        let (claims, _) = self.claims(now, look);
+        match self.holder.least_room_over_sills(look, &claims) {
             None => (-self.holder.capacity_m3, None),
             Some(parting) => {
-                let rate = self.holder.room_rate(&look, &parting);
+                let rate = self.holder.room_rate(look, &parting);
                 (-parting.room.m3, rate.map(|r| -self.sign() * r))
             }
         }
+    }
+
+    /// The look where it has turned that far.
+    fn look(&self, turned: f64) -> Look<'a> {
+        self.holder.look(self.turn.up(turned))
     }
 
     /// +1 where the tilt grows.
@@ -357,13 +363,13 @@ impl<'a> Way<'_, 'a> {
                 continue;
             }
             let rate_at = |turned: f64| {
-                let middle = self.holder.look(self.turn.up(turned));
+                let middle = self.look(turned);
                 let (claims, _) = self.claims(now, &middle);
                 let claim = claims.iter().find(|c| c.from.contains(&i));
                 let basin = claim.and_then(|c| middle.basins.join(&c.lows));
                 basin.and_then(|b| middle.capacity_rate(b)).map_or(rate, |r| sign * r)
             };
-            let dip = root(from, to, 1e-9, rate_at);
+            let dip = root_between((from, rate), (to, rate_after), 1e-9, rate_at);
             if dip > from + 1e-8 && dip < to - 1e-8 {
                 return Some(dip);
             }
@@ -373,25 +379,28 @@ impl<'a> Way<'_, 'a> {
 
     /// Notes when liquid first left a mouth, and first went over a sill.
     fn note_firsts(&mut self, now: &Now, placed: &Placed, to: f64) {
-        let from = now.stop.turned_rad;
         let slack = 1e-12 * self.holder.capacity_m3;
         let spilled: f64 = placed.spilled.iter().map(|s| s.volume_m3).sum();
         if self.trace.first_spill.is_none() && spilled > slack {
-            let over = |turned: f64| self.over_at(now, turned, true);
-            let turned = root(from, to, 1e-15, over);
+            let turned = self.first_over(now, (to, spilled), 1e-15, true);
             self.trace.first_spill = Some((turned, placed.spilled[0]));
         }
         let poured: f64 = placed.pours.iter().map(|p| p.volume_m3).sum();
         if self.trace.first_pour.is_none() && poured > slack {
-            let turned = root(from, to, 1e-9, |turned| self.over_at(now, turned, false));
+            let turned = self.first_over(now, (to, poured), 1e-9, false);
             self.trace.first_pour = Some((turned, placed.pours[0]));
         }
     }
 
-    /// By how much some body stands over its mouth, or its sill, at `turned`, m3; below zero by its room.
-    fn over_at(&self, now: &Now, turned: f64, by_mouth: bool) -> f64 {
-        let look = self.holder.look(self.turn.up(turned));
-        match self.holder.place(&look, self.claims(now, &look).0) {
+    /// Where some body first stands over its mouth, or its sill, up to a turn at which it does so by a volume.
+    fn first_over(&self, now: &Now, to: (f64, f64), tolerance: f64, by_mouth: bool) -> f64 {
+        let from = (now.stop.turned_rad, self.over(now, &now.look, by_mouth));
+        root_between(from, to, tolerance, |turned| self.over(now, &self.look(turned), by_mouth))
+    }
+
+    /// By how much some body stands over its mouth, or its sill, along `look`, m3; below zero by its room.
+    fn over(&self, now: &Now, look: &Look, by_mouth: bool) -> f64 {
+        match self.holder.place(look, self.claims(now, look).0) {
             Ok(placed) => {
                 let over: f64 = if by_mouth {
                     placed.spilled.iter().map(|s| s.volume_m3).sum()
