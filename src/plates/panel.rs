@@ -187,7 +187,8 @@ impl SolvedPanel {
         // The work of a pressure that is alike all across on each function along x.
         let across = x.means(0) * (2.0 * half[0]);
         let block = |y_idx: Vec<usize>| {
-            let stiffness = Cholesky::new(stiffness(&x, &y, &y_idx, half, poisson)).ok_or(PlateError::OutOfNumbers)?;
+            let stiffness =
+                Cholesky::new(stiffness(&x, &y, &y_idx, half, poisson)).ok_or(PlateError::OutOfNumbers)?;
             let answers = stiffness.solve(&across.kronecker(&DMatrix::identity(y_idx.len(), y_idx.len())));
             Ok(Block { y_idx, answers })
         };

@@ -224,7 +224,11 @@ impl<'a> Way<'_, 'a> {
             Err(Unplaced::Parted) => {
                 // Up to the last direction at which nothing has parted yet, and then a hair beyond it.
                 let [before, after] = bracket(from, to, 1e-13, |turned| {
-                    if turned == from { self.parting(&now, &now.look) } else { self.parting(&now, &self.look(turned)) }
+                    if turned == from {
+                        self.parting(&now, &now.look)
+                    } else {
+                        self.parting(&now, &self.look(turned))
+                    }
                 });
                 self.now = Some(now);
                 if before > from {
