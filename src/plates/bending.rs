@@ -49,8 +49,7 @@ pub struct Summits {
     pub deflection_n_m2: Peak,
     /// Principal bending moment of largest magnitude: the one that handbooks tabulate.
     pub principal: Peak,
-    /// Largest moment by von Mises's equivalent surface stress; to the points where it was looked for only, where the
-    /// principal moment is larger by a tenth.
+    /// Largest moment by von Mises's equivalent surface stress.
     pub von_mises: Peak,
 }
 
@@ -161,7 +160,7 @@ impl<'a> Grid<'a> {
         Summits {
             deflection_n_m2: self.largest(&self.deflection, |s| s.deflection_n_m2),
             principal,
-            von_mises: self.summit(&von_mises, 1.0, principal.value.abs(), PointState::von_mises_n),
+            von_mises: self.summit(&von_mises, 1.0, 0.0, PointState::von_mises_n),
         }
     }
 
