@@ -10,14 +10,14 @@ use std::f64::consts::{PI, TAU};
 use crate::cases::{Accel, Attitude, LoadCase};
 use crate::criteria::RestsOn;
 use crate::geom::{Vec2, cross};
-use crate::num::root;
+use crate::num::root_between;
 use crate::plates::Bearer;
 use crate::progress::Progress;
 use crate::statics::{EffectiveGravity, effective_gravity};
 use crate::study::ValidStudy;
 
 use super::results::{Bound, SolvedPanels, State, Verdict};
-use super::side::Side;
+use super::side::{Mark, Side};
 use super::sight::{Ground, Sight, Sighted, StillSurface};
 use super::ways::Course;
 
@@ -150,36 +150,45 @@ impl<'a> Holding<'a> {
         }
         match self.bracket(side, &ray, top) {
             None => ends(top, end),
-            Some((low, high)) => {
-                let accel = root(low, high, 1e-13 * (high + 1e-3 * ray.rest), |accel| self.excess(side, &ray, accel));
+            Some([low, high]) => {
+                let tolerance = 1e-13 * (high.0 + 1e-3 * ray.rest);
+                let accel = root_between(low, high, tolerance, |accel| self.excess(side, &ray, accel));
                 // A limit that is reached is not yet passed: a hair further on it is.
-                let beyond = [1e-9, 1e-8, 1e-7, 1e-6].map(|hair| (accel + hair * (accel + ray.rest)).min(high));
+                let beyond = [1e-9, 1e-8, 1e-7, 1e-6].map(|hair| (accel + hair * (accel + ray.rest)).min(high.0));
                 let found =
-                    beyond.into_iter().chain([high]).find_map(|accel| End::of(&self.by_size(side, &ray, accel)));
+                    beyond.into_iter().chain([high.0]).find_map(|accel| End::of(&self.by_size(side, &ray, accel)));
                 ends(accel, found.unwrap_or(End::Beyond))
             }
         }
     }
 
-    /// Two accelerations up to `top` between which what rests on the size of G stops holding.
-    fn bracket(&self, side: &Side, ray: &Ray, top: f64) -> Option<(f64, f64)> {
-        let mut low = 0.0;
+    /// Two accelerations up to `top` between which what rests on the size of G stops holding, with its excess there.
+    fn bracket(&self, side: &Side, ray: &Ray, top: f64) -> Option<[(f64, f64); 2]> {
+        let at = |mark: &Mark, accel: f64| (accel, over(mark.gravity_used(ray.gravity_at(accel))));
+        let mut low = at(side.marks.first()?, 0.0);
         for mark in side.marks.iter().skip(1) {
             let accel = ray.accel_at(mark.turned);
             if accel > top {
                 break;
             }
-            if !mark.holds(ray.gravity_at(accel)) {
-                return Some((low, accel));
+            let high = at(mark, accel);
+            if high.1 > 0.0 {
+                return Some([low, high]);
             }
-            low = accel;
+            low = high;
         }
-        let is_open = side.marks.iter().any(|mark| mark.least > 0.0 || mark.most.is_finite());
-        (top > low && is_open && self.excess(side, ray, top) > 0.0).then_some((low, top))
+        let far = ray.rest + self.base.most_m_per_s2;
+        let is_open = side.marks.iter().any(|mark| mark.least > 0.0 || mark.most < far);
+        if top <= low.0 || !is_open {
+            return None;
+        }
+        let high = (top, self.excess(side, ray, top));
+        (high.1 > 0.0).then_some([low, high])
     }
 
+    /// By how much what rests on the size of G is used beyond what holds.
     fn excess(&self, side: &Side, ray: &Ray, accel: f64) -> f64 {
-        excess(&self.by_size(side, ray, accel))
+        over(gravity_used(&self.by_size(side, ray, accel)))
     }
 
     fn by_size(&self, side: &Side, ray: &Ray, accel: f64) -> Judged {
@@ -199,6 +208,17 @@ pub(super) fn excess(judged: &Judged) -> f64 {
         (_, Some(used)) => (used - 1.0).min(0.0),
     };
     verdicts.iter().map(of).fold(-1.0, f64::max)
+}
+
+/// By how much more than all is used; infinite is a great deal.
+fn over(used: f64) -> f64 {
+    used.min(1e6) - 1.0
+}
+
+/// The size of G over the largest one along its direction under which all of some verdicts hold.
+pub(super) fn gravity_used(judged: &Judged) -> f64 {
+    let Ok(verdicts) = judged else { return f64::INFINITY };
+    verdicts.iter().map(Verdict::gravity_used).fold(0.0, f64::max)
 }
 
 /// What both sides share.

@@ -209,7 +209,7 @@ fn settle_case(
     holder: &Holder,
     course: &Course,
     bound_idx: usize,
-    with_cells: bool,
+    in_full: bool,
 ) -> Result<Settled, String> {
     if course.gravity.up.is_none() {
         return Err("free fall: effective gravity is zero and there is no settled surface".to_owned());
@@ -218,7 +218,7 @@ fn settle_case(
         return Err("the way from rest to this case leads through free fall".to_owned());
     };
     let stop = way.stop.as_ref().ok_or("the liquid could not be followed to this case")?;
-    Ok(settle_at(study, holder, stop, course.gravity.magnitude, with_cells))
+    Ok(settle_at(study, holder, stop, course.gravity.magnitude, in_full))
 }
 
 /// After the release: back at rest, under the settled bound.
@@ -229,7 +229,7 @@ fn settle_released(study: &ValidStudy, course: &Course) -> Result<Settled, Strin
     Ok(settle_at(study, &holder, stop, study.study().gravity_m_per_s2, true))
 }
 
-fn settle_at(study: &ValidStudy, holder: &Holder, stop: &Stop, gravity_m_per_s2: f64, with_cells: bool) -> Settled {
+fn settle_at(study: &ValidStudy, holder: &Holder, stop: &Stop, gravity_m_per_s2: f64, in_full: bool) -> Settled {
     let inputs = study.study();
     let points: Vec<(&str, Point)> = inputs.points.iter().map(|p| (p.name.as_str(), p.at)).collect();
     let setting = Setting {
@@ -240,7 +240,7 @@ fn settle_at(study: &ValidStudy, holder: &Holder, stop: &Stop, gravity_m_per_s2:
         air_pa: inputs.air_pressure_abs_pa,
         moment_about: inputs.moment_about,
         points: &points,
-        with_cells,
+        in_full,
     };
     let look = holder.look(stop.up);
     settle(&inputs.section, study.region(), &look, &stop.bodies, &setting)

@@ -9,7 +9,7 @@ use crate::geom::Vec2;
 use crate::num::{golden_min, root};
 use crate::statics::{Followed, LONGEST_STEP, PourOver, Ramp, Rims, Route, Stop, Trace, Turn, trace};
 
-use super::holding::{Base, End, Judged, excess};
+use super::holding::{Base, End, Judged, excess, gravity_used};
 use super::results::CONTAINED;
 use super::rims::{SharedRims, risen_z_m, risen_z_m_on};
 use super::sight::{Ground, Sight};
@@ -42,8 +42,9 @@ pub(super) struct Mark {
 }
 
 impl Mark {
-    pub fn holds(&self, gravity: f64) -> bool {
-        self.least <= gravity && gravity <= self.most
+    /// That size of G over the largest one that holds; infinite where it is too small to be judged.
+    pub fn gravity_used(&self, gravity: f64) -> f64 {
+        if gravity < self.least { f64::INFINITY } else { gravity / self.most }
     }
 }
 
@@ -155,9 +156,10 @@ impl<'a> Side<'a> {
     /// Marks what holds along directions up to the end, those between at which it holds least included.
     fn mark(&mut self, base: &Base, turn: Turn) {
         let marks: Vec<Mark> = turns_to(self.end.0).par_iter().map(|t| self.mark_at(base, turn, *t)).collect();
+        let far = base.rest.norm() + base.most_m_per_s2;
         let dips: Vec<Mark> = marks
             .par_windows(3)
-            .filter(|w| w[1].most.is_finite() && w[1].most < w[0].most && w[1].most <= w[2].most)
+            .filter(|w| w[1].most < far && w[1].most < w[0].most && w[1].most <= w[2].most)
             .map(|w| {
                 let most = |turned: f64| self.mark_at(base, turn, turned).most;
                 let (turned, _) = golden_min(w[0].turned, w[2].turned, 1e-4, most);
@@ -172,25 +174,21 @@ impl<'a> Side<'a> {
     fn mark_at(&self, base: &Base, turn: Turn, turned: f64) -> Mark {
         let nothing = Mark { turned, least: f64::INFINITY, most: 0.0 };
         let Some(stops) = self.stops(base, turned) else { return nothing };
-        let up = turn.up(turned);
-        let over = |gravity: f64| {
-            let accel = base.rest + up * gravity;
-            excess(&self.judge_at(base, accel, &stops, RestsOn::Size))
-        };
-        let settle = |(stop, way): (&Stop, &(Followed, Trace))| {
-            let settled = super::settle_at(base.study, &way.0.holder, stop, 1.0, false);
-            super::LEAST_BOND_NUMBER / super::bond_per_gravity(base.study, &settled, base.ground().still.length_m)
-        };
-        let least = stops.iter().zip(&self.ways).map(settle).fold(0.0, f64::max);
         let far = base.rest.norm() + base.most_m_per_s2;
-        let near = (least * (1.0 + 1e-9)).max(1e-9 * far);
-        let most = if over(far) <= 0.0 {
-            f64::INFINITY
-        } else if near >= far || over(near) > 0.0 {
-            return nothing;
-        } else {
-            root(near, far, 1e-13 * far, over)
+        let course = self.course(base, base.rest + turn.up(turned) * far, &stops);
+        let sights = self.sights(base, &course, &stops);
+        // Loads grow with the size of G, the surface does not change with it.
+        let bond = |sight: &Sight| {
+            let settled = sight.settled.as_ref().ok()?;
+            Some(super::bond_per_gravity(base.study, settled, base.ground().still.length_m))
         };
+        let bond = sights.iter().filter_map(bond).fold(f64::INFINITY, f64::min);
+        let least = super::LEAST_BOND_NUMBER / bond;
+        let used = gravity_used(&base.judge(&course, &sights, RestsOn::Size));
+        let most = far / used;
+        if most <= least.max(1e-9 * far) || least >= far {
+            return nothing;
+        }
         Mark { turned, least, most }
     }
 
@@ -211,13 +209,17 @@ impl<'a> Side<'a> {
 
     fn judge_at(&self, base: &Base, accel: Vec2, stops: &[Stop], rests_on: RestsOn) -> Judged {
         let course = self.course(base, accel, stops);
+        base.judge(&course, &self.sights(base, &course, stops), rests_on)
+    }
+
+    /// Under each bound, without what freeboard needs.
+    fn sights(&self, base: &Base, course: &Course, stops: &[Stop]) -> Vec<Sight> {
         let ground = base.ground();
         let sight = |(b, (stop, (way, _))): (usize, (&Stop, &(Followed, Trace)))| {
             let settled = super::settle_at(base.study, &way.holder, stop, course.gravity.magnitude, false);
-            Sight::without_rims(&ground, &course, b, Ok(settled))
+            Sight::without_rims(&ground, course, b, Ok(settled))
         };
-        let sights: Vec<Sight> = stops.iter().zip(&self.ways).enumerate().map(sight).collect();
-        base.judge(&course, &sights, rests_on)
+        stops.iter().zip(&self.ways).enumerate().map(sight).collect()
     }
 
     fn course(&self, base: &Base, accel: Vec2, stops: &[Stop]) -> Course {

@@ -126,6 +126,17 @@ impl Context<'_> {
         edges.iter().min_by(|a, b| distance(a).total_cmp(&distance(b))).map_or(Place::Whole, |&i| Place::Edge(i))
     }
 
+    /// What is used of the room that a load has, where it grows with effective gravity from nothing.
+    pub fn gravity_used(load: f64, room: f64) -> Option<f64> {
+        Some(if room > 0.0 {
+            load.max(0.0) / room
+        } else if load <= room {
+            0.0
+        } else {
+            f64::INFINITY
+        })
+    }
+
     /// The worse verdict of both bounds, which it names where there are two.
     pub fn worse(&self, verdict: impl Fn(&View) -> Verdict) -> Verdict {
         let all = self
@@ -134,7 +145,10 @@ impl Context<'_> {
             .map(|view| (view, verdict(view)))
             .map(|(view, verdict)| self.over_gas(view, verdict))
             .map(|(view, verdict)| Verdict { bound: (self.views.len() > 1).then_some(view.bound), ..verdict });
-        let worse = |a: Verdict, b: Verdict| if b.order(&a).is_lt() { b } else { a };
+        let worse = |a: Verdict, b: Verdict| {
+            let gravity_used = Some(a.gravity_used().max(b.gravity_used()));
+            Verdict { gravity_used, ..if b.order(&a).is_lt() { b } else { a } }
+        };
         all.reduce(worse).expect("a case has a bound")
     }
 
@@ -157,7 +171,7 @@ impl Context<'_> {
         );
         if verdict.state == State::Fails {
             let remark = if verdict.remark.is_empty() { words } else { format!("{}; {words}", verdict.remark) };
-            return (view, Verdict { remark, ..verdict });
+            return (view, Verdict { remark, gravity_used: None, ..verdict });
         }
         let Verdict { place, place_words, at, source, unconfirmed_record, .. } = verdict;
         let unsure = self.not_judged(verdict.criterion, verdict.sense, words);

@@ -44,6 +44,7 @@ fn verdict(context: &Context, view: &View, limit_pa: f64) -> Verdict {
         place: settled.peak_place.clone(),
         place_words: words.unwrap_or_else(|| "walls".to_owned()),
         at: Some(settled.peak_at),
+        gravity_used: Context::gravity_used(settled.peak_pa - gas, limit_pa - gas),
         working: vec![WorkLine {
             symbols: "p = p_{gas} + ρ |G| (v_{surface} − v)".to_owned(),
             numbers: format!(

@@ -49,6 +49,7 @@ fn verdict(context: &Context, view: &View, limit_pa: f64) -> Verdict {
         return Verdict {
             place_words: "roof".to_owned(),
             remark: "the settled liquid does not reach the roof".to_owned(),
+            gravity_used: Context::gravity_used(0.0, limit_pa),
             ..context.verdict(NAME, pressure(0.0), pressure(limit_pa), Sense::AtMost)
         };
     };
@@ -57,6 +58,7 @@ fn verdict(context: &Context, view: &View, limit_pa: f64) -> Verdict {
         place: Place::Edge(roof.edge_idx),
         place_words: context.study.study().section.edge_label(roof.edge_idx),
         at: Some(roof.at),
+        gravity_used: Context::gravity_used(roof.peak_pa, limit_pa),
         working: vec![WorkLine {
             symbols: "p = ρ |G| (v_{surface} − v)".to_owned(),
             numbers: format!("{} Pa/m × {} m", number(weight, 4), fixed(roof.peak_pa / weight, 3)),

@@ -53,9 +53,10 @@ fn verdict(context: &Context, view: &View, plate_idx: usize, plate: &Plate, mate
     if let Err(reason) = view.judged() {
         return not_judged(reason.to_owned());
     }
-    let panel = match view.plates.get(plate_idx).and_then(|p| p.panel.as_ref()) {
-        Some(Ok(panel)) => panel,
-        Some(Err(reason)) => return not_judged(reason.clone()),
+    let borne = view.plates.get(plate_idx);
+    let (panel, load_used) = match borne.and_then(|p| Some((p.panel.as_ref()?, p.load_used))) {
+        Some((Ok(panel), load_used)) => (panel, load_used),
+        Some((Err(reason), _)) => return not_judged(reason.clone()),
         None => return not_judged("there is no load to judge by".to_owned()),
     };
     let stress = |pa: f64| Measure::new(Quantity::Stress, pa);
@@ -68,6 +69,10 @@ fn verdict(context: &Context, view: &View, plate_idx: usize, plate: &Plate, mate
         not_judged(reasons.join("; "))
     };
     verdict.at = Some(panel.at);
+    verdict.gravity_used = Some(load_used);
+    if context.is_brief {
+        return verdict;
+    }
     verdict.working = working(panel, plate, material);
     // Rounded up to half a millimetre, so that the plate shown holds.
     let in_range = panel.strength.required_thickness_m.max(panel.strength.in_range_from_m);

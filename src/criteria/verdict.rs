@@ -121,6 +121,9 @@ pub struct Verdict {
     pub unconfirmed_record: Option<usize>,
     /// The bound under which it is the worse; none where there is but one.
     pub bound: Option<Bound>,
+    /// Where the size of effective gravity decides it: that over the largest one along the same direction under which it
+    /// holds and is judged, under every bound.
+    pub gravity_used: Option<f64>,
 }
 
 /// A check that does not apply, and why; never silently left out.
@@ -191,6 +194,16 @@ impl Verdict {
             remark: reason,
             unconfirmed_record: None,
             bound: None,
+            gravity_used: None,
+        }
+    }
+
+    /// The size of effective gravity over the largest one along the same direction under which it holds; infinite where none
+    /// makes it hold.
+    pub fn gravity_used(&self) -> f64 {
+        match self.state {
+            State::Fails | State::NotJudged => self.gravity_used.unwrap_or(f64::INFINITY),
+            State::Close | State::Holds => self.gravity_used.unwrap_or(0.0),
         }
     }
 

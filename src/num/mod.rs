@@ -10,4 +10,4 @@ pub use legendre::{LegendreSeries, legendre_polynomials};
 pub use newton::newton;
 pub use ode::{Implicit, Moment, Stalled, between, integrate};
 pub use quad::{gauss, tanh_sinh};
-pub use root::{bisect, bracket, golden_min, root};
+pub use root::{bisect, bracket, golden_min, root, root_between};

@@ -1,6 +1,7 @@
 //! Quadrature over 0..1.
 
 use std::f64::consts::FRAC_PI_2;
+use std::sync::LazyLock;
 
 /// Nodes and weights of 10-point Gauss-Legendre quadrature on 0..1, the nodes as distances from the middle.
 ///
@@ -35,18 +36,8 @@ pub fn gauss<const N: usize>(n_panels: usize, mut f: impl FnMut(f64) -> [f64; N]
 ///
 /// Source: Takahasi & Mori (1974), double exponential formulas (from memory; tested against closed forms).
 pub fn tanh_sinh<const N: usize>(mut f: impl FnMut(f64) -> [f64; N]) -> [f64; N] {
-    const STEP: f64 = 1.0 / 7.0;
-    const N_STEPS: i32 = 23;
     let mut sum = [0.0; N];
-    for k in -N_STEPS..=N_STEPS {
-        let t = f64::from(k) * STEP;
-        let s = FRAC_PI_2 * t.sinh();
-        // x = (1 + tanh s) / 2, written so that it keeps its figures near zero.
-        let x = 1.0 / (1.0 + (-2.0 * s).exp());
-        let weight = STEP * FRAC_PI_2 * t.cosh() * 0.5 / (s.cosh() * s.cosh());
-        if weight == 0.0 {
-            continue;
-        }
+    for &(x, weight) in TANH_SINH.iter() {
         let value = f(x);
         for i in 0..N {
             sum[i] += weight * value[i];
@@ -54,6 +45,20 @@ pub fn tanh_sinh<const N: usize>(mut f: impl FnMut(f64) -> [f64; N]) -> [f64; N]
     }
     sum
 }
+
+/// Nodes and weights of the tanh-sinh rule on 0..1.
+static TANH_SINH: LazyLock<Vec<(f64, f64)>> = LazyLock::new(|| {
+    const STEP: f64 = 1.0 / 7.0;
+    const N_STEPS: i32 = 23;
+    let node = |k: i32| {
+        let t = f64::from(k) * STEP;
+        let s = FRAC_PI_2 * t.sinh();
+        // x = (1 + tanh s) / 2, written so that it keeps its figures near zero.
+        let x = 1.0 / (1.0 + (-2.0 * s).exp());
+        (x, STEP * FRAC_PI_2 * t.cosh() * 0.5 / (s.cosh() * s.cosh()))
+    };
+    (-N_STEPS..=N_STEPS).map(node).filter(|(_, weight)| *weight > 0.0).collect()
+});
 
 #[cfg(test)]
 mod tests {

@@ -21,13 +21,23 @@ pub fn bisect(mut low: f64, mut high: f64, tolerance: f64, mut is_beyond: impl F
 ///
 /// Source: Chandrupatla (1997), a hybrid of bisection and inverse quadratic interpolation (from memory; tested).
 pub fn root(low: f64, high: f64, tolerance: f64, mut f: impl FnMut(f64) -> f64) -> f64 {
-    let (mut a, mut b) = (high, low);
-    let (mut fa, mut fb) = (f(a), f(b));
+    let (at_low, at_high) = (f(low), f(high));
+    root_between((low, at_low), (high, at_high), tolerance, f)
+}
+
+/// The same where the values at both ends are known.
+pub fn root_between(
+    (low, at_low): (f64, f64),
+    (high, at_high): (f64, f64),
+    tolerance: f64,
+    mut f: impl FnMut(f64) -> f64,
+) -> f64 {
+    let (mut a, mut fa, mut b, mut fb) = (high, at_high, low, at_low);
     if fb >= 0.0 {
         return low;
     }
     let (mut c, mut fc);
-    let mut share = 0.5;
+    let mut share = (fa / (fa - fb)).clamp(0.05, 0.95);
     for _ in 0..200 {
         let x = a + share * (b - a);
         let fx = f(x);

@@ -42,21 +42,28 @@ pub struct EdgeReaction {
     pub moment_at_m: f64,
 }
 
+/// What a panel's strength is judged by. Moments are N m a metre.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Summits {
+    /// Deflection of largest magnitude, times the rigidity D, N m2.
+    pub deflection_n_m2: Peak,
+    /// Principal bending moment of largest magnitude: the one that handbooks tabulate.
+    pub principal: Peak,
+    /// Largest moment by von Mises's equivalent surface stress.
+    pub von_mises: Peak,
+}
+
 /// The largest of everything over a bent panel. Moments are N m a metre.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Bending {
     /// All of the pressure, N.
     pub load_n: f64,
-    /// Deflection of largest magnitude, times the rigidity D, N m2.
-    pub deflection_n_m2: Peak,
+    /// What its strength is judged by.
+    pub summits: Summits,
     /// Bending moment that spans across.
     pub across: Extremes,
     /// Bending moment that spans along the height.
     pub along: Extremes,
-    /// Principal bending moment of largest magnitude: the one that handbooks tabulate.
-    pub principal: Peak,
-    /// Largest moment by von Mises's equivalent surface stress.
-    pub von_mises: Peak,
     /// Each of the two sides.
     pub sides: EdgeReaction,
     /// The bottom edge; none where it is free.
@@ -69,7 +76,7 @@ pub struct Bending {
     pub top_corner_n: f64,
 }
 
-impl Bending {
+impl Summits {
     /// The moment M to judge by, stress = 6 M / t^2, without sign: the larger of the handbooks' principal moment and
     /// of von Mises's. The latter is larger only where twist rules: in the corners of simply supported panels (a
     /// square one by 18 %) and beside a free top.
@@ -84,7 +91,7 @@ pub(super) fn of(bent: &Bent) -> Bending {
     let geometry = bent.panel.geometry();
     let grid = Grid::new(bent);
     let twist_at = |y_m: f64| if geometry.support.is_clamped() { 0.0 } else { bent.at(0.0, y_m).twist_n };
-    let last = grid.states.ncols() - 1;
+    let last = grid.across.ncols() - 1;
     let support = geometry.support;
     let bottom = (!support.is_free_at_bottom()).then(|| grid.level_edge(0, 1.0));
     let top = (!support.is_free_at_top()).then(|| grid.level_edge(last, -1.0));
@@ -97,11 +104,9 @@ pub(super) fn of(bent: &Bent) -> Bending {
     }
     Bending {
         load_n: bent.load_n,
-        deflection_n_m2: grid.largest(|s| s.deflection_n_m2),
-        across: grid.extremes(|s| s.across_n),
-        along: grid.extremes(|s| s.along_n),
-        principal: grid.largest(PointState::principal_n),
-        von_mises: grid.largest(PointState::von_mises_n),
+        summits: grid.summits(),
+        across: grid.extremes(&grid.across, |s| s.across_n),
+        along: grid.extremes(&grid.along, |s| s.along_n),
         sides,
         bottom,
         top,
@@ -110,75 +115,102 @@ pub(super) fn of(bent: &Bent) -> Bending {
     }
 }
 
+/// What the strength of `bent` is judged by.
+pub(super) fn summits_of(bent: &Bent) -> Summits {
+    Grid::new(bent).summits()
+}
+
+/// The force of largest magnitude along the sides of `bent`, N/m, signed.
+pub(super) fn side_force_of(bent: &Bent) -> f64 {
+    side_force(bent).1
+}
+
 /// A bent panel at the points where peaks are looked for: one row a place across, one column a height.
 struct Grid<'a> {
     bent: &'a Bent<'a>,
-    states: DMatrix<PointState>,
+    deflection: DMatrix<f64>,
+    across: DMatrix<f64>,
+    along: DMatrix<f64>,
+    twist: DMatrix<f64>,
 }
+
+/// By how much at most a summit stands above the highest point where it was looked for, as a share: twice and more what
+/// it does.
+const SUMMIT_SHARE: f64 = 0.1;
 
 impl<'a> Grid<'a> {
     fn new(bent: &'a Bent<'a>) -> Grid<'a> {
-        let SolvedPanel { x, y, half: [hx, hy], .. } = bent.panel;
-        let along = [0, 1, 2].map(|q| &bent.coefficients * y.samples[q].transpose() / hy.powi(q as i32));
-        let field = |p: usize, q: usize| &x.samples[p] * &along[q] / hx.powi(p as i32);
-        let (w, w_xx, w_yy, w_xy) = (field(0, 0), field(2, 0), field(0, 2), field(1, 1));
-        let (n_across, n_along) = w.shape();
-        let states = DMatrix::from_fn(n_across, n_along, |i, j| {
-            let at = (i, j);
-            bent.state(w[at], w_xx[at], w_yy[at], w_xy[at])
-        });
-        Grid { bent, states }
+        let SolvedPanel { x, y, half: [hx, hy], unit_m, .. } = bent.panel;
+        let (poisson, square) = (bent.panel.geometry().poisson, unit_m * unit_m);
+        let turned = |q: usize| product(1.0 / hy.powi(q as i32), &bent.coefficients, &y.samples_turned[q]);
+        let (plain, sloped, curved) = (turned(0), turned(1), turned(2));
+        let mut across = product(-square / (hx * hx), &x.samples[2], &plain);
+        let mut along = product(-square, &x.samples[0], &curved);
+        for (x, y) in across.as_mut_slice().iter_mut().zip(along.as_mut_slice()) {
+            (*x, *y) = (*x + poisson * *y, *y + poisson * *x);
+        }
+        let twist = product(-(1.0 - poisson) * square / hx, &x.samples[1], &sloped);
+        let deflection = product(square * square, &x.samples[0], &plain);
+        Grid { bent, deflection, across, along, twist }
+    }
+
+    fn summits(&self) -> Summits {
+        let principal = self.largest(&self.moments(PointState::principal_of), PointState::principal_n);
+        let von_mises = self.moments(PointState::von_mises_of);
+        Summits {
+            deflection_n_m2: self.largest(&self.deflection, |s| s.deflection_n_m2),
+            principal,
+            von_mises: self.summit(&von_mises, 1.0, 0.0, PointState::von_mises_n),
+        }
+    }
+
+    /// A value of the moments that span across and along, and the twist.
+    fn moments(&self, of: impl Fn(f64, f64, f64) -> f64) -> DMatrix<f64> {
+        let mut values = self.across.clone();
+        let others = self.along.as_slice().iter().zip(self.twist.as_slice());
+        values.as_mut_slice().iter_mut().zip(others).for_each(|(x, (y, xy))| *x = of(*x, *y, *xy));
+        values
     }
 
     /// The value of largest magnitude.
-    fn largest(&self, of: impl Fn(&PointState) -> f64) -> Peak {
-        let Extremes { high, low } = self.extremes(of);
+    fn largest(&self, values: &DMatrix<f64>, of: impl Fn(&PointState) -> f64) -> Peak {
+        let low = self.summit(values, -1.0, highest(values, 1.0).1, &of);
+        let high = self.summit(values, 1.0, -low.value, &of);
         if -low.value > high.value { low } else { high }
     }
 
-    fn extremes(&self, of: impl Fn(&PointState) -> f64) -> Extremes {
-        let low = self.highest(|s| -of(s));
-        Extremes { high: self.highest(of), low: Peak { value: -low.value, ..low } }
+    fn extremes(&self, values: &DMatrix<f64>, of: impl Fn(&PointState) -> f64) -> Extremes {
+        Extremes { high: self.summit(values, 1.0, 0.0, &of), low: self.summit(values, -1.0, 0.0, &of) }
     }
 
-    /// The summit of a value: the highest point, moved to where the value bends over and taken there; zero where all
-    /// is below.
-    fn highest(&self, of: impl Fn(&PointState) -> f64) -> Peak {
+    /// The summit of a value on the side of `sign`: the outermost point, moved to where the value bends over and taken there,
+    /// unless that is far below what `matters`; zero where all is on the other side.
+    fn summit(&self, values: &DMatrix<f64>, sign: f64, matters: f64, of: impl Fn(&PointState) -> f64) -> Peak {
         let SolvedPanel { x, y, .. } = self.bent.panel;
-        let values = self.states.map(|s| of(&s));
-        let best = values.iter().enumerate().max_by(|a, b| a.1.total_cmp(b.1));
-        let (k, top) = best.map_or((0, 0.0), |(k, value)| (k, *value));
+        let (k, top) = highest(values, sign);
         if top <= 0.0 {
             return Peak { value: 0.0, x_m: 0.0, y_m: 0.0 };
         }
         let (i, j) = (k % values.nrows(), k / values.nrows());
-        let on_point = Peak { value: top, x_m: self.x_m(x.points[i]), y_m: self.y_m(y.points[j]) };
-        let x_m = self.x_m(summit(&x.points, values.column(j).iter().copied(), i).0);
-        let y_m = self.y_m(summit(&y.points, values.row(i).iter().copied(), j).0);
+        let on_point = Peak { value: sign * top, x_m: self.x_m(x.points[i]), y_m: self.y_m(y.points[j]) };
+        let is_corner = (i == 0 || i + 1 == values.nrows()) && (j == 0 || j + 1 == values.ncols());
+        if is_corner || top < (1.0 - SUMMIT_SHARE) * matters {
+            return on_point;
+        }
+        let x_m = self.x_m(summit(&x.points, values.column(j).iter().map(|v| sign * v), i).0);
+        let y_m = self.y_m(summit(&y.points, values.row(i).iter().map(|v| sign * v), j).0);
         let value = of(&self.bent.at(x_m, y_m));
-        if value > top { Peak { value, x_m, y_m } } else { on_point }
+        if sign * value > top { Peak { value, x_m, y_m } } else { on_point }
     }
 
-    /// A side: V = -(w_xxx + (2 - nu) w_xyy) at its left end.
     fn side(&self) -> EdgeReaction {
-        let SolvedPanel { x, y, half: [hx, hy], unit_m, .. } = self.bent.panel;
-        let geometry = self.bent.panel.geometry();
-        let slope = x.samples[1].row(0) * &self.bent.coefficients * (2.0 - geometry.poisson) / *hx / (hy * hy);
-        let third = x.samples[3].row(0) * &self.bent.coefficients / hx.powi(3);
-        let force = -(&third * y.samples[0].transpose() + &slope * y.samples[2].transpose()) * *unit_m;
-        let mean = -(third * y.basis.means(0) + slope * y.basis.means(2))[0] * unit_m;
-        // -1..1 is the whole side, and a tenth of it 0.2.
-        let is_spiked = |is_free| geometry.support.is_clamped() && is_free;
-        let from = if is_spiked(geometry.support.is_free_at_bottom()) { -0.8 } else { -1.0 };
-        let to = if is_spiked(geometry.support.is_free_at_top()) { 0.8 } else { 1.0 };
-        let kept = y.points.iter().copied().zip(force.iter().copied()).filter(|(eta, _)| (from..=to).contains(eta));
-        let (points, forces): (Vec<f64>, Vec<f64>) = kept.unzip();
-        let (peak_at, peak) = largest_along(&points, &forces);
-        let moments: Vec<f64> = self.states.row(0).iter().map(|s| s.across_n).collect();
+        let y = &self.bent.panel.y;
+        let (mean_n_per_m, peak_n_per_m, peak_at) = side_force(self.bent);
+        let moments: Vec<f64> = self.across.row(0).iter().copied().collect();
         let (moment_at, moment_n) = self.edge_moment(&y.points, &moments);
         EdgeReaction {
-            mean_n_per_m: mean,
-            peak_n_per_m: peak,
+            mean_n_per_m,
+            peak_n_per_m,
             peak_at_m: self.y_m(peak_at),
             moment_n,
             moment_at_m: self.y_m(moment_at),
@@ -195,7 +227,7 @@ impl<'a> Grid<'a> {
         let force = (&x.samples[0] * &third + &x.samples[2] * &slope) * (-sign * unit_m);
         let mean = (x.basis.means(0).dot(&third) + x.basis.means(2).dot(&slope)) * (-sign * unit_m);
         let (peak_at, peak) = largest_along(&x.points, force.as_slice());
-        let moments: Vec<f64> = self.states.column(j).iter().map(|s| s.along_n).collect();
+        let moments: Vec<f64> = self.along.column(j).iter().copied().collect();
         let (moment_at, moment_n) = self.edge_moment(&x.points, &moments);
         EdgeReaction {
             mean_n_per_m: mean,
@@ -217,6 +249,42 @@ impl<'a> Grid<'a> {
     fn y_m(&self, eta: f64) -> f64 {
         0.5 * (eta + 1.0) * self.bent.panel.geometry().height_m
     }
+}
+
+/// The highest of all values on the side of `sign`, above zero there, and its place among them.
+fn highest(values: &DMatrix<f64>, sign: f64) -> (usize, f64) {
+    let (mut best, mut top) = (0, 0.0);
+    for (i, value) in values.as_slice().iter().enumerate() {
+        if sign * value > top {
+            (best, top) = (i, sign * value);
+        }
+    }
+    (best, top)
+}
+
+fn product(scale: f64, a: &DMatrix<f64>, b: &DMatrix<f64>) -> DMatrix<f64> {
+    let mut product = DMatrix::zeros(a.nrows(), b.ncols());
+    product.gemm(scale, a, b, 0.0);
+    product
+}
+
+/// The force along a side, N/m, V = -(w_xxx + (2 - nu) w_xyy) at its left end: its mean, its value of largest magnitude, and
+/// where on -1..1 that is.
+fn side_force(bent: &Bent) -> (f64, f64, f64) {
+    let SolvedPanel { x, y, half: [hx, hy], unit_m, .. } = bent.panel;
+    let geometry = bent.panel.geometry();
+    let slope = x.samples[1].row(0) * &bent.coefficients * (2.0 - geometry.poisson) / *hx / (hy * hy);
+    let third = x.samples[3].row(0) * &bent.coefficients / hx.powi(3);
+    let force = -(&third * &y.samples_turned[0] + &slope * &y.samples_turned[2]) * *unit_m;
+    let mean = -(third * y.basis.means(0) + slope * y.basis.means(2))[0] * unit_m;
+    // -1..1 is the whole side, and a tenth of it 0.2.
+    let is_spiked = |is_free| geometry.support.is_clamped() && is_free;
+    let from = if is_spiked(geometry.support.is_free_at_bottom()) { -0.8 } else { -1.0 };
+    let to = if is_spiked(geometry.support.is_free_at_top()) { 0.8 } else { 1.0 };
+    let kept = y.points.iter().copied().zip(force.iter().copied()).filter(|(eta, _)| (from..=to).contains(eta));
+    let (points, forces): (Vec<f64>, Vec<f64>) = kept.unzip();
+    let (peak_at, peak) = largest_along(&points, &forces);
+    (mean, peak, peak_at)
 }
 
 /// Where the value of largest magnitude along an edge is, and the value, signed.

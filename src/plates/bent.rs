@@ -2,7 +2,7 @@
 
 use nalgebra::DMatrix;
 
-use super::bending::{self, Bending};
+use super::bending::{self, Bending, Summits};
 use super::panel::SolvedPanel;
 
 /// A panel under a pressure.
@@ -31,14 +31,21 @@ pub struct PointState {
 impl PointState {
     /// The principal bending moment of largest magnitude, signed.
     pub fn principal_n(&self) -> f64 {
-        let (mean, half) = (0.5 * (self.across_n + self.along_n), 0.5 * (self.across_n - self.along_n));
-        let radius = half.hypot(self.twist_n);
-        if mean < 0.0 { mean - radius } else { mean + radius }
+        PointState::principal_of(self.across_n, self.along_n, self.twist_n)
     }
 
     /// The moment whose surface stress is von Mises's equivalent of this state's.
     pub fn von_mises_n(&self) -> f64 {
-        let (x, y, xy) = (self.across_n, self.along_n, self.twist_n);
+        PointState::von_mises_of(self.across_n, self.along_n, self.twist_n)
+    }
+
+    /// Of moments that span across and along, and twist.
+    pub(super) fn principal_of(x: f64, y: f64, xy: f64) -> f64 {
+        let (mean, half) = (0.5 * (x + y), 0.5 * (x - y));
+        mean + (half * half + xy * xy).sqrt().copysign(mean)
+    }
+
+    pub(super) fn von_mises_of(x: f64, y: f64, xy: f64) -> f64 {
         (x * x + y * y - x * y + 3.0 * xy * xy).sqrt()
     }
 }
@@ -52,10 +59,19 @@ impl Bent<'_> {
         let x = self.panel.x.basis.samples(&[point(x_m, geometry.width_m)]);
         let y = self.panel.y.basis.samples(&[point(y_m, geometry.height_m)]);
         let [hx, hy] = self.panel.half;
-        let derived = |p: usize, q: usize| {
-            (&x[p] * &self.coefficients * y[q].transpose())[(0, 0)] / (hx.powi(p as i32) * hy.powi(q as i32))
-        };
+        let along = [0, 1, 2].map(|q| &self.coefficients * y[q].row(0).transpose() / hy.powi(q as i32));
+        let derived = |p: usize, q: usize| (x[p].row(0) * &along[q])[0] / hx.powi(p as i32);
         self.state(derived(0, 0), derived(2, 0), derived(0, 2), derived(1, 1))
+    }
+
+    /// What its strength is judged by: the part of [`Bent::bending`] that is soon had.
+    pub fn summits(&self) -> Summits {
+        bending::summits_of(self)
+    }
+
+    /// The force of largest magnitude along its sides, N/m, signed.
+    pub fn side_force_n_per_m(&self) -> f64 {
+        bending::side_force_of(self)
     }
 
     /// The largest of everything.
@@ -64,7 +80,7 @@ impl Bent<'_> {
     }
 
     /// From the deflection and its second derivatives in the panel's own length unit.
-    pub(super) fn state(&self, w: f64, w_xx: f64, w_yy: f64, w_xy: f64) -> PointState {
+    fn state(&self, w: f64, w_xx: f64, w_yy: f64, w_xy: f64) -> PointState {
         let (poisson, square) = (self.panel.geometry().poisson, self.panel.unit_m * self.panel.unit_m);
         PointState {
             deflection_n_m2: w * square * square,

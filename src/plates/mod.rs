@@ -22,7 +22,7 @@ mod strength;
 mod strip;
 
 pub use bearing::{Bearer, PanelStrength, PlateResult, SolvedPanels, Span, Weld, spans, welds};
-pub use bending::{Bending, EdgeReaction, Extremes, Peak};
+pub use bending::{Bending, EdgeReaction, Extremes, Peak, Summits};
 pub use bent::{Bent, PointState};
 pub use error::PlateError;
 pub use layout::{Cell, Divider, Gap, Passage, Remnant, cells, dividers, gaps, passages, undrained, unvented};

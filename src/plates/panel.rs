@@ -8,12 +8,12 @@
 
 use std::f64::consts::{FRAC_PI_2, PI};
 
-use nalgebra::{Cholesky, DMatrix, DVector, Dyn};
+use nalgebra::{Cholesky, DMatrix, DVector};
 
 use super::basis::{Basis, Ends, Samples};
 use super::bent::Bent;
 use super::{PlateError, Profile};
-use crate::num::LegendreSeries;
+use crate::num::{LegendreSeries, legendre_polynomials};
 
 /// How the edges of a panel are held.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
@@ -100,14 +100,18 @@ pub(super) struct Direction {
     pub basis: Basis,
     /// On -1..1; only the left half across.
     pub points: Vec<f64>,
+    /// One row a point.
     pub samples: Samples,
+    /// One column a point.
+    pub samples_turned: Samples,
 }
 
-/// Functions along y that do not couple with the others, and the stiffness of their products with those along x.
+/// Functions along y that do not couple with the others, and how the panel answers to a unit of work on each: the
+/// coefficients of their products with the functions along x, one column a function of them that is worked on.
 #[derive(Clone, Debug)]
 struct Block {
     y_idx: Vec<usize>,
-    stiffness: Cholesky<f64, Dyn>,
+    answers: DMatrix<f64>,
 }
 
 impl PanelGeometry {
@@ -180,12 +184,15 @@ impl SolvedPanel {
         } else {
             vec![(0..n_y).step_by(2).collect(), (1..n_y).step_by(2).collect()]
         };
-        let stiffness = |y_idx: Vec<usize>| {
-            let matrix = stiffness(&x, &y, &y_idx, half, poisson);
-            let stiffness = Cholesky::new(matrix).ok_or(PlateError::OutOfNumbers)?;
-            Ok(Block { y_idx, stiffness })
+        // The work of a pressure that is alike all across on each function along x.
+        let across = x.means(0) * (2.0 * half[0]);
+        let block = |y_idx: Vec<usize>| {
+            let stiffness =
+                Cholesky::new(stiffness(&x, &y, &y_idx, half, poisson)).ok_or(PlateError::OutOfNumbers)?;
+            let answers = stiffness.solve(&across.kronecker(&DMatrix::identity(y_idx.len(), y_idx.len())));
+            Ok(Block { y_idx, answers })
         };
-        let blocks = parts.into_iter().map(stiffness).collect::<Result<_, PlateError>>()?;
+        let blocks = parts.into_iter().map(block).collect::<Result<_, PlateError>>()?;
         let integrals = y.functions().iter().map(|f| [f.integral(), f.integral().integral()]).collect();
         // Points lie closer together toward the edges, as the functions' own turning points do.
         let (n_left, n_along) = (2 * n_x + 3, 2 * n_y + 5);
@@ -204,15 +211,13 @@ impl SolvedPanel {
     ///
     /// Errors: sizes and pressures beyond what numbers hold.
     pub fn bend(&self, pressure: &Profile) -> Result<Bent<'_>, PlateError> {
-        let across = self.work_across();
         let along = self.work_along(pressure);
-        let mut coefficients = DMatrix::zeros(across.len(), along.len());
-        for block in &self.blocks {
-            let n = block.y_idx.len();
-            let load = DVector::from_fn(across.len() * n, |k, _| across[k / n] * along[block.y_idx[k % n]]);
-            let solved = block.stiffness.solve(&load);
-            for (k, value) in solved.iter().enumerate() {
-                coefficients[(k / n, block.y_idx[k % n])] = *value;
+        let mut coefficients = DMatrix::zeros(self.x.basis.len(), along.len());
+        for Block { y_idx, answers } in &self.blocks {
+            let n = y_idx.len();
+            let work = DVector::from_iterator(n, y_idx.iter().map(|&i| along[i]));
+            for (k, value) in (answers * work).iter().enumerate() {
+                coefficients[(k / n, y_idx[k % n])] = *value;
             }
         }
         let load_n = pressure.resultant_n_per_m(self.geometry.height_m) * self.geometry.width_m;
@@ -227,11 +232,6 @@ impl SolvedPanel {
         }
     }
 
-    /// The work of a pressure that is alike all across on each function along x.
-    fn work_across(&self) -> DVector<f64> {
-        self.x.basis.means(0) * (2.0 * self.half[0])
-    }
-
     /// The work of the pressure on each function along y: integral of q f, in Pa times the length unit. Exact: with
     /// F' = f and FF' = F, the integral of q f over a straight piece is that of (q F - q' FF)'.
     fn work_along(&self, pressure: &Profile) -> Vec<f64> {
@@ -244,9 +244,11 @@ impl SolvedPanel {
                 // Shorter than numbers resolve: nothing presses on it.
                 continue;
             }
+            let n = self.integrals.iter().map(|[_, second]| second.n_coefficients()).max().unwrap_or(0);
+            let [at_from, at_to] = [from, to].map(|at| legendre_polynomials(n, at));
             for (sum, [first, second]) in work.iter_mut().zip(&self.integrals) {
-                let end = piece.to_pa * first.at(to) - slope * second.at(to);
-                let start = piece.from_pa * first.at(from) - slope * second.at(from);
+                let end = piece.to_pa * first.sum(&at_to) - slope * second.sum(&at_to);
+                let start = piece.from_pa * first.sum(&at_from) - slope * second.sum(&at_from);
                 *sum += (end - start) * self.half[1];
             }
         }
@@ -257,7 +259,8 @@ impl SolvedPanel {
 impl Direction {
     fn new(basis: Basis, points: Vec<f64>) -> Direction {
         let samples = basis.samples(&points);
-        Direction { basis, points, samples }
+        let samples_turned = samples.each_ref().map(DMatrix::transpose);
+        Direction { basis, points, samples, samples_turned }
     }
 }
 
@@ -291,7 +294,7 @@ mod tests {
         let panel = SolvedPanel::with_counts(geometry, n / 2, n).unwrap();
         let pressure = Profile::linear(1.0, 1.0, 1.0).unwrap();
         let along = DVector::from_vec(panel.work_along(&pressure));
-        let across = panel.work_across();
+        let across = panel.x.basis.means(0) * (2.0 * panel.half[0]);
         (across.transpose() * panel.bend(&pressure).unwrap().coefficients * along)[0]
     }
 

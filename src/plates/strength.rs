@@ -5,7 +5,7 @@
 //! t^2 and the required thickness is a closed form. Where thin-plate theory of small deflections is left, the result
 //! says so; it judges nothing itself. Source: [PlateBending].
 
-use super::{Bending, PlateError, Profile, SolvedPanel};
+use super::{PlateError, Profile, SolvedPanel, Summits};
 use crate::material::Material;
 
 /// A panel's strength under a pressure.
@@ -29,8 +29,20 @@ pub struct Strength {
     pub out_of_range: Vec<OutOfRange>,
     /// Least thickness as built, allowance included, at which the deflection stays in range, m.
     pub in_range_from_m: f64,
-    /// Moments and reactions.
-    pub bending: Bending,
+    /// The moments and the deflection that it rests on.
+    pub summits: Summits,
+    /// Force of largest magnitude along its sides, N/m, signed.
+    pub side_force_n_per_m: f64,
+}
+
+impl Strength {
+    /// The load over the largest one of the same form under which it holds and is in range; infinite where none is.
+    pub fn load_used(&self) -> f64 {
+        if self.out_of_range.iter().any(|out| matches!(out, OutOfRange::ThickPlate { .. })) {
+            return f64::INFINITY;
+        }
+        self.utilisation.max(self.deflection_m / (MOST_DEFLECTION_TO_THICKNESS * self.net_thickness_m))
+    }
 }
 
 /// How a panel leaves the range of the theory: its strength is then not judged.
@@ -71,13 +83,14 @@ pub fn strength(
 ) -> Result<Strength, PlateError> {
     check(panel, material)?;
     let net_thickness_m = net_thickness(thickness_m, corrosion_allowance_m)?;
-    let bending = panel.bend(pressure)?.bending();
+    let bent = panel.bend(pressure)?;
+    let summits = bent.summits();
     let geometry = panel.geometry();
     let stress = |moment_n: f64| 6.0 * moment_n.abs() / (net_thickness_m * net_thickness_m);
-    let (governing_n, allowable_pa) = (bending.governing().value, material.allowable_pa());
+    let (governing_n, allowable_pa) = (summits.governing().value, material.allowable_pa());
     // w = D w / D with D = E t^3 / (12 (1 - nu^2)).
     let times_cube =
-        12.0 * (1.0 - geometry.poisson.powi(2)) / material.modulus_pa * bending.deflection_n_m2.value.abs();
+        12.0 * (1.0 - geometry.poisson.powi(2)) / material.modulus_pa * summits.deflection_n_m2.value.abs();
     let deflection_m = times_cube / net_thickness_m.powi(3);
     let mut out_of_range = vec![];
     let most_m = MOST_DEFLECTION_TO_THICKNESS * net_thickness_m;
@@ -91,14 +104,15 @@ pub fn strength(
     let result = Strength {
         net_thickness_m,
         stress_pa: stress(governing_n),
-        principal_stress_pa: stress(bending.principal.value),
+        principal_stress_pa: stress(summits.principal.value),
         allowable_pa,
         utilisation: stress(governing_n) / allowable_pa,
         required_thickness_m: (6.0 * governing_n / allowable_pa).sqrt() + corrosion_allowance_m,
         deflection_m,
         out_of_range,
         in_range_from_m: (times_cube / MOST_DEFLECTION_TO_THICKNESS).powf(0.25) + corrosion_allowance_m,
-        bending,
+        summits,
+        side_force_n_per_m: bent.side_force_n_per_m(),
     };
     let finite = [result.utilisation, result.required_thickness_m, result.deflection_m, result.in_range_from_m];
     if finite.iter().all(|value| value.is_finite()) { Ok(result) } else { Err(PlateError::OutOfNumbers) }

@@ -364,5 +364,6 @@ fn verdict(
         remark: String::new(),
         unconfirmed_record: None,
         bound: None,
+        gravity_used: None,
     }
 }

@@ -134,8 +134,8 @@ pub struct Setting<'a> {
     pub moment_about: Point,
     /// Named points.
     pub points: &'a [(&'a str, Point)],
-    /// Whether cells are asked for.
-    pub with_cells: bool,
+    /// Whether cells and centroids are asked for, and moments with them; without, centroids are deepest points.
+    pub in_full: bool,
 }
 
 /// Bodies below this share of the largest one are drops that rounding leaves: they press nowhere to speak of, and are no
@@ -161,7 +161,7 @@ pub fn settle(section: &Section, region: &Region, look: &Look, bodies: &[Body], 
     let edges = edge_loads(section, region, &wet, &press, up, about);
     let plates = plate_loads(section, region, &wet, &press, up, about);
     let most = bodies.iter().map(|b| b.volume_m3).fold(0.0, f64::max);
-    let in_cells = if setting.with_cells {
+    let in_cells = if setting.in_full {
         cell_volumes_by_body(region, width, look, bodies)
     } else {
         vec![Vec::new(); bodies.len()]
@@ -176,7 +176,8 @@ pub fn settle(section: &Section, region: &Region, look: &Look, bodies: &[Body], 
         let wetted: Vec<Edge> = wet.iter().filter(|w| w.body_idx == i).map(|w| w.edge).collect();
         let lowest = wetted.iter().map(|e| (e.extent(up).0, e)).min_by(|a, b| a.0.0.total_cmp(&b.0.0));
         let deepest = lowest.map_or_else(Point::origin, |((_, t), e)| e.point_at(t));
-        let centroid = centroid(&wetted, &surface, width, up, level_m, body.volume_m3).unwrap_or(deepest);
+        let centroid = setting.in_full.then(|| centroid(&wetted, &surface, width, up, level_m, body.volume_m3));
+        let centroid = centroid.flatten().unwrap_or(deepest);
         let force = up * (-weight_pa_per_m * body.volume_m3);
         let density = (setting.density_kg_per_m3)(body.compartment);
         total += force;
@@ -233,7 +234,7 @@ pub fn settle(section: &Section, region: &Region, look: &Look, bodies: &[Body], 
         total_force_n: total,
         total_moment_n_m: total_moment,
         pools,
-        cells_m3: if setting.with_cells { sums(region, &in_cells) } else { Vec::new() },
+        cells_m3: if setting.in_full { sums(region, &in_cells) } else { Vec::new() },
         gas: gas_pockets(section, region, look, bodies),
     }
 }

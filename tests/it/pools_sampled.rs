@@ -130,7 +130,7 @@ fn as_grid_pool(followed: &Followed, look: &Look, body: &Body) -> GridPool {
         air_pa: 0.0,
         moment_about: Point::origin(),
         points: &[],
-        with_cells: true,
+        in_full: true,
     };
     let settled = settle(&followed.section, &followed.region, look, std::slice::from_ref(body), &setting);
     let pool = &settled.pools[0];

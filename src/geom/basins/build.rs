@@ -96,10 +96,36 @@ impl<'a> Basins<'a> {
         (level, slab_idx): (f64, u32),
         volume: &mut Vec<f64>,
     ) {
-        if links.len() == here.len() && here.len() == below.len() && links.iter().all(|&(i, j)| i == j) {
-            here.iter_mut().zip(below).for_each(|(h, b)| h.basin = b.basin);
-            return;
+        let mut have_met = false;
+        for &(i, j) in links {
+            let (own, other) = (here[i].basin, below[j].basin);
+            have_met |= own != NONE && own != other;
+            here[i].basin = other;
         }
+        if have_met {
+            self.meet(here, below, links, (level, slab_idx), volume);
+        }
+        for strip in here.iter_mut().filter(|strip| strip.basin == NONE) {
+            strip.basin = self.bear(&[], level, slab_idx, volume);
+        }
+        let mut lives = vec![false; self.basins.len()];
+        here.iter().for_each(|strip| lives[strip.basin as usize] = true);
+        for strip in below {
+            if !lives[strip.basin as usize] && self.basins[strip.basin as usize].parent.is_none() {
+                self.close(strip.basin, level, slab_idx, volume);
+            }
+        }
+    }
+
+    /// Gives the strips of a slab in which basins meet theirs; those that stand on nothing are left without.
+    fn meet(
+        &mut self,
+        here: &mut [Below],
+        below: &[Below],
+        links: &[(usize, usize)],
+        (level, slab_idx): (f64, u32),
+        volume: &mut Vec<f64>,
+    ) {
         // Groups of strips that hang together through what is below: union over strips here and basins below.
         let n = here.len();
         let mut group: Vec<usize> = (0..n + below.len()).collect();
@@ -112,8 +138,9 @@ impl<'a> Basins<'a> {
             group[a] = b;
         }
         let roots: Vec<usize> = (0..n + below.len()).map(|i| root_of(&mut group, i)).collect();
+        let mut is_done = vec![false; n];
         for i in 0..n {
-            if here[i].basin != NONE {
+            if is_done[i] || here[i].basin == NONE {
                 continue;
             }
             let mut parts: Vec<u32> = Vec::new();
@@ -126,12 +153,8 @@ impl<'a> Basins<'a> {
                 [one] => one,
                 _ => self.bear(&parts, level, slab_idx, volume),
             };
-            (i..n).filter(|&k| roots[k] == roots[i]).for_each(|k| here[k].basin = basin);
-        }
-        for b in below {
-            let lives = here.iter().any(|h| h.basin == b.basin);
-            if !lives && self.basins[b.basin as usize].parent.is_none() {
-                self.close(b.basin, level, slab_idx, volume);
+            for k in (i..n).filter(|&k| roots[k] == roots[i]) {
+                (here[k].basin, is_done[k]) = (basin, true);
             }
         }
     }

@@ -6,7 +6,7 @@ use crate::geom::Point;
 use crate::material::Material;
 use crate::plates::{PanelGeometry, PlateError, SolvedPanel, Strength, Support, strength};
 use crate::section::{PanelEdges, Placed, Plate, WidthLaw};
-use crate::statics::{Bound, PlateLoad};
+use crate::statics::{Bound, PlateLoad, Stretch};
 
 use super::pressure::profile;
 use super::span::{Span, spans};
@@ -20,7 +20,12 @@ pub struct Bearer<'a> {
     width: &'a WidthLaw,
     /// None where the plate has no material.
     panels: Option<(&'a Material, Vec<(Span, Panel)>)>,
+    /// What they bear where no side is pressed more than the other: all are alike then.
+    idle: WorstPanel,
 }
+
+/// The worst panel, or why there is none, and how much of its load is used.
+type WorstPanel = (Option<Result<PanelStrength, String>>, f64);
 
 /// A solved panel, or why it cannot be calculated.
 type Panel = Result<Arc<SolvedPanel>, PlateError>;
@@ -40,6 +45,8 @@ pub struct PlateResult {
     pub welds: Vec<Weld>,
     /// Its worst panel, or why there is none; none where the plate has no material.
     pub panel: Option<Result<PanelStrength, String>>,
+    /// The load over the largest one of the same form under which every panel holds and is judged; infinite where none is.
+    pub load_used: f64,
 }
 
 /// The panel of a plate with the largest stress.
@@ -59,12 +66,12 @@ pub struct PanelStrength {
 impl PanelStrength {
     /// The moment that the stress comes from, N m a metre of the panel's whole width.
     pub fn moment_n(&self) -> f64 {
-        self.strength.bending.governing().value * (1.0 - self.span.open_share)
+        self.strength.summits.governing().value * (1.0 - self.span.open_share)
     }
 
     /// The largest force along its sides, to stiffeners or side walls, N/m.
     pub fn side_force_n_per_m(&self) -> f64 {
-        self.strength.bending.sides.peak_n_per_m * (1.0 - self.span.open_share)
+        self.strength.side_force_n_per_m * (1.0 - self.span.open_share)
     }
 }
 
@@ -87,37 +94,44 @@ impl<'a> Bearer<'a> {
             };
             (material, spans(plate, placed, width).into_iter().map(panel).collect())
         });
-        Bearer { plate, placed, width, panels }
+        let mut bearer = Bearer { plate, placed, width, panels, idle: (None, f64::INFINITY) };
+        bearer.idle = bearer.worst_panel(&[], 1);
+        bearer
     }
 
     /// What it bears under the net load across it.
     pub fn under(&self, plate_idx: usize, bound: Bound, load: &PlateLoad) -> PlateResult {
         // Pressures beyond what numbers hold leave no welds; the panel says why.
         let welds = welds(self.plate, self.placed, self.width, &load.stretches).unwrap_or_default();
-        PlateResult { plate_idx, bound, welds, panel: self.worst_panel(load) }
+        let is_idle = load.stretches.iter().all(|s| s.from_pa == 0.0 && s.to_pa == 0.0);
+        let (panel, load_used) =
+            if is_idle { self.idle.clone() } else { self.worst_panel(&load.stretches, usize::MAX) };
+        PlateResult { plate_idx, bound, welds, panel, load_used }
     }
 
-    fn worst_panel(&self, load: &PlateLoad) -> Option<Result<PanelStrength, String>> {
-        let (material, panels) = self.panels.as_ref()?;
-        // Without a net load all are alike.
-        let is_idle = load.stretches.iter().all(|s| s.from_pa == 0.0 && s.to_pa == 0.0);
-        let n_panels = if is_idle { 1 } else { panels.len() };
+    fn worst_panel(&self, stretches: &[Stretch], most: usize) -> WorstPanel {
+        let Some((material, panels)) = &self.panels else { return (None, f64::INFINITY) };
         let mut worst: Option<PanelStrength> = None;
-        for (span, panel) in panels.iter().take(n_panels) {
+        let mut load_used = 0.0;
+        for (span, panel) in panels.iter().take(most) {
             let found = match panel {
-                Ok(panel) => self.panel_strength(span, panel, material, load).map_err(|e| e.to_string()),
+                Ok(panel) => self.panel_strength(span, panel, material, stretches).map_err(|e| e.to_string()),
                 Err(error) => Err(error.to_string()),
             };
             match found {
                 Ok(found) => {
+                    load_used = f64::max(load_used, found.strength.load_used());
                     if worst.as_ref().is_none_or(|w| is_worse(&found.strength, &w.strength)) {
                         worst = Some(found);
                     }
                 }
-                Err(reason) => return Some(Err(reason)),
+                Err(reason) => return (Some(Err(reason)), f64::INFINITY),
             }
         }
-        Some(worst.ok_or_else(|| "openings leave nothing of the plate".to_owned()))
+        match worst {
+            Some(worst) => (Some(Ok(worst)), load_used),
+            None => (Some(Err("openings leave nothing of the plate".to_owned())), f64::INFINITY),
+        }
     }
 
     fn panel_strength(
@@ -125,17 +139,17 @@ impl<'a> Bearer<'a> {
         span: &Span,
         panel: &SolvedPanel,
         material: &Material,
-        load: &PlateLoad,
+        stretches: &[Stretch],
     ) -> Result<PanelStrength, PlateError> {
         let height_m = span.length_m();
-        let pressure = profile(self.plate, &load.stretches, [span.from_m, span.to_m])?;
+        let pressure = profile(self.plate, stretches, [span.from_m, span.to_m])?;
         // A panel's free edge is its top.
         let is_turned = !span.is_held[0] && span.is_held[1];
         let pressure = if is_turned { pressure.turned(height_m) } else { pressure };
         let pressure = pressure.times(1.0 / (1.0 - span.open_share));
         let (thickness, corrosion) = (self.plate.thickness_m, self.plate.corrosion_m);
         let strength = strength(panel, &pressure, material, thickness, corrosion)?;
-        let y_m = strength.bending.governing().y_m;
+        let y_m = strength.summits.governing().y_m;
         let along = if is_turned { span.to_m - y_m } else { span.from_m + y_m };
         let support = panel.geometry().support;
         Ok(PanelStrength { span: *span, support, at: self.plate.point_at(along), strength })

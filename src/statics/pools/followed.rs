@@ -1,7 +1,8 @@
 //! A way that was followed to many places, ready to be looked at anywhere in between.
 
 use super::still::Holder;
-use super::trace::{LONGEST_STEP, Stop, Trace, Turn, trace};
+use super::trace::{LONGEST_STEP, Stop, Trace, trace};
+use super::turn::Turn;
 
 /// A way from the still levels, with the places at which it was looked at.
 pub struct Followed<'a> {

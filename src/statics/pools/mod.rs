@@ -7,9 +7,11 @@ mod look;
 mod place;
 mod still;
 mod trace;
+mod turn;
 
 pub use followed::Followed;
 pub use look::{Body, Look};
 pub use place::{Brim, Pour, Spilled};
 pub use still::{Holder, Start};
-pub use trace::{LONGEST_STEP, Stop, Trace, Turn, trace};
+pub use trace::{LONGEST_STEP, Stop, Trace, trace};
+pub use turn::Turn;

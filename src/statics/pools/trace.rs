@@ -4,43 +4,12 @@
 //! that falls to a sill within it parts there, each side keeping what then stands on it.
 
 use crate::geom::Vec2;
-use crate::num::{bracket, root};
+use crate::num::{bracket, root_between};
 
 use super::look::{Body, Look};
 use super::place::{Brim, Claim, Parting, Placed, Pour, Spilled, Unplaced, merge_shared};
 use super::still::Holder;
-
-/// A turn of the direction: from a tilt, one way round.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Turn {
-    /// Tilt of the surface at its start, radians.
-    pub start_rad: f64,
-    /// Whether the tilt grows.
-    pub grows: bool,
-}
-
-impl Turn {
-    /// Away from effective gravity where it has turned by `turned_rad` of the way.
-    pub fn up(&self, turned_rad: f64) -> Vec2 {
-        let sign = if self.grows { 1.0 } else { -1.0 };
-        let (sin, cos) = (self.start_rad + sign * turned_rad).sin_cos();
-        let snap = |x: f64| if x.abs() < 4.0 * f64::EPSILON { 0.0 } else { x };
-        Vec2::new(snap(-sin), snap(cos))
-    }
-}
-
-impl Turn {
-    /// The same way from where it has turned by `turned_rad`.
-    pub fn on_from(&self, turned_rad: f64) -> Turn {
-        let sign = if self.grows { 1.0 } else { -1.0 };
-        Turn { start_rad: self.start_rad + sign * turned_rad, ..*self }
-    }
-
-    /// The way back from there.
-    pub fn back_from(&self, turned_rad: f64) -> Turn {
-        Turn { grows: !self.grows, ..self.on_from(turned_rad) }
-    }
-}
+use super::turn::Turn;
 
 /// The bodies where the way was asked to be looked at.
 #[derive(Clone, Debug)]
@@ -119,16 +88,29 @@ struct Way<'h, 'a> {
     now: Option<Now<'a>>,
 }
 
+/// Where everything stands at present.
 struct Now<'a> {
     look: Look<'a>,
     stop: Stop,
+    /// Of its bodies, m.
+    levels: Vec<f64>,
+    /// For each basin, the body that it lies in.
+    owners: Vec<Option<usize>>,
+}
+
+impl<'a> Now<'a> {
+    fn new(look: Look<'a>, stop: Stop) -> Now<'a> {
+        let levels = stop.bodies.iter().map(|b| look.level_of(b)).collect();
+        let owners = look.owners(&stop.bodies);
+        Now { look, stop, levels, owners }
+    }
 }
 
 struct Lost;
 
 impl<'a> Way<'_, 'a> {
     fn start(&mut self, from: Option<&Stop>) -> Result<(), Lost> {
-        let look = self.holder.look(self.turn.up(0.0));
+        let look = self.look(0.0);
         let bodies = match from {
             Some(stop) => stop.bodies.clone(),
             None => self.holder.still(&look),
@@ -162,7 +144,7 @@ impl<'a> Way<'_, 'a> {
         {
             self.trace.first_spill = Some((0.0, *first));
         }
-        self.now = Some(Now { look, stop });
+        self.now = Some(Now::new(look, stop));
         Ok(())
     }
 
@@ -193,7 +175,7 @@ impl<'a> Way<'_, 'a> {
     fn advance(&mut self, to: f64) -> Result<(), Lost> {
         let now = self.now.take().ok_or(Lost)?;
         let from = now.stop.turned_rad;
-        let look = self.holder.look(self.turn.up(to));
+        let look = self.look(to);
         let (claims, met) = self.claims(&now, &look);
         match self.holder.place(&look, claims) {
             Ok(mut placed) => {
@@ -205,12 +187,18 @@ impl<'a> Way<'_, 'a> {
                 self.note_firsts(&now, &placed, to);
                 let mut stop = Stop { turned_rad: to, up: look.up, ..now.stop };
                 take(&mut stop, placed);
-                self.now = Some(Now { look, stop });
+                self.now = Some(Now::new(look, stop));
                 Ok(())
             }
             Err(Unplaced::Parted) => {
                 // Up to the last direction at which nothing has parted yet, and then a hair beyond it.
-                let [before, after] = bracket(from, to, 1e-13, |turned| self.parting(&now, turned));
+                let [before, after] = bracket(from, to, 1e-13, |turned| {
+                    if turned == from {
+                        self.parting(&now, &now.look)
+                    } else {
+                        self.parting(&now, &self.look(turned))
+                    }
+                });
                 self.now = Some(now);
                 if before > from {
                     self.advance(before)?;
@@ -224,7 +212,7 @@ impl<'a> Way<'_, 'a> {
     /// Parts the body that has fallen to a sill within it at `turned`; each side keeps what stands on it.
     fn part(&mut self, turned: f64) -> Result<(), Lost> {
         let now = self.now.take().ok_or(Lost)?;
-        let look = self.holder.look(self.turn.up(turned));
+        let look = self.look(turned);
         let (mut claims, _) = self.claims(&now, &look);
         let Parting { claim_idx: culprit, basin, .. } =
             self.holder.least_room_over_sills(&look, &claims).ok_or(Lost)?;
@@ -257,21 +245,25 @@ impl<'a> Way<'_, 'a> {
                 Some(Body { volume_m3: c.volume_m3, compartment: c.compartment, basin, lows: c.lows })
             })
             .collect();
-        self.now = Some(Now { look, stop });
+        self.now = Some(Now::new(look, stop));
         Ok(())
     }
 
-    /// By how much the body nearest to parting has fallen below its sill at `turned`, as a volume, and how fast that grows.
-    fn parting(&self, now: &Now, turned: f64) -> (f64, Option<f64>) {
-        let look = self.holder.look(self.turn.up(turned));
-        let (claims, _) = self.claims(now, &look);
-        match self.holder.least_room_over_sills(&look, &claims) {
+    /// By how much the body nearest to parting has fallen below its sill along `look`, as a volume, and how fast that grows.
+    fn parting(&self, now: &Now, look: &Look) -> (f64, Option<f64>) {
+        let (claims, _) = self.claims(now, look);
+        match self.holder.least_room_over_sills(look, &claims) {
             None => (-self.holder.capacity_m3, None),
             Some(parting) => {
-                let rate = self.holder.room_rate(&look, &parting);
+                let rate = self.holder.room_rate(look, &parting);
                 (-parting.room.m3, rate.map(|r| -self.sign() * r))
             }
         }
+    }
+
+    /// The look where it has turned that far.
+    fn look(&self, turned: f64) -> Look<'a> {
+        self.holder.look(self.turn.up(turned))
     }
 
     /// +1 where the tilt grows.
@@ -284,7 +276,6 @@ impl<'a> Way<'_, 'a> {
     /// With them, pairs of bodies that became one because the sill between them is there no more.
     fn claims(&self, now: &Now, look: &Look) -> (Vec<Claim>, Vec<(usize, usize)>) {
         let bodies = &now.stop.bodies;
-        let levels: Vec<f64> = bodies.iter().map(|b| now.look.level_of(b)).collect();
         let mut claims: Vec<Claim> = bodies
             .iter()
             .enumerate()
@@ -302,12 +293,11 @@ impl<'a> Way<'_, 'a> {
                 claim.lows.extend(leads_to);
             }
         }
-        let owners = now.look.owners(bodies);
         for low in (0..look.basins.all().len()).filter(|&b| look.basins.is_leaf(b)) {
             let beside = look.basins.low_point(low).iter().find_map(|&(e, t)| now.look.basins.basin_beside(e, t));
             if let Some((basin, level)) = beside
-                && let Some(i) = owners[basin]
-                && level < levels[i]
+                && let Some(i) = now.owners[basin]
+                && level < now.levels[i]
             {
                 claims[i].lows.push(low);
             }
@@ -346,13 +336,13 @@ impl<'a> Way<'_, 'a> {
                 continue;
             }
             let rate_at = |turned: f64| {
-                let middle = self.holder.look(self.turn.up(turned));
+                let middle = self.look(turned);
                 let (claims, _) = self.claims(now, &middle);
                 let claim = claims.iter().find(|c| c.from.contains(&i));
                 let basin = claim.and_then(|c| middle.basins.join(&c.lows));
                 basin.and_then(|b| middle.capacity_rate(b)).map_or(rate, |r| sign * r)
             };
-            let dip = root(from, to, 1e-9, rate_at);
+            let dip = root_between((from, rate), (to, rate_after), 1e-9, rate_at);
             if dip > from + 1e-8 && dip < to - 1e-8 {
                 return Some(dip);
             }
@@ -362,25 +352,28 @@ impl<'a> Way<'_, 'a> {
 
     /// Notes when liquid first left a mouth, and first went over a sill.
     fn note_firsts(&mut self, now: &Now, placed: &Placed, to: f64) {
-        let from = now.stop.turned_rad;
         let slack = 1e-12 * self.holder.capacity_m3;
         let spilled: f64 = placed.spilled.iter().map(|s| s.volume_m3).sum();
         if self.trace.first_spill.is_none() && spilled > slack {
-            let over = |turned: f64| self.over_at(now, turned, true);
-            let turned = root(from, to, 1e-15, over);
+            let turned = self.first_over(now, (to, spilled), 1e-15, true);
             self.trace.first_spill = Some((turned, placed.spilled[0]));
         }
         let poured: f64 = placed.pours.iter().map(|p| p.volume_m3).sum();
         if self.trace.first_pour.is_none() && poured > slack {
-            let turned = root(from, to, 1e-9, |turned| self.over_at(now, turned, false));
+            let turned = self.first_over(now, (to, poured), 1e-9, false);
             self.trace.first_pour = Some((turned, placed.pours[0]));
         }
     }
 
-    /// By how much some body stands over its mouth, or its sill, at `turned`, m3; below zero by its room.
-    fn over_at(&self, now: &Now, turned: f64, by_mouth: bool) -> f64 {
-        let look = self.holder.look(self.turn.up(turned));
-        match self.holder.place(&look, self.claims(now, &look).0) {
+    /// Where some body first stands over its mouth, or its sill, up to a turn at which it does so by a volume.
+    fn first_over(&self, now: &Now, to: (f64, f64), tolerance: f64, by_mouth: bool) -> f64 {
+        let from = (now.stop.turned_rad, self.over(now, &now.look, by_mouth));
+        root_between(from, to, tolerance, |turned| self.over(now, &self.look(turned), by_mouth))
+    }
+
+    /// By how much some body stands over its mouth, or its sill, along `look`, m3; below zero by its room.
+    fn over(&self, now: &Now, look: &Look, by_mouth: bool) -> f64 {
+        match self.holder.place(look, self.claims(now, look).0) {
             Ok(placed) => {
                 let over: f64 = if by_mouth {
                     placed.spilled.iter().map(|s| s.volume_m3).sum()
@@ -405,7 +398,7 @@ impl<'a> Way<'_, 'a> {
 /// What went from the higher to the lower of two bodies over a sill that is there no more: all of the higher one.
 fn over_a_sill_that_went(now: &Now, (i, j): (usize, usize)) -> Option<Pour> {
     let (a, b) = (&now.stop.bodies[i], &now.stop.bodies[j]);
-    let from = if now.look.level_of(a) > now.look.level_of(b) { a } else { b };
+    let from = if now.levels[i] > now.levels[j] { a } else { b };
     let outlet = now.look.basins.outlet(from.basin)?;
     Some(Pour {
         wall: now.look.cut.faces()[outlet.edge_idx as usize].wall,

@@ -72,7 +72,7 @@ impl Tank {
             air_pa: 0.0,
             moment_about: self.about,
             points: &[],
-            with_cells: true,
+            in_full: true,
         };
         let settled = settle(&self.section, &self.region, &holder.look(stop.up), &stop.bodies, &setting);
         Some(State { stop, settled, gravity, turn, turned_rad })
