@@ -261,6 +261,7 @@ pub(super) fn results() -> Results {
                         clamped: None,
                     }],
                     panel: None,
+                    load_used: 0.0,
                 }],
                 pours: vec![Pour {
                     wall: Wall::Plate { plate_idx: 0, span_m: [0.05, 0.7], is_left: true },
