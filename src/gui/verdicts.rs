@@ -165,7 +165,7 @@ fn third_line_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: 
     let look = desk.look;
     let (small, strong) = (font::small, font::small_figure);
     let case = case_idx.map_or_else(String::new, |i| format!("case {}, ", i + 1));
-    let place = format!("   {case}{}", verdict.place_words);
+    let place = format!("{case}{}", verdict.place_words);
     let job = match (verdict.demand, verdict.limit) {
         (Some(demand), Some(limit)) if verdict.state != State::NotJudged => {
             let unit = desk.unit_near(demand.quantity, demand.si.abs().max(limit.si.abs()));
@@ -173,12 +173,15 @@ fn third_line_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: 
             let [demand, limit] = [demand, limit].map(|m| number(unit.from_si(m.si), significant));
             let gap = if ["°", ""].contains(&unit.symbol) { "" } else { " " };
             let sense = format!("{gap}{}, {} ", unit.symbol, verdict.sense.words());
-            font::runs([
+            let numbers = [
                 (demand.as_str(), strong(), look.ink),
                 (&sense, small(), look.ink2),
                 (&limit, strong(), look.ink),
-                (&place, small(), look.ink2),
-            ])
+                ("   ", small(), look.ink2),
+            ];
+            let taken = ui.painter().layout_job(font::runs(numbers.clone())).size().x;
+            let place = field::shortened(ui, &place, &small(), rect.width() - taken);
+            font::runs(numbers.into_iter().chain([(place.as_str(), small(), look.ink2)]))
         }
         _ => {
             let remark = if verdict.remark.is_empty() { verdict.state.word() } else { &verdict.remark };
@@ -189,7 +192,7 @@ fn third_line_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: 
 }
 
 /// Checks that do not apply, and what the user should know of the input: quiet, never left out.
-fn quiet_rows_ui(ui: &mut Ui, desk: &Desk, judged: Judged, column: &VerdictColumn) {
+fn quiet_rows_ui(ui: &mut Ui, desk: &mut Desk, judged: Judged, column: &VerdictColumn) {
     let mut rows: Vec<(String, String, Vec<usize>)> = Vec::new();
     for (c, case) in judged.results.cases.iter().enumerate() {
         if column.is_this_case_only && c != desk.view.case_idx {
@@ -219,9 +222,15 @@ fn quiet_rows_ui(ui: &mut Ui, desk: &Desk, judged: Judged, column: &VerdictColum
     if !judged.results.warnings.is_empty() {
         quiet_heading_ui(ui, desk, "To know of the input");
     }
-    for warning in &judged.results.warnings {
+    for (i, warning) in judged.results.warnings.iter().enumerate() {
         let title = problems::capitalised(&warning.place.to_string());
         quiet_row_ui(ui, desk, &title, &format!("{} {}", warning.message, warning.hint));
+        if let Some(Some(mend)) = desk.doc.mends().get(i).filter(|_| !judged.is_stale) {
+            let rect = field::row_rect(ui).shrink2(vec2(INSET, 0.0));
+            if field::link_ui(ui, rect, Align::Min, &mend.words, &mend.words, desk.look).clicked() {
+                desk.edit(mend.edit.clone());
+            }
+        }
     }
 }
 

@@ -1,7 +1,9 @@
 //! The window, driven by the names that assistive technology reads. No screen, no graphics driver.
 
+mod mends;
 mod pictures;
 mod tank;
+mod verdicts;
 
 use std::path::Path;
 
