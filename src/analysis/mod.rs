@@ -10,6 +10,7 @@ mod results;
 mod rims;
 mod side;
 mod sight;
+mod transfer;
 mod ways;
 
 use rayon::prelude::*;
@@ -141,6 +142,8 @@ fn judge_case(ground: &Ground, case: &LoadCase, course: &Course) -> (CaseResult,
     };
     let pours = course.ways.first().and_then(|w| w.as_ref()).and_then(|w| w.stop.as_ref());
     let pours = pours.map_or(Vec::new(), |stop| stop.pours.clone());
+    let has_gas = sights.iter().any(|sight| sight.settled.as_ref().is_ok_and(|settled| !settled.gas.is_empty()));
+    let transfer = transfer::transfer(study, case, course, has_gas);
     let (states, plates): (Vec<_>, Vec<_>) = sights.into_iter().map(|sight| (sight.settled, sight.plates)).unzip();
     let mut states = states.into_iter();
     let settled = states.next().expect("there is a settled bound");
@@ -154,6 +157,7 @@ fn judge_case(ground: &Ground, case: &LoadCase, course: &Course) -> (CaseResult,
         trapped,
         routes: bounds.iter().enumerate().map(|(b, &bound)| (bound, route(course, b))).collect(),
         pours,
+        transfer,
         plates: plates.into_iter().flatten().collect(),
         verdicts,
         absent,

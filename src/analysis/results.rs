@@ -56,6 +56,8 @@ pub struct CaseResult {
     pub routes: Vec<(Bound, Route)>,
     /// What went over sills on the way, under the settled bound.
     pub pours: Vec<Pour>,
+    /// From the sealed to the settled bound, in time, or why that was not worked out; none where they do not differ.
+    pub transfer: Option<Result<Transfer, String>>,
     /// What the plates bear, one a plate and bound, the settled bound first.
     pub plates: Vec<PlateResult>,
     /// Verdicts, worst first.
@@ -101,6 +103,29 @@ pub struct Trapped {
     pub cell_idx: usize,
     /// How much more, m3.
     pub volume_m3: f64,
+}
+
+/// How long liquid takes from the sealed state of a case through the openings, until all levels are even.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Transfer {
+    /// How much changes places, or leaves, m3.
+    pub moved_m3: f64,
+    /// How much of it leaves by mouths, m3.
+    pub left_m3: f64,
+    /// Time until half of it has, s.
+    pub half_s: f64,
+    /// Time until 95 % of it has, s.
+    pub nearly_all_s: f64,
+    /// Time until all of it has, s; none where the last of it runs ever more slowly.
+    pub end_s: Option<f64>,
+    /// How long the case lasts, from the start of its onset to the end of its duration, s; none: held for long.
+    pub lasts_s: Option<f64>,
+    /// Share of what moves that has moved by then.
+    pub moved_share: f64,
+    /// The bound that is near: settled from 95 % on, sealed up to 5 %, none between.
+    pub near: Option<Bound>,
+    /// The same in a sentence.
+    pub words: String,
 }
 
 /// Results of a study.

@@ -11,7 +11,7 @@ mod network;
 mod opening;
 mod steady;
 
-pub use equalise::Equalisation;
+pub use equalise::{COARSE, Equalisation, FINE};
 pub use fault::FlowError;
 pub use network::{Cell, Network, Passage};
 pub use opening::{DEFAULT_DISCHARGE_COEFFICIENT, Opening, orifice};

@@ -6,14 +6,11 @@ use crate::num::{Implicit, newton};
 
 use super::network::{Network, Passage};
 
-/// Error of a step as a share of what is to move.
-const TOLERANCE_SHARE: f64 = 2e-10;
-
 /// Rounding of a volume, as a share of the greatest cell.
 const ROUNDING_SHARE: f64 = 2e-14;
 
-/// At rest once what is left to move is this share of it.
-const REST_SHARE: f64 = 1e-9;
+/// At rest once what is left to move is this many errors of a step.
+const REST_ERRORS: f64 = 5.0;
 
 /// A cell that holds less than this share of its capacity holds next to nothing.
 const LEAST_SHARE: f64 = 1e-12;
@@ -28,15 +25,18 @@ const SOFT_SHARE: f64 = 1e-10;
 /// its top.
 pub(super) struct Motion<'n> {
     network: &'n Network<'n>,
+    /// Error of a step, as a share of what moves.
+    error_share: f64,
     /// What one passage alone would let pass, at the start.
     moves_m3: f64,
     soft_m: f64,
 }
 
 impl<'n> Motion<'n> {
-    pub(super) fn new(network: &'n Network<'n>) -> Motion<'n> {
+    pub(super) fn new(network: &'n Network<'n>, error_share: f64) -> Motion<'n> {
         let greatest_m3 = network.cells.iter().map(|cell| cell.capacity_m3).fold(0.0, f64::max);
-        let mut motion = Motion { network, moves_m3: ROUNDING_SHARE / TOLERANCE_SHARE * greatest_m3, soft_m: 0.0 };
+        let mut motion =
+            Motion { network, error_share, moves_m3: ROUNDING_SHARE / error_share * greatest_m3, soft_m: 0.0 };
         let levels = motion.levels(&motion.start());
         let slope = |i: usize| motion.mean_slope(i);
         let moves = network.passages.iter().map(|passage| motion.left(passage, &levels, slope));
@@ -54,7 +54,7 @@ impl<'n> Motion<'n> {
 
     /// Error allowed a step. Heads follow from the volumes.
     pub(super) fn tolerance(&self) -> DVector<f64> {
-        let of = |i: usize| if i < self.n_cells() { TOLERANCE_SHARE * self.moves_m3 } else { f64::INFINITY };
+        let of = |i: usize| if i < self.n_cells() { self.error_share * self.moves_m3 } else { f64::INFINITY };
         DVector::from_fn(2 * self.n_cells(), |i, _| of(i))
     }
 
@@ -80,7 +80,7 @@ impl<'n> Motion<'n> {
         let is_full = |i: usize| state[self.n_cells() + i] > 0.0;
         let slope = |i: usize| if is_full(i) { 0.0 } else { self.level_slope(i, state[i]) };
         let left = |passage| self.left(passage, &levels, slope);
-        self.network.passages.iter().all(|passage| left(passage) <= REST_SHARE * self.moves_m3)
+        self.network.passages.iter().all(|passage| left(passage) <= REST_ERRORS * self.error_share * self.moves_m3)
     }
 
     /// The volume that a passage alone would let pass before its head is used up, by the slopes of the levels on its two

@@ -248,6 +248,17 @@ pub(super) fn results() -> Results {
                     to_right: true,
                     volume_m3: 0.03,
                 }],
+                transfer: Some(Ok(Transfer {
+                    moved_m3: 0.02,
+                    left_m3: 0.0,
+                    half_s: 0.9,
+                    nearly_all_s: 2.6,
+                    end_s: Some(3.4),
+                    lasts_s: Some(3.4),
+                    moved_share: 1.0,
+                    near: Some(Bound::Settled),
+                    words: "the settled bound is near".into(),
+                })),
                 verdicts: vec![
                     verdict("Contained", State::Fails, Some(f64::INFINITY), Quantity::Volume, 0.01, 0.0),
                     Verdict {
@@ -281,6 +292,7 @@ pub(super) fn results() -> Results {
                 trapped: vec![],
                 routes: vec![],
                 pours: vec![],
+                transfer: Some(Err("nothing flows in free fall".into())),
                 plates: vec![],
                 verdicts: vec![Verdict {
                     demand: None,

@@ -40,3 +40,4 @@ mod scenario;
 mod support;
 mod sweep;
 mod tidy;
+mod transfer;

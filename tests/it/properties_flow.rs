@@ -1,6 +1,6 @@
 //! Properties of flow through openings, on random networks of cells, and what is refused.
 
-use brimwright::flow::{Cell, FlowError, Network, Opening, Passage, level_for_flow, orifice, steady_levels};
+use brimwright::flow::{Cell, FINE, FlowError, Network, Opening, Passage, level_for_flow, orifice, steady_levels};
 use proptest::collection::vec;
 use proptest::prelude::*;
 
@@ -90,7 +90,7 @@ fn networks_conserve_volume_and_come_to_rest() {
             .collect();
         let passages = passages(&shapes, &drawn);
         let total: f64 = cells.iter().map(|cell| cell.volume_m3).sum();
-        let way = Network::new(cells.clone(), passages.clone(), G).unwrap().equalise();
+        let way = Network::new(cells.clone(), passages.clone(), G).unwrap().equalise(FINE);
         let way = way.map_err(|error| TestCaseError::fail(error.to_string()))?;
 
         let rest: f64 = way.volumes_m3.iter().sum();
@@ -195,7 +195,7 @@ fn nothing_to_flow_is_at_rest_at_once() {
         (vec![], vec![]),
     ] {
         let volumes: Vec<f64> = cells.iter().map(|cell| cell.volume_m3).collect();
-        let way = Network::new(cells, passages, G).unwrap().equalise().unwrap();
+        let way = Network::new(cells, passages, G).unwrap().equalise(FINE).unwrap();
         assert_eq!((way.end_s, way.moved_m3, &way.volumes_m3), (Some(0.0), 0.0, &volumes));
         assert_eq!((way.time_for_share(0.95), way.share_at(3.0)), (0.0, 1.0));
         assert!(way.series(5).iter().all(|(time, at)| *time == 0.0 && *at == volumes));

@@ -1,7 +1,7 @@
 //! Published flow through openings between cells: the law of an orifice, equalising, draining, rated flow.
 
 use brimwright::flow::{
-    Cell, DEFAULT_DISCHARGE_COEFFICIENT, Equalisation, Network, Opening, Passage, level_for_flow, orifice,
+    Cell, DEFAULT_DISCHARGE_COEFFICIENT, Equalisation, FINE, Network, Opening, Passage, level_for_flow, orifice,
     steady_difference, steady_levels,
 };
 use brimwright::geom::{Sublevel, Vec2};
@@ -42,7 +42,7 @@ fn network<'a>(cells: &[Cell<'a>], passages: &[Passage], g: f64) -> Network<'a> 
 
 fn rest(cells: &[Cell], passages: &[Passage], g: f64) -> Equalisation {
     let network = network(cells, passages, g);
-    network.equalise().unwrap_or_else(|error| panic!("{error}: {network:?}"))
+    network.equalise(FINE).unwrap_or_else(|error| panic!("{error}: {network:?}"))
 }
 
 /// A prism with its floor at zero and room for 10 m.
@@ -80,7 +80,7 @@ fn two_prisms_equalise_as_the_closed_form_says() {
         let cells = [prism(plan_a, 1.0 + head, &level_a), prism(plan_b, 1.0, &level_b)];
         let passages = [between(0, 1, hole(0.2, row.number("area_m2"), row.number("c_d")))];
         let network = network(&cells, &passages, G);
-        let way = network.equalise().unwrap();
+        let way = network.equalise(FINE).unwrap();
         let end_s = way.end_s.expect("the flow ends");
         row.compare(&mut findings, "end_s", end_s);
         row.compare(&mut findings, "quarter_s", way.time_for_share(0.75));

@@ -34,7 +34,7 @@ const ARROWS: &[(&str, &[&str])] = &[
     (
         "analysis",
         &[
-            "units", "problem", "progress", "num", "geom", "section", "cases", "statics", "plates", "study",
+            "units", "problem", "progress", "num", "flow", "geom", "section", "cases", "statics", "plates", "study",
             "criteria",
         ],
     ),

@@ -205,6 +205,13 @@ impl Basins<'_> {
         self.strip_at(p).map(|(k, i)| self.basin_of(k, i))
     }
 
+    /// The low point that steepest descent reaches from `p`; none outside.
+    pub fn low_under(&self, p: Point) -> Option<usize> {
+        let (slab_idx, i) = self.strip_at(p)?;
+        let [u, _] = self.sublevel.local(p);
+        Some(self.descend(slab_idx, i, u))
+    }
+
     /// An edge that bounds the strip which holds `p`, by index; none outside.
     pub fn face_beside(&self, p: Point) -> Option<usize> {
         let (k, i) = self.strip_at(p)?;

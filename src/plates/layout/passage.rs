@@ -3,19 +3,25 @@
 use crate::geom::{Depth, Edge, Point, Vec2};
 use crate::section::{Face, Region, Section, Wall, WidthLaw};
 
-/// A straight open stretch between two cells.
+/// A straight open stretch with a cell on either side.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Passage {
-    /// The cells on its two sides.
+    /// The cells on its two sides; one and the same where a plate ends inside it.
     pub cell_idxs: [usize; 2],
     /// The plate that it is an opening of; none for a gap beyond a free end.
     pub plate_idx: Option<usize>,
     /// Its open share.
     pub share: f64,
-    edge: Edge,
+    /// From end to end.
+    pub edge: Edge,
 }
 
 impl Passage {
+    /// Its open area, m2.
+    pub fn area_m2(&self, width: &WidthLaw) -> f64 {
+        self.share * across(width, self.edge)
+    }
+
     /// Its open area below a level, m2.
     pub fn area_below_m2(&self, width: &WidthLaw, level_z_m: f64) -> f64 {
         let below = self.edge.parts_below(Vec2::y(), level_z_m).into_iter();
@@ -50,9 +56,7 @@ pub fn passages(section: &Section, region: &Region) -> Vec<Passage> {
         let other = faces.iter().skip(i + 1).position(|f| f.edge == face.edge.reversed());
         let Some(other) = other.map(|k| i + 1 + k) else { continue };
         let cell_idxs = [cells.part_of(i), cells.part_of(other)];
-        if cell_idxs[0] != cell_idxs[1] {
-            passages.push(Passage { cell_idxs, plate_idx, share, edge: face.edge });
-        }
+        passages.push(Passage { cell_idxs, plate_idx, share, edge: face.edge });
     }
     passages
 }
@@ -84,7 +88,7 @@ pub fn widest_ways(
     level_z_m: impl Fn(usize) -> f64,
 ) -> Vec<Way> {
     let mut ways: Vec<(Way, f64)> = Vec::new();
-    for passage in passages {
+    for passage in passages.iter().filter(|p| p.cell_idxs[0] != p.cell_idxs[1]) {
         let cell_idxs =
             [passage.cell_idxs[0].min(passage.cell_idxs[1]), passage.cell_idxs[0].max(passage.cell_idxs[1])];
         let area_m2 = passage.area_below_m2(width, level_z_m(cell_idxs[0]));

@@ -2,7 +2,7 @@
 
 use serde::Serialize;
 
-use crate::analysis::{CaseResult, Pour, Settled};
+use crate::analysis::{CaseResult, Pour, Settled, Transfer};
 use crate::cases::LoadCase;
 
 use super::super::Report;
@@ -25,6 +25,7 @@ pub(super) struct Case {
     settled: Option<State>,
     sealed: Option<State>,
     released: Option<State>,
+    transfer: Option<TransferRow>,
     missing: Vec<Missing>,
     pours: Vec<PourRow>,
     trapped: Vec<TrappedRow>,
@@ -43,6 +44,13 @@ impl Case {
                 None
             }
         };
+        let settled = state("settled", Some(&result.settled));
+        let sealed = state("sealed", result.sealed.as_ref());
+        let released = state("released", result.released.as_ref());
+        if let Some(Err(reason)) = &result.transfer {
+            missing.push(Missing { state: "transfer", reason: reason.clone() });
+        }
+        let transfer = result.transfer.as_ref().and_then(|found| Some(TransferRow::new(found.as_ref().ok()?)));
         Case {
             name: result.name.clone(),
             note: input.note.clone(),
@@ -60,9 +68,10 @@ impl Case {
                 slope: gravity.slope.and_then(num),
                 tilt_rad: gravity.tilt_rad.and_then(num),
             },
-            settled: state("settled", Some(&result.settled)),
-            sealed: state("sealed", result.sealed.as_ref()),
-            released: state("released", result.released.as_ref()),
+            settled,
+            sealed,
+            released,
+            transfer,
             missing,
             pours: result.pours.iter().map(|pour| PourRow::new(report, pour)).collect(),
             trapped: result
@@ -116,4 +125,33 @@ impl PourRow {
 struct TrappedRow {
     cell: String,
     volume_m3: Num,
+}
+
+#[derive(Clone, Debug, Serialize)]
+struct TransferRow {
+    near: Option<&'static str>,
+    words: String,
+    moved_m3: Num,
+    left_m3: Num,
+    half_s: Num,
+    nearly_all_s: Num,
+    end_s: Num,
+    lasts_s: Num,
+    moved_share: Num,
+}
+
+impl TransferRow {
+    fn new(transfer: &Transfer) -> TransferRow {
+        TransferRow {
+            near: transfer.near.map(|bound| bound.word()),
+            words: transfer.words.clone(),
+            moved_m3: num(transfer.moved_m3),
+            left_m3: num(transfer.left_m3),
+            half_s: num(transfer.half_s),
+            nearly_all_s: num(transfer.nearly_all_s),
+            end_s: transfer.end_s.and_then(num),
+            lasts_s: transfer.lasts_s.and_then(num),
+            moved_share: num(transfer.moved_share),
+        }
+    }
 }

@@ -46,6 +46,20 @@ impl Table<'_> {
                 self.fact(label, [format!("no {label} state: {reason}")]);
             }
         }
+        let openings = match &case.transfer {
+            Some(Ok(transfer)) => {
+                let moved = format!("{} moves in all", self.measure(Quantity::Volume, transfer.moved_m3));
+                let left = format!("{} of it leaves", self.measure(Quantity::Volume, transfer.left_m3));
+                [Some(transfer.words.clone()), Some(moved).filter(|_| transfer.moved_m3 > 0.0)]
+                    .into_iter()
+                    .chain([Some(left).filter(|_| transfer.left_m3 > 0.0)])
+                    .flatten()
+                    .collect()
+            }
+            Some(Err(reason)) => vec![format!("how long levels take to even out was not worked out: {reason}")],
+            None => vec![],
+        };
+        self.fact("openings", openings);
         self.fact("origin", Some(&input.source).filter(|s| !s.is_empty()));
         self.fact("note", Some(&input.note).filter(|s| !s.is_empty()));
         self.pools(case);
