@@ -125,7 +125,7 @@ fn verdict_ui(ui: &mut Ui, row_height: f32, desk: &mut Desk, judged: Judged, at:
     let y = ui.painter().round_to_pixel_center(whole.bottom() - 0.5);
     ui.painter().hline(whole.shrink2(vec2(INSET, 0.0)).x_range(), y, (1.0, look.line2));
     if !is_open {
-        tooltip(response, verdict, desk);
+        tooltip(response, verdict, case_idx, desk);
     }
 }
 
@@ -272,9 +272,9 @@ fn stale_ui(ui: &Ui, foot: Rect, desk: &Desk) {
     }
 }
 
-fn tooltip(response: Response, verdict: &Verdict, desk: &Desk) {
+fn tooltip(response: Response, verdict: &Verdict, case_idx: Option<usize>, desk: &Desk) {
     response.on_hover_ui(|ui| {
-        ui.label(format!("{}, {}", verdict.criterion, verdict.place_words));
+        ui.label(spoken_words(verdict, case_idx, desk));
         if !verdict.remark.is_empty() {
             ui.label(egui::RichText::new(&verdict.remark).color(desk.look.ink2));
         }
