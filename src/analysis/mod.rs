@@ -12,6 +12,7 @@ mod side;
 mod sight;
 mod transfer;
 mod ways;
+mod worst;
 
 use rayon::prelude::*;
 
@@ -79,6 +80,7 @@ pub fn run_again(study: &ValidStudy, panels: &mut SolvedPanels) -> Results {
             surface,
             highest_share: holds.map(|v| v.min(common_capacity) / common_capacity),
         },
+        plate_peaks: worst::plate_peaks(inputs.section.plates.len(), &cases),
         cells,
         compartments: compartments::compartments(study),
         layout,

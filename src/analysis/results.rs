@@ -1,7 +1,8 @@
 //! What a judgement gives: every number that is shown to anyone comes from here.
 
-use crate::geom::Vec2;
+use crate::geom::{Point, Vec2};
 use crate::problem::Problem;
+use crate::units::Measure;
 
 pub use crate::criteria::{
     Absent, CONTAINED, FREEBOARD, LAYOUT, Outcome, Reach, Sense, State, Trust, Verdict, WorkLine,
@@ -105,6 +106,23 @@ pub struct Trapped {
     pub volume_m3: f64,
 }
 
+/// The largest load of a kind that a plate carries, and in which load case.
+#[derive(Clone, Debug, PartialEq)]
+pub struct PlatePeak {
+    /// Which plate.
+    pub plate_idx: usize,
+    /// `net load`, `net pressure`, `weld force`, `weld moment`.
+    pub name: &'static str,
+    /// Signed like the load of a plate: positive toward the right-hand side.
+    pub load: Measure,
+    /// Where it acts; of a weld, the end that it holds.
+    pub at: Option<Point>,
+    /// In which load case.
+    pub case_idx: usize,
+    /// Under which bound.
+    pub bound: Bound,
+}
+
 /// How long liquid takes from the sealed state of a case through the openings, until all levels are even.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Transfer {
@@ -141,6 +159,8 @@ pub struct Results {
     pub compartments: Vec<Compartment>,
     /// The layout of plates, judged once for the tank standing level and at rest; worst first.
     pub layout: Outcome,
+    /// The largest loads of every plate over all load cases and bounds.
+    pub plate_peaks: Vec<PlatePeak>,
     /// One a load case, in the study's order.
     pub cases: Vec<CaseResult>,
     /// Full scale of the pressure tints, Pa: one nice number for all cases.

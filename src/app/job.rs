@@ -140,16 +140,19 @@ mod tests {
     #[test]
     fn a_dropped_job_is_asked_to_end() {
         let workers = Workers::default();
+        let (begun, begin) = channel();
         let (ended, end) = channel();
         let job: Job<()> = workers.start(
             || {},
             move |progress, _| {
+                let _ = begun.send(());
                 while !progress.is_stopped() {
                     std::thread::yield_now();
                 }
                 let _ = ended.send(());
             },
         );
+        begin.recv().expect("the work began");
         drop(job);
         end.recv().expect("the work saw that nobody wants it");
     }

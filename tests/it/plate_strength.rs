@@ -249,3 +249,37 @@ fn kept_panels_change_no_result() {
         assert_eq!(analysis::run_again(&valid, &mut panels), analysis::run(&valid));
     }
 }
+
+#[test]
+fn the_worst_load_case_of_a_plate_is_named_toward_either_side() {
+    // As in two_sided, without openings: slope t stands 0.5 - t on the left and 0.5 + t on the right, so that the plate bears
+    // WEIGHT / 2 ((0.5 - t)^2 - (0.5 + t)^2) = -t WEIGHT a metre, and -2 t WEIGHT at its foot (hydrostatics).
+    let slopes = [0.1, 0.2, -0.15, 0.0];
+    let mut study = tank(4.0, 1.0, upright(2.0, 0.0, 1.0), Fill::Share(0.5));
+    study.cases = slopes.iter().map(|t| held(t * GRAVITY, 0.0)).collect();
+    let results = judge(&study);
+    let peaks = |name: &str| -> Vec<(f64, usize)> {
+        let own = results.plate_peaks.iter().filter(|peak| peak.name == name);
+        own.map(|peak| (peak.load.si, peak.case_idx)).collect()
+    };
+    for (name, to_right, to_left) in
+        [("net load", 0.15 * WEIGHT, -0.2 * WEIGHT), ("net pressure", 0.3 * WEIGHT, -0.4 * WEIGHT)]
+    {
+        let found = peaks(name);
+        assert_eq!(found.iter().map(|p| p.1).collect::<Vec<_>>(), [2, 1], "{name}: {found:?}");
+        near(name, found[0].0, to_right);
+        near(name, found[1].0, to_left);
+    }
+    // Every slope loads a weld by the shape of the same pressures: the steepest the most.
+    let steepest = &results.cases[1].plates[0].welds;
+    let (forces, moments) = (peaks("weld force"), peaks("weld moment"));
+    assert_eq!((forces.len(), moments.len()), (2, 2), "a weld at floor and roof");
+    for (end, weld) in steepest.iter().enumerate() {
+        assert_eq!((forces[end].1, moments[end].1), (1, 1), "{forces:?} {moments:?}");
+        near("weld force", forces[end].0, weld.force_n_per_m());
+        near("weld moment", moments[end].0, weld.moment_n());
+    }
+    // At rest alone it bears nothing, and nothing is listed.
+    study.cases = vec![held(0.0, 0.0)];
+    assert_eq!(judge(&study).plate_peaks, vec![]);
+}

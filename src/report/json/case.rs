@@ -6,6 +6,7 @@ use crate::analysis::{CaseResult, Pour, Settled, Transfer};
 use crate::cases::LoadCase;
 
 use super::super::Report;
+use super::bearing::StrengthRow;
 use super::state::State;
 use super::verdict::{AbsentRow, VerdictRow};
 use super::{Num, num};
@@ -26,6 +27,7 @@ pub(super) struct Case {
     sealed: Option<State>,
     released: Option<State>,
     transfer: Option<TransferRow>,
+    plate_strength: Vec<StrengthRow>,
     missing: Vec<Missing>,
     pours: Vec<PourRow>,
     trapped: Vec<TrappedRow>,
@@ -72,6 +74,7 @@ impl Case {
             sealed,
             released,
             transfer,
+            plate_strength: result.plates.iter().map(|plate| StrengthRow::new(report, plate)).collect(),
             missing,
             pours: result.pours.iter().map(|pour| PourRow::new(report, pour)).collect(),
             trapped: result

@@ -3,6 +3,7 @@
 //! Numbers are SI and unrounded, keys carry the unit; a number that is not finite is `null`. Keys keep their
 //! order. A change that breaks a reader raises [`SCHEMA`].
 
+mod bearing;
 mod case;
 mod head;
 mod loads;
@@ -139,6 +140,7 @@ mod tests {
 
     use super::super::fixture;
     use super::*;
+    use crate::analysis;
 
     fn value() -> Value {
         let (study, results) = (fixture::study(), fixture::results());
@@ -155,6 +157,11 @@ mod tests {
         let listed: BTreeSet<&str> = rows.flat_map(|row| row.split('`').skip(1).step_by(2)).collect();
         let mut keys = BTreeSet::from(["null".to_owned()]);
         gather_keys(&value(), &mut keys);
+        // A plate that really bears something has a panel.
+        let study = fixture::study();
+        let results = analysis::run(&study.validate().expect("a good study"));
+        let run = Run::judged(&Report::new("tray.ron", &study, &results));
+        gather_keys(&serde_json::to_value(run).expect("JSON"), &mut keys);
         let problem = Run::unusable("bad.ron", &[Problem::fault(Place::Whole, "", "")]);
         gather_keys(&serde_json::to_value(problem).expect("JSON"), &mut keys);
         let printed: BTreeSet<&str> = keys.iter().map(String::as_str).collect();

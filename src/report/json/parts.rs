@@ -2,9 +2,10 @@
 
 use serde::Serialize;
 
-use crate::section::{Plate, WidthLaw};
+use crate::section::Plate;
 
 use super::super::Report;
+use super::bearing::PeakRow;
 use super::{Num, coordinates, num};
 
 #[derive(Clone, Debug, Serialize)]
@@ -73,16 +74,17 @@ pub(super) struct DrawnPlate {
     material: String,
     solid_share: Num,
     openings: Vec<OpeningRow>,
+    peaks: Vec<PeakRow>,
 }
 
 impl DrawnPlate {
     pub(super) fn all(report: &Report) -> Vec<DrawnPlate> {
-        let section = &report.study.section;
-        let plates = section.plates.iter().enumerate();
-        plates.map(|(idx, plate)| DrawnPlate::new(idx, plate, &section.width)).collect()
+        let plates = report.study.section.plates.iter().enumerate();
+        plates.map(|(idx, plate)| DrawnPlate::new(report, idx, plate)).collect()
     }
 
-    fn new(idx: usize, plate: &Plate, width: &WidthLaw) -> DrawnPlate {
+    fn new(report: &Report, idx: usize, plate: &Plate) -> DrawnPlate {
+        let peaks = report.results.plate_peaks.iter().filter(|peak| peak.plate_idx == idx);
         DrawnPlate {
             name: plate.label(idx),
             corners: plate.points.iter().map(|p| Corner { s_m: num(p.x), z_m: num(p.y) }).collect(),
@@ -90,12 +92,13 @@ impl DrawnPlate {
             thickness_m: num(plate.thickness_m),
             corrosion_m: num(plate.corrosion_m),
             material: plate.material.clone(),
-            solid_share: num(plate.solid_share(width)),
+            solid_share: num(plate.solid_share(&report.study.section.width)),
             openings: plate
                 .openings
                 .iter()
                 .map(|o| OpeningRow { name: o.name.clone(), from_m: num(o.from_m), to_m: num(o.to_m) })
                 .collect(),
+            peaks: peaks.map(|peak| PeakRow::new(report, peak)).collect(),
         }
     }
 }

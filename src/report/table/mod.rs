@@ -21,6 +21,7 @@ pub fn text(report: &Report, units: UnitSystem) -> String {
     for (n, input, case) in report.cases() {
         table.case(n, input, case);
     }
+    table.plate_peaks();
     table.lines.into_text()
 }
 

@@ -8,7 +8,45 @@ use crate::units::{Measure, Quantity};
 use super::super::grid::{Grid, Side};
 use super::Table;
 
+const SIGN_WORDS: &str = "+ presses toward the right-hand side of a plate as it is drawn";
+
 impl Table<'_> {
+    /// The largest loads of every plate over all load cases, where all are shown.
+    pub(super) fn plate_peaks(&mut self) {
+        let (results, plates) = (self.report.results, &self.report.study.section.plates);
+        if self.report.layout().is_none() || results.plate_peaks.is_empty() {
+            return;
+        }
+        let mut grid = Grid::new(&[
+            ("plate", Side::Left),
+            ("at most", Side::Left),
+            ("", Side::Right),
+            ("at", Side::Left),
+            ("load case", Side::Left),
+        ]);
+        let mut last = None;
+        for peak in &results.plate_peaks {
+            let plate = &plates[peak.plate_idx];
+            let name = if last == Some(peak.plate_idx) { String::new() } else { plate.label(peak.plate_idx) };
+            last = Some(peak.plate_idx);
+            grid.row([
+                name,
+                peak.name.to_owned(),
+                self.signed(peak.load.quantity, peak.load.si),
+                peak.at.map_or_else(|| "–".to_owned(), |at| self.along(plate, at)),
+                format!("{}, {}", results.cases[peak.case_idx].name, peak.bound.word()),
+            ]);
+        }
+        self.lines.gap();
+        self.lines.facts("   ", ["Plates, the largest over all load cases and bounds"]);
+        grid.write(&mut self.lines);
+        self.lines.facts("   ", [SIGN_WORDS]);
+        if results.plate_peaks.iter().any(|peak| peak.name.starts_with("weld")) {
+            let words = "welds a metre, the larger of a plate whose ends may turn and one whose may not";
+            self.lines.facts("   ", [words]);
+        }
+    }
+
     /// The net load on every plate in each state.
     pub(super) fn plate_loads(&mut self, case: &CaseResult) {
         let plates = &self.report.study.section.plates;
@@ -29,7 +67,7 @@ impl Table<'_> {
         }
         grid.write(&mut self.lines);
         if !plates.is_empty() && !states.is_empty() {
-            self.lines.facts("   ", ["+ presses toward the right-hand side of a plate as it is drawn"]);
+            self.lines.facts("   ", [SIGN_WORDS]);
         }
     }
 
