@@ -1,7 +1,10 @@
 //! A frame of the window: laying out, painting and tessellating, without a screen. What the graphics driver adds is
 //! not in it.
 
-use brimwright::app::EXAMPLES;
+use std::hint::black_box;
+
+use brimwright::analysis;
+use brimwright::app::{Derived, EXAMPLES};
 use brimwright::gui::{Command, Dialogs, Settings, Window, look};
 use egui::{Event, Pos2, RawInput, Rect, pos2, vec2};
 use egui_kittest::Harness;
@@ -25,7 +28,8 @@ pub fn frame() {
     }
 }
 
-/// Frames while the first plate of an example goes to and fro by hand: nothing of the window's own work is left out.
+/// Frames while the first plate of an example goes to and fro by hand: nothing of the window's own work is left out. What
+/// of it is judging, and a frame without any, stand below.
 pub fn plate_drag() {
     let size = vec2(1280.0, 800.0);
     for file_name in ["fire-tank-lengthwise.ron", "fire-tank-crosswise.ron", "tanker-barrel-surge-plates.ron"] {
@@ -43,6 +47,10 @@ pub fn plate_drag() {
         stage.frame(vec![press(at, false)]);
         let moved = stage.window.document().undo_label().unwrap_or("nothing moved").to_owned();
         print_rate(&format!("{} x {}, {file_name}: {moved}", size.x, size.y), 1.0 / drag, 50.0);
+        let idle = median_s(|| stage.frame(Vec::new()));
+        let Derived::Judged { study, .. } = stage.window.document().derived() else { continue };
+        let judging = median_s(|| _ = black_box(analysis::run(study)));
+        println!("    judging anew {:.1} ms, a frame at rest {:.1} ms", 1e3 * judging, 1e3 * idle);
     }
 }
 
@@ -97,7 +105,7 @@ impl Stage {
         let input =
             RawInput { screen_rect: Some(Rect::from_min_size(Pos2::ZERO, self.size)), events, ..Default::default() };
         let output = self.ctx.run_ui(input, |ui| self.window.ui(ui));
-        std::hint::black_box(self.ctx.tessellate(output.shapes.clone(), output.pixels_per_point));
+        black_box(self.ctx.tessellate(output.shapes.clone(), output.pixels_per_point));
         output.drop_without_applying_deltas();
     }
 
