@@ -93,15 +93,6 @@ impl Equalisation {
         }
     }
 
-    /// Time and volumes at `n_points` even times, at least two, from the start to rest, or until 99.9 % has moved where
-    /// there is no end.
-    pub fn series(&self, n_points: usize) -> Vec<(f64, Vec<f64>)> {
-        let until = self.end_s.unwrap_or_else(|| self.time_for_share(0.999));
-        let n_spans = n_points.max(2) - 1;
-        let at = |i: usize| until * i as f64 / n_spans as f64;
-        (0..=n_spans).map(|i| (at(i), self.volumes_at(at(i)))).collect()
-    }
-
     /// When the flow ends. Near its end what is left goes like a power q of the time that is left (q = 2 between prismatic
     /// cells), so that tau = left / rate is that time over q; two moments give both. Where tau does not shrink there is no end.
     fn end(&self) -> Option<f64> {

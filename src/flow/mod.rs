@@ -15,4 +15,4 @@ pub use equalise::{COARSE, Equalisation, FINE};
 pub use fault::FlowError;
 pub use network::{Cell, Network, Passage};
 pub use opening::{DEFAULT_DISCHARGE_COEFFICIENT, Opening, orifice};
-pub use steady::{level_for_flow, steady_difference, steady_levels};
+pub use steady::steady_levels;

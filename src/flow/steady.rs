@@ -2,49 +2,10 @@
 
 use nalgebra::{DMatrix, DVector};
 
-use crate::num::{newton, root};
+use crate::num::newton;
 
 use super::fault::FlowError;
 use super::network::{Passage, check_gravity, check_passages};
-use super::opening::{Opening, orifice};
-
-/// The difference of levels, m, that carries a flow through drowned openings of this area together, and its sign:
-/// (Q / (C_d A))^2 / 2g. Infinite through no area.
-///
-/// Source: [`orifice`] turned about.
-pub fn steady_difference(flow_m3_per_s: f64, c_d: f64, area_m2: f64, g_m_per_s2: f64) -> f64 {
-    if flow_m3_per_s == 0.0 {
-        return 0.0;
-    }
-    let speed = flow_m3_per_s / (c_d * area_m2);
-    speed * speed.abs() / (2.0 * g_m_per_s2)
-}
-
-/// The level, m, that carries a flow through openings, side by side, to a side that stands at `to_m`: the inverse of
-/// [`orifice`], by a bracketed root. Below `to_m` for a flow below zero. None where no level does: nothing is open, or more
-/// is asked to come back than falls freely over the sills.
-///
-/// For no flow `to_m`, though a dry sill would stand any level below it.
-pub fn level_for_flow(openings: &[Opening], flow_m3_per_s: f64, to_m: f64, g_m_per_s2: f64) -> Option<f64> {
-    let excess = |from_m: f64| {
-        openings.iter().map(|opening| orifice(opening, from_m, to_m, g_m_per_s2)).sum::<f64>() - flow_m3_per_s
-    };
-    let weighted: f64 = openings.iter().map(|opening| opening.c_d * opening.area_m2).sum();
-    if flow_m3_per_s == 0.0 || weighted <= 0.0 {
-        return (flow_m3_per_s == 0.0).then_some(to_m);
-    }
-    if flow_m3_per_s < 0.0 {
-        let lowest_m = openings.iter().map(|opening| opening.low_m).fold(to_m, f64::min);
-        return (excess(lowest_m) <= 0.0).then(|| root(lowest_m, to_m, 0.0, excess));
-    }
-    // Every opening drowned and under at least the head that the flow needs.
-    let highest_m = openings.iter().map(|opening| opening.high_m).fold(to_m, f64::max);
-    let mut high_m = highest_m + steady_difference(flow_m3_per_s, 1.0, weighted, g_m_per_s2);
-    while excess(high_m) <= 0.0 {
-        high_m += (high_m - to_m).max(f64::EPSILON * high_m.abs());
-    }
-    Some(root(to_m, high_m, 0.0, excess))
-}
 
 /// The level of each cell, m, at a steady flow into one cell, out of another one that is held at its level, and through the
 /// passages between them, in a row or round about. Cells that no open way joins to the outlet have none. A cell
@@ -52,7 +13,7 @@ pub fn level_for_flow(openings: &[Opening], flow_m3_per_s: f64, to_m: f64, g_m_p
 ///
 /// What leaves through a passage to the outside is lost on the way. Errors name what has no meaning, or a missing way.
 ///
-/// Source: no cell gains or loses by the flows of [`orifice`]; found as the rest of levels that follow their net flows.
+/// Source: no cell gains or loses by the flows of [`super::orifice`]; found as the rest of levels that follow their net flows.
 pub fn steady_levels(
     n_cells: usize,
     passages: &[Passage],
@@ -70,7 +31,9 @@ pub fn steady_levels(
     if !is_joined.get(inlet_idx).is_some_and(|is_joined| *is_joined) {
         return Err(FlowError::NoWay { from_idx: inlet_idx, to_idx: outlet_idx });
     }
-    let still = Rated { passages, inlet, outlet, g_m_per_s2 };
+    // What is not joined to the outlet stays out of it, and cannot spoil it.
+    let passages: Vec<Passage> = passages.iter().filter(|passage| is_joined[passage.from_idx]).copied().collect();
+    let still = Rated { passages: &passages, inlet, outlet, g_m_per_s2 };
     // As long as it takes: from levels that have hardly moved to ones that would move no more.
     let mut levels_m = DVector::from_element(n_cells, outlet_m);
     for dt in (-3..=15).map(|power| 10.0_f64.powi(power)) {

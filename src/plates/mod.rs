@@ -25,9 +25,7 @@ pub use bearing::{Bearer, PanelStrength, PlateResult, SolvedPanels, Span, Weld, 
 pub use bending::{Bending, EdgeReaction, Extremes, Peak};
 pub use bent::{Bent, PointState};
 pub use error::PlateError;
-pub use layout::{
-    Cell, Divider, Gap, Passage, Remnant, Way, cells, dividers, gaps, passages, undrained, unvented, widest_ways,
-};
+pub use layout::{Cell, Divider, Gap, Passage, Remnant, cells, dividers, gaps, passages, undrained, unvented};
 pub use panel::{PanelGeometry, SolvedPanel, Support};
 pub use profile::{Piece, Profile};
 pub use strength::{

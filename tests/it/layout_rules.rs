@@ -253,25 +253,21 @@ fn gas_under_a_full_height_plate_without_a_gap_stays_in() {
 }
 
 #[test]
-fn a_rated_flow_passes_the_narrowest_of_the_widest_ways_below_the_still_level() {
-    // Torricelli with C_d = 0.6: (Q / (0.6 A))^2 / 2 g (standard hydraulics).
+fn a_rated_flow_needs_the_difference_of_levels_that_carries_it() {
+    // Drowned: (Q / (C_d A))^2 / 2 g with C_d = 0.6 (Torricelli; standard hydraulics).
     let (flow, limit) = (0.0631, 0.1);
     let difference = |area: f64| (flow / (0.6 * area)).powi(2) / (2.0 * GRAVITY);
     let rated = |study| verdict(study, Limit::RatedFlow { flow_m3_per_s: flow, difference_m: limit });
     let gap = |s| with_opening(upright(s, 0.0, 1.0), 0.0, 0.1, OpeningShape::Share(1.0));
     // A gap 0.1 high and 2 m wide.
     check(&rated(tank(vec![gap(2.0)], Fill::Share(0.5))), State::Holds, difference(0.2), limit);
-    // A gap from 0.4 to 0.6 is half under.
-    let half = with_opening(upright(2.0, 0.0, 1.0), 0.4, 0.6, OpeningShape::Share(1.0));
-    check(&rated(tank(vec![half], Fill::Share(0.5))), State::Holds, difference(0.2), limit);
     // Under a plate that hangs 0.3 off the floor; in a barrel that is a segment of its circle.
     let hanging = || vec![upright(2.0, 0.3, 1.0)];
     check(&rated(tank(hanging(), Fill::Share(0.5))), State::Holds, difference(0.6), limit);
     let found = rated(barrel(vec![upright(2.0, 0.3, 1.8)], Fill::Share(0.5)));
     check(&found, State::Holds, difference(segment(0.9, 0.3)), limit);
-    // Two holes of 0.1 m in the second of two plates are the narrower way; a hole above the level adds nothing.
+    // Two holes of 0.1 m in the second of two plates are the narrower way.
     let holes = with_opening(upright(3.0, 0.0, 1.0), 0.05, 0.15, OpeningShape::Holes { n: 2 });
-    let holes = with_opening(holes, 0.7, 0.9, OpeningShape::Holes { n: 1 });
     let found = rated(tank(vec![gap(2.0), holes], Fill::Share(0.5)));
     let area = 2.0 * PI / 4.0 * 0.01;
     check(&found, State::Fails, difference(area), limit);
@@ -281,9 +277,39 @@ fn a_rated_flow_passes_the_narrowest_of_the_widest_ways_below_the_still_level() 
     assert!((difference(needed) - limit).abs() < 1e-12);
     let mend = found.mend[0].text(Default::default());
     assert!(mend.contains(&format!("{:.4} m²", needed - area)), "{mend}, {} m2 more", needed - area);
-    // Open above the level only.
+}
+
+#[test]
+fn a_rated_flow_falls_freely_over_what_is_not_drowned() {
+    let (flow, limit) = (0.0631, 0.1);
+    let rated = |study| verdict(study, Limit::RatedFlow { flow_m3_per_s: flow, difference_m: limit });
+    let root_2g = (2.0 * GRAVITY).sqrt();
+    // Over a sill 0.2 above the still level, 2 m wide: Q = 2/3 C_d b sqrt(2 g) H^1.5 (rectangular weir; Streeter).
+    let head = (flow / (2.0 / 3.0 * 0.6 * 2.0 * root_2g)).powf(2.0 / 3.0);
     let high = with_opening(upright(2.0, 0.0, 1.0), 0.7, 0.9, OpeningShape::Share(1.0));
-    assert_eq!(rated(tank(vec![high], Fill::Share(0.5))).state, State::NotJudged);
+    check(&rated(tank(vec![high], Fill::Share(0.5))), State::Fails, 0.2 + head, limit);
+    // The same past a free end that stands 0.2 above it.
+    check(&rated(tank(vec![upright(2.0, 0.0, 0.7)], Fill::Share(0.5))), State::Fails, 0.2 + head, limit);
+    // A gap from 0.4 to 0.6, half of it under: what is drowned and what falls freely carry the flow together.
+    let half = with_opening(upright(2.0, 0.0, 1.0), 0.4, 0.6, OpeningShape::Share(1.0));
+    let found = rated(tank(vec![half], Fill::Share(0.5))).demand.expect("a demand").si;
+    let carried = 0.6 * 2.0 * root_2g * (0.1 * found.sqrt() + 2.0 / 3.0 * found.powf(1.5));
+    assert!((carried - flow).abs() < 1e-9 * flow, "{found} m carry {carried} m3/s of {flow}");
+}
+
+#[test]
+fn a_rated_flow_leaves_at_the_sump() {
+    // A tight plate amid the tank parts two pairs of bays; the pair on the left has a wide way between its bays, the one on the
+    // right a narrow one. Without a sump the flow may leave anywhere.
+    let (flow, limit) = (0.02, 1.0);
+    let gap = |s: f64, high: f64| with_opening(upright(s, 0.0, 1.0), 0.0, high, OpeningShape::Share(1.0));
+    let difference = |area: f64| (flow / (0.6 * area)).powi(2) / (2.0 * GRAVITY);
+    for (sump_s, area) in [(Some(0.5), 0.2), (Some(1.5), 0.2), (Some(2.5), 0.04), (None, 0.04)] {
+        let mut study = tank(vec![gap(1.0, 0.1), upright(2.0, 0.0, 1.0), gap(3.0, 0.02)], Fill::Share(0.5));
+        study.sump = sump_s.map(|s| Point::new(s, 0.1));
+        let found = verdict(study, Limit::RatedFlow { flow_m3_per_s: flow, difference_m: limit });
+        check(&found, State::Holds, difference(area), limit);
+    }
 }
 
 #[test]

@@ -11,4 +11,4 @@ pub use cell::{Cell, cells};
 pub use divider::{Divider, dividers};
 pub use gap::{Gap, gaps};
 pub use left_behind::{Remnant, undrained, unvented};
-pub use passage::{Passage, Way, passages, widest_ways};
+pub use passage::{Passage, passages};
