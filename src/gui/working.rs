@@ -100,14 +100,12 @@ fn trust_text(verdict: &Verdict) -> String {
 /// The requirement record that gives the limit: clause, edition, where it came from, and whether anyone has confirmed it.
 fn record_ui(ui: &mut Ui, desk: &mut Desk, verdict: &Verdict) {
     let Some((i, record)) = verdict.record.and_then(|i| Some((i, desk.study().records.get(i)?))) else { return };
-    let clause = if record.clause.is_empty() { "no clause given" } else { &record.clause };
     let state = if record.confirmed { "confirmed" } else { "unconfirmed" };
-    let words = [record.title.as_str(), clause, &record.edition, state];
-    let words: Vec<&str> = words.into_iter().filter(|t| !t.is_empty()).collect();
-    labelled_ui(ui, desk, "Limit", &words.join(", "));
-    if !record.origin.is_empty() {
-        labelled_ui(ui, desk, "From", &record.origin);
-    }
+    labelled_ui(ui, desk, "Limit", &format!("{}, {state}", record.title));
+    let given = |text: &str, none: &str| if text.is_empty() { none.to_owned() } else { text.to_owned() };
+    labelled_ui(ui, desk, "Clause", &given(&record.clause, "none given"));
+    labelled_ui(ui, desk, "Edition", &given(&record.edition, "none given"));
+    labelled_ui(ui, desk, "From", &given(&record.origin, "no origin given"));
     if !record.confirmed {
         let rect = field::row_rect(ui).with_min_x(ui.cursor().left() + LABEL);
         if field::link_ui(ui, rect, Align::Min, "Confirm this record", "Confirm this record", desk.look).clicked() {
