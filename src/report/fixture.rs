@@ -202,6 +202,7 @@ pub(super) fn results() -> Results {
         area_m2,
         capacity_m3: 0.5 * area_m2,
         still_m3,
+        still_z_m: Some(0.8),
     };
     Results {
         capacity_m3: 0.99,

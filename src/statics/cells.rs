@@ -10,6 +10,16 @@ pub fn cell_volumes(region: &Region, width: &WidthLaw, look: &Look, bodies: &[Bo
     sums(region, &cell_volumes_by_body(region, width, look, bodies))
 }
 
+/// The highest level, along the look's direction, of the bodies that stand in each cell, m; none in a dry one.
+pub fn cell_levels(region: &Region, width: &WidthLaw, look: &Look, bodies: &[Body]) -> Vec<Option<f64>> {
+    let by_body = cell_volumes_by_body(region, width, look, bodies);
+    let in_cell = |cell: usize| {
+        let standing = bodies.iter().zip(&by_body).filter(|(_, volumes)| volumes[cell] > 0.0);
+        standing.map(|(body, _)| look.level_of(body)).reduce(f64::max)
+    };
+    (0..region.cells().n_parts()).map(in_cell).collect()
+}
+
 /// What each cell holds of all bodies, m3.
 pub(super) fn sums(region: &Region, by_body: &[Vec<f64>]) -> Vec<f64> {
     (0..region.cells().n_parts()).map(|cell| by_body.iter().map(|body| body[cell]).sum()).collect()

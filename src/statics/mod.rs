@@ -17,7 +17,7 @@ mod tilted;
 mod wetted;
 
 pub use bound::Bound;
-pub use cells::cell_volumes;
+pub use cells::{cell_levels, cell_volumes};
 pub use gas::{GasPocket, gas_pockets};
 pub use gravity::{EffectiveGravity, effective_gravity};
 pub use loads::{EdgeLoad, PlateLoad, Stretch, pressure_at};

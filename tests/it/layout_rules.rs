@@ -5,7 +5,7 @@ use std::f64::consts::PI;
 use brimwright::analysis::{Absent, LAYOUT, Results, Sense, State, Verdict};
 use brimwright::geom::Point;
 use brimwright::section::{Opening, OpeningShape, Plate, Section, WidthLaw};
-use brimwright::study::{Fill, Limit, Record, Study};
+use brimwright::study::{Compartment, Fill, Limit, Record, Study};
 
 use crate::support::plated::plate;
 use crate::support::shapes::{polygon, rectangle, section};
@@ -83,6 +83,15 @@ fn cells_of_a_box_and_of_a_barrel_hold_what_closed_forms_say() {
     for ((_, capacity, still), want) in held.iter().zip([2.0, 3.0, 3.0]) {
         assert!((capacity - want).abs() < 1e-12 && (still - want / 2.0).abs() < 1e-12, "{held:?}, expected {want}");
     }
+    assert!(results.cells.iter().all(|cell| (cell.still_z_m.unwrap() - 0.5).abs() < 1e-12), "{:?}", results.cells);
+    // With a fill of its own a cell stands at its own level, and an empty one at none.
+    let mut study = tank(vec![upright(1.0, 0.0, 1.0), upright(2.5, 0.0, 1.0)], Fill::Share(0.0));
+    let at = Point::new(0.5, 0.5);
+    study.compartments = vec![Compartment { name: "own".into(), at, liquid: None, fill: Fill::Share(0.3) }];
+    let own = judge(&study).cells;
+    let levels: Vec<Option<f64>> = own.iter().map(|cell| cell.still_z_m).collect();
+    assert_eq!(levels.iter().flatten().count(), 1, "{levels:?}");
+    assert!((own.iter().find_map(|cell| cell.still_z_m).unwrap() - 0.3).abs() < 1e-12, "{levels:?}");
     // Barrel: pi r2 times lengths 2 and 4, filled to a quarter of the diameter. The plate hangs 0.3 off the bottom.
     let results = judge(&barrel(vec![upright(2.0, 0.3, 1.8)], Fill::Level(0.45)));
     let mut held: Vec<(f64, f64, f64)> =

@@ -20,8 +20,12 @@ pub(super) fn cells_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
         let rect = field::row_rect(ui);
         let volume = |m3: f64| Measure::new(Quantity::Volume, m3);
         let area = desk.text(Measure::new(Quantity::Area, cell.area_m2));
+        let level = cell.still_z_m.map_or_else(
+            || "dry when still".to_owned(),
+            |m| format!("still level z {}", desk.text(Measure::new(Quantity::Length, m))),
+        );
         let spoken = format!(
-            "Cell {}, {}, still {}, capacity {}, area {area}",
+            "Cell {}, {}, still {}, capacity {}, area {area}, {level}",
             i + 1,
             cell.name,
             desk.text(volume(cell.still_m3)),
@@ -33,7 +37,7 @@ pub(super) fn cells_ui(ui: &mut Ui, desk: &mut Desk, _: &mut TankColumn) {
         field::paint_fitting(ui, name, Align::Min, &cell.name, font::body(), desk.look.ink2);
         measure_ui(ui, rect.with_max_x(rect.right() - 60.0), desk, volume(cell.still_m3), 3);
         measure_ui(ui, rect, desk, volume(cell.capacity_m3), 3);
-        response.on_hover_text(format!("{}, area {area}", cell.name));
+        response.on_hover_text(format!("{}, area {area}, {level}", cell.name));
     }
     ui.set_opacity(1.0);
 }

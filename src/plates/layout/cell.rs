@@ -18,6 +18,8 @@ pub struct Cell {
     pub capacity_m3: f64,
     /// What it holds standing level and at rest, m3.
     pub still_m3: f64,
+    /// z of its surface then, the highest where it has several, m; none where it is dry.
+    pub still_z_m: Option<f64>,
 }
 
 impl Cell {
@@ -27,8 +29,8 @@ impl Cell {
     }
 }
 
-/// Every cell of the region, from what each holds standing level and at rest, m3.
-pub fn cells(region: &Region, width: &WidthLaw, still_m3: &[f64]) -> Vec<Cell> {
+/// Every cell of the region, from what each holds standing level and at rest, m3, and how high that stands, m.
+pub fn cells(region: &Region, width: &WidthLaw, still_m3: &[f64], still_z_m: &[Option<f64>]) -> Vec<Cell> {
     let cut = region.cells();
     let plain = WidthLaw::Constant { width_m: 1.0 };
     (0..cut.n_parts())
@@ -47,6 +49,7 @@ pub fn cells(region: &Region, width: &WidthLaw, still_m3: &[f64]) -> Vec<Cell> {
                 area_m2: volume(&plain),
                 capacity_m3: volume(width),
                 still_m3: still_m3[part],
+                still_z_m: still_z_m[part],
             }
         })
         .collect()

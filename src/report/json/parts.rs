@@ -17,6 +17,7 @@ pub(super) struct CellRow {
     area_m2: Num,
     capacity_m3: Num,
     still_m3: Num,
+    still_z_m: Num,
 }
 
 impl CellRow {
@@ -33,6 +34,7 @@ impl CellRow {
                     area_m2: num(cell.area_m2),
                     capacity_m3: num(cell.capacity_m3),
                     still_m3: num(cell.still_m3),
+                    still_z_m: cell.still_z_m.and_then(num),
                 }
             })
             .collect()

@@ -89,6 +89,7 @@ impl Table<'_> {
             ("capacity", Side::Right),
             ("area", Side::Right),
             ("still", Side::Right),
+            ("up to z", Side::Right),
             (if has_several { "compartment" } else { "" }, Side::Left),
         ]);
         for cell in &results.cells {
@@ -97,6 +98,7 @@ impl Table<'_> {
                 self.level(Quantity::Volume, cell.capacity_m3),
                 self.level(Quantity::Area, cell.area_m2),
                 self.level(Quantity::Volume, cell.still_m3),
+                cell.still_z_m.map_or_else(|| "–".to_owned(), |m| self.level(Quantity::Length, m)),
                 if has_several { self.report.compartment_name(cell.compartment) } else { String::new() },
             ]);
         }

@@ -136,9 +136,9 @@ mod tests {
         let text = shown(UnitSystem::Si);
         for want in [
             "
-   cell     capacity       area      still
-   cell 1  0.2500 m³  0.5000 m²  0.2000 m³
-   cell 2  0.7400 m³   1.480 m²  0.5900 m³
+   cell     capacity       area      still   up to z
+   cell 1  0.2500 m³  0.5000 m²  0.2000 m³  800.0 mm
+   cell 2  0.7400 m³   1.480 m²  0.5900 m³  800.0 mm
 
    plate  thickness   solid  as drawn
    sill     3.00 mm  97.1 %  s 500.0 mm, z 0.000 mm to 700.0 mm
