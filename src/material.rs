@@ -31,6 +31,9 @@ impl Material {
     /// Yield over allowable stress where nobody says otherwise: common practice, unconfirmed.
     pub const USUAL_FACTOR: f64 = 1.5;
 
+    /// How one that a scenario brings is known: whoever made the scenario answers for it.
+    pub const OWN_STATUS: &str = "given in the scenario";
+
     /// Allowable stress: yield stress over the factor, Pa.
     pub fn allowable_pa(&self) -> f64 {
         self.yield_pa / self.factor

@@ -1,13 +1,14 @@
 //! The open document: study, file, undo history and results of the present revision.
 
 use std::path::PathBuf;
-use std::sync::Arc;
+use std::sync::{Arc, OnceLock};
 
 use crate::analysis::{self, Results, SolvedPanels};
 use crate::problem::Problem;
 use crate::study::{Study, ValidStudy};
 
 use super::edit::{Edit, apply};
+use super::mend::{Mend, mend};
 
 /// How many steps can be undone.
 const HISTORY_STEPS: usize = 500;
@@ -52,6 +53,8 @@ pub struct Document {
     revision: u64,
     derived: Derived,
     panels: SolvedPanels,
+    /// One for each problem, worked out when first asked for.
+    mends: OnceLock<Vec<Option<Mend>>>,
 }
 
 impl Document {
@@ -70,6 +73,7 @@ impl Document {
             revision: 0,
             derived,
             panels,
+            mends: OnceLock::new(),
         }
     }
 
@@ -86,6 +90,19 @@ impl Document {
     /// Results of the present revision, or its faults.
     pub fn derived(&self) -> &Derived {
         &self.derived
+    }
+
+    /// Faults and warnings of the present revision.
+    pub fn problems(&self) -> &[Problem] {
+        match &self.derived {
+            Derived::Judged { results, .. } => &results.warnings,
+            Derived::Faulty { problems, .. } => problems,
+        }
+    }
+
+    /// For each of [`Document::problems`], the one step that mends it, where there is an obvious one.
+    pub fn mends(&self) -> &[Option<Mend>] {
+        self.mends.get_or_init(|| self.problems().iter().map(|problem| mend(&self.study, problem)).collect())
     }
 
     /// Whether the study differs from what was last saved or opened.
@@ -180,6 +197,7 @@ impl Document {
             Derived::Faulty { stale, .. } => stale.clone(),
         };
         self.derived = derive(&self.study, stale, &mut self.panels);
+        self.mends = OnceLock::new();
     }
 }
 

@@ -3,6 +3,7 @@
 use crate::cases::{Accel, Attitude, LoadCase};
 use crate::geom::{Point, Vec2};
 use crate::liquid::Liquid;
+use crate::material::Material;
 use crate::section::{EdgeKind, Obstacle, OutlineEdge, Plate, Section, WidthLaw};
 use crate::study::{Compartment, Fill, NamedPoint, Record, Study, VerdictNote};
 
@@ -69,6 +70,10 @@ pub enum Edit {
     Plates(Vec<Plate>),
     /// Replace the compartments with a fill of their own.
     Compartments(Vec<Compartment>),
+    /// Replace the materials of the scenario's own.
+    Materials(Vec<Material>),
+    /// Change one of them. Plates that call it follow its name.
+    Material(usize, Box<Material>),
     /// Where the tank is emptied from.
     Sump(Option<Point>),
     /// Discharge coefficient of openings.
@@ -115,6 +120,7 @@ impl Edit {
             Edit::AddPlate(_) => "Add plate",
             Edit::Plates(_) => "Set plates",
             Edit::Compartments(_) => "Set compartments",
+            Edit::Materials(_) => "Set materials",
             Edit::Sump(_) => "Set sump",
             Edit::DischargeCoefficient(_) => "Set discharge coefficient",
             Edit::AddCase(_) => "Add load case",
@@ -137,6 +143,7 @@ impl Edit {
             Edit::ShiftPlate(i, ..) => return format!("Move plate {}", i + 1),
             Edit::MovePlatePoint(i, p, _) => return format!("Move corner {} of plate {}", p + 1, i + 1),
             Edit::RemovePlate(i) => return format!("Remove plate {}", i + 1),
+            Edit::Material(i, _) => return format!("Change material {}", i + 1),
             Edit::CaseAccel(i, _) => return format!("Set acceleration of load case {}", i + 1),
             Edit::CaseAttitude(i, _) => return format!("Set attitude of load case {}", i + 1),
             Edit::Case(i, _) => return format!("Change load case {}", i + 1),
@@ -188,6 +195,8 @@ pub fn apply(study: &mut Study, edit: &Edit) {
         Edit::RemovePlate(i) => remove(&mut section.plates, *i),
         Edit::Plates(plates) => section.plates.clone_from(plates),
         Edit::Compartments(compartments) => study.compartments.clone_from(compartments),
+        Edit::Materials(materials) => study.materials.clone_from(materials),
+        Edit::Material(i, material) => change_material(study, *i, material),
         Edit::Sump(sump) => study.sump = *sump,
         Edit::DischargeCoefficient(c_d) => study.discharge_coefficient = *c_d,
         Edit::CaseAccel(i, accel) => set(study.cases.get_mut(*i), |case| case.accel = *accel),
@@ -258,6 +267,15 @@ fn remove_vertex(section: &mut Section, idx: usize) {
     outline.remove(idx);
     if outline.len() >= 3 || outline.iter().any(|edge| edge.sweep_rad != 0.0) {
         section.outline = outline;
+    }
+}
+
+fn change_material(study: &mut Study, idx: usize, material: &Material) {
+    let Some(own) = study.materials.get_mut(idx) else { return };
+    let old = std::mem::replace(own, material.clone());
+    if study.materials.iter().all(|m| m.name != old.name) {
+        let plates = study.section.plates.iter_mut().filter(|plate| plate.material == old.name);
+        plates.for_each(|plate| plate.material.clone_from(&material.name));
     }
 }
 

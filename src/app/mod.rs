@@ -9,6 +9,7 @@ mod edit;
 mod examples;
 mod files;
 mod job;
+mod mend;
 mod plates;
 
 pub use background::Background;
@@ -17,4 +18,5 @@ pub use edit::{Edit, apply};
 pub use examples::{EXAMPLES, Example};
 pub use files::{FileError, load, save_atomic, write_atomic};
 pub use job::{Job, Workers};
+pub use mend::{Mend, mend};
 pub use plates::{equally_spaced, plate_across, shifted_along_walls, with_length_kept_openings};

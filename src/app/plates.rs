@@ -81,6 +81,23 @@ pub fn equally_spaced(section: &Section, plate_idxs: &[usize]) -> Vec<Plate> {
     plates
 }
 
+/// A plate with each end that runs out through the outline or into an obstacle drawn back onto it, along the plate's own
+/// line; none where no end does.
+pub(super) fn ended_on_walls(section: &Section, plate: &Plate) -> Option<Plate> {
+    let stops = Stops::new(section, 0..section.obstacles.len(), vec![])?;
+    let last = plate.points.len().checked_sub(1).filter(|last| *last > 0)?;
+    let mut points = plate.points.clone();
+    for (end, inner) in [(0, 1), (last, last - 1)] {
+        let (from, to) = (plate.points[inner], plate.points[end]);
+        let (_, wall) = stops.span(from, to)?;
+        if (to - wall).dot(&(to - from)) > 0.0 {
+            points[end] = wall;
+        }
+    }
+    let next = Plate { points, ..plate.clone() };
+    (next != *plate).then(|| with_length_kept_openings(plate, next))
+}
+
 /// `new` with the openings of `old`, each at its old distance from the end of the plate that it is nearer to; one that
 /// reaches from end to end still does. None runs off the plate: where there is too little room an opening
 /// is moved on, and cut only where it is longer than the plate. In a drag, `old` is the plate before the drag.

@@ -173,9 +173,9 @@ impl Context<'_> {
             let remark = if verdict.remark.is_empty() { words } else { format!("{}; {words}", verdict.remark) };
             return (view, Verdict { remark, gravity_used: None, ..verdict });
         }
-        let Verdict { place, place_words, at, source, unconfirmed_record, .. } = verdict;
+        let Verdict { place, place_words, at, source, record, unconfirmed_record, .. } = verdict;
         let unsure = self.not_judged(verdict.criterion, verdict.sense, words);
-        (view, Verdict { place, place_words, at, source, unconfirmed_record, ..unsure })
+        (view, Verdict { place, place_words, at, source, record, unconfirmed_record, ..unsure })
     }
 
     /// The settled bound.

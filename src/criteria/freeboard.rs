@@ -49,6 +49,7 @@ fn verdict(context: &Context, view: &View, mouth_idx: usize) -> Verdict {
             place_words: brim.map_or_else(String::new, |b| context.mouth_words(mouth_idx, b)),
             at: brim,
             source: Source::RigidAcceleration,
+            record: record_idx,
             unconfirmed_record: context.unconfirmed(record_idx),
             ..verdict
         }

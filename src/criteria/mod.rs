@@ -79,8 +79,11 @@ pub fn judge_those(context: &Context, is_wanted: impl Fn(RestsOn) -> bool) -> Ou
 
 /// One verdict for each requirement record of a kind, from the record's value.
 fn by_records<T>(study: &ValidStudy, kind: fn(&Limit) -> Option<T>, verdict: impl Fn(T) -> Verdict) -> Vec<Verdict> {
-    let records = study.study().records_of(kind);
-    records.map(|(i, limit)| Verdict { unconfirmed_record: unconfirmed(study, Some(i)), ..verdict(limit) }).collect()
+    let by_record = |(i, limit)| {
+        let (record, unconfirmed_record) = (Some(i), unconfirmed(study, Some(i)));
+        Verdict { record, unconfirmed_record, ..verdict(limit) }
+    };
+    study.study().records_of(kind).map(by_record).collect()
 }
 
 /// The index of a record when it is not confirmed.

@@ -37,6 +37,7 @@ fn verdict(context: &Context, vapour_pa: f64) -> Verdict {
         place_words: "free surface".to_owned(),
         at: settled.main_pool().and_then(|p| p.surface.first()).map(|c| c.left + (c.right - c.left) * 0.5),
         source: Source::VapourMargin,
+        record: record_idx,
         unconfirmed_record: context.unconfirmed(record_idx),
         working: vec![
             WorkLine {

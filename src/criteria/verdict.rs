@@ -117,7 +117,9 @@ pub struct Verdict {
     pub trust: Vec<Trust>,
     /// Why it was not judged, or a caution; may be empty.
     pub remark: String,
-    /// Index of an unconfirmed requirement record that it rests on.
+    /// Index of the requirement record that its limit rests on.
+    pub record: Option<usize>,
+    /// The same where that record is unconfirmed.
     pub unconfirmed_record: Option<usize>,
     /// The bound under which it is the worse; none where there is but one.
     pub bound: Option<Bound>,
@@ -192,6 +194,7 @@ impl Verdict {
             source: Source::RigidAcceleration,
             trust,
             remark: reason,
+            record: None,
             unconfirmed_record: None,
             bound: None,
             gravity_used: None,

@@ -223,7 +223,9 @@ fn stages_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk) {
         let text = place.with_min_x(place.left() + sample).expand2(vec2(0.5, 0.0));
         field::paint_fitting(ui, text, Align::Min, stage.word(), font, color);
         super::marks::paint_focus(ui.painter(), place, &response, desk.look);
-        if response.on_hover_text(stage.words()).clicked() {
+        let time = case.transfer.as_ref().and_then(|t| t.as_ref().ok()).filter(|_| stage != Stage::Released);
+        let hint = time.map_or(stage.words().to_owned(), |transfer| format!("{}. {}", stage.words(), transfer.words));
+        if response.on_hover_text(hint).clicked() {
             desk.view.stage = Some(stage);
         }
     }

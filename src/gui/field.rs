@@ -167,6 +167,29 @@ pub fn paint_fitting(ui: &Ui, rect: Rect, align: Align, text: &str, font: egui::
     paint_job(ui, rect, align, font::runs([(text, font, color)]));
 }
 
+/// `text` with its middle left out where it is wider than `width`: names often differ only at their end.
+pub fn shortened(ui: &Ui, text: &str, font: &egui::FontId, width: f32) -> String {
+    let fits = |text: &str| {
+        let galley = ui.painter().layout_no_wrap(text.to_owned(), font.clone(), Color32::PLACEHOLDER);
+        galley.size().x <= width
+    };
+    if fits(text) {
+        return text.to_owned();
+    }
+    let chars: Vec<char> = text.chars().collect();
+    let with_kept = |n: usize| {
+        let (head, tail) = (&chars[..n.div_ceil(2)], &chars[chars.len() - n / 2..]);
+        let [head, tail] = [head, tail].map(|part| part.iter().collect::<String>());
+        format!("{}…{}", head.trim_end(), tail.trim_start())
+    };
+    let (mut fitting, mut too_many) = (0, chars.len());
+    while fitting + 1 < too_many {
+        let n = (fitting + too_many) / 2;
+        if fits(&with_kept(n)) { fitting = n } else { too_many = n }
+    }
+    with_kept(fitting)
+}
+
 /// Runs of text on one line, cut off with an ellipsis where `rect` is too narrow. Gives the text's place.
 pub fn paint_job(ui: &Ui, rect: Rect, align: Align, mut job: egui::text::LayoutJob) -> Rect {
     job.wrap.max_width = rect.width().max(0.0);

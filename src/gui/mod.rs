@@ -45,5 +45,5 @@ pub use pictures::Table;
 pub use selected::Selected;
 pub use settings::Settings;
 pub use stage::Stage;
-pub use view::{Camera, Pen, Proposal, View};
+pub use view::{Camera, Pen, Proposal, VerdictAt, View};
 pub use window::Window;

@@ -1,9 +1,9 @@
 //! The list of problems: what is wrong, where, how to mend it. It takes the plot area while the study has faults, or
-//! while a file could not be opened.
+//! while a file could not be opened. What one obvious step mends has a button for it.
 
 use egui::{Align, Align2, Button, Rect, Role, Sense, Ui, UiBuilder, WidgetInfo, pos2, vec2};
 
-use crate::app::Derived;
+use crate::app::{Derived, Mend};
 use crate::problem::{Place, Problem, Severity};
 
 use super::{Command, Desk, Selected, field, font, marks};
@@ -28,13 +28,15 @@ pub fn problems_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk) {
     };
     let note = format!("{}.{stale}", counts(problems));
     let button = desk.doc.undo_label().map(|label| format!("Undo {}", super::commands::lower_first(label)));
-    list_ui(ui, rect, desk, "Put right before judging", &note, problems, true, button.map(|b| (b, Command::Undo)));
+    let mends = desk.doc.mends();
+    let undo = button.map(|words| (words, Command::Undo));
+    list_ui(ui, rect, desk, "Put right before judging", &note, problems, Some(mends), undo);
 }
 
 /// The problems of a file in `rect`. Gives whether the list was closed.
 pub fn file_trouble_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, trouble: &FileTrouble) -> bool {
     let note = "The scenario that was open is kept.";
-    list_ui(ui, rect, desk, &trouble.title, note, &trouble.problems, false, None);
+    list_ui(ui, rect, desk, &trouble.title, note, &trouble.problems, None, None);
     let head = rect.shrink2(vec2(16.0, 8.0)).with_max_y(rect.top() + 28.0);
     field::link_ui(ui, head, Align::Max, "Close this list", "Close this list", desk.look).clicked()
 }
@@ -47,8 +49,8 @@ fn list_ui(
     title: &str,
     note: &str,
     problems: &[Problem],
-    is_on_board: bool,
-    button: Option<(String, Command)>,
+    mends: Option<&[Option<Mend>]>,
+    undo: Option<(String, Command)>,
 ) {
     let look = desk.look;
     ui.painter().rect_filled(rect, 0.0, look.board);
@@ -66,8 +68,9 @@ fn list_ui(
     egui::ScrollArea::vertical().auto_shrink(false).show(&mut child, |ui| {
         ui.spacing_mut().item_spacing = egui::Vec2::ZERO;
         for (i, problem) in problems.iter().enumerate() {
-            let button = button.as_ref().filter(|_| i == 0);
-            problem_ui(ui, desk, i, problem, is_on_board, button);
+            let mend = mends.and_then(|mends| mends.get(i)?.as_ref());
+            let undo = undo.as_ref().filter(|_| i == 0);
+            problem_ui(ui, desk, i, problem, mends.is_some(), mend, undo);
         }
     });
 }
@@ -78,7 +81,8 @@ fn problem_ui(
     i: usize,
     problem: &Problem,
     is_on_board: bool,
-    button: Option<&(String, Command)>,
+    mend: Option<&Mend>,
+    undo: Option<&(String, Command)>,
 ) {
     let look = desk.look;
     let (rect, response) = ui.allocate_exact_size(vec2(ui.available_width(), ROW), Sense::click());
@@ -104,7 +108,7 @@ fn problem_ui(
         Severity::Fault => marks::paint_fault(ui.painter(), mark, 9.5, i + 1, look),
         Severity::Warning => marks::paint_warning(ui.painter(), mark, 9.5, i + 1, look),
     }
-    let button_width = if button.is_some() { 190.0 } else { 0.0 };
+    let button_width = if mend.is_some() || undo.is_some() { 200.0 } else { 0.0 };
     let text = inner.with_min_x(inner.left() + 36.0).with_max_x(inner.right() - button_width);
     let at = |y: f32| {
         Rect::from_min_max(pos2(text.left(), rect.top() + y - 9.0), pos2(text.right(), rect.top() + y + 9.0))
@@ -120,11 +124,30 @@ fn problem_ui(
     let y = ui.painter().round_to_pixel_center(rect.bottom() - 0.5);
     ui.painter().hline(inner.x_range(), y, (1.0, look.line2));
     marks::paint_focus(ui.painter(), rect.shrink(4.0), &response, look);
-    if let Some((words, command)) = button {
-        let place = Align2::RIGHT_CENTER.align_size_within_rect(vec2(180.0, 26.0), inner);
-        if ui.place(place, Button::new(words).truncate()).clicked() {
-            desk.run(*command);
-        }
+    // One button in the middle, two one above the other.
+    let both = mend.is_some() && undo.is_some();
+    let place = |is_lower: bool| {
+        let off = vec2(
+            0.0,
+            if !both {
+                0.0
+            } else if is_lower {
+                13.0
+            } else {
+                -13.0
+            },
+        );
+        Align2::RIGHT_CENTER.align_size_within_rect(vec2(188.0, 24.0), inner.translate(off))
+    };
+    if let Some(Mend { words, edit }) = mend
+        && ui.place(place(false), Button::new(words).truncate()).clicked()
+    {
+        desk.edit(edit.clone());
+    }
+    if let Some((words, command)) = undo
+        && ui.place(place(true), Button::new(words).truncate()).clicked()
+    {
+        desk.run(*command);
     }
     response.on_hover_text(spoken);
 }

@@ -161,7 +161,10 @@ fn add_ui(ui: &Ui, rect: Rect, desk: &mut Desk) {
     response.widget_info(|| WidgetInfo::labeled(Role::Button, true, "Add a load case"));
     let ground = if response.hovered() { look.hover } else { Color32::TRANSPARENT };
     ui.painter().rect(rect, CornerRadius::same(3), ground, (1.0, look.line), StrokeKind::Inside);
-    ui.painter().text(rect.center(), Align2::CENTER_CENTER, "Add a load case", font::body(), look.accent);
+    // Where the strip ends before the card does, the words stand in what is seen of it, the first of them alone if need be.
+    let seen = rect.intersect(ui.clip_rect()).shrink2(vec2(8.0, 0.0));
+    let words = if seen.width() < 96.0 { "Add" } else { "Add a load case" };
+    ui.painter().text(seen.center(), Align2::CENTER_CENTER, words, font::body(), look.accent);
     marks::paint_focus(ui.painter(), rect, &response, look);
     if response.clicked() {
         desk.run(Command::AddCase);

@@ -3,10 +3,10 @@
 use egui::{Align, Align2, Rect, Response, Role, Sense, Ui, UiBuilder, WidgetInfo, pos2, vec2};
 
 use crate::analysis::{State, Verdict};
-use crate::units::{number, utilisation_text};
+use crate::units::{Quantity, number, utilisation_text};
 
 use super::desk::Judged;
-use super::{Desk, field, font, marks, problems, working};
+use super::{Desk, VerdictAt, field, font, marks, problems, working};
 
 const INSET: f32 = 17.0;
 const HEAD: f32 = 30.0;
@@ -75,7 +75,7 @@ fn rows_ui(ui: &mut Ui, row_height: f32, desk: &mut Desk, judged: Judged, column
             continue;
         }
         n_shown += 1;
-        verdict_ui(ui, row_height, desk, judged, (c, v));
+        verdict_ui(ui, row_height, desk, judged, VerdictAt::Case(c, v));
     }
     if n_shown == 0 {
         note_ui(ui, desk, "No check applies: add a load case, a mouth or a requirement record");
@@ -89,35 +89,30 @@ fn layout_ui(ui: &mut Ui, row_height: f32, desk: &mut Desk, judged: Judged) {
         return;
     }
     quiet_heading_ui(ui, desk, "Layout of plates, tank level and at rest");
-    for verdict in &layout.verdicts {
-        let (rect, response) = ui.allocate_exact_size(vec2(ui.available_width(), row_height), Sense::hover());
-        let spoken = spoken_words(verdict, None, desk);
-        response.widget_info(|| WidgetInfo::labeled(Role::Label, true, &spoken));
-        row_ui(ui, rect, desk, verdict, None, false);
-        let y = ui.painter().round_to_pixel_center(rect.bottom() - 0.5);
-        ui.painter().hline(rect.shrink2(vec2(INSET, 0.0)).x_range(), y, (1.0, desk.look.line2));
-        tooltip(response, verdict, desk);
+    for i in 0..layout.verdicts.len() {
+        verdict_ui(ui, row_height, desk, judged, VerdictAt::Layout(i));
     }
     quiet_heading_ui(ui, desk, "Load cases");
 }
 
-fn verdict_ui(ui: &mut Ui, row_height: f32, desk: &mut Desk, judged: Judged, at: (usize, usize)) {
+fn verdict_ui(ui: &mut Ui, row_height: f32, desk: &mut Desk, judged: Judged, at: VerdictAt) {
     let look = desk.look;
-    let verdict = &judged.results.cases[at.0].verdicts[at.1];
+    let Some(verdict) = at.find(judged.results) else { return };
+    let case_idx = at.case_idx();
     let is_open = desk.view.open_verdict == Some(at) && !judged.is_stale;
     let top = ui.cursor().top();
     let (rect, response) = ui.allocate_exact_size(vec2(ui.available_width(), row_height), Sense::click());
-    let spoken = spoken_words(verdict, Some(at.0), desk);
+    let spoken = spoken_words(verdict, case_idx, desk);
     response.widget_info(|| WidgetInfo::selected(Role::ListBoxOption, true, is_open, &spoken));
     let ground = ui.painter().add(egui::Shape::Noop);
     if response.clicked() {
         desk.view.open_verdict = if is_open { None } else { Some(at) };
-        desk.view.case_idx = at.0;
+        desk.view.case_idx = case_idx.unwrap_or(desk.view.case_idx);
     }
-    row_ui(ui, rect, desk, verdict, Some(at.0), is_open);
+    row_ui(ui, rect, desk, verdict, case_idx, is_open);
     marks::paint_focus(ui.painter(), rect.shrink(5.0), &response, look);
     if is_open {
-        working::working_ui(ui, INSET, desk, verdict, at.0);
+        working::working_ui(ui, INSET, desk, verdict, case_idx);
     }
     let whole = rect.with_max_y(ui.cursor().top());
     if is_open {
@@ -130,7 +125,7 @@ fn verdict_ui(ui: &mut Ui, row_height: f32, desk: &mut Desk, judged: Judged, at:
     let y = ui.painter().round_to_pixel_center(whole.bottom() - 0.5);
     ui.painter().hline(whole.shrink2(vec2(INSET, 0.0)).x_range(), y, (1.0, look.line2));
     if !is_open {
-        tooltip(response, verdict, desk);
+        tooltip(response, verdict, case_idx, desk);
     }
 }
 
@@ -170,19 +165,23 @@ fn third_line_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: 
     let look = desk.look;
     let (small, strong) = (font::small, font::small_figure);
     let case = case_idx.map_or_else(String::new, |i| format!("case {}, ", i + 1));
-    let place = format!("   {case}{}", verdict.place_words);
+    let place = format!("{case}{}", verdict.place_words);
     let job = match (verdict.demand, verdict.limit) {
         (Some(demand), Some(limit)) if verdict.state != State::NotJudged => {
             let unit = desk.unit_near(demand.quantity, demand.si.abs().max(limit.si.abs()));
-            let [demand, limit] = [demand, limit].map(|m| number(unit.from_si(m.si), 3));
-            let gap = if unit.symbol == "°" { "" } else { " " };
+            let significant = if demand.quantity == Quantity::Count { 1 } else { 3 };
+            let [demand, limit] = [demand, limit].map(|m| number(unit.from_si(m.si), significant));
+            let gap = if ["°", ""].contains(&unit.symbol) { "" } else { " " };
             let sense = format!("{gap}{}, {} ", unit.symbol, verdict.sense.words());
-            font::runs([
+            let numbers = [
                 (demand.as_str(), strong(), look.ink),
                 (&sense, small(), look.ink2),
                 (&limit, strong(), look.ink),
-                (&place, small(), look.ink2),
-            ])
+                ("   ", small(), look.ink2),
+            ];
+            let taken = ui.painter().layout_job(font::runs(numbers.clone())).size().x;
+            let place = field::shortened(ui, &place, &small(), rect.width() - taken);
+            font::runs(numbers.into_iter().chain([(place.as_str(), small(), look.ink2)]))
         }
         _ => {
             let remark = if verdict.remark.is_empty() { verdict.state.word() } else { &verdict.remark };
@@ -193,7 +192,7 @@ fn third_line_ui(ui: &Ui, rect: Rect, desk: &Desk, verdict: &Verdict, case_idx: 
 }
 
 /// Checks that do not apply, and what the user should know of the input: quiet, never left out.
-fn quiet_rows_ui(ui: &mut Ui, desk: &Desk, judged: Judged, column: &VerdictColumn) {
+fn quiet_rows_ui(ui: &mut Ui, desk: &mut Desk, judged: Judged, column: &VerdictColumn) {
     let mut rows: Vec<(String, String, Vec<usize>)> = Vec::new();
     for (c, case) in judged.results.cases.iter().enumerate() {
         if column.is_this_case_only && c != desk.view.case_idx {
@@ -223,9 +222,15 @@ fn quiet_rows_ui(ui: &mut Ui, desk: &Desk, judged: Judged, column: &VerdictColum
     if !judged.results.warnings.is_empty() {
         quiet_heading_ui(ui, desk, "To know of the input");
     }
-    for warning in &judged.results.warnings {
+    for (i, warning) in judged.results.warnings.iter().enumerate() {
         let title = problems::capitalised(&warning.place.to_string());
         quiet_row_ui(ui, desk, &title, &format!("{} {}", warning.message, warning.hint));
+        if let Some(Some(mend)) = desk.doc.mends().get(i).filter(|_| !judged.is_stale) {
+            let rect = field::row_rect(ui).shrink2(vec2(INSET, 0.0));
+            if field::link_ui(ui, rect, Align::Min, &mend.words, &mend.words, desk.look).clicked() {
+                desk.edit(mend.edit.clone());
+            }
+        }
     }
 }
 
@@ -267,9 +272,9 @@ fn stale_ui(ui: &Ui, foot: Rect, desk: &Desk) {
     }
 }
 
-fn tooltip(response: Response, verdict: &Verdict, desk: &Desk) {
+fn tooltip(response: Response, verdict: &Verdict, case_idx: Option<usize>, desk: &Desk) {
     response.on_hover_ui(|ui| {
-        ui.label(format!("{}, {}", verdict.criterion, verdict.place_words));
+        ui.label(spoken_words(verdict, case_idx, desk));
         if !verdict.remark.is_empty() {
             ui.label(egui::RichText::new(&verdict.remark).color(desk.look.ink2));
         }

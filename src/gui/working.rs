@@ -1,4 +1,5 @@
-//! The working of the opened verdict: formulas with the numbers put in, what would make it hold, trust, source.
+//! The working of the opened verdict: formulas with the numbers put in, what would make it hold, trust, source, and
+//! the requirement record that its limit comes from.
 
 use egui::{Align, Rect, Ui, UiBuilder, pos2, vec2};
 
@@ -12,7 +13,7 @@ use super::{Desk, field, font, formula};
 const LABEL: f32 = 46.0;
 
 /// The working, below the verdict's row; `inset` from both sides of the column.
-pub fn working_ui(ui: &mut Ui, inset: f32, desk: &mut Desk, verdict: &Verdict, case_idx: usize) {
+pub fn working_ui(ui: &mut Ui, inset: f32, desk: &mut Desk, verdict: &Verdict, case_idx: Option<usize>) {
     let outer = ui.available_rect_before_wrap();
     let inner = outer.with_min_x(outer.left() + inset).with_max_x(outer.right() - inset);
     ui.scope_builder(UiBuilder::new().max_rect(inner), |ui| {
@@ -43,7 +44,9 @@ pub fn working_ui(ui: &mut Ui, inset: f32, desk: &mut Desk, verdict: &Verdict, c
         let entry = verdict.source.entry();
         labelled_ui(ui, desk, "Source", &entry.short).on_hover_text(format!("{}\n{}", entry.full, entry.status));
         record_ui(ui, desk, verdict);
-        note_ui(ui, desk, verdict, case_idx);
+        if let Some(case_idx) = case_idx {
+            note_ui(ui, desk, verdict, case_idx);
+        }
         ui.add_space(10.0);
     });
 }
@@ -94,17 +97,20 @@ fn trust_text(verdict: &Verdict) -> String {
     if told.is_empty() { "inside the method's range on all five".to_owned() } else { told.join("; ") }
 }
 
+/// The requirement record that gives the limit: clause, edition, where it came from, and whether anyone has confirmed it.
 fn record_ui(ui: &mut Ui, desk: &mut Desk, verdict: &Verdict) {
-    let Some((i, record)) = verdict.unconfirmed_record.and_then(|i| Some((i, desk.study().records.get(i)?))) else {
-        return;
-    };
-    let place: Vec<&str> =
-        [&record.clause, &record.edition].into_iter().map(String::as_str).filter(|t| !t.is_empty()).collect();
-    let place = if place.is_empty() { "no clause given".to_owned() } else { place.join(", ") };
-    labelled_ui(ui, desk, "Record", &format!("{}, {place}, unconfirmed", record.title));
-    let rect = field::row_rect(ui).with_min_x(ui.cursor().left() + LABEL);
-    if field::link_ui(ui, rect, Align::Min, "Confirm this record", "Confirm this record", desk.look).clicked() {
-        desk.edit(confirm(&desk.study().records, i, true));
+    let Some((i, record)) = verdict.record.and_then(|i| Some((i, desk.study().records.get(i)?))) else { return };
+    let state = if record.confirmed { "confirmed" } else { "unconfirmed" };
+    labelled_ui(ui, desk, "Limit", &format!("{}, {state}", record.title));
+    let given = |text: &str, none: &str| if text.is_empty() { none.to_owned() } else { text.to_owned() };
+    labelled_ui(ui, desk, "Clause", &given(&record.clause, "none given"));
+    labelled_ui(ui, desk, "Edition", &given(&record.edition, "none given"));
+    labelled_ui(ui, desk, "From", &given(&record.origin, "no origin given"));
+    if !record.confirmed {
+        let rect = field::row_rect(ui).with_min_x(ui.cursor().left() + LABEL);
+        if field::link_ui(ui, rect, Align::Min, "Confirm this record", "Confirm this record", desk.look).clicked() {
+            desk.edit(confirm(&desk.study().records, i, true));
+        }
     }
 }
 

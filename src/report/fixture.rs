@@ -363,6 +363,7 @@ fn verdict(
             .map(|(reach, name)| Trust { name, reach, words: format!("{name} 0.3") })
             .collect(),
         remark: String::new(),
+        record: None,
         unconfirmed_record: None,
         bound: None,
         gravity_used: None,

@@ -24,6 +24,9 @@ pub const MAX_OPENINGS: usize = 100;
 /// Compartments with a fill of their own.
 pub const MAX_COMPARTMENTS: usize = 100;
 
+/// Materials of the scenario's own.
+pub const MAX_MATERIALS: usize = 100;
+
 /// Rows of the width table.
 pub const MAX_WIDTH_ROWS: usize = 2000;
 

@@ -22,6 +22,16 @@ impl Num {
         self.0 * 1e3
     }
 
+    /// MPa to Pa.
+    pub fn mpa(self) -> f64 {
+        self.0 * 1e6
+    }
+
+    /// GPa to Pa.
+    pub fn gpa(self) -> f64 {
+        self.0 * 1e9
+    }
+
     /// Percent to a share.
     pub fn percent(self) -> f64 {
         self.0 / 100.0
@@ -72,6 +82,16 @@ pub(super) fn kpa(pa: f64) -> String {
     number(pa / 1e3)
 }
 
+/// A value in Pa, written in MPa.
+pub(super) fn mpa(pa: f64) -> String {
+    number(pa / 1e6)
+}
+
+/// A value in Pa, written in GPa.
+pub(super) fn gpa(pa: f64) -> String {
+    number(pa / 1e9)
+}
+
 /// A share, written in percent.
 pub(super) fn percent(share: f64) -> String {
     number(share * 100.0)
@@ -103,6 +123,8 @@ mod tests {
             (mm(-0.0), "0"),
             (mm(1.0 / 3.0), "333.333333333333"),
             (kpa(101_325.0), "101.325"),
+            (mpa(235e6), "235"),
+            (gpa(1.4e9), "1.4"),
             (percent(0.55), "55"),
             (percent(0.07), "7"),
             (deg(std::f64::consts::FRAC_PI_3), "60"),
@@ -124,8 +146,15 @@ mod tests {
             for exponent in [-18, -13, -11, -9, 0] {
                 let text = number(format!("{digits}e{exponent}").parse().unwrap());
                 let read = Num(text.parse().unwrap());
-                let again =
-                    [mm(read.mm()), kpa(read.kpa()), percent(read.percent()), deg(read.deg()), number(read.si())];
+                let again = [
+                    mm(read.mm()),
+                    kpa(read.kpa()),
+                    mpa(read.mpa()),
+                    gpa(read.gpa()),
+                    percent(read.percent()),
+                    deg(read.deg()),
+                    number(read.si()),
+                ];
                 assert!(again.iter().all(|a| *a == text), "{text} came back as {again:?}");
             }
         }

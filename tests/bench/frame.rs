@@ -1,8 +1,14 @@
 //! A frame of the window: laying out, painting and tessellating, without a screen. What the graphics driver adds is
 //! not in it.
 
-use brimwright::gui::{Dialogs, Settings, Window};
+use std::hint::black_box;
+
+use brimwright::analysis;
+use brimwright::app::{Derived, EXAMPLES};
+use brimwright::gui::{Command, Dialogs, Settings, Window, look};
 use egui::{Event, Pos2, RawInput, Rect, pos2, vec2};
+use egui_kittest::Harness;
+use egui_kittest::kittest::Queryable;
 
 use crate::timing::{median_s, print_rate};
 
@@ -20,6 +26,54 @@ pub fn frame() {
         });
         print_rate(&format!("{width} x {height}, the fill dragged, all cases judged"), 1.0 / drag, 60.0);
     }
+}
+
+/// Frames while the first plate of an example goes to and fro by hand: nothing of the window's own work is left out. What
+/// of it is judging, and a frame without any, stand below.
+pub fn plate_drag() {
+    let size = vec2(1280.0, 800.0);
+    for file_name in ["fire-tank-lengthwise.ron", "fire-tank-crosswise.ron", "tanker-barrel-surge-plates.ron"] {
+        let at = on_first_plate(size, file_name);
+        let mut stage = Stage::new(size.x, size.y);
+        stage.open(file_name);
+        stage.frame(vec![Event::PointerMoved(at), press(at, true)]);
+        let mut n_frames = 0;
+        let drag = median_s(|| {
+            n_frames += 1;
+            // To and fro over 24 points, so that no two frames in a row are alike.
+            let off = (n_frames * 3 % 48 - 24_i32).abs() as f32;
+            stage.frame(vec![Event::PointerMoved(at + vec2(off - 8.0, 0.0))]);
+        });
+        stage.frame(vec![press(at, false)]);
+        let moved = stage.window.document().undo_label().unwrap_or("nothing moved").to_owned();
+        print_rate(&format!("{} x {}, {file_name}: {moved}", size.x, size.y), 1.0 / drag, 50.0);
+        let idle = median_s(|| stage.frame(Vec::new()));
+        let Derived::Judged { study, .. } = stage.window.document().derived() else { continue };
+        let judging = median_s(|| _ = black_box(analysis::run(study)));
+        println!("    judging anew {:.1} ms, a frame at rest {:.1} ms", 1e3 * judging, 1e3 * idle);
+    }
+}
+
+/// Where on the screen the first plate of an example is taken hold of.
+fn on_first_plate(size: egui::Vec2, file_name: &str) -> Pos2 {
+    let mut harness = Harness::builder().with_size(size).with_context_setup(look::install).build_ui_state(
+        |ui, window: &mut Option<Window>| {
+            let start = || Window::new(ui.ctx(), None, Settings::default(), Dialogs::Own);
+            window.get_or_insert_with(start).ui(ui);
+        },
+        None,
+    );
+    harness.step();
+    let ctx = harness.ctx.clone();
+    harness.state_mut().as_mut().expect("a window").run(&ctx, example(file_name));
+    harness.run_steps(3);
+    let on_board = |at: &Pos2| at.x > 250.0 && at.x < 960.0;
+    let places = harness.get_all_by_label_contains("Plate 1, ").map(|node| node.rect().center());
+    places.into_iter().find(on_board).expect("the plate on the board")
+}
+
+fn example(file_name: &str) -> Command {
+    Command::OpenExample(EXAMPLES.iter().position(|e| e.file_name == file_name).expect("an example"))
 }
 
 /// A window on a bare context.
@@ -40,11 +94,18 @@ impl Stage {
         stage
     }
 
+    fn open(&mut self, file_name: &str) {
+        self.window.run(&self.ctx, example(file_name));
+        for _ in 0..3 {
+            self.frame(Vec::new());
+        }
+    }
+
     fn frame(&mut self, events: Vec<Event>) {
         let input =
             RawInput { screen_rect: Some(Rect::from_min_size(Pos2::ZERO, self.size)), events, ..Default::default() };
         let output = self.ctx.run_ui(input, |ui| self.window.ui(ui));
-        std::hint::black_box(self.ctx.tessellate(output.shapes.clone(), output.pixels_per_point));
+        black_box(self.ctx.tessellate(output.shapes.clone(), output.pixels_per_point));
         output.drop_without_applying_deltas();
     }
 

@@ -21,6 +21,8 @@ const SECTIONS: &[(&str, fn())] = &[
     ("pictures", pictures::pictures),
     #[cfg(feature = "gui")]
     ("frame", frame::frame),
+    #[cfg(feature = "gui")]
+    ("plate drag", frame::plate_drag),
 ];
 
 fn main() {

@@ -6,6 +6,7 @@ use brimwright::app::Edit;
 use brimwright::cases::{Accel, AccelUnit, Attitude, LoadCase};
 use brimwright::geom::Point;
 use brimwright::liquid::Liquid;
+use brimwright::material::Material;
 use brimwright::section::{
     EdgeKind, Obstacle, Opening, OpeningShape, OutlineEdge, Panel, PanelEdges, Plate, Section, Vertex, WidthLaw,
 };
@@ -195,6 +196,22 @@ fn record() -> impl Strategy<Value = Record> {
     )
 }
 
+fn material() -> impl Strategy<Value = Material> {
+    let numbers = (number(), number(), number(), number(), number());
+    (text(), numbers, text()).prop_map(
+        |(name, (yield_pa, modulus_pa, poisson, density_kg_per_m3, factor), source)| Material {
+            name,
+            yield_pa,
+            modulus_pa,
+            poisson,
+            density_kg_per_m3,
+            factor,
+            source,
+            status: Material::OWN_STATUS.to_owned(),
+        },
+    )
+}
+
 fn named_point() -> impl Strategy<Value = NamedPoint> {
     (text(), point()).prop_map(|(name, at)| NamedPoint { name, at })
 }
@@ -215,7 +232,8 @@ pub fn study() -> BoxedStrategy<Study> {
     let section = (vec(outline_edge(), 0..8), vec(obstacle(), 0..3), vec(plate(), 0..3), width())
         .prop_map(|(outline, obstacles, plates, width)| Section { outline, obstacles, plates, width });
     // Few studies name another coefficient than the usual one.
-    let flow = (vec(compartment(), 0..3), option::of(point()), prop_oneof![Just(0.6), number()]);
+    let c_d = prop_oneof![Just(0.6), number()];
+    let flow = (vec(compartment(), 0..3), option::of(point()), c_d, vec(material(), 0..3));
     let rest = (vec(case(), 0..4), vec(named_point(), 0..3), point(), vec(record(), 0..3), vec(note(), 0..3));
     (words, physics, section, flow, rest)
         .prop_map(
@@ -223,7 +241,7 @@ pub fn study() -> BoxedStrategy<Study> {
                 [title, author, revision, notes],
                 (gravity_m_per_s2, air_pressure_abs_pa, ullage_gage_pa, liquid, fill),
                 section,
-                (compartments, sump, discharge_coefficient),
+                (compartments, sump, discharge_coefficient, materials),
                 (cases, points, moment_about, records, verdict_notes),
             )| Study {
                 title,
@@ -239,7 +257,7 @@ pub fn study() -> BoxedStrategy<Study> {
                 compartments,
                 sump,
                 discharge_coefficient,
-                materials: vec![],
+                materials,
                 cases,
                 points,
                 moment_about,
@@ -281,6 +299,8 @@ pub fn edit() -> BoxedStrategy<Edit> {
         (0..4_usize).prop_map(Edit::RemovePlate),
         vec(plate(), 0..3).prop_map(Edit::Plates),
         vec(compartment(), 0..3).prop_map(Edit::Compartments),
+        vec(material(), 0..3).prop_map(Edit::Materials),
+        (0..4_usize, material()).prop_map(|(i, m)| Edit::Material(i, Box::new(m))),
         option::of(point()).prop_map(Edit::Sump),
         number().prop_map(Edit::DischargeCoefficient),
         (0..5_usize, accel()).prop_map(|(i, a)| Edit::CaseAccel(i, a)),

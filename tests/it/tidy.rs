@@ -38,9 +38,12 @@ const ARROWS: &[(&str, &[&str])] = &[
             "criteria",
         ],
     ),
-    ("scenario", &["units", "problem", "geom", "section", "liquid", "cases", "study"]),
+    ("scenario", &["units", "problem", "geom", "section", "liquid", "material", "cases", "study"]),
     ("report", &["units", "sources", "problem", "geom", "section", "liquid", "cases", "study", "analysis"]),
-    ("app", &["problem", "progress", "geom", "section", "liquid", "cases", "study", "analysis", "scenario"]),
+    (
+        "app",
+        &["problem", "progress", "geom", "section", "liquid", "material", "cases", "study", "analysis", "scenario"],
+    ),
     (
         "gui",
         &[

@@ -82,9 +82,9 @@ impl Standing<'_> {
     ) -> Outcome {
         let mut outcome = Outcome::default();
         for (i, limit) in self.study.study().records_of(kind) {
-            let unconfirmed_record = unconfirmed(self.study, Some(i));
+            let (record, unconfirmed_record) = (Some(i), unconfirmed(self.study, Some(i)));
             match verdicts(limit).into_iter().min_by(Verdict::order) {
-                Some(worst) => outcome.verdicts.push(Verdict { unconfirmed_record, ..worst }),
+                Some(worst) => outcome.verdicts.push(Verdict { record, unconfirmed_record, ..worst }),
                 None => outcome.absent.push(absent(rule, nothing.into())),
             }
         }

@@ -15,7 +15,7 @@ use crate::units::{Measure, Quantity, number};
 use super::dims::paint_freeboard;
 use super::drag::Feedback;
 use super::labels::Labels;
-use super::legend::paint_legend;
+use super::legend::{legend_areas, paint_legend};
 use super::lines;
 use super::scene::Scene;
 
@@ -23,6 +23,7 @@ use super::scene::Scene;
 pub fn annotate(painter: &Painter, scene: &Scene, look: &Look) {
     let mut labels = off_walls(scene);
     scene.dial.areas(&scene.hanging).into_iter().for_each(|area| labels.keep_off(area));
+    legend_areas(scene).into_iter().for_each(|(_, paper)| labels.keep_off(paper));
     for piece in scene.model.surface() {
         labels.keep_off_line(&[scene.at(piece.left), scene.at(piece.right)]);
     }

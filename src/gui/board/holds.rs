@@ -48,11 +48,12 @@ impl Holds {
 
     /// The curve, the limit of spill alone, and what they are.
     pub fn paint_edge(&self, painter: &Painter, dial: &Dial, labels: &mut Labels, look: &Look) {
-        let painter = painter.with_clip_rect(room(dial).intersect(painter.clip_rect()));
+        let room = room(dial);
+        let (writer, painter) = (painter, painter.with_clip_rect(room.intersect(painter.clip_rect())));
         let faded = |color: Color32| if self.is_old { color.gamma_multiply(STALE_OPACITY) } else { color };
         if let Some(words) = self.words() {
             let at = dial.tip(self.envelope.rest_gravity) + vec2(0.0, 44.0);
-            let galley = painter.layout(words, font::small(), look.ink2, room(dial).width() - 8.0);
+            let galley = painter.layout(words, font::small(), look.ink2, room.width() - 8.0);
             let rect = labels.place_anyway(galley.size(), &[(at, Align2::CENTER_TOP)]);
             painter.rect_filled(rect.expand(2.0), 0.0, look.board);
             painter.galley(rect.min, galley, look.ink2);
@@ -93,9 +94,13 @@ impl Holds {
                 };
                 (place + aside, align)
             });
-            if let Some(rect) = labels.place(galley.size(), beside) {
-                painter.rect_filled(rect.expand2(vec2(2.0, -1.0)), 0.0, look.board);
-                painter.galley(rect.min, galley, look.ink2);
+            // Whole, or not at all.
+            let whole = |(at, align): &(Pos2, Align2)| {
+                room.expand2(vec2(6.0, 0.0)).contains_rect(align.anchor_size(*at, galley.size()))
+            };
+            if let Some(rect) = labels.place(galley.size(), beside.filter(whole)) {
+                writer.rect_filled(rect.expand2(vec2(2.0, -1.0)), 0.0, look.board);
+                writer.galley(rect.min, galley, look.ink2);
             }
         }
     }

@@ -8,19 +8,25 @@ use crate::units::{Quantity, fixed, number};
 use super::liquid::Tint;
 use super::scene::Scene;
 
-/// The tints with their pressures, under the bob, where there is room.
-pub fn paint_legend(painter: &Painter, scene: &Scene, look: &Look) {
-    let text = |words: String, font, ink| painter.layout_no_wrap(words, font, ink);
-    let (Some(tints), dial) = (scene.model.tints, &scene.dial) else { return };
+/// Where it stands: under the bob, where there is room and something is tinted. Gives its bar, and the paper under all
+/// of it.
+pub fn legend_areas(scene: &Scene) -> Option<(Rect, Rect)> {
+    let dial = &scene.dial;
     let bottom = scene.screen.rect.bottom() - 10.0;
     let width = dial.rect.width() - 34.0;
     let bar =
         Rect::from_min_max(pos2(dial.rect.left(), bottom - 28.0), pos2(dial.rect.left() + width, bottom - 17.0));
     let is_tinted = scene.model.bands().any(|b| b.tint != Tint::NotJudged);
     if bar.top() - 20.0 < dial.lowest(&scene.hanging) || !is_tinted {
-        return;
+        return None;
     }
-    let paper = Rect::from_min_max(bar.min - vec2(6.0, 18.0), pos2(dial.rect.right(), bottom + 2.0));
+    Some((bar, Rect::from_min_max(bar.min - vec2(6.0, 18.0), pos2(dial.rect.right(), bottom + 2.0))))
+}
+
+/// The tints with their pressures.
+pub fn paint_legend(painter: &Painter, scene: &Scene, look: &Look) {
+    let text = |words: String, font, ink| painter.layout_no_wrap(words, font, ink);
+    let (Some(tints), Some((bar, paper))) = (scene.model.tints, legend_areas(scene)) else { return };
     painter.rect_filled(paper, 0.0, look.board);
     let title = text("Gage pressure".to_owned(), font::small(), look.ink2);
     painter.galley(bar.left_top() - vec2(0.0, title.size().y + 1.0), title, look.ink2);

@@ -159,7 +159,7 @@ fn cached_model(ui: &Ui, id: Id, doc: &Document, view: &View, screen: &Screen) -
     };
     let shown = Shown {
         case_idx: view.case_idx,
-        open_verdict: view.open_verdict.filter(|(case, _)| *case == view.case_idx).map(|(_, verdict)| verdict),
+        open_verdict: view.open_verdict,
         stage: case.map(|case| view.stage_of(case)).unwrap_or_default(),
         plate_idx: view.selected.and_then(Selected::plate),
     };

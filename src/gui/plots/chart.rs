@@ -38,7 +38,8 @@ pub struct Chart<'a> {
 
 /// The plot in `rect`. Gives where it lies, to draw marks over it.
 pub fn chart_ui(ui: &mut Ui, rect: Rect, chart: Chart, look: &Look) -> PlotTransform {
-    let unit_at = pos2(rect.left(), rect.top() + 6.0);
+    // Clear of a number at the very top of the axis.
+    let unit_at = pos2(rect.left(), rect.top() + 5.0);
     ui.painter().text(unit_at, Align2::LEFT_CENTER, chart.y_unit, font::tick(), look.ink2);
     let ground = ui.painter().add(Shape::Noop);
     let (x, y) = (chart.x, chart.y);
@@ -76,7 +77,7 @@ pub fn chart_ui(ui: &mut Ui, rect: Rect, chart: Chart, look: &Look) -> PlotTrans
         .cursor_color(look.line)
         .show_crosshair(false)
         .label_formatter(move |at| hover_words(at, &names));
-    let body = rect.with_min_y(rect.top() + 14.0);
+    let body = rect.with_min_y(rect.top() + 17.0);
     let mut child = ui.new_child(UiBuilder::new().max_rect(body).id_salt(chart.id));
     let points: Vec<Vec<PlotPoint>> = chart.curves.iter().map(|curve| thinned(&curve.points, x, y)).collect();
     let response = plot.show(&mut child, |plot_ui| {

@@ -6,7 +6,7 @@ use egui::{Align2, Color32, ColorImage, Pos2, Rect, Stroke, TextureHandle, Textu
 
 use crate::analysis::{FillMap, MapPoint, NoFillMap, State};
 use crate::gui::pictures::Shown;
-use crate::gui::{Desk, Look};
+use crate::gui::{Desk, Look, font, marks};
 use crate::units::{Measure, Quantity, utilisation_text};
 
 use super::chart::{self, Chart};
@@ -85,7 +85,45 @@ pub(super) fn fill_map_ui(
         let number = (desk.view.case_idx + 1).to_string();
         chart::label(&painter, &frame, at + vec2(8.0, -9.0), Align2::LEFT_CENTER, &number, look.accent, look);
     }
+    legend_ui(ui, rect, map, look);
     hover_ui(ui, rect, frame, map, desk);
+}
+
+/// What tints and hatches stand for, above the map at the right, as far as there is room.
+fn legend_ui(ui: &Ui, rect: Rect, map: &FillMap, look: &Look) {
+    let painter = ui.painter();
+    let y = rect.top() + 5.0;
+    let mut right = rect.right();
+    let word = |right: &mut f32, word: &str, gap: f32| {
+        let text = painter.text(pos2(*right, y), Align2::RIGHT_CENTER, word, font::tick(), look.ink2);
+        *right = text.left() - gap;
+    };
+    let swatch = |right: &mut f32, width: f32| {
+        let place = Rect::from_min_max(pos2(*right - width, y - 4.0), pos2(*right, y + 4.0));
+        *right = place.left() - 4.0;
+        place
+    };
+    let is_there = |state: State| map.points.iter().flatten().any(|point| point.state == state);
+    for (state, color, spacing) in
+        [(State::NotJudged, look.state_fill(State::NotJudged), 4.0), (State::Fails, look.veil, 7.0)]
+    {
+        if is_there(state) && right > rect.left() + 200.0 {
+            word(&mut right, state.word(), 4.0);
+            let place = swatch(&mut right, 14.0);
+            painter.add(marks::hatch(place, spacing, Stroke::new(1.0, color)));
+            painter.rect_stroke(place, 0.0, (1.0, look.line), egui::StrokeKind::Inside);
+            right -= 8.0;
+        }
+    }
+    if right > rect.left() + 140.0 {
+        word(&mut right, "1", 4.0);
+        let place = swatch(&mut right, 60.0);
+        for i in 0..N_TINTS {
+            let x = |i: usize| place.left() + place.width() * i as f32 / N_TINTS as f32;
+            painter.rect_filled(place.with_min_x(x(i)).with_max_x(x(i + 1)), 0.0, look.band(i, N_TINTS));
+        }
+        word(&mut right, "used 0", 0.0);
+    }
 }
 
 /// What is under the pointer, in words.

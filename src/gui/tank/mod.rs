@@ -8,6 +8,7 @@ mod fill;
 mod flow;
 mod limits;
 mod liquid;
+mod materials;
 mod mouths;
 mod openings;
 mod outline;
@@ -27,6 +28,7 @@ pub(super) use records::confirm;
 pub struct TankColumn {
     shows_all_edges: bool,
     open_record: Option<usize>,
+    open_material: Option<usize>,
     is_over_board: bool,
     /// The part that was asked for from the folded headings.
     wanted: Option<usize>,
@@ -40,6 +42,7 @@ const PARTS: &[Part] = &[
     ("Liquid", liquid::liquid_ui),
     ("Outline", outline::outline_ui),
     ("Plates", plates::plates_ui),
+    ("Own materials", materials::materials_ui),
     ("Cells", cells::cells_ui),
     ("Compartments", compartments::compartments_ui),
     ("Mouths", mouths::mouths_ui),
@@ -113,6 +116,7 @@ fn headings_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk, column: &mut TankColumn
 fn short(title: &str) -> &str {
     match title {
         "Width law" => "Width",
+        "Own materials" => "Materials",
         "Compartments" => "Compart.",
         "Gas and air" => "Gas",
         "Sump and openings" => "Sump",

@@ -108,7 +108,8 @@ pub(super) fn list_row_ui(
         ui.painter().rect_filled(ground, 0.0, look.hover);
     }
     let text = rect.with_min_x(rect.left() + 18.0).with_max_x(field::number_right(rect) - taken);
-    field::paint_fitting(ui, text, Align::Min, words, font::body(), look.ink2);
+    let words = field::shortened(ui, words, &font::body(), text.width());
+    field::paint_fitting(ui, text, Align::Min, &words, font::body(), look.ink2);
     crate::gui::marks::paint_focus(ui.painter(), ground.shrink(2.0), &response, look);
     response
 }

@@ -6,11 +6,11 @@ use crate::app::Edit;
 use crate::geom::Point;
 use crate::gui::number::Number;
 use crate::gui::{Command, Desk, Selected, field, font, plating};
-use crate::material;
 use crate::section::{Panel, PanelEdges, Plate};
 use crate::units::{Measure, Quantity};
 
 use super::TankColumn;
+use super::materials::material_choice_ui;
 use super::openings::openings_ui;
 use super::outline::{fields_ui, list_row_ui};
 
@@ -119,11 +119,8 @@ fn plate_fields_ui(ui: &mut Ui, desk: &mut Desk, i: usize, plate: &Plate) {
     field::text_row_ui(ui, desk, ("plate material", i), "Material", &plate.material, |name| {
         with(&|p| p.material = name.clone())
     });
-    let mut rows: Vec<(Option<&str>, &str)> = vec![(None, "choose")];
-    let known = desk.study().materials.iter().chain(material::table());
-    rows.extend(known.map(|m| (Some(m.name.as_str()), m.name.as_str())));
-    if let Some(Some(name)) = field::choice_row_ui(ui, desk.look, "From the table", None, &rows) {
-        desk.edit(with(&|p| p.material = name.to_owned()));
+    if let Some(name) = material_choice_ui(ui, desk, &plate.material) {
+        desk.edit(with(&|p| p.material.clone_from(&name)));
     }
     let panel = plate.panel;
     Number::new(("plate stiffeners", i), "Stiffener spacing", 0.0, length)

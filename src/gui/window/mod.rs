@@ -25,7 +25,7 @@ use super::settings::Settings;
 use super::status::Asked;
 use super::tank::TankColumn;
 use super::verdicts::VerdictColumn;
-use super::{Command, Desk, Look, Pen, Proposal, Selected, Stage, View};
+use super::{Command, Desk, Look, Pen, Proposal, Selected, Stage, VerdictAt, View};
 use super::{
     board, case_head, commands, header, loads, look, plating, plots, starter, status, strip, tank, verdicts,
 };
@@ -346,7 +346,7 @@ impl Window {
         let Some(&(case_idx, verdict_idx)) = results.ranked().first() else { return };
         self.view.case_idx = case_idx;
         if results.cases[case_idx].verdicts[verdict_idx].state == State::Fails {
-            self.view.open_verdict = Some((case_idx, verdict_idx));
+            self.view.open_verdict = Some(VerdictAt::Case(case_idx, verdict_idx));
         }
     }
 

@@ -3,6 +3,7 @@
 
 mod cases;
 mod contents;
+mod materials;
 mod plates;
 mod records;
 mod section;
@@ -21,6 +22,7 @@ use super::number::Num;
 
 use cases::Case;
 use contents::{Compartment, Fill, Liquid};
+use materials::Material;
 use plates::Plate;
 use records::Record;
 use section::{Edge, Obstacle, Width};
@@ -51,6 +53,8 @@ pub(super) struct Scenario {
     obstacles: List<Obstacle, MAX_OBSTACLES>,
     #[serde(default)]
     plates: List<Plate, MAX_PLATES>,
+    #[serde(default)]
+    materials: List<Material, MAX_MATERIALS>,
     discharge_coefficient: Option<Num>,
     sump: Option<At>,
     #[serde(default)]
@@ -109,7 +113,7 @@ impl From<Scenario> for Study {
             compartments: file.compartments.map(study::Compartment::from),
             sump: file.sump.map(Point::from),
             discharge_coefficient: file.discharge_coefficient.map_or(study::DISCHARGE_COEFFICIENT, Num::si),
-            materials: Vec::new(),
+            materials: file.materials.map(crate::material::Material::from),
             cases: file.cases.map(LoadCase::from),
             points: file.points.map(|p| NamedPoint { name: p.name, at: point(p.s_mm, p.z_mm) }),
             moment_about: file.moment_about.into(),

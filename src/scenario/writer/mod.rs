@@ -5,6 +5,7 @@
 mod cases;
 mod contents;
 mod lines;
+mod materials;
 mod plates;
 mod records;
 mod section;
@@ -38,6 +39,7 @@ pub(super) fn text(study: &Study) -> String {
     out.key("fill", &contents::fill(study.fill));
     out.optional_list("compartments", &study.compartments, contents::compartment);
     section::write(&mut out, &study.section);
+    out.optional_list("materials", &study.materials, materials::write);
     // As text, so that what is left out is what is read again.
     let c_d = number(study.discharge_coefficient);
     if c_d != number(DISCHARGE_COEFFICIENT) {

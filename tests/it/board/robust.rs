@@ -1,6 +1,6 @@
 //! Any study in any window, and a wild hand.
 
-use brimwright::gui::{Pen, Stage};
+use brimwright::gui::{Pen, Stage, VerdictAt};
 use brimwright::section::{Opening, OpeningShape, Panel, Plate};
 use egui::{Event, Key, Modifiers, PointerButton, RawInput, Rect};
 use proptest::prelude::*;
@@ -75,7 +75,10 @@ proptest! {
     ) {
         let mut desk = Desk { doc: Document::new(study.clone(), None), view: view() };
         desk.view.case_idx = case_idx;
-        desk.view.open_verdict = Some((case_idx, selected));
+        desk.view.open_verdict = Some(match selected % 2 {
+            0 => VerdictAt::Case(case_idx, selected),
+            _ => VerdictAt::Layout(selected / 2),
+        });
         desk.view.selected = [
             Selected::Edge(case_idx), Selected::Vertex(case_idx), Selected::Obstacle(0),
             Selected::ObstacleVertex(0, 1), Selected::Point(0), Selected::Bob, Selected::Plate(case_idx),

@@ -1,7 +1,9 @@
 //! The window, driven by the names that assistive technology reads. No screen, no graphics driver.
 
+mod mends;
 mod pictures;
 mod tank;
+mod verdicts;
 
 use std::path::Path;
 
@@ -152,8 +154,8 @@ fn a_chosen_verdict_opens_its_working_and_its_case() {
     harness.run();
     let view = harness.state().as_ref().unwrap().view();
     assert_eq!(view.case_idx, last - 1);
-    let (case_idx, _) = view.open_verdict.expect("the working is open");
-    assert_eq!(case_idx, last - 1);
+    let open = view.open_verdict.expect("the working is open");
+    assert_eq!(open.case_idx(), Some(last - 1));
     harness.get_by_label("Note beside the verdict");
 }
 
@@ -161,9 +163,9 @@ fn a_chosen_verdict_opens_its_working_and_its_case() {
 fn an_opened_verdict_stays_open_when_its_place_in_the_list_changes() {
     let mut harness = window();
     let criterion = |harness: &Driven| {
-        let (c, v) = harness.state().as_ref().unwrap().view().open_verdict?;
+        let open = harness.state().as_ref().unwrap().view().open_verdict?;
         let Derived::Judged { results, .. } = doc(harness).derived() else { return None };
-        Some((c, results.cases[c].verdicts[v].criterion))
+        Some((open.case_idx(), open.find(results)?.criterion))
     };
     let before = criterion(&harness).expect("the worst verdict of the first example fails and is open");
     for share in ["40", "90", "15"] {

@@ -248,3 +248,47 @@ fn cells_are_listed_with_what_they_hold() {
     let words = "still 0.500 m³, capacity 1.00 m³, area 1.00 m²";
     assert_eq!(harness.query_all_by_label_contains(words).count(), 2);
 }
+
+/// Own materials are kept in the scenario; plates choose them by name, and follow it.
+#[test]
+fn own_materials_are_typed_chosen_renamed_and_kept() {
+    let mut harness = plain_box();
+    let before = doc(&harness).study().clone();
+    press(&mut harness, "Add a material");
+    for (label, text) in [
+        ("Yield stress", "310"),
+        ("Young's modulus", "195000"),
+        ("Poisson's ratio", "0,29"),
+        ("Its density", "7800"),
+        ("Factor", "1.6"),
+    ] {
+        type_into(&mut harness, label, text);
+    }
+    type_text(&mut harness, "Material 1, material 1", "Name", "mill plate");
+    type_text(&mut harness, "Material 1, mill plate", "Source", "mill sheet 7");
+    let own = doc(&harness).study().materials[0].clone();
+    assert_eq!((own.yield_pa, own.modulus_pa, own.poisson), (310e6, 195e9, 0.29));
+    assert_eq!((own.density_kg_per_m3, own.factor, own.source.as_str()), (7800.0, 1.6, "mill sheet 7"));
+
+    press(&mut harness, "Add a plate");
+    choose(&mut harness, "From the table, choose", "mill plate");
+    assert_eq!(plate(&harness).material, "mill plate");
+    harness.get_by_label("Source of the material, mill sheet 7");
+    assert!(harness.query_by_label("Take this material out").is_none(), "a plate uses it");
+    harness.get_by_label_contains("Stays while it is used by plate 1");
+    type_text(&mut harness, "Material 1, mill plate", "Name", "plate of heat 12");
+    assert_eq!(plate(&harness).material, "plate of heat 12", "the plate follows the name");
+    let study = doc(&harness).study().clone();
+    let read = brimwright::scenario::parse(brimwright::scenario::write(&study).as_bytes());
+    assert_eq!(read, Ok(study), "kept in the file");
+
+    choose(&mut harness, "From the table, choose", "structural steel S235");
+    press(&mut harness, "Take this material out");
+    assert!(doc(&harness).study().materials.is_empty());
+    // Added, five numbers, two texts, the plate, chosen, renamed, chosen, taken out.
+    for _ in 0..13 {
+        assert_ne!(*doc(&harness).study(), before);
+        run(&mut harness, Command::Undo);
+    }
+    assert_eq!(*doc(&harness).study(), before);
+}

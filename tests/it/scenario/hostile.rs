@@ -23,6 +23,12 @@ fn sizes_are_bounded() {
         ("points: [(s_mm: 400", "(s_mm: 0, z_mm: 0),", scenario::MAX_PLATE_POINTS, 3),
         ("openings: [", "(from_mm: 0, to_mm: 1, shape: holes(n: 1)),", scenario::MAX_OPENINGS, 4),
         ("compartments: [", "(name: \"c\", s_mm: 0, z_mm: 0, fill: level_mm(0)),", scenario::MAX_COMPARTMENTS, 2),
+        (
+            "materials: [",
+            "(name: \"m\", yield_mpa: 1, modulus_gpa: 1, poisson: 0, density_kg_per_m3: 1, factor: 1),",
+            scenario::MAX_MATERIALS,
+            1,
+        ),
     ] {
         let (at, _) = GOOD.match_indices(list).next().expect("the list is in the good text");
         let at = at + list.find('[').expect("a list") + 1;

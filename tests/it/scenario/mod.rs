@@ -55,6 +55,9 @@ const GOOD: &str = r#"/* a /* nested */ comment */
         ),
         (points: [(s_mm: 600, z_mm: 500), (s_mm: 600, z_mm: 200)], thickness_mm: 3, panel: (edges: simply_supported)),
     ],
+    materials: [
+        (name: "steel", yield_mpa: 190, modulus_gpa: 205.5, poisson: 0.3, density_kg_per_m3: 7850, factor: 1.6, source: "mill"),
+    ],
     discharge_coefficient: 0.62,
     sump: (s_mm: 20, z_mm: 5),
     points: [(name: "sensor", s_mm: 10, z_mm: 20)],

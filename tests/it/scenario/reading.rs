@@ -166,6 +166,14 @@ fn optional_keys_have_defaults() {
 }
 
 #[test]
+fn materials_of_its_own_are_read_in_their_units() {
+    let steel = &good().materials[0];
+    let numbers = (steel.yield_pa, steel.modulus_pa, steel.poisson, steel.density_kg_per_m3, steel.factor);
+    assert_eq!(numbers, (190e6, 205.5e9, 0.3, 7850.0, 1.6));
+    assert_eq!((steel.name.as_str(), steel.source.as_str()), ("steel", "mill"));
+}
+
+#[test]
 fn what_may_be_left_out_is_written_only_where_it_says_something() {
     let text = r#"(version: 1, title: "t", liquid: (name: "w", density_kg_per_m3: 1000), fill: level_mm(1),
         width: constant(width_mm: 1), outline: [],

@@ -10,7 +10,7 @@ mod pool;
 
 use crate::analysis::{Bound, CaseResult, Chord, Results, Settled, Verdict};
 use crate::geom::{Edge, Point, Vec2};
-use crate::gui::Stage;
+use crate::gui::{Stage, VerdictAt};
 use crate::problem::{Place, Problem};
 use crate::section::EdgeKind;
 use crate::study::{Study, ValidStudy};
@@ -32,8 +32,8 @@ pub use pool::Pool;
 pub struct Shown {
     /// The load case.
     pub case_idx: usize,
-    /// The verdict of that case whose working is open.
-    pub open_verdict: Option<usize>,
+    /// The verdict whose working is open, of that case or of the layout.
+    pub open_verdict: Option<VerdictAt>,
     /// The state of it.
     pub stage: Stage,
     /// The plate that is chosen.
@@ -115,7 +115,8 @@ impl BoardModel {
         model.tints = TintScale::new(results.pressure_scale_pa, inputs.ullage_gage_pa, detail.units);
         model.still_z_m = Some(results.still.level_z_m);
         let Some(case) = results.cases.get(shown.case_idx) else { return model };
-        let verdict = shown.open_verdict.and_then(|i| case.verdicts.get(i));
+        let of_case = |at: &VerdictAt| at.case_idx() == Some(shown.case_idx);
+        let open = shown.open_verdict.filter(|at| of_case(at) || at.case_idx().is_none());
         let up = shown.stage.up(case).unwrap_or(Vec2::y());
         match shown.stage.state(case) {
             Some(Ok(state)) => model.show_state(inputs, case, shown.stage, state, detail),
@@ -128,10 +129,15 @@ impl BoardModel {
         if shown.stage != Stage::Released {
             model.freeboard = freeboard(case, results.still.level_z_m);
         }
-        if let Some(verdict) = verdict {
+        if let Some(verdict) = open.and_then(|at| at.find(results)) {
             model.governs = model.governing(verdict);
+            if model.governs.glow.is_empty() && !open.as_ref().is_some_and(of_case) {
+                model.governs.glow = cell_outline(study, verdict, detail);
+            }
         }
         if let Some(Ok(state)) = shown.stage.state(case) {
+            // A verdict on the layout is of the tank at rest: loads of the case are not its own.
+            let verdict = open.filter(of_case).and_then(|at| at.find(results));
             model.show_loads(inputs, verdict, shown.plate_idx, state);
         }
         model.brims = brims(study, up, model.freeboard.map(|f| f.brim));
@@ -284,6 +290,13 @@ impl BoardModel {
             .filter_map(|(_, (plate, load))| Prism::new(plate, load, state.peak_pa))
             .collect();
     }
+}
+
+/// Round the cell that a verdict points into.
+fn cell_outline(study: &ValidStudy, verdict: &Verdict, detail: Detail) -> Vec<Vec<Point>> {
+    let cells = study.region().cells();
+    let Some(part) = verdict.at.and_then(|at| cells.part_at(at)) else { return Vec::new() };
+    cells.edges_of(part).0.iter().map(|edge| flatten(edge, detail.sagitta_m)).collect()
 }
 
 /// Edges as straight sides for drawing.
