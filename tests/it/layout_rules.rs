@@ -3,8 +3,9 @@
 use std::f64::consts::PI;
 
 use brimwright::analysis::{Absent, LAYOUT, Results, Sense, State, Verdict};
-use brimwright::geom::Point;
-use brimwright::section::{Opening, OpeningShape, Plate, Section, WidthLaw};
+use brimwright::geom::{Edge, Point};
+use brimwright::plates::{Passage, gaps, widest_ways};
+use brimwright::section::{Opening, OpeningShape, Plate, Section, WidthLaw, check as check_section};
 use brimwright::study::{Fill, Limit, Record, Study};
 
 use crate::support::plated::plate;
@@ -154,6 +155,27 @@ fn plates_in_one_plane_cover_together_and_a_slanted_one_as_seen_along_s() {
     let results = under(tank(shelf, Fill::Share(0.5)), Limit::PlateCoverage(0.5));
     assert_eq!(results.layout.verdicts, vec![]);
     assert!(results.layout.absent.iter().any(|a| a.criterion == "Plate coverage" && a.place_words == "plate 1"));
+}
+
+#[test]
+fn a_gap_goes_to_the_nearest_plate_on_either_side() {
+    let section = tank([2.5, 0.5, 3.75, 1.5].map(|s| upright(s, 0.0, 1.0)).to_vec(), Fill::Share(0.5)).section;
+    let gaps = gaps(&check_section(&section).expect("a sound section"));
+    let lengths: Vec<f64> = gaps.iter().map(|gap| gap.length_m()).collect();
+    assert_eq!(lengths, [1.0, 1.25, 0.5, 1.0, 1.25, 0.25, 1.0, 1.0], "left and right of each plate");
+}
+
+#[test]
+fn of_three_cells_in_a_ring_the_narrowest_way_is_not_needed() {
+    let passage = |a, b, height| {
+        let edge = Edge::line(Point::origin(), Point::new(0.0, height));
+        Passage { cell_idxs: [a, b], plate_idx: None, share: 1.0, edge }
+    };
+    // Two passages between cells 0 and 1 are one way.
+    let all = [passage(0, 1, 1.0), passage(1, 2, 2.0), passage(2, 0, 3.0), passage(1, 0, 1.5)];
+    let ways = widest_ways(&all, &WidthLaw::Constant { width_m: 1.0 }, 3, |_| 10.0);
+    let found: Vec<([usize; 2], f64)> = ways.iter().map(|way| (way.cell_idxs, way.area_m2)).collect();
+    assert_eq!(found, [([0, 2], 3.0), ([0, 1], 2.5)]);
 }
 
 #[test]
