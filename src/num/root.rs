@@ -37,7 +37,9 @@ pub fn root_between(
         return low;
     }
     let (mut c, mut fc);
-    let mut share = (fa / (fa - fb)).clamp(0.05, 0.95);
+    // Where the straight line meets zero, unless an end is infinite.
+    let straight = fa / (fa - fb);
+    let mut share = if straight.is_finite() { straight.clamp(0.05, 0.95) } else { 0.5 };
     for _ in 0..200 {
         let x = a + share * (b - a);
         let fx = f(x);
@@ -49,7 +51,8 @@ pub fn root_between(
         (a, fa) = (x, fx);
         let best = if fa.abs() < fb.abs() { a } else { b };
         let least = (2.0 * f64::EPSILON * best.abs() + tolerance) / (b - a).abs();
-        if least > 0.5 || fa == 0.0 {
+        // Not a number where both ends are one.
+        if least.is_nan() || least > 0.5 || fa == 0.0 {
             return best;
         }
         let (xi, phi) = ((a - b) / (c - b), (fa - fb) / (fc - fb));
@@ -159,6 +162,11 @@ mod tests {
             });
             assert!((found - sqrt2).abs() < 1e-14 && n_calls < 60, "{found} in {n_calls} calls from {low}..{high}");
         }
+        // Ends at which it is infinite, and two ends that are one.
+        let jump = |x: f64| if x > sqrt2 { f64::INFINITY } else { f64::NEG_INFINITY };
+        assert!((root(0.0, 2.0, 1e-14, jump) - sqrt2).abs() < 1e-13);
+        assert!((root(0.0, 2.0, 1e-14, |x| if x > sqrt2 { f64::INFINITY } else { x - sqrt2 }) - sqrt2).abs() < 1e-13);
+        assert_eq!(root_between((0.0, -1.0), (0.0, 1.0), 0.0, |_| -1.0), 0.0);
         for (low, high) in [(0.0, 2.0), (1.0, 1e6), (sqrt2 - 1e-9, 1.5)] {
             let mut n_calls = 0;
             let [_, found] = bracket(low, high, 1e-14, |x| {

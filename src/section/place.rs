@@ -72,15 +72,29 @@ impl<'a> Layout<'a> {
         if !faults.is_empty() {
             return Err(faults);
         }
-        let mut placed: Vec<Placed> = Vec::new();
-        for (i, plate) in self.section.plates.iter().enumerate() {
-            let mut points = plate.points.clone();
-            let last = points.len() - 1;
-            let mut ends = [Attached::Free; 2];
+        let unmoved = |plate: &Plate| Placed { points: plate.points.clone(), ends: [Attached::Free; 2] };
+        let mut placed: Vec<Placed> = self.section.plates.iter().map(unmoved).collect();
+        for this in &mut placed {
+            let last = this.points.len() - 1;
             for (end, idx) in [0, last].into_iter().enumerate() {
-                (ends[end], points[idx]) = self.stand(i, points[idx], &placed);
+                (this.ends[end], this.points[idx]) = self.on_wall(this.points[idx]);
             }
-            placed.push(Placed { points, ends });
+        }
+        // Once more for as long as an end moves: another may stand on it.
+        for _ in 0..=placed.len() {
+            let before = placed.clone();
+            for i in 0..placed.len() {
+                let last = placed[i].points.len() - 1;
+                for (end, idx) in [0, last].into_iter().enumerate() {
+                    if matches!(placed[i].ends[end], Attached::Free | Attached::Plate(_)) {
+                        let typed = self.section.plates[i].points[idx];
+                        (placed[i].ends[end], placed[i].points[idx]) = self.on_plate(i, typed, &placed);
+                    }
+                }
+            }
+            if placed == before {
+                break;
+            }
         }
         for i in 0..placed.len() {
             self.check_place(i, &placed, &mut faults);
@@ -178,34 +192,28 @@ impl<'a> Layout<'a> {
         self.section.width.width(p.y)
     }
 
-    /// On what the end `p` of a plate stands, and the exact point there.
-    fn stand(&self, plate_idx: usize, p: Point, earlier: &[Placed]) -> (Attached, Point) {
-        let near = self
-            .base
-            .iter()
-            .map(|b| (b, b.edge.nearest(p)))
-            .filter(|(_, (_, d))| *d <= self.stands)
-            .min_by(|a, b| a.1.1.total_cmp(&b.1.1));
-        if let Some((base, (t, _))) = near {
-            let corner = [base.edge.start, base.edge.end].into_iter().find(|q| (p - q).norm() <= self.stands);
-            let at = corner.unwrap_or_else(|| base.edge.point_at(t));
-            return match base.wall {
-                Wall::Outline { edge_idx, is_mouth } => (Attached::Outline { edge_idx, is_mouth }, at),
-                Wall::Obstacle { obstacle_idx, .. } => (Attached::Obstacle(obstacle_idx), at),
-                _ => (Attached::Free, at),
-            };
+    /// On what wall the end `p` of a plate stands, if any, and the exact point there.
+    fn on_wall(&self, p: Point) -> (Attached, Point) {
+        let near = self.base.iter().map(|b| (b, b.edge.nearest(p)));
+        let near = near.filter(|(_, (_, d))| *d <= self.stands).min_by(|a, b| a.1.1.total_cmp(&b.1.1));
+        let Some((base, (t, _))) = near else { return (Attached::Free, p) };
+        let corner = [base.edge.start, base.edge.end].into_iter().find(|q| (p - q).norm() <= self.stands);
+        let at = corner.unwrap_or_else(|| base.edge.point_at(t));
+        match base.wall {
+            Wall::Outline { edge_idx, is_mouth } => (Attached::Outline { edge_idx, is_mouth }, at),
+            Wall::Obstacle { obstacle_idx, .. } => (Attached::Obstacle(obstacle_idx), at),
+            _ => (Attached::Free, at),
         }
-        for (other_idx, other) in self.section.plates.iter().enumerate() {
-            if other_idx == plate_idx {
-                continue;
+    }
+
+    /// The same for other plates. What was typed at a corner of theirs goes where that corner goes.
+    fn on_plate(&self, plate_idx: usize, p: Point, placed: &[Placed]) -> (Attached, Point) {
+        for (other_idx, other) in placed.iter().enumerate().filter(|(i, _)| *i != plate_idx) {
+            let typed = &self.section.plates[other_idx].points;
+            if let Some(corner) = typed.iter().position(|q| (p - q).norm() <= self.stands) {
+                return (Attached::Plate(other_idx), other.points[corner]);
             }
-            let points = earlier.get(other_idx).map_or(&other.points, |placed| &placed.points);
-            let corner = points.iter().find(|q| (p - **q).norm() <= self.stands);
-            if let Some(corner) = corner {
-                return (Attached::Plate(other_idx), *corner);
-            }
-            let segments = points.windows(2).map(|w| Edge::line(w[0], w[1]));
-            let near = segments.map(|e| (e, e.nearest(p))).min_by(|a, b| a.1.1.total_cmp(&b.1.1));
+            let near = segments(other).map(|e| (e, e.nearest(p))).min_by(|a, b| a.1.1.total_cmp(&b.1.1));
             if let Some((e, (t, d))) = near
                 && d <= self.stands
             {
@@ -280,18 +288,8 @@ impl<'a> Layout<'a> {
         let mut slits: Vec<Slit> = Vec::new();
         for (plate_idx, (plate, placed)) in self.section.plates.iter().zip(placed).enumerate() {
             let mut slit = Slit { plate_idx: Some(plate_idx), nodes: nodes(&placed.points), openings: Vec::new() };
-            let length = slit.nodes[slit.nodes.len() - 1].0;
             for o in &plate.openings {
-                let snap = |x: f64| {
-                    if x <= self.stands {
-                        0.0
-                    } else if x >= length - self.stands {
-                        length
-                    } else {
-                        x
-                    }
-                };
-                let span = [snap(o.from_m), snap(o.to_m)];
+                let span = [o.from_m, o.to_m];
                 for along in span {
                     slit.stop_at(along, plate.point_at(along), self.stands);
                 }

@@ -116,6 +116,12 @@ fn sound_plates_stand_where_they_were_drawn_and_nothing_leaks() {
             vec![[wall(0), on(1)], [wall(0), on(0)], [rim, on(0)]],
             3,
         ),
+        (
+            "on the typed end of a plate that is moved onto a corner",
+            piped(&[&[(1.4998, 2.0), (1.4998, 1.0006)], &[(1.4998, 1.0003), (4.0, 1.0)]]),
+            vec![[rim, on(1)], [Obstacle(0), wall(1)]],
+            2,
+        ),
         ("to an obstacle", piped(&[&[(1.25, 0.0), (1.25, 0.5)]]), vec![[wall(0), Obstacle(0)]], 1),
         (
             "below and above an obstacle",

@@ -2,11 +2,12 @@
 
 use brimwright::analysis::State;
 use brimwright::cases::Attitude;
-use brimwright::geom::{Edge, Vec2};
+use brimwright::geom::{Edge, Point, Vec2};
 use brimwright::section::Wall;
-use brimwright::study::Fill;
+use brimwright::study::{Compartment, Fill};
 use proptest::prelude::*;
 
+use crate::support::plated::Plated;
 use crate::support::random::{any as sections, config, share};
 use crate::support::shapes::{polygon, rectangle, section};
 use crate::support::*;
@@ -138,5 +139,30 @@ fn a_still_level_above_the_mouth_has_no_freeboard_until_the_tilt_takes_it_below(
         let (demand, limit) = (freeboard.demand.unwrap().si, freeboard.limit.unwrap().si);
         assert_eq!(freeboard.state, want, "{demand} m against {limit} m at {a_s} m/s2");
         assert!(demand < 0.0 && limit < 0.0, "{demand} m, {limit} m");
+    }
+}
+
+#[test]
+fn a_compartment_with_its_own_fill_does_not_limit_the_common_one() {
+    // Two cells 1 m wide below a mouth each, the left one brim-full for itself. At a slope of 0.2 the right one holds
+    // 0.2 / 2 less than its capacity of 1 m3.
+    let corners = [(0.0, 0.0), (2.0, 0.0), (2.0, 1.0), (1.1, 1.0), (0.9, 1.0), (0.0, 1.0)];
+    let tank = Plated::tank(polygon(&corners)).with_mouth(2).with_mouth(4).with_plate(&[(1.0, 0.0), (1.0, 1.0)]);
+    let mut study = study(tank.section(), Fill::Share(0.5));
+    let (name, at) = ("full".to_owned(), Point::new(0.5, 0.5));
+    study.compartments = vec![Compartment { name, at, liquid: None, fill: Fill::Share(1.0) }];
+    study.cases = vec![held(-0.2 * GRAVITY, 0.0)];
+    let share = judge(&study).still.highest_share.expect("a judged case");
+    near(share, 0.9, 1e-6, "highest share");
+}
+
+#[test]
+fn the_highest_fill_lies_below_a_fill_that_spills() {
+    // Open at its top, 2 by 1; at a slope of 0.2 it holds 2 - 2 x 0.4 / 2 below its brim, 0.8 of its capacity.
+    for fill in [0.5, 0.95] {
+        let mut study = study(section(&rectangle(2.0, 1.0), &[2], 1.0), Fill::Share(fill));
+        study.cases = vec![held(-0.2 * GRAVITY, 0.0)];
+        let share = judge(&study).still.highest_share.expect("a judged case");
+        near(share, 0.8, 1e-9, &format!("highest share, filled to {fill}"));
     }
 }

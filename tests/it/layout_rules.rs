@@ -4,7 +4,8 @@ use std::f64::consts::PI;
 
 use brimwright::analysis::{Absent, LAYOUT, Results, Sense, State, Verdict};
 use brimwright::geom::Point;
-use brimwright::section::{Opening, OpeningShape, Plate, Section, WidthLaw};
+use brimwright::plates::gaps;
+use brimwright::section::{Opening, OpeningShape, Plate, Section, WidthLaw, check as check_section};
 use brimwright::study::{Compartment, Fill, Limit, Record, Study};
 
 use crate::support::plated::plate;
@@ -163,6 +164,14 @@ fn plates_in_one_plane_cover_together_and_a_slanted_one_as_seen_along_s() {
     let results = under(tank(shelf, Fill::Share(0.5)), Limit::PlateCoverage(0.5));
     assert_eq!(results.layout.verdicts, vec![]);
     assert!(results.layout.absent.iter().any(|a| a.criterion == "Plate coverage" && a.place_words == "plate 1"));
+}
+
+#[test]
+fn a_gap_goes_to_the_nearest_plate_on_either_side() {
+    let section = tank([2.5, 0.5, 3.75, 1.5].map(|s| upright(s, 0.0, 1.0)).to_vec(), Fill::Share(0.5)).section;
+    let gaps = gaps(&check_section(&section).expect("a sound section"));
+    let lengths: Vec<f64> = gaps.iter().map(|gap| gap.length_m()).collect();
+    assert_eq!(lengths, [1.0, 1.25, 0.5, 1.0, 1.25, 0.25, 1.0, 1.0], "left and right of each plate");
 }
 
 #[test]

@@ -159,10 +159,10 @@ impl Basins<'_> {
             let mut next: Option<(f64, usize, f64)> = None;
             for (j, (l, r)) in self.sublevel.strips(slab_below).enumerate() {
                 let [a, b] = [l.u_at(slab_below.top).max(left), r.u_at(slab_below.top).min(right)];
-                if b <= a || !self.is_within(self.basin_of(below, j), basin) || self.is_shut(slab.bottom, a, b) {
+                if b <= a || !self.is_within(self.basin_of(below, j), basin) {
                     continue;
                 }
-                let landing = u.clamp(a, b);
+                let Some(landing) = self.way_down(slab.bottom, [a, b], u) else { continue };
                 if next.is_none_or(|n| (landing - u).abs() < n.0) {
                     next = Some(((landing - u).abs(), j, landing));
                 }
@@ -309,12 +309,28 @@ impl Basins<'_> {
         self.strips[first + i].basin as usize
     }
 
-    /// Whether a level slit shuts all of a span of u at `v`.
+    /// Whether level slits shut all of a span of u at `v`.
     pub(super) fn is_shut(&self, v: f64, a: f64, b: f64) -> bool {
+        self.way_down(v, [a, b], a).is_none()
+    }
+
+    /// The place nearest to `u` in a span at `v` that no level slit shuts: what falls on a slit goes over its nearer end.
+    fn way_down(&self, v: f64, [a, b]: [f64; 2], u: f64) -> Option<f64> {
         let flats = self.sublevel.flats();
         let first = flats.partition_point(|f| f.v < v);
-        let here = flats[first..].iter().take_while(|f| f.v == v && f.v <= v).filter(|f| f.is_floor);
-        let shut: f64 = here.map(|f| (f.u[1].min(b) - f.u[0].max(a)).max(0.0)).sum();
-        b - a - shut <= 1e-12 * (b - a).max(f64::MIN_POSITIVE)
+        let here = flats[first..].iter().take_while(|f| f.v == v).filter(|f| f.is_floor);
+        let mut shut: Vec<[f64; 2]> = here.map(|f| f.u).collect();
+        shut.sort_unstable_by(|a, b| a[0].total_cmp(&b[0]));
+        shut.push([b, b]);
+        let (mut from, mut nearest) = (a, None::<f64>);
+        for [left, right] in shut {
+            let to = left.min(b);
+            if to - from > 1e-12 * (b - a) {
+                let here = u.clamp(from, to);
+                nearest = nearest.filter(|n| (n - u).abs() <= (here - u).abs()).or(Some(here));
+            }
+            from = from.max(right);
+        }
+        nearest
     }
 }

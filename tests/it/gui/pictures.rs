@@ -60,7 +60,7 @@ fn the_fill_map_comes_when_it_is_chosen() {
     harness.run();
     harness.get_by_label("Fill map").click();
     harness.run();
-    let whole = |harness: &Driven| harness.query_by_label_contains("Fill map, ").is_some();
+    let whole = |harness: &Driven| harness.query_by_label("Fill map, 10100 of 10100 points").is_some();
     wait_for(&mut harness, "the fill map", whole);
 }
 

@@ -58,14 +58,37 @@ impl HandCase {
 
 /// All of them.
 pub fn hand_cases() -> Vec<HandCase> {
-    [two_cells(), three_cells(), trapped(), hanging(), tight(), dividers(), steps(), standing_clear(), round()]
-        .into_iter()
-        .flatten()
-        .collect()
+    [
+        two_cells(),
+        three_cells(),
+        trapped(),
+        hanging(),
+        tight(),
+        dividers(),
+        steps(),
+        standing_clear(),
+        round(),
+        sinking(),
+    ]
+    .into_iter()
+    .flatten()
+    .collect()
 }
 
 fn case(name: &'static str, section: Plated, liquid: f64, stops: &[(f64, f64)]) -> HandCase {
     HandCase { name, section, liquid, stops: stops.to_vec(), pools: vec![], spilled: 0.0, first_spill: None }
+}
+
+/// A tank 3 by 2 with a plate 0.5 high at s = 1 and a hole in its left wall from z = 0.6 on; liquid 1.65, so 0.55 deep.
+///
+/// The surface turns about (1.5, 0.55) and comes to the hole at 1.5 m = 0.05. From m = 0.1 on the hole lies below the tip:
+/// the right cell keeps what its tip holds, 2 (0.5 - m), and all that goes over it leaves by the hole, which leaves
+/// 0.6 - m / 2 in the left one.
+fn sinking() -> Vec<HandCase> {
+    let holed = polygon(&[(0.0, 0.0), (3.0, 0.0), (3.0, 2.0), (0.0, 2.0), (0.0, 0.9), (0.0, 0.6)]);
+    let tank = Plated::tank(holed).with_mouth(4).with_plate(&[(1.0, 0.0), (1.0, 0.5)]);
+    let case = case("a hole sinks below a tip", tank, 1.65, &[(0.2, 0.0)]);
+    vec![case.pool((0.5, 0.1), 0.5, (0.5, 0.5)).pool((1.5, 0.1), 0.6, (2.0, 0.3)).spills(0.55, 1.0 / 6.0)]
 }
 
 /// A tank 2 by 2 with a plate 0.5 high on the middle of its floor; liquid 1.2, so at rest 0.1 over the plate.
