@@ -229,6 +229,27 @@ fn stages_ui(ui: &mut Ui, rect: Rect, desk: &mut Desk) {
             desk.view.stage = Some(stage);
         }
     }
+    near_ui(ui, rect.with_max_x(right), desk);
+}
+
+/// Which bound is near for as long as the case lasts, where its liquid moves between them.
+fn near_ui(ui: &mut Ui, rect: Rect, desk: &Desk) {
+    let Some(Ok(transfer)) = desk.case().and_then(|case| case.transfer.as_ref()) else { return };
+    if transfer.moved_m3 == 0.0 {
+        return;
+    }
+    let words = match transfer.near {
+        Some(bound) => format!("{} is near", bound.word()),
+        None => "neither bound is near".to_owned(),
+    };
+    let place = rect.with_min_x(rect.right() - text_width(ui, &words, font::body()) - 1.0);
+    if place.left() < rect.left() {
+        return;
+    }
+    let response = ui.interact(place, ui.next_auto_id().with("near"), Sense::hover());
+    response.widget_info(|| WidgetInfo::labeled(Role::Label, true, format!("{words}: {}", transfer.words)));
+    field::paint_fitting(ui, place, Align::Min, &words, font::body(), desk.look.ink3);
+    response.on_hover_text(&transfer.words);
 }
 
 fn accel_unit(desk: &Desk, unit: AccelUnit) -> Unit {

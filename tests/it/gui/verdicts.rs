@@ -56,3 +56,14 @@ fn an_opened_layout_verdict_stays_open_when_its_place_in_the_list_changes() {
     type_into(&mut harness, "Fill", "15");
     assert_eq!(criterion(&harness), Some("Plate coverage"));
 }
+
+#[test]
+fn the_bound_that_is_near_stands_beside_the_bounds() {
+    let harness = open_example("tanker-barrel-surge-plates.ron");
+    let case = harness.state().as_ref().unwrap().view().case_idx;
+    let Derived::Judged { results, .. } = doc(&harness).derived() else { panic!("it is judged") };
+    let transfer = results.cases[case].transfer.as_ref().expect("two bounds").as_ref().unwrap();
+    assert!(transfer.moved_m3 > 0.0, "the case shown first moves liquid through the openings");
+    assert_eq!(transfer.near, None, "{}", transfer.words);
+    harness.get_by_label(&format!("neither bound is near: {}", transfer.words));
+}
